@@ -1,0 +1,115 @@
+import * as z from 'zod/mini';
+import { entrySchema } from '../books/book.ts';
+import {
+  incentiveReceiptSchema,
+  incentiveSchema,
+  insuranceEndRule,
+  loanPaymentSchema,
+  loanSchema,
+  mortgageSchema,
+} from '../facts/finance.ts';
+import { costSchema } from '../facts/house.ts';
+import { centsSchema } from '../units/cents.ts';
+import { daySchema } from '../units/day.ts';
+import { endpoint, HOUSEHOLD, OWNER } from './endpoint.ts';
+
+export const scheduleRow = z.object({
+  number: z.int(),
+  on: daySchema,
+  paymentCents: centsSchema,
+  interestCents: centsSchema,
+  principalCents: centsSchema,
+  balanceCents: centsSchema,
+  /** True where a recorded payment stands in for the scheduled one. */
+  recorded: z.boolean(),
+  past: z.boolean(),
+});
+export type ScheduleRow = z.infer<typeof scheduleRow>;
+
+export const moneyView = z.object({
+  loan: z.nullable(
+    z.object({
+      facts: loanSchema,
+      paymentCents: centsSchema,
+      payoffCents: centsSchema,
+      payoffOn: daySchema,
+      paidCents: centsSchema,
+      interestPaidCents: centsSchema,
+      lastPaymentOn: z.nullable(daySchema),
+      schedule: z.array(scheduleRow),
+    }),
+  ),
+  insurance: z.nullable(
+    z.object({
+      facts: mortgageSchema,
+      /** Dates of the payment at which each rule would have ended it; null where it never does. */
+      ends: z.array(z.object({ rule: insuranceEndRule, on: z.nullable(daySchema), words: z.string() })),
+      governs: z.nullable(insuranceEndRule),
+      avoidedCents: centsSchema,
+    }),
+  ),
+  incentive: z.nullable(
+    z.object({
+      facts: incentiveSchema,
+      earnedCents: centsSchema,
+      receivedCents: centsSchema,
+      owedCents: centsSchema,
+      earned: z.array(entrySchema),
+    }),
+  ),
+  costs: z.array(costSchema),
+  costsCents: centsSchema,
+  incomeCents: centsSchema,
+});
+export type MoneyView = z.infer<typeof moneyView>;
+
+export const loanPaymentBody = z.strictObject({
+  on: daySchema,
+  amountCents: loanPaymentSchema.shape.amountCents.check(z.minimum(1, { error: 'Write the amount paid.' })),
+  extraPrincipalCents: loanPaymentSchema.shape.extraPrincipalCents.check(z.minimum(0)),
+  note: loanPaymentSchema.shape.note,
+});
+export const receiptBody = z.strictObject({
+  on: daySchema,
+  amountCents: incentiveReceiptSchema.shape.amountCents,
+  note: incentiveReceiptSchema.shape.note,
+});
+export const costBody = z.strictObject({
+  on: daySchema,
+  kind: costSchema.shape.kind,
+  label: costSchema.shape.label,
+  amountCents: costSchema.shape.amountCents.check(z.minimum(1, { error: 'Write the amount.' })),
+});
+
+const at = '/api/households/:householdId/money';
+export const moneyApi = {
+  view: endpoint({ method: 'GET', path: at, access: HOUSEHOLD, response: moneyView }),
+  addLoanPayment: endpoint({
+    method: 'POST',
+    path: `${at}/loan-payments`,
+    access: OWNER,
+    body: loanPaymentBody,
+    response: moneyView,
+  }),
+  removeLoanPayment: endpoint({
+    method: 'DELETE',
+    path: `${at}/loan-payments/:id`,
+    access: OWNER,
+    response: moneyView,
+  }),
+  addReceipt: endpoint({
+    method: 'POST',
+    path: `${at}/incentive-receipts`,
+    access: OWNER,
+    body: receiptBody,
+    response: moneyView,
+  }),
+  removeReceipt: endpoint({
+    method: 'DELETE',
+    path: `${at}/incentive-receipts/:id`,
+    access: OWNER,
+    response: moneyView,
+  }),
+  addCost: endpoint({ method: 'POST', path: `${at}/costs`, access: OWNER, body: costBody, response: moneyView }),
+  removeCost: endpoint({ method: 'DELETE', path: `${at}/costs/:id`, access: OWNER, response: moneyView }),
+};

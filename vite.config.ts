@@ -1,0 +1,39 @@
+import tailwindcss from '@tailwindcss/vite';
+import react from '@vitejs/plugin-react';
+import { defineConfig } from 'vitest/config';
+
+const apiPort = process.env.PORT ?? '4470';
+
+export default defineConfig({
+  plugins: [react(), tailwindcss()],
+  build: {
+    outDir: 'dist',
+    // The content security policy allows no data: addresses, so nothing may be inlined.
+    assetsInlineLimit: 0,
+    manifest: true,
+  },
+  server: {
+    host: '127.0.0.1',
+    proxy: { '/api': `http://127.0.0.1:${apiPort}` },
+  },
+  test: {
+    projects: [
+      { extends: true, test: { name: 'unit', include: ['tests/unit/**/*.test.{ts,tsx}'] } },
+      { extends: true, test: { name: 'standards', include: ['tests/standards/**/*.test.ts'] } },
+      {
+        extends: true,
+        test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 30_000, hookTimeout: 60_000 },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'browser',
+          include: ['tests/browser/**/*.test.ts'],
+          testTimeout: 120_000,
+          hookTimeout: 180_000,
+          fileParallelism: false,
+        },
+      },
+    ],
+  },
+});
