@@ -1,0 +1,18 @@
+import { MutationCache, QueryCache, QueryClient } from '@tanstack/react-query';
+import { ApiError } from '#src/lib/api.ts';
+
+/** A refusal for want of a session means that it ended: forget everything and let the shell ask for sign-in. */
+function onError(error: unknown): void {
+  if (error instanceof ApiError && error.status === 401) queryClient.setQueryData(['session'], null);
+}
+
+export const queryClient: QueryClient = new QueryClient({
+  queryCache: new QueryCache({ onError }),
+  mutationCache: new MutationCache({ onError }),
+  defaultOptions: {
+    queries: {
+      staleTime: 30_000,
+      retry: (count, error) => (error instanceof ApiError && error.status > 0 ? false : count < 2),
+    },
+  },
+});

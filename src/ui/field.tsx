@@ -1,0 +1,170 @@
+import { type ComponentProps, type ReactNode, useId } from 'react';
+
+type Shell = { label: ReactNode; hint?: ReactNode; error?: string | undefined };
+
+function useShell(error: string | undefined, hint: ReactNode) {
+  const id = useId();
+  const described = [hint ? `${id}-hint` : null, error ? `${id}-error` : null].filter(Boolean).join(' ');
+  return { id, describedBy: described === '' ? undefined : described };
+}
+
+/** A labelled text input with hint and error; spread react-hook-form's `register(…)` into it. */
+export function Field({
+  label,
+  hint,
+  error,
+  unit,
+  className,
+  ...input
+}: ComponentProps<'input'> & Shell & { unit?: string }) {
+  const { id, describedBy } = useShell(error, hint);
+  return (
+    <div className="field">
+      <label htmlFor={id} className="field-label">
+        {label}
+      </label>
+      {hint && (
+        <span id={`${id}-hint`} className="field-hint">
+          {hint}
+        </span>
+      )}
+      {error && (
+        <span id={`${id}-error`} className="field-error">
+          {error}
+        </span>
+      )}
+      <span className="flex items-center gap-2">
+        <input
+          {...input}
+          id={id}
+          aria-describedby={describedBy}
+          aria-invalid={error ? true : undefined}
+          className={`input ${className ?? ''}`}
+        />
+        {unit && <span className="hint whitespace-nowrap">{unit}</span>}
+      </span>
+    </div>
+  );
+}
+
+export function SelectField({ label, hint, error, children, ...select }: ComponentProps<'select'> & Shell) {
+  const { id, describedBy } = useShell(error, hint);
+  return (
+    <div className="field">
+      <label htmlFor={id} className="field-label">
+        {label}
+      </label>
+      {hint && (
+        <span id={`${id}-hint`} className="field-hint">
+          {hint}
+        </span>
+      )}
+      {error && (
+        <span id={`${id}-error`} className="field-error">
+          {error}
+        </span>
+      )}
+      <select
+        {...select}
+        id={id}
+        aria-describedby={describedBy}
+        aria-invalid={error ? true : undefined}
+        className="input"
+      >
+        {children}
+      </select>
+    </div>
+  );
+}
+
+export function TextArea({ label, hint, error, ...area }: ComponentProps<'textarea'> & Shell) {
+  const { id, describedBy } = useShell(error, hint);
+  return (
+    <div className="field">
+      <label htmlFor={id} className="field-label">
+        {label}
+      </label>
+      {hint && (
+        <span id={`${id}-hint`} className="field-hint">
+          {hint}
+        </span>
+      )}
+      {error && (
+        <span id={`${id}-error`} className="field-error">
+          {error}
+        </span>
+      )}
+      <textarea
+        {...area}
+        id={id}
+        aria-describedby={describedBy}
+        aria-invalid={error ? true : undefined}
+        className="input"
+      />
+    </div>
+  );
+}
+
+/** One question with a few answers. */
+export function Choices({
+  legend,
+  hint,
+  error,
+  name,
+  value,
+  options,
+  onChange,
+}: {
+  legend: ReactNode;
+  hint?: ReactNode;
+  error?: string | undefined;
+  name: string;
+  value: string | null;
+  options: { value: string; label: ReactNode; hint?: ReactNode }[];
+  onChange: (value: string) => void;
+}) {
+  return (
+    <fieldset className="field">
+      <legend className="field-label">{legend}</legend>
+      {hint && <span className="field-hint">{hint}</span>}
+      {error && <span className="field-error">{error}</span>}
+      {options.map((option) => (
+        <label key={option.value} className="flex min-h-11 items-start gap-3 py-2">
+          <input
+            type="radio"
+            className="mt-1 size-5 accent-accent"
+            name={name}
+            value={option.value}
+            checked={value === option.value}
+            onChange={() => onChange(option.value)}
+          />
+          <span>
+            {option.label}
+            {option.hint && <span className="hint block">{option.hint}</span>}
+          </span>
+        </label>
+      ))}
+    </fieldset>
+  );
+}
+
+/** What is wrong with a form, above it; takes the focus when it appears. */
+export function ErrorSummary({
+  title = 'There is a problem',
+  errors,
+}: {
+  title?: string;
+  errors: { text: string; href?: string }[];
+}) {
+  if (errors.length === 0) return null;
+  return (
+    <div role="alert" tabIndex={-1} ref={(element) => element?.focus()} className="margin-note bad mt-5">
+      <b>{title}</b>
+      <ul>
+        {errors.map((error) => (
+          <li key={error.text}>{error.href ? <a href={error.href}>{error.text}</a> : error.text}</li>
+        ))}
+      </ul>
+    </div>
+  );
+}
