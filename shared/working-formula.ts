@@ -6,7 +6,8 @@ type Value = Exact | Exact[];
 
 /**
  * Evaluates a working from its inputs alone: + − * / and brackets over the inputs' names and plain numbers, and
- * `roundCents(x)` (half away from zero to 0.01), `roundCentsEven(x)`, `roundWhole(x)`, `sum(list)`, `min(…)`, `max(…)`.
+ * `roundCents(x)` (half away from zero to 0.01), `roundCentsEven(x)`, `roundWhole(x)`, `sum(list)`, `min(…)`, `max(…)`,
+ * `pow(x, n)` with a whole n.
  * Throws on a formula it cannot read or a name it does not know: a working must always be readable.
  */
 export function evaluateWorking(working: Working): Exact {
@@ -102,6 +103,9 @@ function call(name: string, given: Value[]): Exact {
       break;
     case 'roundWhole':
       if (first) return first.toDecimalPlaces(0, Decimal.ROUND_HALF_UP);
+      break;
+    case 'pow':
+      if (first && list[1]?.isInteger()) return first.pow(list[1]);
       break;
   }
   throw new Error(`the function ${name} is not known or lacks its argument`);

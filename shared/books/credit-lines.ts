@@ -9,8 +9,9 @@ export const creditLines = z.object({
   /** The rate of the year placed in service, fraction text; null where no cost enters this year. */
   rate: z.nullable(z.string()),
   line6bCents: centsSchema,
-  line12Cents: centsSchema,
-  line13Cents: centsSchema,
+  /** Null where an earlier year's limit is missing: what is carried in is then not known, and neither are 13, 15 and 16. */
+  line12Cents: z.nullable(centsSchema),
+  line13Cents: z.nullable(centsSchema),
   /** Null until typed: then lines 15 and 16 cannot be worked out. */
   line14Cents: z.nullable(centsSchema),
   line15Cents: z.nullable(centsSchema),
