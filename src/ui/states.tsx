@@ -5,7 +5,8 @@ import { Button } from './button.tsx';
 /** The shape of a page while it loads: a sentence and two sheets. */
 export function PageSkeleton() {
   return (
-    <div className="page" aria-busy="true" aria-label="Loading">
+    <div className="page" aria-busy="true">
+      <p className="visually-hidden">Loading</p>
       <div className="bone h-11 w-3/5" />
       <div className="bone mt-4 h-5 w-2/5" />
       <div className="sheet">
