@@ -1,0 +1,57 @@
+import { type Cents, cents } from '../units/cents.ts';
+import { type Day, dayOfMonth, daysInMonth, monthOf, yearOf } from '../units/day.ts';
+import { Exact, exact, roundToCents, usdOf } from '../units/rate.ts';
+import type { DecimalText } from '../units/rate-text.ts';
+
+/**
+ * Level monthly payment `P = L·i / (1 − (1 + i)^−n)`, `i` = annual rate / 12, rounded half-up to the cent; at a zero rate `L / n`.
+ * Source: the annuity formula as numpy-financial documents `pmt`.
+ */
+export function levelPayment(principalCents: Cents, annualRate: DecimalText, months: number): Cents {
+  const monthly = exact(annualRate).div(12);
+  if (monthly.isZero()) return roundToCents(usdOf(principalCents).div(months));
+  const discount = new Exact(1).minus(monthly.plus(1).pow(-months));
+  return roundToCents(usdOf(principalCents).times(monthly).div(discount));
+}
+
+/** Interest on a balance for whole months or days of a 360-day year, rounded half-up to the cent. Exact integers, since a schedule asks hundreds of times. */
+export type InterestRule = {
+  /** One month: balance × rate / 12. */
+  month(balance: Cents): Cents;
+  /** `days` of a 360-day year: balance × rate × days / 360. */
+  days(balance: Cents, days: number): Cents;
+};
+
+export function interestRule(annualRate: DecimalText): InterestRule {
+  const [whole = '0', decimals = ''] = annualRate.replace('-', '').split('.');
+  const size = BigInt(whole + decimals);
+  const numerator = annualRate.startsWith('-') ? -size : size;
+  const denominator = 10n ** BigInt(decimals.length);
+  const of = (balance: Cents, parts: bigint, partsOfYear: bigint) =>
+    cents(Number(roundedQuotient(BigInt(balance) * numerator * parts, denominator * partsOfYear)));
+  return {
+    month: (balance) => of(balance, 1n, 12n),
+    days: (balance, days) => of(balance, BigInt(days), 360n),
+  };
+}
+
+/** Half away from zero. */
+function roundedQuotient(numerator: bigint, denominator: bigint): bigint {
+  const size = numerator < 0n ? -numerator : numerator;
+  const rounded = (2n * size + denominator) / (2n * denominator);
+  return numerator < 0n ? -rounded : rounded;
+}
+
+/**
+ * Days from one date to another by 30/360 (US): every month counts 30 days, a month's last day is its thirtieth.
+ * Common practice, no source.
+ */
+export function days360(from: Day, to: Day): number {
+  const first = isMonthEnd(from) ? 30 : dayOfMonth(from);
+  const second = isMonthEnd(to) && first === 30 ? 30 : Math.min(dayOfMonth(to), 30);
+  return (yearOf(to) - yearOf(from)) * 360 + (monthOf(to) - monthOf(from)) * 30 + second - first;
+}
+
+function isMonthEnd(date: Day): boolean {
+  return dayOfMonth(date) === daysInMonth(yearOf(date), monthOf(date));
+}
