@@ -1,0 +1,203 @@
+import type { PrintedBank, PrintedLine, ReadChannel, RegisterRead } from '#shared/facts/papers.ts';
+import type { Cents } from '#shared/units/cents.ts';
+import type { Day } from '#shared/units/day.ts';
+import { parseKwh, type Wh } from '#shared/units/energy.ts';
+import { nearestName } from './faults.ts';
+import type { RowReader } from './statement-row.ts';
+import {
+  type BalanceItem,
+  balanceItemOf,
+  bankIdOf,
+  channelOf,
+  KNOWN_ITEMS,
+  kindOf,
+  OFFERED_ITEMS,
+  plainWords,
+  readTypeOf,
+  recordOf,
+  unitOf,
+  yesOrNo,
+} from './statement-words.ts';
+
+/** What one row says about its cycle. `inDue` is null where the row leaves it to the rule in `statement-cycles.ts`. */
+export type RecordOfRow =
+  | { record: 'statement' }
+  | { record: 'read'; channel: ReadChannel; read: RegisterRead | null; printedWh: Wh | null }
+  | { record: 'line'; line: Omit<PrintedLine, 'inDue'> & { inDue: boolean | null } }
+  | { record: 'bank'; bank: PrintedBank }
+  | { record: 'balance'; item: BalanceItem; amountCents: Cents };
+
+const LONGEST_LABEL = 160;
+const SHORTEST_DIALS = 5;
+const KWH_KINDS = new Set<PrintedLine['kind']>(['import', 'export', 'nonbypassable', 'incentive']);
+
+function readOf(cells: RowReader, from: Day, to: Day): RecordOfRow | null {
+  const channel = cells.word('item', channelOf, 'import, export or production');
+  cells.need('item', 'a read needs import, export or production in “item”.');
+  const previous = cells.number('previous');
+  const current = cells.number('current');
+  const printed = cells.number('quantity');
+  const multiplier = cells.number('multiplier') ?? '1';
+  const type = cells.word('read_type', readTypeOf, 'actual or estimated') ?? 'actual';
+  const readFrom = cells.date('read_from') ?? from;
+  const readTo = cells.date('read_to') ?? to;
+  const statedDials = cells.whole('dials', 3, 9);
+  if (cells.faults.length > 0 || channel === null) return null;
+
+  if (readFrom < from || readTo > to) {
+    const column = readFrom < from ? 'read_from' : 'read_to';
+    const day = readFrom < from ? readFrom : readTo;
+    cells.fault(
+      column,
+      'outside-cycle',
+      `Row ${cells.row}: the read of ${day} lies outside its cycle, ${from} to ${to}.`,
+    );
+  }
+  if (readFrom >= readTo) {
+    cells.fault('read_to', 'dates-order', `Row ${cells.row}: the read ends on ${readTo}, not after ${readFrom}.`);
+  }
+  if ((previous === null) !== (current === null)) {
+    const column = previous === null ? 'previous' : 'current';
+    cells.need(column, 'a read has both its previous and its current figure, or neither.');
+  }
+  if (previous === null && current === null)
+    cells.need('quantity', 'a read needs its two figures, or the kWh printed for it.');
+  const digits = Math.max(
+    ...[cells.text('previous'), cells.text('current')].map(
+      (text) => (/\d+/.exec(text.replace(/[,' ]/g, ''))?.[0] ?? '').length,
+    ),
+  );
+  const dials = statedDials ?? Math.max(SHORTEST_DIALS, digits);
+  if (dials > 9 || (statedDials !== null && digits > statedDials)) {
+    cells.fault(
+      'dials',
+      'dials',
+      `Row ${cells.row}: a read of ${digits} digits does not fit a register of ${Math.min(dials, 9)} dials.`,
+    );
+  }
+  for (const column of ['previous', 'current', 'multiplier'] as const) {
+    if (cells.number(column)?.startsWith('-'))
+      cells.fault(column, 'below-zero', `Row ${cells.row}: ${column} cannot be below zero.`);
+  }
+  if (cells.faults.length > 0) return null;
+  const read =
+    previous === null || current === null
+      ? null
+      : {
+          meter: cells.text('meter'),
+          channel,
+          from: readFrom,
+          to: readTo,
+          previous,
+          current,
+          dials,
+          multiplier,
+          type,
+          row: cells.row,
+        };
+  return { record: 'read', channel, read, printedWh: printed === null ? null : parseKwh(printed) };
+}
+
+function lineOf(cells: RowReader): RecordOfRow | null {
+  cells.need('item', 'a line needs what it is in “item”, such as import or customer charge.');
+  cells.need('amount', 'a line needs its amount. A credit is written with a minus: −12.34.');
+  const offer = `one of: ${OFFERED_ITEMS.join(', ')}`;
+  const near = nearestName(plainWords(cells.text('item')), KNOWN_ITEMS);
+  const kind = cells.word('item', kindOf, near === null ? offer : `“${near}”, or ${offer}`);
+  const amountCents = cells.money('amount');
+  let quantity = cells.number('quantity');
+  let unit = cells.word('unit', unitOf, 'kWh, kW, day, cycle or USD');
+  const rate = cells.number('rate');
+  const inDue = cells.word('in_due', yesOrNo, 'yes or no');
+  const component = cells.text('component');
+  const label = cells.text('label') || cells.text('item');
+  if (label.length > LONGEST_LABEL)
+    cells.fault('label', 'too-long', `Row ${cells.row}: the label has more than ${LONGEST_LABEL} letters.`);
+  if (kind === 'previousBalance' || kind === 'payment') {
+    cells.fault(
+      'record',
+      'wrong-record',
+      `Row ${cells.row}: write “balance” in “record” for a previous balance or a payment.`,
+    );
+  }
+  if ((kind === 'export' || kind === 'credit') && amountCents !== null && amountCents > 0) {
+    const message = `Row ${cells.row}, amount: a credit is written with a minus, −${cells.text('amount')}. A charge on exports is an adjustment.`;
+    cells.fault('amount', 'credit-sign', message);
+  }
+  if (cells.faults.length > 0 || kind === null || amountCents === null) return null;
+  // Some bills print sent-out kWh with a minus; the direction is already in the kind.
+  if (kind === 'export' && quantity?.startsWith('-')) quantity = quantity.slice(1);
+  if (unit === null && quantity !== null && KWH_KINDS.has(kind)) unit = 'kWh';
+  return {
+    record: 'line',
+    line: {
+      component: component === '' ? null : component,
+      kind,
+      label,
+      quantity,
+      unit,
+      rate,
+      amountCents,
+      inDue,
+      row: cells.row,
+    },
+  };
+}
+
+function bankOf(cells: RowReader): RecordOfRow | null {
+  const bank = bankIdOf(cells.text('item'));
+  if (bank === null) {
+    cells.fault(
+      'item',
+      'not-known',
+      `Row ${cells.row}: write “credit bank”, or the bank’s id in the rate plan, in “item”.`,
+    );
+  }
+  const open = cells.number('previous');
+  const close = cells.number('current');
+  const stated = cells.word(
+    'unit',
+    (text) => {
+      const unit = unitOf(text);
+      return unit === 'kWh' || unit === 'USD' ? unit : null;
+    },
+    'kWh or USD',
+  );
+  const dollars = `${cells.text('previous')}${cells.text('current')}`.includes('$');
+  const unit = stated ?? (dollars ? 'USD' : null);
+  if (unit === null && cells.text('unit') === '') cells.need('unit', 'a bank needs kWh or USD in “unit”.');
+  if (open === null && close === null) {
+    cells.need('current', 'a bank needs its opening balance in “previous”, its closing balance in “current”, or both.');
+  }
+  if (cells.faults.length > 0 || bank === null || unit === null) return null;
+  return { record: 'bank', bank: { bank, unit, open, close, row: cells.row } };
+}
+
+function balanceOf(cells: RowReader): RecordOfRow | null {
+  cells.need('item', 'a balance needs previous balance, payments or amount due in “item”.');
+  cells.need('amount', 'a balance needs its amount.');
+  const item = cells.word('item', balanceItemOf, 'previous balance, payments or amount due');
+  const amountCents = cells.money('amount');
+  if (cells.faults.length > 0 || item === null || amountCents === null) return null;
+  return { record: 'balance', item, amountCents };
+}
+
+/** Reads what a row says; null with faults noted on `cells` when it cannot be read. */
+export function readRecord(cells: RowReader, from: Day, to: Day): RecordOfRow | null {
+  cells.need('record', 'write statement, read, line, bank or balance in “record”.');
+  const record = cells.word('record', recordOf, 'statement, read, line, bank or balance');
+  switch (record) {
+    case 'read':
+      return readOf(cells, from, to);
+    case 'line':
+      return lineOf(cells);
+    case 'bank':
+      return bankOf(cells);
+    case 'balance':
+      return balanceOf(cells);
+    case 'statement':
+      return { record };
+    case null:
+      return null;
+  }
+}
