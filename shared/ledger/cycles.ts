@@ -1,0 +1,100 @@
+import type { HouseholdFacts } from '../facts/household.ts';
+import { meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
+import { estimatedRuns } from '../metering/estimated-reads.ts';
+import { indexIntervals } from '../metering/interval-index.ts';
+import type { Figure } from '../position/position.ts';
+import type { Check } from '../reconcile/check.ts';
+import { isProvisional } from '../reconcile/reads.ts';
+import { runChecks } from '../reconcile/run-checks.ts';
+import type { Opening } from '../settlement/settlement.ts';
+import { ZERO_CENTS } from '../units/cents.ts';
+import { billAsItWas } from './as-it-was.ts';
+import type { Cycle, CycleState } from './cycle.ts';
+import { type CyclePaper, cyclePapers, statementsInForce } from './cycle-papers.ts';
+import { facingLines } from './facing.ts';
+import { firstOpening, nextOpening, type SettledCycle, settleOne } from './settle-cycle.ts';
+import { usageBeforeRoof } from './use-before.ts';
+import { utilityBank } from './utility-bank.ts';
+import { billWithoutRoof, type WithoutRoofPlans } from './without-roof.ts';
+
+/** A cycle before its entries are placed, with what the position and the "Needs you" list ask of it. */
+export type AssembledCycle = {
+  cycle: Cycle;
+  paper: CyclePaper;
+  settled: SettledCycle;
+  /** What the utility holds for the house at the close. */
+  utilityBank: Figure;
+  /** The days without any production reading, where production comes from a file or its monitoring has gaps. */
+  monitorGapDays: number;
+};
+
+export type Assembled = {
+  cycles: AssembledCycle[];
+  /** What the utility's books hold after the last cycle. */
+  closing: Opening;
+};
+
+/**
+ * From papers to cycles: statements in force → cycles → energy → settlement → facing lines → checks. Each cycle opens with what the statement
+ * before it printed as its close (`nextOpening`).
+ */
+export function assembleCycles(facts: HouseholdFacts): Assembled {
+  const inForce = statementsInForce(facts.statements);
+  const papers = cyclePapers(inForce, facts.house.switchOn);
+  const index = indexIntervals(facts.intervals, facts.documents);
+  const runs = estimatedRuns(papers);
+  const witnessed: WitnessedCycle[] = papers.map((paper) => witnessCycle(paper, index));
+  const usage = usageBeforeRoof(facts.usageBefore, inForce, facts.house.switchOn);
+  const plans: WithoutRoofPlans = new Map();
+  const cycles: AssembledCycle[] = [];
+  let opening: Opening | null = null;
+  let before: SettledCycle | null = null;
+  for (const paper of papers) {
+    opening ??= firstOpening(facts, paper);
+    const metered = meterCycle(paper, witnessed, runs);
+    const settled = settleOne(facts, paper, metered, index, opening);
+    const facing = facingLines(paper, settled);
+    const checks = runChecks({ paper, papers, metered, witnessed, runs, settled, before, facing }, facts.accepted);
+    const provisional = isProvisional({ paper, runs });
+    opening = nextOpening(settled, paper.statement);
+    before = settled;
+    cycles.push({
+      paper,
+      settled,
+      utilityBank: utilityBank(paper, settled.plan?.plan ?? null, opening),
+      monitorGapDays: metered.monitor?.missingDays ?? 0,
+      cycle: {
+        index: paper.index,
+        from: paper.from,
+        to: paper.to,
+        days: paper.days,
+        state: stateOf(settled, provisional, checks),
+        provisional,
+        split: paper.split !== null,
+        statement: paper.statement,
+        energy: metered.energy,
+        settlement: settled.ours?.settlement ?? null,
+        whyNotSettled: settled.why,
+        planFrom: settled.plan?.from ?? null,
+        facing: facing.lines,
+        billedDueCents: facing.billedDueCents,
+        oursDueCents: facing.oursDueCents,
+        withoutRoof: billWithoutRoof(paper, metered.energy, settled.plan, usage, plans),
+        asItWas: billAsItWas(paper, facts.incentive),
+        checks,
+        entries: [],
+        addedCents: ZERO_CENTS,
+        loanPayments: 0,
+      },
+    });
+  }
+  return { cycles, closing: opening ?? facts.opening };
+}
+
+/** Open while it cannot be settled or an estimate awaits its read; else by what differs and whether all of it is accepted. */
+function stateOf(settled: SettledCycle, provisional: boolean, checks: readonly Check[]): CycleState {
+  if (settled.ours === null || provisional) return 'open';
+  const differing = checks.filter((check) => check.verdict === 'differs');
+  if (differing.length === 0) return 'balanced';
+  return differing.every((check) => check.accepted !== null) ? 'accepted' : 'differs';
+}

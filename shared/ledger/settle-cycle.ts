@@ -1,0 +1,148 @@
+import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
+import type { Statement } from '../facts/papers.ts';
+import { isComplete, type MeteredCycle } from '../metering/cycle-energy.ts';
+import { asksForIntervals, cycleIntervals } from '../metering/cycle-intervals.ts';
+import type { IntervalIndex } from '../metering/interval-index.ts';
+import { billedQuantity } from '../reconcile/billed-quantities.ts';
+import { matchLines } from '../reconcile/match.ts';
+import type { RatePlan } from '../settlement/plan.ts';
+import { planFor } from '../settlement/plan-in-force.ts';
+import { settleCycle } from '../settlement/settle.ts';
+import type { CycleUsage, Opening, Settlement } from '../settlement/settlement.ts';
+import { Exact } from '../units/rate.ts';
+import type { CyclePaper } from './cycle-papers.ts';
+
+/** A settlement and what the utility's books should hold after it. */
+export type Settled = { settlement: Settlement; closing: Opening };
+
+/** A cycle with its plan, what it came to on our energy, and what it comes to on the kWh as billed. */
+export type SettledCycle = {
+  plan: PlanInForce | null;
+  /** The plan's component of each printed line, in order. */
+  components: (string | null)[];
+  /** What the utility's books held before the cycle, as carried (`nextOpening`). */
+  opening: Opening;
+  ours: Settled | null;
+  why: string | null;
+  /** The same on the billed kWh and the opening as this statement prints it; null where it cannot be settled. */
+  asBilled: Settled | null;
+};
+
+export function settleOne(
+  facts: HouseholdFacts,
+  paper: CyclePaper,
+  metered: MeteredCycle,
+  index: IntervalIndex,
+  opening: Opening,
+): SettledCycle {
+  const inForce = planFor(facts.plans, paper.from);
+  if (inForce === null) {
+    return {
+      plan: null,
+      components: paper.lines.map(() => null),
+      opening,
+      ours: null,
+      why: 'There is no rate plan yet. Enter the plan on your statement to compare this bill.',
+      asBilled: null,
+    };
+  }
+  const { plan } = inForce;
+  const components = matchLines(paper.lines, plan);
+  const base = { plan: inForce, components, opening };
+  const usage = usageOf(facts, paper, metered, index, plan);
+  if (typeof usage === 'string') return { ...base, ours: null, why: usage, asBilled: null };
+  const ours = settleCycle(plan, opening, usage);
+  if (!ours.ok) return { ...base, ours: null, why: refusal(ours.problem), asBilled: null };
+
+  const importWh = billedQuantity(paper, 'import', plan, components) ?? usage.importWh;
+  const exportWh = billedQuantity(paper, 'export', plan, components) ?? usage.exportWh;
+  const printed = withPrintedBanks(opening, paper.statement, plan, 'open');
+  const same = importWh === usage.importWh && exportWh === usage.exportWh && printed === opening;
+  if (same) return { ...base, ours: ours.value, why: null, asBilled: ours.value };
+  const asBilled = settleCycle(plan, printed, { ...usage, importWh, exportWh });
+  return { ...base, ours: ours.value, why: null, asBilled: asBilled.ok ? asBilled.value : null };
+}
+
+/**
+ * What the next cycle opens with: each bank as the statement prints its close, else as we closed it. The printed close is taken even where we
+ * found another, so that one error is reported in the cycle where it was made and not again in every cycle after it; the cycle that opens with
+ * something else than the last one printed is found by the bank's own check. By-period balances and lots cannot be replaced by one printed
+ * figure and are carried as ours.
+ */
+export function nextOpening(cycle: SettledCycle, statement: Statement): Opening {
+  const closing = cycle.ours?.closing ?? cycle.opening;
+  return cycle.plan === null ? closing : withPrintedBanks(closing, statement, cycle.plan.plan, 'close');
+}
+
+/** The opening of the first cycle: as stated, else as the first statement prints it. */
+export function firstOpening(facts: HouseholdFacts, paper: CyclePaper): Opening {
+  const plan = planFor(facts.plans, paper.from)?.plan;
+  // The account's balance is followed by its own check, on the printed figures; a settlement holds current charges only.
+  const stated: Opening = { ...facts.opening, balanceCents: null };
+  if (!plan) return stated;
+  const printed = withPrintedBanks(stated, paper.statement, plan, 'open');
+  return { ...stated, banks: { ...printed.banks, ...stated.banks } };
+}
+
+/** The plan's bank a printed balance belongs to: by id, else the only one of its unit; null when neither says. */
+export function printedBankId(printed: { bank: string; unit: 'kWh' | 'USD' }, plan: RatePlan): string | null {
+  if (plan.banks.some((bank) => bank.id === printed.bank)) return printed.bank;
+  const [only, ...more] = plan.banks.filter((bank) => bank.unit === printed.unit);
+  return only && more.length === 0 ? only.id : null;
+}
+
+function withPrintedBanks(opening: Opening, statement: Statement, plan: RatePlan, side: 'open' | 'close'): Opening {
+  let banks: Opening['banks'] | null = null;
+  for (const printed of statement.banks) {
+    const value = printed[side];
+    const id = printedBankId(printed, plan);
+    if (value === null || id === null) continue;
+    const held = opening.banks[id];
+    if (held !== undefined && typeof held !== 'string') continue;
+    if (held !== undefined && new Exact(held).eq(value)) continue;
+    banks ??= { ...opening.banks };
+    banks[id] = value;
+  }
+  return banks === null ? opening : { ...opening, banks };
+}
+
+/** The usage to settle on, or a sentence that says what is missing and what to do. */
+function usageOf(
+  facts: HouseholdFacts,
+  paper: CyclePaper,
+  metered: MeteredCycle,
+  index: IntervalIndex,
+  plan: RatePlan,
+): CycleUsage | string {
+  const { energy } = metered;
+  if (!isComplete(energy.import) || !isComplete(energy.export)) {
+    const missing = [isComplete(energy.import) ? null : 'import', isComplete(energy.export) ? null : 'export'];
+    return `The ${missing.filter((name) => name !== null).join(' and ')} of this cycle is not known. Add the meter reads from the statement or upload an interval file for its days.`;
+  }
+  const intervals = asksForIntervals(plan) ? cycleIntervals(index, paper.from, paper.to, facts.house.timeZone) : null;
+  const dcWatts = facts.house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0);
+  const kW: CycleUsage['kW'] = {};
+  if (dcWatts > 0) kW.dc = new Exact(dcWatts).div(1000).toString();
+  if (facts.house.inverterAcWatts !== null) kW.ac = new Exact(facts.house.inverterAcWatts).div(1000).toString();
+  return {
+    from: paper.from,
+    to: paper.to,
+    importWh: energy.import.wh,
+    exportWh: energy.export.wh,
+    productionWh: isComplete(energy.production) ? energy.production.wh : null,
+    loadWh: energy.use?.wh ?? null,
+    byPeriod: null,
+    netted: {},
+    kW,
+    payments: [],
+    finalBill: false,
+    intervals,
+  };
+}
+
+function refusal(found: { detail: string | null; faults: { message: string }[] }): string {
+  const said = found.faults[0]?.message ?? found.detail;
+  return said === null || said === ''
+    ? 'The rate plan cannot settle this cycle with what is known of it.'
+    : `The rate plan cannot settle this cycle: ${said}`;
+}

@@ -1,0 +1,124 @@
+import type { UsageBefore } from '../facts/house.ts';
+import type { PlanInForce } from '../facts/household.ts';
+import { input, ownFigure } from '../metering/source.ts';
+import type { RatePlan } from '../settlement/plan.ts';
+import { settleCycle } from '../settlement/settle.ts';
+import { type CycleUsage, EMPTY_OPENING, type Settlement } from '../settlement/settlement.ts';
+import { planWithoutRoof } from '../settlement/without-roof.ts';
+import { type Cents, dollarsText, sumCents } from '../units/cents.ts';
+import { kwhText, type Wh, wh, ZERO_WH } from '../units/energy.ts';
+import { Exact, kwhOf, roundToCents, roundToWh, usdOf } from '../units/rate.ts';
+import type { Cycle, CycleEnergy } from './cycle.ts';
+import type { CyclePaper } from './cycle-papers.ts';
+import { sayKwh } from './say.ts';
+import { estimateUse } from './use-before.ts';
+
+/** Plans without the roof, made once per plan in force. */
+export type WithoutRoofPlans = Map<PlanInForce, RatePlan>;
+
+/**
+ * The bill for the same use without the roof, on the plan of the cycle's own dates (ledger.md §5.1): the measured use, else the same
+ * month's use before the roof, else the yearly mean; never old dollars. A cycle split from its first statement is settled over the whole statement and
+ * shared by days, as its printed lines are, so that a monthly charge counts for its share. Null where there is no plan or nothing says the use.
+ */
+export function billWithoutRoof(
+  paper: CyclePaper,
+  energy: CycleEnergy,
+  inForce: PlanInForce | null,
+  before: readonly UsageBefore[],
+  plans: WithoutRoofPlans,
+): Cycle['withoutRoof'] {
+  if (inForce === null) return null;
+  const measured = energy.use !== null && energy.use.wh >= 0 ? energy.use.wh : null;
+  const estimated = measured === null ? estimateUse(before, paper.from, paper.to) : null;
+  const useWh = measured ?? estimated?.wh ?? null;
+  if (useWh === null) return null;
+  const plan = planOf(inForce, plans);
+  const { split } = paper;
+  const whole = split === null ? useWh : roundToWh(kwhOf(useWh).times(split.of).div(split.days));
+  const settled = settleCycle(
+    plan,
+    EMPTY_OPENING,
+    usageWithout(split === null ? paper.from : paper.statement.from, paper.to, whole),
+  );
+  if (!settled.ok) return null;
+  const { settlement } = settled.value;
+  const said = estimated?.words ?? `${sayKwh(useWh)} kWh used`;
+  return {
+    ...amount(settlement, split, said, useWh, measured === null || energy.use?.working.basis === 'estimated'),
+    method: estimated?.method ?? 'measured',
+    useWh,
+    settlement,
+  };
+}
+
+function amount(
+  settlement: Settlement,
+  split: CyclePaper['split'],
+  said: string,
+  useWh: Wh,
+  estimated: boolean,
+): Pick<NonNullable<Cycle['withoutRoof']>, 'amountCents' | 'working'> {
+  const due = settlement.lines.filter((line) => line.inDue);
+  const total: Cents = sumCents(due.map((line) => line.amountCents));
+  const lines = input(
+    'lines',
+    due.map((line) => line.label).join(', '),
+    due.map((line) => dollarsText(line.amountCents)),
+    'USD',
+    ownFigure('the bill settled without the roof'),
+  );
+  const use = input('use', 'Use of the cycle', kwhText(useWh), 'kWh', ownFigure('use of the cycle'));
+  if (split === null) {
+    return {
+      amountCents: total,
+      working: {
+        words: `${said}, on the plan without a roof: ${due.length} lines added`,
+        formula: 'sum(lines)',
+        inputs: [lines, use],
+        unit: 'USD',
+        basis: estimated ? 'estimated' : 'computed',
+      },
+    };
+  }
+  return {
+    amountCents: roundToCents(usdOf(total).times(split.days).div(split.of)),
+    working: {
+      words: `${said}, on the plan without a roof; ${split.days} of the statement’s ${split.of} days`,
+      formula: 'roundCents(sum(lines) * days / of)',
+      inputs: [
+        lines,
+        input('days', 'Days from switch-on', new Exact(split.days), 'days', ownFigure('switch-on')),
+        input('of', 'Days of the statement', new Exact(split.of), 'days', ownFigure('statement dates')),
+        use,
+      ],
+      unit: 'USD',
+      basis: 'estimated',
+    },
+  };
+}
+
+function planOf(inForce: PlanInForce, plans: WithoutRoofPlans): RatePlan {
+  const known = plans.get(inForce);
+  if (known) return known;
+  const made = planWithoutRoof(inForce);
+  plans.set(inForce, made);
+  return made;
+}
+
+function usageWithout(from: CycleUsage['from'], to: CycleUsage['to'], useWh: Wh): CycleUsage {
+  return {
+    from,
+    to,
+    importWh: wh(useWh),
+    exportWh: ZERO_WH,
+    productionWh: ZERO_WH,
+    loadWh: wh(useWh),
+    byPeriod: null,
+    netted: {},
+    kW: {},
+    payments: [],
+    finalBill: false,
+    intervals: null,
+  };
+}

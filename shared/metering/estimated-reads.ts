@@ -1,0 +1,48 @@
+import type { ReadChannel, RegisterRead } from '../facts/papers.ts';
+import type { CyclePaper } from '../ledger/cycle-papers.ts';
+
+/** Cycles whose reads only add up together: those that ended on an estimated read, and the one whose actual read made up for them. */
+export type EstimatedRun = {
+  channel: ReadChannel;
+  /** Indexes of the cycles of the run, in order. */
+  cycles: number[];
+  /** True while no actual read has followed. */
+  pending: boolean;
+};
+
+const CHANNELS: readonly ReadChannel[] = ['import', 'export', 'production'];
+
+/** Whether the read that closes a channel in these reads is an estimate; null where the channel is not read. */
+export function closesEstimated(reads: readonly RegisterRead[], channel: ReadChannel): boolean | null {
+  let last: RegisterRead | null = null;
+  for (const read of reads) {
+    if (read.channel === channel && (last === null || read.to >= last.to)) last = read;
+  }
+  return last === null ? null : last.type === 'estimated';
+}
+
+/** Runs of cycles joined by estimated reads, by cycle index and channel. */
+export function estimatedRuns(papers: readonly CyclePaper[]): Map<string, EstimatedRun> {
+  const runs = new Map<string, EstimatedRun>();
+  for (const channel of CHANNELS) {
+    let open: EstimatedRun | null = null;
+    for (const paper of papers) {
+      const estimated = closesEstimated(paper.reads, channel);
+      if (estimated === null) continue;
+      if (estimated || open) {
+        open ??= { channel, cycles: [], pending: true };
+        open.cycles.push(paper.index);
+        runs.set(runKey(paper.index, channel), open);
+      }
+      if (!estimated && open) {
+        open.pending = false;
+        open = null;
+      }
+    }
+  }
+  return runs;
+}
+
+export function runKey(cycle: number, channel: ReadChannel): string {
+  return `${cycle}:${channel}`;
+}

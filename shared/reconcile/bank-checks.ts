@@ -1,0 +1,117 @@
+import { totalBalance } from '../ledger/opening-total.ts';
+import { sayDay } from '../ledger/say.ts';
+import { printedBankId } from '../ledger/settle-cycle.ts';
+import { Exact, exact } from '../units/rate.ts';
+import type { Check } from './check.ts';
+import type { CheckContext } from './check-context.ts';
+import { nothingToCompare } from './make-check.ts';
+
+/** A printed balance of kWh is whole; one of dollars is to the cent. */
+const TOLERANCE = { kWh: '1', USD: '0.01' } as const;
+
+/**
+ * For each printed bank: it opens with what the last statement closed with, in its unit (nothing lost at a rate change or a true-up), and it closes with
+ * open + earned − used − expired − paid as settled on the billed kWh (net-metering.md §4 "lost at rate change", "missed rollover").
+ */
+export function bankChainChecks(context: CheckContext): Check[] {
+  const { paper, settled, before } = context;
+  if (settled.plan === null) return [];
+  const { plan } = settled.plan;
+  const checks: Check[] = [];
+  for (const printed of paper.statement.banks) {
+    const id = printedBankId(printed, plan);
+    const label = plan.banks.find((bank) => bank.id === id)?.label ?? printed.bank;
+    const about = id ?? printed.bank;
+    const last = lastClose(context, about);
+    const opens = `${label}: opens as the last cycle closed`;
+    if (printed.open === null || last === null) {
+      checks.push(
+        nothingToCompare('bankChain', about, printed.unit, {
+          title: opens,
+          stated: printed.open,
+          found: last,
+          cause:
+            before === null ? 'This is the first cycle.' : 'One of the two statements does not print this balance.',
+        }),
+      );
+    } else {
+      checks.push(
+        compare(`${about}`, printed.unit, printed.open, last, opens, {
+          cause: `It closed at ${amount(last, printed.unit)}${paper.previous ? ` on ${sayDay(paper.previous.to)}` : ''} and opens at ${amount(printed.open, printed.unit)}.`,
+          advice: 'Ask the utility what became of the balance, and for it to be put back.',
+        }),
+      );
+    }
+    const closes = `${label}: closes as it should`;
+    const settledClose = paper.split === null ? closeOf(context, about) : null;
+    if (printed.close === null || settledClose === null) {
+      checks.push(
+        nothingToCompare('bankChain', `${about}.close`, printed.unit, {
+          title: closes,
+          stated: printed.close,
+          found: settledClose,
+          cause:
+            printed.close === null
+              ? 'The statement prints no closing balance.'
+              : 'The cycle cannot be settled on the billed kWh.',
+        }),
+      );
+    } else {
+      checks.push(
+        compare(`${about}.close`, printed.unit, printed.close, settledClose, closes, {
+          cause: `On the billed kWh it should close at ${amount(settledClose, printed.unit)}; the statement prints ${amount(printed.close, printed.unit)}.`,
+          advice: 'Ask the utility how it came to the closing balance.',
+        }),
+      );
+    }
+  }
+  return checks;
+}
+
+/** What the last statement printed as the bank's close, else as the ledger carried it; null for the first cycle without an opening. */
+function lastClose({ paper, settled, before }: CheckContext, id: string): string | null {
+  const plan = (before ?? settled).plan?.plan;
+  const printed = plan
+    ? paper.previous?.banks.find((bank) => printedBankId(bank, plan) === id || bank.bank === id)
+    : undefined;
+  if (printed?.close != null) return printed.close;
+  const carried = before?.ours?.closing.banks[id];
+  return carried === undefined ? null : totalBalance(carried).toString();
+}
+
+function closeOf({ settled }: CheckContext, id: string): string | null {
+  const moves = settled.asBilled?.settlement.banks.filter((bank) => bank.bank === id) ?? [];
+  if (moves.length === 0) return null;
+  return moves.reduce((sum, bank) => sum.plus(exact(bank.move.close)), new Exact(0)).toString();
+}
+
+function compare(
+  about: string,
+  unit: 'kWh' | 'USD',
+  stated: string,
+  found: string,
+  title: string,
+  texts: { cause: string; advice: string },
+): Check {
+  const difference = exact(stated).minus(exact(found));
+  const agrees = difference.abs().lte(TOLERANCE[unit]);
+  return {
+    check: 'bankChain',
+    about,
+    key: `bankChain:${about}`,
+    title,
+    verdict: agrees ? 'agrees' : 'differs',
+    stated,
+    found,
+    difference: difference.toString(),
+    tolerance: TOLERANCE[unit],
+    unit,
+    cause: agrees ? null : texts.cause,
+    advice: agrees ? null : texts.advice,
+    accepted: null,
+  };
+}
+
+function amount(value: string, unit: 'kWh' | 'USD'): string {
+  return unit === 'USD' ? `$${value}` : `${value} kWh`;
+}

@@ -1,0 +1,40 @@
+import type { CyclePaper } from '../ledger/cycle-papers.ts';
+import type { RatePlan } from '../settlement/plan.ts';
+import { type Wh, wh } from '../units/energy.ts';
+import { Exact, exact, roundToWh } from '../units/rate.ts';
+
+/**
+ * The kWh the statement charges or credits for a channel: the quantity of the lines of the first component of the plan that takes the register as it is
+ * (no netting, no kWh bank in front of it); else the kWh printed beside the registers; else null, where only the reads say anything.
+ */
+export function billedQuantity(
+  paper: CyclePaper,
+  channel: 'import' | 'export',
+  plan: RatePlan | null,
+  components: readonly (string | null)[],
+): Wh | null {
+  if (plan !== null) {
+    for (const id of grossComponents(plan, channel)) {
+      let sum = new Exact(0);
+      let found = false;
+      let complete = true;
+      paper.lines.forEach((line, at) => {
+        if (components[at] !== id) return;
+        if (line.quantity === null || (line.unit !== null && line.unit !== 'kWh')) complete = false;
+        else sum = sum.plus(exact(line.quantity).abs());
+        found = true;
+      });
+      if (found && complete) return roundToWh(sum);
+    }
+  }
+  if (paper.split !== null) return null;
+  const printed = channel === 'import' ? paper.statement.importWh : paper.statement.exportWh;
+  return printed === null ? null : wh(Math.abs(printed));
+}
+
+function grossComponents(plan: RatePlan, channel: 'import' | 'export'): string[] {
+  const banked = new Set(plan.banks.filter((bank) => bank.unit === 'kWh').flatMap((bank) => bank.offsets));
+  const gross = (item: { id: string; basis: string; netting: string | null }) =>
+    item.basis === channel && (item.netting ?? plan.netting) === 'none' && !banked.has(item.id);
+  return [...plan.charges.filter(gross), ...plan.credits.filter((c) => gross(c) && c.term === null)].map((c) => c.id);
+}

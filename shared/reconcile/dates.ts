@@ -1,0 +1,66 @@
+import { sayCount, sayDate, sayDay } from '../ledger/say.ts';
+import { type Day, daysBetween } from '../units/day.ts';
+import type { Check } from './check.ts';
+import type { CheckContext } from './check-context.ts';
+import { compareText, nothingToCompare } from './make-check.ts';
+
+/** A billing cycle outside these is worth a second look at its dates (net-metering.md §4 "days"). */
+const USUAL_DAYS = { least: 27, most: 35 };
+
+/** This statement begins on the day the last one ended (net-metering.md §4 "read continuity"). */
+export function datesChainCheck({ paper }: CheckContext): Check {
+  const title = 'Dates follow on from the last cycle';
+  const { previous, statement } = paper;
+  if (previous === null) {
+    return nothingToCompare('datesChain', '', 'date', {
+      title,
+      stated: statement.from,
+      cause: 'This is the first statement.',
+    });
+  }
+  return compareText('datesChain', '', 'date', statement.from, previous.to, {
+    title,
+    difference: String(daysBetween(previous.to, statement.from)),
+    ...chainTexts(previous.to, statement.from),
+  });
+}
+
+function chainTexts(ended: Day, begins: Day): { cause: string; advice: string } {
+  const days = daysBetween(ended, begins);
+  if (days > 0) {
+    return {
+      cause: `${sayCount(days, 'day is', 'days are')} on no statement: the last one ended ${sayDate(ended)}, this one begins ${sayDate(begins)}.`,
+      advice: 'A statement may be missing. Upload it, or ask the utility for it.',
+    };
+  }
+  return {
+    cause: `${sayCount(-days, 'day is', 'days are')} billed twice: the last statement ended ${sayDay(ended)}, this one begins ${sayDay(begins)}.`,
+    advice: 'Compare the service dates with both statements, and correct the one that was typed wrong.',
+  };
+}
+
+/** The printed number of days is `to − from`; a length outside 27–35 days is pointed out, not held against the bill. */
+export function daysCheck({ paper }: CheckContext): Check {
+  const title = 'Days match the dates';
+  const { statement } = paper;
+  const days = daysBetween(statement.from, statement.to);
+  const unusual =
+    days < USUAL_DAYS.least || days > USUAL_DAYS.most
+      ? `${days} days is unusual for a billing cycle; look at the service dates.`
+      : null;
+  if (statement.printedDays === null) {
+    return nothingToCompare('days', '', 'days', {
+      title,
+      found: String(days),
+      cause: 'The statement prints no number of days.',
+      advice: unusual,
+    });
+  }
+  const check = compareText('days', '', 'days', String(statement.printedDays), String(days), {
+    title,
+    difference: String(statement.printedDays - days),
+    cause: `The dates make ${days} days; the statement counts ${statement.printedDays}.`,
+    advice: 'Charges by the day may be wrong with it. Compare the dates with the meter reads.',
+  });
+  return check.verdict === 'agrees' ? { ...check, tolerance: '0', advice: unusual } : { ...check, tolerance: '0' };
+}

@@ -1,0 +1,111 @@
+import type { PrintedLine } from '../facts/papers.ts';
+import { LINE_TOLERANCE_CENTS } from '../ledger/facing.ts';
+import { sayMoney } from '../ledger/say.ts';
+import type { Charge, RatePlan } from '../settlement/plan.ts';
+import { priceQuantity } from '../settlement/price.ts';
+import { type Cents, cents, dollarsText, sumCents } from '../units/cents.ts';
+import { Exact, exact } from '../units/rate.ts';
+import type { Check } from './check.ts';
+import type { CheckContext } from './check-context.ts';
+import { isCarried } from './electric-lines.ts';
+import { compareCents, nothingToCompare } from './make-check.ts';
+
+type Priced = { amountCents: Cents; said: string } | { why: string };
+
+/**
+ * Each printed line at the plan's price for its *billed* quantity, kept apart from the quantity's own check (ledger.md §4); taxes on their base of
+ * billed lines. Lines of one component (a price that changes inside the cycle) are taken together, a cent for each.
+ */
+export function linePriceChecks(context: CheckContext): Check[] {
+  const { paper, settled } = context;
+  if (settled.plan === null || paper.split !== null) return [];
+  const { plan } = settled.plan;
+  const checks: Check[] = [];
+  const done = new Set<string>();
+  paper.lines.forEach((line, at) => {
+    const component = settled.components[at] ?? null;
+    if (component === null) {
+      if (!isCarried(line, null)) checks.push(unknownLine(line, at));
+      return;
+    }
+    const about = line.kind === 'trueup' ? `${component}.trueup` : component;
+    if (done.has(about) || plan.banks.some((bank) => bank.id === component)) return;
+    done.add(about);
+    const same = paper.lines.filter((_, i) => settled.components[i] === component);
+    checks.push(priceCheck(context, plan, component, same));
+  });
+  return checks;
+}
+
+function priceCheck(context: CheckContext, plan: RatePlan, component: string, lines: PrintedLine[]): Check {
+  const label = lines[0]?.label ?? component;
+  const title = `Price of ${label}`;
+  const stated = sumCents(lines.map((line) => line.amountCents));
+  const priced = priceOf(context, plan, component, lines);
+  if ('why' in priced) {
+    return nothingToCompare('linePrice', component, 'USD', { title, stated: dollarsText(stated), cause: priced.why });
+  }
+  return compareCents('linePrice', component, stated, priced.amountCents, cents(LINE_TOLERANCE_CENTS * lines.length), {
+    title,
+    cause: `${label} is billed at ${sayMoney(stated)}; by the rate plan it is ${priced.said}, ${sayMoney(priced.amountCents)}.`,
+    advice:
+      'Compare the rate printed with the plan. If the utility changed it, add the new rate to the plan with its date.',
+  });
+}
+
+function priceOf(context: CheckContext, plan: RatePlan, component: string, lines: readonly PrintedLine[]): Priced {
+  const charge = plan.charges.find((one) => one.id === component) ?? null;
+  const quantity = quantityOf(context, charge, lines);
+  if (typeof quantity === 'string') {
+    const { from, to } = context.paper;
+    const priced = priceQuantity(plan, component, from, to, quantity);
+    if (priced !== null) return { amountCents: priced.amountCents, said: priced.working.words };
+  }
+  // What the plan prices only in its place among the other lines (a minimum, tiers, a tax after credits) is taken from the bill settled on the
+  // billed kWh.
+  const placed = context.settled.asBilled?.settlement.lines.filter((line) => line.component === component) ?? [];
+  if (placed.length > 0 && (quantity !== null || charge?.basis === 'floor' || charge?.afterCredits === true)) {
+    return {
+      amountCents: sumCents(placed.map((line) => line.amountCents)),
+      said: placed.map((line) => line.working.words).join(', '),
+    };
+  }
+  return quantity === null
+    ? { why: 'The statement prints no quantity for this line. Add it to check the price.' }
+    : { why: 'The rate plan cannot price this line by itself.' };
+}
+
+/** The quantity to price: printed kWh, the cycle, its days, or for a percentage the billed lines it is taken on; null when not printed. */
+function quantityOf(context: CheckContext, charge: Charge | null, lines: readonly PrintedLine[]): string | null {
+  if (charge?.basis === 'cycle') return '1';
+  if (charge?.basis === 'day') return String(context.paper.days);
+  if (charge?.basis === 'percent') return charge.afterCredits ? null : billedBase(context, charge.on);
+  let sum = new Exact(0);
+  for (const line of lines) {
+    if (line.quantity === null) return null;
+    sum = sum.plus(exact(line.quantity).abs());
+  }
+  return sum.toString();
+}
+
+/** USD of the billed lines of these components; null where one of them is not printed. */
+function billedBase({ paper, settled }: CheckContext, on: readonly string[]): string | null {
+  const found = new Set<string>();
+  const amounts: Cents[] = [];
+  paper.lines.forEach((line, at) => {
+    const component = settled.components[at] ?? null;
+    if (component === null || !on.includes(component)) return;
+    found.add(component);
+    amounts.push(line.amountCents);
+  });
+  return on.every((id) => found.has(id)) ? dollarsText(sumCents(amounts)) : null;
+}
+
+function unknownLine(line: PrintedLine, at: number): Check {
+  return nothingToCompare('linePrice', `printed${at + 1}`, 'USD', {
+    title: `Price of ${line.label}`,
+    stated: dollarsText(line.amountCents),
+    cause: 'The rate plan has no such line.',
+    advice: 'If it belongs to your rates, add it to the plan; if not, ask the utility what it is for.',
+  });
+}

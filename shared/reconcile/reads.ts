@@ -1,0 +1,154 @@
+import type { RegisterRead } from '../facts/papers.ts';
+import { sayDate, sayDay } from '../ledger/say.ts';
+import { closesEstimated, runKey } from '../metering/estimated-reads.ts';
+import { type Exact, exact } from '../units/rate.ts';
+import type { Check } from './check.ts';
+import type { CheckContext } from './check-context.ts';
+import { compareText, nothingToCompare } from './make-check.ts';
+
+const CHANNELS = ['import', 'export', 'production'] as const;
+const CHANNEL_WORDS = { import: 'Import', export: 'Export', production: 'Production' };
+
+/**
+ * Each register begins where it ended: the previous read of a meter is its current read on the statement before; a meter that is new there begins
+ * on the day the old one ended (net-metering.md §4 "read continuity", "meter exchange").
+ */
+export function registersFollowChecks({ paper }: CheckContext): Check[] {
+  const checks: Check[] = [];
+  for (const channel of CHANNELS) {
+    const reads = paper.statement.reads.filter((read) => read.channel === channel);
+    const before = paper.previous?.reads.filter((read) => read.channel === channel) ?? [];
+    for (const meter of new Set(reads.map((read) => read.meter))) {
+      checks.push(...followCheck(channel, meter, byDate(reads), byDate(before)));
+    }
+  }
+  return checks;
+}
+
+function followCheck(
+  channel: (typeof CHANNELS)[number],
+  meter: string,
+  reads: RegisterRead[],
+  before: RegisterRead[],
+): Check[] {
+  const about = `${channel}:${meter}`;
+  const title = `Register reads follow on, ${CHANNEL_WORDS[channel].toLowerCase()}`;
+  const own = reads.filter((read) => read.meter === meter);
+  const first = own[0];
+  if (!first) return [];
+  const last = before.filter((read) => read.meter === meter).at(-1) ?? null;
+  if (last === null) {
+    if (before.length === 0) {
+      return [
+        nothingToCompare('registersFollow', about, 'kWh', {
+          title,
+          stated: first.previous,
+          cause: 'No earlier read of this meter is on record.',
+        }),
+      ];
+    }
+    return [exchangeCheck(about, title, first, reads, before)];
+  }
+  // Segments of one meter inside one statement must meet as well.
+  for (let at = 0; at < own.length; at += 1) {
+    const read = own[at];
+    const prior = at === 0 ? last : own[at - 1];
+    if (!read || !prior) continue;
+    const check = numberCheck(about, title, read.previous, prior.current, {
+      cause: `Meter ${meter} was read ${prior.current} on ${sayDate(prior.to)}; this statement starts from ${read.previous}.`,
+      advice: 'Ask the utility which read is right. The kWh between the two are billed twice or not at all.',
+    });
+    if (check.verdict === 'differs' || at === own.length - 1) return [check];
+  }
+  return [];
+}
+
+function exchangeCheck(
+  about: string,
+  title: string,
+  first: RegisterRead,
+  reads: RegisterRead[],
+  before: RegisterRead[],
+): Check {
+  const removed = [...before, ...reads].filter((read) => read.meter !== first.meter && read.to <= first.from).at(-1);
+  const check = compareText('registersFollow', about, 'date', first.from, removed?.to ?? 'no final read', {
+    title: `${title}, new meter`,
+    cause: removed
+      ? `The old meter was last read on ${sayDate(removed.to)}; the new meter ${first.meter} begins on ${sayDate(first.from)}.`
+      : `Meter ${first.meter} is new and the old meter has no final read.`,
+    advice: 'Ask the utility for the final read of the old meter and the first read of the new one.',
+  });
+  return check.verdict === 'agrees'
+    ? { ...check, cause: `Meter ${first.meter} was put in on ${sayDate(first.from)}.` }
+    : check;
+}
+
+function numberCheck(
+  about: string,
+  title: string,
+  stated: string,
+  found: string,
+  texts: { cause: string; advice: string },
+): Check {
+  const difference: Exact = exact(stated).minus(exact(found));
+  const agrees = difference.isZero();
+  return {
+    check: 'registersFollow',
+    about,
+    key: `registersFollow:${about}`,
+    title,
+    verdict: agrees ? 'agrees' : 'differs',
+    stated,
+    found,
+    difference: difference.toString(),
+    tolerance: '0',
+    unit: 'kWh',
+    cause: agrees ? null : texts.cause,
+    advice: agrees ? null : texts.advice,
+    accepted: null,
+  };
+}
+
+/** Actual reads agree; an estimated one is nothing to compare until the next actual read settles both cycles (net-metering.md §4). */
+export function readTypeCheck(context: CheckContext): Check {
+  const title = 'Read type';
+  const { paper, papers, runs } = context;
+  const estimated = CHANNELS.filter((channel) => closesEstimated(paper.reads, channel) === true);
+  if (paper.reads.length === 0) {
+    return nothingToCompare('readType', '', 'text', {
+      title,
+      cause: 'The statement’s meter reads are not entered.',
+      advice: 'Add them to check that the kWh follow from the meter.',
+    });
+  }
+  if (estimated.length === 0) return compareText('readType', '', 'text', 'actual', 'actual', { title });
+  const names = estimated.join(' and ');
+  const open = estimated.some((channel) => runs.get(runKey(paper.index, channel))?.pending ?? true);
+  if (open) {
+    return nothingToCompare('readType', '', 'text', {
+      title,
+      stated: 'estimated',
+      cause: `The ${names} read is an estimate. The next actual read settles this cycle and the one after it; until then it is provisional.`,
+      advice: 'Read the meter yourself today and keep a photo of it.',
+    });
+  }
+  const ends = estimated.flatMap((channel) => {
+    const last = runs.get(runKey(paper.index, channel))?.cycles.at(-1);
+    return last === undefined ? [] : [papers[last]?.to ?? paper.to];
+  });
+  const settledOn = ends.sort().at(-1) ?? paper.to;
+  return nothingToCompare('readType', '', 'text', {
+    title,
+    stated: 'estimated',
+    cause: `The ${names} read is an estimate, made up for by the actual read of ${sayDay(settledOn)}.`,
+  });
+}
+
+/** Whether an estimated read of the cycle still awaits the actual one after it. */
+export function isProvisional({ paper, runs }: Pick<CheckContext, 'paper' | 'runs'>): boolean {
+  return CHANNELS.some((channel) => runs.get(runKey(paper.index, channel))?.pending === true);
+}
+
+function byDate(reads: readonly RegisterRead[]): RegisterRead[] {
+  return [...reads].sort((a, b) => (a.from < b.from ? -1 : a.from > b.from ? 1 : 0));
+}
