@@ -2,11 +2,11 @@ import { useQuery } from '@tanstack/react-query';
 import { useEffect, useRef } from 'react';
 import { Link, Navigate, NavLink, Outlet, ScrollRestoration, useLocation, useParams } from 'react-router-dom';
 import type { SessionView } from '#shared/api/session.ts';
-import { sessionQuery } from '#src/features/session/session-queries.ts';
 import type { HouseholdContext } from '#src/lib/household.ts';
+import { sessionQuery } from '#src/lib/session.ts';
+import { Brand } from '#src/ui/brand.tsx';
 import { ErrorState, PageSkeleton } from '#src/ui/states.tsx';
 import { WorkingProvider } from '#src/ui/working.tsx';
-import { Brand } from './brand.tsx';
 import { PersonMenu } from './person-menu.tsx';
 
 type Place = { to: string; label: string };

@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { Navigate } from 'react-router-dom';
-import { sessionQuery } from '#src/features/session/session-queries.ts';
+import { sessionQuery } from '#src/lib/session.ts';
 import { ErrorState, PageSkeleton } from '#src/ui/states.tsx';
 
 /** Sends a visitor where they belong: sign-in, the first household, or making one. */

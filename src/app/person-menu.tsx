@@ -1,8 +1,8 @@
 import { useEffect, useRef } from 'react';
 import { Link, useLocation, useNavigate } from 'react-router-dom';
 import type { SessionView } from '#shared/api/session.ts';
-import { useSignOut } from '#src/features/session/session-queries.ts';
 import type { HouseholdContext } from '#src/lib/household.ts';
+import { useSignOut } from '#src/lib/session.ts';
 
 /** "12 Tern Lane · Priya", opening the account, the other households and sign-out. */
 export function PersonMenu({

@@ -1,4 +1,4 @@
-import { type ComponentProps, type ReactNode, useId } from 'react';
+import { type ComponentProps, type ReactNode, useEffect, useId, useRef } from 'react';
 
 type Shell = { label: ReactNode; hint?: ReactNode; error?: string | undefined };
 
@@ -148,21 +148,34 @@ export function Choices({
   );
 }
 
-/** What is wrong with a form, above it; takes the focus when it appears. */
+/** What is wrong with a form, above it; takes the focus when it appears or changes. `pick` leads to the field. */
 export function ErrorSummary({
   title = 'There is a problem',
   errors,
 }: {
   title?: string;
-  errors: { text: string; href?: string }[];
+  errors: { text: string; href?: string; pick?: () => void }[];
 }) {
+  const head = useRef<HTMLDivElement>(null);
+  const said = errors.map((error) => error.text).join('\n');
+  useEffect(() => {
+    if (said !== '') head.current?.focus();
+  }, [said]);
   if (errors.length === 0) return null;
   return (
-    <div role="alert" tabIndex={-1} ref={(element) => element?.focus()} className="margin-note bad mt-5">
+    <div role="alert" tabIndex={-1} ref={head} className="margin-note bad mt-5">
       <b>{title}</b>
       <ul>
         {errors.map((error) => (
-          <li key={error.text}>{error.href ? <a href={error.href}>{error.text}</a> : error.text}</li>
+          <li key={error.text}>
+            {error.href && <a href={error.href}>{error.text}</a>}
+            {error.pick && (
+              <button type="button" className="link text-left" onClick={error.pick}>
+                {error.text}
+              </button>
+            )}
+            {!error.href && !error.pick && error.text}
+          </li>
         ))}
       </ul>
     </div>

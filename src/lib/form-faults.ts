@@ -1,0 +1,25 @@
+import type { FieldValues, Path, UseFormSetError } from 'react-hook-form';
+import { ApiError } from './api.ts';
+import { errorWords } from './problem-words.ts';
+
+/**
+ * Puts the server's refusal on a form: each fault that names a field goes to that field, the rest is returned as sentences for the head of
+ * the form. `known` says whether the form has a field of that name.
+ */
+export function showRefusal<T extends FieldValues>(
+  error: unknown,
+  setError: UseFormSetError<T>,
+  known: (field: string) => boolean,
+): string[] {
+  if (!(error instanceof ApiError)) return [errorWords(error)];
+  const left: string[] = [];
+  for (const fault of error.problem.faults) {
+    if (fault.field !== null && known(fault.field)) {
+      setError(fault.field as Path<T>, { type: 'server', message: fault.message }, { shouldFocus: left.length === 0 });
+    } else {
+      left.push(fault.message);
+    }
+  }
+  if (error.problem.faults.length === 0 || left.length === 0) left.unshift(errorWords(error));
+  return left;
+}
