@@ -1,0 +1,31 @@
+import path from 'node:path';
+import express, { Router } from 'express';
+
+/** Paths that look like a file are not pages of the application. */
+const LOOKS_LIKE_A_FILE = /\.[a-zA-Z0-9]{1,8}$/;
+
+/**
+ * The built client: assets under their hashed names for ever, the page itself fresh each time, and the page for every address that the
+ * client's router knows.
+ */
+export function clientFiles(distDir: string): Router {
+  const router = Router();
+  const page = path.join(distDir, 'index.html');
+  router.use(
+    '/assets',
+    express.static(path.join(distDir, 'assets'), {
+      immutable: true,
+      maxAge: '365d',
+      index: false,
+      dotfiles: 'ignore',
+      redirect: false,
+    }),
+  );
+  router.use(express.static(distDir, { index: false, dotfiles: 'ignore', redirect: false, maxAge: 0 }));
+  router.get('/{*path}', (req, res, next) => {
+    if (LOOKS_LIKE_A_FILE.test(req.path)) return next();
+    res.set('Cache-Control', 'no-cache');
+    res.sendFile(page, { dotfiles: 'allow' });
+  });
+  return router;
+}
