@@ -8,7 +8,6 @@ import { users } from './db/schema/people.ts';
 import type { Deps } from './deps.ts';
 import { isLoopback, parseEnv } from './env.ts';
 import { lineLog } from './log.ts';
-import { laySample } from './sample/lay-sample.ts';
 
 const REQUEST_TIMEOUT_MS = 60_000;
 const HEADERS_TIMEOUT_MS = 15_000;
@@ -69,7 +68,8 @@ const deps: Deps = {
 
 const isEmpty = deps.db.select({ id: users.id }).from(users).limit(1).get() === undefined;
 const wantsSample = env.sample === 'always' || (env.sample === 'auto' && isLoopback(env.host));
-const signIns = isEmpty && wantsSample ? await laySample(deps) : [];
+// Loaded only when it is wanted: an installation with people in it never needs it.
+const signIns = isEmpty && wantsSample ? await (await import('./sample/lay-sample.ts')).laySample(deps) : [];
 
 const app = createApp(deps);
 const server = createServer({ requestTimeout: REQUEST_TIMEOUT_MS, headersTimeout: HEADERS_TIMEOUT_MS }, app.express);
