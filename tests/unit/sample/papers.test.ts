@@ -89,7 +89,7 @@ describe('the sample’s statements', () => {
     }
   });
 
-  it('agree with the interval files to ±1 kWh per register difference, but for the estimated read and what made up for it', () => {
+  it('agree with the interval files to ±1 kWh per register difference, but for the estimated read, what made up for it, and the exchange', () => {
     const hours = sampleHours();
     const differing = new Set<string>();
     for (const paper of papers.slice(0, -1)) {
@@ -108,6 +108,7 @@ describe('the sample’s statements', () => {
     expect([...differing].sort()).toEqual([
       'export 2025-01-14',
       'export 2025-02-13',
+      'export 2025-10-14',
       'import 2025-01-14',
       'import 2025-02-13',
     ]);
