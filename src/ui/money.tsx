@@ -5,7 +5,7 @@ import { decimal, kwh, MISSING, money } from '#src/lib/format.ts';
 /** Money in a table: cents, a true minus, and colour beside the sign. Missing is a dash with its reason on focus, never zero. */
 export function Money({ cents, missing }: { cents: Cents | null; missing?: string }) {
   if (cents === null) return <Missing reason={missing ?? 'Not known'} />;
-  return <span className={cents < 0 ? 'neg' : undefined}>{money(cents)}</span>;
+  return <span className={cents < 0 ? 'neg whitespace-nowrap' : 'whitespace-nowrap'}>{money(cents)}</span>;
 }
 
 export function Kwh({ wh, missing }: { wh: Wh | null; missing?: string }) {

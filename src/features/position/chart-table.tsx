@@ -1,0 +1,74 @@
+import { BOOKS } from '#shared/books/book.ts';
+import { fullDate } from '#src/lib/format.ts';
+import { BOOK_NAMES } from '#src/ui/book-key.tsx';
+import { Money } from '#src/ui/money.tsx';
+import type { Series } from './chart-series.ts';
+
+/** The figures the charts draw, cycle by cycle and month by month. */
+export function ChartTable({ series }: { series: Series }) {
+  const [start] = series.past;
+  const lines = new Map([...series.past, ...series.projected].map((point) => [point.on, point]));
+  const books = BOOKS.filter((book) => series.bars.some((bar) => bar.books[book] !== 0));
+  return (
+    <section
+      className="mt-4 max-h-[460px] overflow-auto border-t border-rule"
+      // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
+      tabIndex={0}
+      aria-label="The charts as a table"
+    >
+      <table className="ruled text-[15px] whitespace-nowrap">
+        <caption className="visually-hidden">Running net position and what each cycle added</caption>
+        <thead className="sticky top-0 bg-sheet">
+          <tr>
+            <th scope="col">To</th>
+            <th scope="col">Settled today</th>
+            <th scope="col">Cash so far</th>
+            {books.map((book) => (
+              <th key={book} scope="col">
+                {BOOK_NAMES[book]}
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody>
+          {start && (
+            <tr>
+              <th scope="row">{fullDate(start.on)}, the start</th>
+              <td>
+                <Money cents={start.settledCents} />
+              </td>
+              <td>
+                <Money cents={start.cashCents} />
+              </td>
+              {books.map((book) => (
+                <td key={book} />
+              ))}
+            </tr>
+          )}
+          {series.bars.map((bar) => {
+            const point = lines.get(bar.on);
+            return (
+              <tr key={bar.on}>
+                <th scope="row">
+                  {fullDate(bar.on)}
+                  {bar.projected && <span className="text-soft">, projected</span>}
+                </th>
+                <td>
+                  <Money cents={point?.settledCents ?? null} />
+                </td>
+                <td>
+                  <Money cents={point?.cashCents ?? null} />
+                </td>
+                {books.map((book) => (
+                  <td key={book}>
+                    <Money cents={bar.books[book]} />
+                  </td>
+                ))}
+              </tr>
+            );
+          })}
+        </tbody>
+      </table>
+    </section>
+  );
+}

@@ -1,0 +1,50 @@
+import type { PositionView } from '#shared/api/position.ts';
+import type { Position } from '#shared/position/position.ts';
+import { dollars, monthYear } from '#src/lib/format.ts';
+import type { Series } from './chart-series.ts';
+
+export type Part = { text: string; tone: 'ahead' | 'behind' | 'plain' };
+
+/** The large sentence: where the house stands, and how fast that changes. */
+export function standing(position: Position): Part[] {
+  const settled = position.settledToday.amountCents;
+  const behind = settled < 0;
+  const size = dollars(Math.abs(settled) as typeof settled);
+  const first: Part =
+    settled === 0
+      ? { text: 'Even to the dollar', tone: 'ahead' }
+      : { text: `${size} ${behind ? 'from even' : 'past even'}`, tone: behind ? 'behind' : 'ahead' };
+  const pace = position.pace?.amountCents ?? null;
+  if (pace === null || Math.abs(pace) < 50) return [first, { text: '.', tone: 'plain' }];
+  const speed: Part = { text: dollars(Math.abs(pace) as typeof pace), tone: pace > 0 ? 'ahead' : 'behind' };
+  const verb = behind ? (pace > 0 ? ', closing ' : ', falling back ') : pace > 0 ? ', gaining ' : ', losing ';
+  return [first, { text: verb, tone: 'plain' }, speed, { text: ' a month.', tone: 'plain' }];
+}
+
+/** "25 cycles balanced, 1 differs" */
+export function countWords(counts: PositionView['counts']): string {
+  const parts: string[] = [];
+  const balanced = counts.balanced;
+  if (balanced > 0) parts.push(`${balanced} ${balanced === 1 ? 'cycle' : 'cycles'} balanced`);
+  if (counts.accepted > 0) parts.push(`${counts.accepted} accepted`);
+  if (counts.differs > 0) parts.push(`${counts.differs} ${counts.differs === 1 ? 'differs' : 'differ'}`);
+  if (counts.open > 0) parts.push(`${counts.open} open`);
+  return parts.join(', ');
+}
+
+/** The charts in one sentence, for those who cannot see them and for those in a hurry. */
+export function chartSummary(position: Position, series: Series): string {
+  const first = series.past[0];
+  const now = series.past.at(-1);
+  if (!first || !now) return 'Nothing is drawn yet.';
+  const past = `Settled today went from ${dollars(first.settledCents)} in ${monthYear(first.on)} to ${dollars(now.settledCents)} in ${monthYear(now.on)}; cash so far stands at ${dollars(now.cashCents)}.`;
+  if (!position.projection) return past;
+  const even = position.projection.evenOn;
+  if (even === null) {
+    const years = Math.round(position.projection.months.length / 12);
+    return `${past} It does not stay at even within the ${years} years projected.`;
+  }
+  return even <= now.on
+    ? `${past} It stays past even in the projection.`
+    : `${past} Projected to come even in ${monthYear(even)} and to stay so.`;
+}
