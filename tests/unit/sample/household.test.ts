@@ -1,44 +1,11 @@
 import { describe, expect, it } from 'vitest';
-import * as z from 'zod/mini';
-import { creditYearBody } from '#shared/api/credit.ts';
-import { costBody, loanPaymentBody, receiptBody } from '#shared/api/money.ts';
-import { addPersonBody } from '#shared/api/people.ts';
-import {
-  beforeBody,
-  cashBody,
-  creditBody,
-  houseBody,
-  incentiveBody,
-  loanBody,
-  mortgageBody,
-  planBody,
-  roofBody,
-} from '#shared/api/setup.ts';
+import { readSampleHousehold } from '#server/sample/sample-household.ts';
 import { levelPayment } from '#shared/books/interest.ts';
 import { governingEnd } from '#shared/books/mortgage-insurance.ts';
 import { creditLinesOf } from '#shared/books/tax-credit.ts';
-import { rowsWhere, samplePapers, sampleText } from './sample-files.ts';
+import { rowsWhere, samplePapers } from './sample-files.ts';
 
-const sample = z
-  .strictObject({
-    people: z.record(z.enum(['owner', 'member', 'preparer']), z.pick(addPersonBody, { name: true, email: true })),
-    house: houseBody,
-    roof: roofBody,
-    plan: planBody,
-    before: beforeBody,
-    loan: loanBody,
-    mortgage: mortgageBody,
-    credit: creditBody,
-    incentive: incentiveBody,
-    cash: cashBody,
-    money: z.strictObject({
-      loanPayments: z.array(loanPaymentBody),
-      receipts: z.array(receiptBody),
-      costs: z.array(costBody),
-    }),
-    creditYears: z.array(z.extend(creditYearBody, { taxYear: z.int() })),
-  })
-  .parse(JSON.parse(sampleText('household.json')));
+const sample = readSampleHousehold();
 
 function present<T>(value: T | null): T {
   if (value === null) throw new Error('the sample lacks a book');
