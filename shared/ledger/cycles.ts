@@ -54,7 +54,11 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
     const metered = meterCycle(paper, witnessed, runs);
     const settled = settleOne(facts, paper, metered, index, opening);
     const facing = facingLines(paper, settled);
-    const checks = runChecks({ paper, papers, metered, witnessed, runs, settled, before, facing }, facts.accepted);
+    const { balanceCents: openingBalanceCents } = facts.opening;
+    const checks = runChecks(
+      { paper, papers, metered, witnessed, runs, settled, before, facing, openingBalanceCents },
+      facts.accepted,
+    );
     const provisional = isProvisional({ paper, runs });
     opening = nextOpening(settled, paper.statement);
     before = settled;

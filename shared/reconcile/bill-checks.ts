@@ -25,11 +25,18 @@ export function linesAddUpCheck({ paper }: CheckContext): Check {
   });
 }
 
-/** The previous balance is what the last statement asked for (net-metering.md §4 "balance"). */
-export function balanceChainCheck({ paper }: CheckContext): Check {
+/** The previous balance is what the last statement asked for; on the first, what the opening states (net-metering.md §4 "balance"). */
+export function balanceChainCheck({ paper, openingBalanceCents }: CheckContext): Check {
   const title = 'Previous balance carries over';
   const stated = previousBalance(paper);
   const last = paper.previous;
+  if (stated !== null && last === null && openingBalanceCents !== null) {
+    return compareCents('balanceChain', '', stated, openingBalanceCents, cents(0), {
+      title,
+      cause: `The set-up states a balance of ${sayMoney(openingBalanceCents)} before the first cycle; the statement brings in ${sayMoney(stated)}.`,
+      advice: 'Correct the opening balance in the set-up, or ask the utility.',
+    });
+  }
   if (stated === null || last === null) {
     return nothingToCompare('balanceChain', '', 'USD', {
       title,

@@ -1,0 +1,78 @@
+import { billAvoidedEntry } from '../books/bill-avoided.ts';
+import type { UnplacedEntry } from '../books/book.ts';
+import { costEntries } from '../books/costs.ts';
+import { type IncentiveCycle, incentiveEarned, incentiveReceived } from '../books/incentive.ts';
+import { loanEntries } from '../books/loan.ts';
+import { insuranceEntries } from '../books/mortgage-insurance.ts';
+import { creditEntries, creditLinesOf } from '../books/tax-credit.ts';
+import type { HouseholdFacts } from '../facts/household.ts';
+import { isComplete } from '../metering/cycle-energy.ts';
+import { placeEntries } from '../position/place.ts';
+import { isIncentiveInBill } from '../reconcile/electric-lines.ts';
+import { cents, sumCents } from '../units/cents.ts';
+import type { Day } from '../units/day.ts';
+import { type AssembledCycle, assembleCycles } from './cycles.ts';
+import type { Ledger } from './ledger.ts';
+import { needsOf } from './needs.ts';
+
+/**
+ * The whole ledger of a household, from its facts alone (ledger.md §2): papers → cycles → settlement, facing lines and checks → entries of
+ * every book → position → what needs the owner. Pure and in one direction. Entries run through `today`.
+ */
+export function computeLedger(facts: HouseholdFacts, { today }: { today: Day }): Ledger {
+  const { cycles: assembled, closing } = assembleCycles(facts);
+  const entries = placeEntries(unplacedEntries(facts, assembled, today), assembled.map((one) => one.cycle));
+  const cycles = assembled.map((one) => one.cycle);
+  const byTo = new Map(cycles.map((cycle) => [cycle.to as string, cycle]));
+  for (const entry of entries) byTo.get(entry.cycle)?.entries.push(entry);
+  for (const cycle of cycles) {
+    cycle.addedCents = sumCents(
+      cycle.entries.filter((entry) => entry.basis !== 'memo').map((entry) => entry.amountCents),
+    );
+    cycle.loanPayments = cycle.entries.filter((entry) => entry.book === 'loan' && entry.kind === 'payment').length;
+  }
+  const creditLines = facts.credit === null ? [] : creditLinesOf(facts.credit);
+  const position = computePosition(facts, { today, entries, assembled, closing });
+  const needs = needsOf({ facts, assembled, entries, creditLines, position, today });
+  return { today, cycles, entries, creditLines, position, needs };
+}
+
+function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCycle[], today: Day): UnplacedEntry[] {
+  const entries: UnplacedEntry[] = [];
+  for (const { cycle } of assembled) {
+    if (cycle.withoutRoof === null) continue;
+    entries.push(
+      billAvoidedEntry({
+        from: cycle.from,
+        to: cycle.to,
+        withoutRoofCents: cycle.withoutRoof.amountCents,
+        asItWasCents: cycle.asItWas.amountCents,
+        method: cycle.withoutRoof.method,
+        estimated: cycle.split || cycle.withoutRoof.working.basis === 'estimated',
+      }),
+    );
+  }
+  if (facts.incentive !== null) {
+    const seen = assembled.map((one) => incentiveCycle(one, facts));
+    entries.push(...incentiveEarned(facts.incentive, seen), ...incentiveReceived(facts.incentive, seen, today));
+  }
+  if (facts.loan !== null) entries.push(...loanEntries(facts.loan, today));
+  if (facts.mortgage !== null) entries.push(...insuranceEntries(facts.mortgage, today));
+  if (facts.credit !== null) entries.push(...creditEntries(facts.credit, today));
+  entries.push(...costEntries(facts.costs, today, facts.documents));
+  return entries;
+}
+
+/** A cycle as the incentive counts it: the production of the whole cycle, an estimate where it is only the inverter's own count. */
+function incentiveCycle({ cycle, paper }: AssembledCycle, facts: HouseholdFacts): IncentiveCycle {
+  const production = isComplete(cycle.energy.production) ? cycle.energy.production : null;
+  const credited = paper.lines.filter((line) => isIncentiveInBill(line, facts.incentive));
+  return {
+    from: cycle.from,
+    to: cycle.to,
+    productionWh: production?.wh ?? null,
+    estimated: production?.from === 'monitor' || production?.working.basis === 'estimated',
+    source: production?.working.inputs[0]?.source ?? null,
+    billCreditCents: credited.length === 0 ? null : cents(-sumCents(credited.map((line) => line.amountCents))),
+  };
+}
