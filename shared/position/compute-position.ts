@@ -1,0 +1,54 @@
+import type { Opening } from '../settlement/settlement.ts';
+import type { Wh } from '../units/energy.ts';
+import { positionEvents } from './events.ts';
+import { marginFigures, paceFigure, settledFigures } from './figures.ts';
+import { type FoldInput, foldPosition, type PositionCycle } from './fold.ts';
+import type { Position } from './position.ts';
+import { type ProjectionFacts, projectBase } from './project.ts';
+import { sumsByBook } from './sums.ts';
+
+export type PositionInput = {
+  facts: ProjectionFacts;
+  today: FoldInput['today'];
+  /** Placed entries of every book through today. */
+  entries: FoldInput['entries'];
+  /** Closed cycles in order, with what the utility holds after each and the energies the projection repeats. */
+  cycles: readonly (PositionCycle & { importWh: Wh | null; exportWh: Wh | null; productionWh: Wh | null })[];
+  /** What the utility's books hold after the last cycle. */
+  opening: Opening;
+};
+
+/** The whole position of a household: points, figures with their workings, events and the base projection. */
+export function computePosition(input: PositionInput): Position {
+  const { facts, today, entries, cycles } = input;
+  const fold: FoldInput = { entries, cycles, today, loan: facts.loan, credit: facts.credit };
+  const points = foldPosition(fold);
+  const last = points.at(-1);
+  if (last === undefined) throw new Error('a position always has a point');
+  const sums = sumsByBook(
+    entries,
+    cycles.map((cycle) => cycle.to),
+  );
+  const cashSoFar = sums.all.cashSoFar;
+  if (cashSoFar === undefined) throw new Error('the sum of the books is missing');
+  const projected = projectBase({
+    facts,
+    today,
+    cycles,
+    opening: input.opening,
+    points,
+    since: entries.filter((entry) => entry.cycle === 'since'),
+  });
+  return {
+    today,
+    points,
+    cashSoFar,
+    ...settledFigures(fold, last, cashSoFar),
+    pace: paceFigure(points),
+    ...marginFigures(entries, points),
+    sums,
+    events: positionEvents(facts, today),
+    projection: projected.ok ? projected.projection : null,
+    whyNoProjection: projected.ok ? null : projected.why,
+  };
+}

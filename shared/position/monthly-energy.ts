@@ -1,0 +1,206 @@
+import type { UsageBefore } from '../facts/house.ts';
+import { type Day, dayNumber, dayOf, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
+import { type Wh, wh } from '../units/energy.ts';
+import { Exact, exact } from '../units/rate.ts';
+import type { DecimalText } from '../units/rate-text.ts';
+
+/** What is known of a closed cycle's energy; null where it is not measured. */
+export type EnergyCycle = {
+  from: Day;
+  to: Day;
+  importWh: Wh | null;
+  exportWh: Wh | null;
+  productionWh: Wh | null;
+};
+
+export type MonthlyEnergyInput = {
+  cycles: readonly EnergyCycle[];
+  /** The last close: ages are counted from it. */
+  lastTo: Day;
+  expectedMonthlyWh: readonly Wh[] | null;
+  usageBefore: readonly UsageBefore[];
+  degradation: DecimalText;
+};
+
+/** Where a calendar month's figure comes from. */
+export type MonthBasis = 'record' | 'installer' | 'before' | 'mean';
+
+/** A house's own year: Wh per day by calendar month (January first), and the share of production sent out. */
+export type MonthlyEnergy = {
+  productionPerDay: Exact[];
+  usePerDay: Exact[];
+  exportShare: Exact[];
+  productionBasis: MonthBasis[];
+  useBasis: MonthBasis[];
+};
+
+/** Wh and days gathered by year of age and calendar month. */
+type Heap = { energy: number; days: number };
+type Heaps = Map<number, Heap[]>;
+
+const MONTHS = Array.from({ length: 12 }, (_, index) => index);
+const DAYS_PER_YEAR = 365;
+
+/**
+ * The year to repeat. Production of a calendar month: the mean Wh per day of the house's own record for it, each year brought to the last one's age
+ * by the degradation; where the record has no such month, the installer's estimate scaled by record ÷ estimate, else the record's mean. Use:
+ * the last twelve months' record, else any earlier year's, else that of the month before the roof, else the mean. Null without production and use.
+ */
+export function monthlyEnergy(input: MonthlyEnergyInput): MonthlyEnergy | null {
+  const production: Heaps = new Map();
+  const use: Heaps = new Map();
+  const exported: Heaps = new Map();
+  const producedWithExport: Heaps = new Map();
+  for (const cycle of input.cycles) {
+    const age = Math.max(0, Math.floor(daysBetween(cycle.to, input.lastTo) / DAYS_PER_YEAR));
+    const { importWh, exportWh, productionWh } = cycle;
+    if (productionWh !== null) gather(production, age, cycle, productionWh);
+    if (productionWh === null || exportWh === null) continue;
+    gather(exported, age, cycle, exportWh);
+    gather(producedWithExport, age, cycle, productionWh);
+    if (importWh !== null) gather(use, age, cycle, importWh + productionWh - exportWh);
+  }
+  const before: Heaps = new Map();
+  for (const bill of input.usageBefore) gather(before, 0, bill, bill.importWh);
+
+  const aged = MONTHS.map((month) => agedMean(production, month, input.degradation));
+  const made = fillProduction(aged, input.expectedMonthlyWh);
+  const used = fillUse(use, before);
+  if (made === null || used === null) return null;
+  const wholeShare = shareOf(wholeYear(exported), wholeYear(producedWithExport)) ?? new Exact(0);
+  return {
+    productionPerDay: made.perDay,
+    productionBasis: made.basis,
+    usePerDay: used.perDay,
+    useBasis: used.basis,
+    exportShare: MONTHS.map(
+      (month) => shareOf(monthOfAll(exported, month), monthOfAll(producedWithExport, month)) ?? wholeShare,
+    ),
+  };
+}
+
+/** Shares a span's energy by days between its calendar months, in whole Wh that add up. */
+function gather(heaps: Heaps, age: number, span: { from: Day; to: Day }, energy: number): void {
+  const days = daysBetween(span.from, span.to);
+  if (days <= 0) return;
+  let months = heaps.get(age);
+  if (!months) {
+    months = MONTHS.map(() => ({ energy: 0, days: 0 }));
+    heaps.set(age, months);
+  }
+  const start = dayNumber(span.from);
+  let year = yearOf(span.from);
+  let month = monthOf(span.from);
+  let done = 0;
+  let given = 0;
+  while (done < days) {
+    const monthEnd = dayNumber(dayOf(year, month + 1, 1)) - start;
+    const upTo = Math.min(days, monthEnd);
+    const share = Math.round((energy * upTo) / days);
+    const heap = months[month - 1];
+    if (heap) {
+      heap.energy += share - given;
+      heap.days += upTo - done;
+    }
+    given = share;
+    done = upTo;
+    month += 1;
+    if (month > 12) {
+      month = 1;
+      year += 1;
+    }
+  }
+}
+
+function agedMean(heaps: Heaps, month: number, degradation: DecimalText): Exact | null {
+  const kept = new Exact(1).minus(exact(degradation));
+  let energy = new Exact(0);
+  let days = 0;
+  for (const [age, months] of heaps) {
+    const heap = months[month];
+    if (!heap || heap.days === 0) continue;
+    energy = energy.plus(age === 0 ? heap.energy : kept.pow(age).times(heap.energy));
+    days += heap.days;
+  }
+  return days === 0 ? null : energy.div(days);
+}
+
+type Filled = { perDay: Exact[]; basis: MonthBasis[] };
+
+function fillProduction(record: readonly (Exact | null)[], expected: readonly Wh[] | null): Filled | null {
+  const mean = meanOf(record);
+  if (mean === null) return null;
+  const estimate = MONTHS.map((month) => new Exact(expected?.[month] ?? 0).div(daysInMonth(2023, month + 1)));
+  let recorded = new Exact(0);
+  let estimated = new Exact(0);
+  for (const month of MONTHS) {
+    const known = record[month];
+    if (!known) continue;
+    recorded = recorded.plus(known);
+    estimated = estimated.plus(estimate[month] ?? 0);
+  }
+  const ratio = estimated.isZero() ? null : recorded.div(estimated);
+  return fill(record, (month) =>
+    ratio === null ? [mean, 'mean'] : [(estimate[month] ?? new Exact(0)).times(ratio), 'installer'],
+  );
+}
+
+function fillUse(use: Heaps, before: Heaps): Filled | null {
+  const lastYear = use.get(0);
+  const record = MONTHS.map((month) => meanOfHeap(lastYear?.[month]) ?? meanOfHeap(monthOfAll(use, month)));
+  const old = MONTHS.map((month) => meanOfHeap(monthOfAll(before, month)));
+  const mean = meanOf(record) ?? meanOf(old);
+  if (mean === null) return null;
+  return fill(record, (month) => {
+    const known = old[month];
+    return known ? [known, 'before'] : [mean, 'mean'];
+  });
+}
+
+function fill(record: readonly (Exact | null)[], other: (month: number) => [Exact, MonthBasis]): Filled {
+  const filled = MONTHS.map((month): [Exact, MonthBasis] => {
+    const known = record[month];
+    return known ? [known, 'record'] : other(month);
+  });
+  return { perDay: filled.map(([value]) => value), basis: filled.map(([, basis]) => basis) };
+}
+
+function meanOf(values: readonly (Exact | null)[]): Exact | null {
+  const known = values.filter((value) => value !== null);
+  if (known.length === 0) return null;
+  return known.reduce((sum, value) => sum.plus(value), new Exact(0)).div(known.length);
+}
+
+function meanOfHeap(heap: Heap | undefined): Exact | null {
+  return heap === undefined || heap.days === 0 ? null : new Exact(heap.energy).div(heap.days);
+}
+
+function monthOfAll(heaps: Heaps, month: number): Heap {
+  const total: Heap = { energy: 0, days: 0 };
+  for (const months of heaps.values()) {
+    total.energy += months[month]?.energy ?? 0;
+    total.days += months[month]?.days ?? 0;
+  }
+  return total;
+}
+
+function wholeYear(heaps: Heaps): Heap {
+  const total: Heap = { energy: 0, days: 0 };
+  for (const month of MONTHS) {
+    const heap = monthOfAll(heaps, month);
+    total.energy += heap.energy;
+    total.days += heap.days;
+  }
+  return total;
+}
+
+/** Export ÷ production, between 0 and 1; null where nothing was produced. */
+function shareOf(exported: Heap, produced: Heap): Exact | null {
+  if (produced.energy <= 0) return null;
+  return Exact.min(1, Exact.max(0, new Exact(exported.energy).div(produced.energy)));
+}
+
+/** Wh of a span within one calendar month. */
+export function energyOf(perDay: Exact, days: number, factor: Exact): Wh {
+  return wh(perDay.times(days).times(factor).toDecimalPlaces(0, Exact.ROUND_HALF_UP).toNumber());
+}
