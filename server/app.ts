@@ -14,6 +14,7 @@ import { requestLog } from './http/request-log.ts';
 import { sameOriginOnly } from './http/same-origin.ts';
 import { securityHeaders } from './http/security-headers.ts';
 import { cyclesRoutes } from './routes/cycles-routes.ts';
+import { logRoutes } from './routes/log-routes.ts';
 import { positionRoutes } from './routes/position-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
 import { setupRoutes } from './routes/setup-routes.ts';
@@ -53,6 +54,7 @@ export function createApp(deps: Deps): App {
   setupRoutes(api, deps);
   cyclesRoutes(api, deps);
   positionRoutes(api, deps);
+  logRoutes(api, deps);
   app.use(api.router);
 
   app.use('/api', (_req, res) => sendProblem(res, problem('not-found')));

@@ -1,6 +1,6 @@
 import path from 'node:path';
 import * as z from 'zod/mini';
-import { type Result, fail, succeed } from '#shared/problem.ts';
+import { fail, type Result, succeed } from '#shared/problem.ts';
 
 export type Env = {
   port: number;
@@ -62,7 +62,8 @@ export function parseEnv(given: Record<string, string | undefined>, root: string
   };
   for (const [name, { schema, rule }] of Object.entries(VARIABLES)) {
     const text = read(name as keyof typeof VARIABLES);
-    if (text !== null && !schema.safeParse(text).success) return fail('bad-request', `${name} is "${text}"; it must be ${rule}.`);
+    if (text !== null && !schema.safeParse(text).success)
+      return fail('bad-request', `${name} is "${text}"; it must be ${rule}.`);
   }
   const port = Number(read('PORT') ?? '4470');
   const host = read('HOST') ?? '127.0.0.1';

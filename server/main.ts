@@ -32,7 +32,9 @@ function openHere(): ReturnType<typeof openDatabase> {
     mkdirSync(env.dataDir, { recursive: true });
     return openDatabase(path.join(env.dataDir, 'gablebook.db'));
   } catch (error) {
-    stopWith(`The database in ${env.dataDir} cannot be opened: ${error instanceof Error ? error.message : String(error)}`);
+    stopWith(
+      `The database in ${env.dataDir} cannot be opened: ${error instanceof Error ? error.message : String(error)}`,
+    );
   }
 }
 
@@ -43,7 +45,8 @@ try {
     backupDir: path.join(env.dataDir, 'backups'),
     now: new Date(),
   });
-  if (backup !== null) say(`The database was brought up to date in ${applied} steps; a copy of it as it was is ${backup}.`);
+  if (backup !== null)
+    say(`The database was brought up to date in ${applied} steps; a copy of it as it was is ${backup}.`);
 } catch (error) {
   stopWith(`The database could not be brought up to date: ${error instanceof Error ? error.message : String(error)}`);
 }

@@ -27,12 +27,15 @@ function run(command, args, what) {
 
 function ensureInstalled() {
   const marker = path.join(root, 'node_modules', '.gablebook-installed');
-  const lock = createHash('sha256').update(readFileSync(path.join(root, 'package-lock.json'))).digest('hex');
+  const lock = createHash('sha256')
+    .update(readFileSync(path.join(root, 'package-lock.json')))
+    .digest('hex');
   const known = existsSync(marker) ? readFileSync(marker, 'utf8') : null;
   if (known === lock) return;
   // An install of our own lock file that somebody made by hand is as good as ours.
   const hidden = path.join(root, 'node_modules', '.package-lock.json');
-  const byHand = existsSync(hidden) && statSync(hidden).mtimeMs >= statSync(path.join(root, 'package-lock.json')).mtimeMs;
+  const byHand =
+    existsSync(hidden) && statSync(hidden).mtimeMs >= statSync(path.join(root, 'package-lock.json')).mtimeMs;
   if (!(known === null && byHand)) {
     process.stdout.write('Installing what Gablebook is built from; this takes a minute or two the first time.\n');
     run('npm', ['ci', '--no-fund', '--no-audit'], 'The install');
@@ -55,7 +58,11 @@ function ensureBuilt() {
   const built = path.join(root, 'dist', 'index.html');
   if (existsSync(built) && statSync(built).mtimeMs >= changed) return;
   process.stdout.write('Building the pages.\n');
-  run(process.execPath, [path.join(root, 'node_modules', 'vite', 'bin', 'vite.js'), 'build', '--logLevel', 'warn'], 'The build');
+  run(
+    process.execPath,
+    [path.join(root, 'node_modules', 'vite', 'bin', 'vite.js'), 'build', '--logLevel', 'warn'],
+    'The build',
+  );
 }
 
 /** Starts a process that stays, and ends with it or ends it. */

@@ -56,7 +56,8 @@ function isRun(text: string): boolean {
 export function acceptPassword(password: string, about: readonly string[]): Result<string> {
   const chosen = normal(password);
   const length = [...chosen].length;
-  if (length < PASSWORD_MIN) return fail('password-too-short', `Use ${PASSWORD_MIN} characters or more; a short sentence is easy to keep.`);
+  if (length < PASSWORD_MIN)
+    return fail('password-too-short', `Use ${PASSWORD_MIN} characters or more; a short sentence is easy to keep.`);
   if (length > PASSWORD_MAX) return fail('invalid-fields', `Use at most ${PASSWORD_MAX} characters.`);
   const bare = chosen.toLowerCase().replaceAll(/[\s\-_.,;:'"/+]/g, '');
   if (COMMON_PASSWORDS.has(bare) || isRun(bare)) {

@@ -1,5 +1,15 @@
 import { createHash } from 'node:crypto';
-import { existsSync, fsyncSync, mkdirSync, openSync, closeSync, readFileSync, readdirSync, renameSync, rmSync } from 'node:fs';
+import {
+  closeSync,
+  existsSync,
+  fsyncSync,
+  mkdirSync,
+  openSync,
+  readdirSync,
+  readFileSync,
+  renameSync,
+  rmSync,
+} from 'node:fs';
 import path from 'node:path';
 import Sqlite from 'better-sqlite3';
 import { migrate } from 'drizzle-orm/better-sqlite3/migrator';
@@ -16,7 +26,9 @@ function knownMigrations(folder: string): Known[] {
   const journal = journalSchema.parse(JSON.parse(readFileSync(path.join(folder, 'meta', '_journal.json'), 'utf8')));
   return journal.entries.map((entry) => ({
     tag: entry.tag,
-    hash: createHash('sha256').update(readFileSync(path.join(folder, `${entry.tag}.sql`))).digest('hex'),
+    hash: createHash('sha256')
+      .update(readFileSync(path.join(folder, `${entry.tag}.sql`)))
+      .digest('hex'),
   }));
 }
 
@@ -29,7 +41,9 @@ function appliedHashes({ sqlite }: Database): string[] {
 function rowCounts({ sqlite }: Database): Map<string, number> {
   const names = z
     .array(z.string())
-    .parse(sqlite.prepare("SELECT name FROM sqlite_schema WHERE type = 'table' AND name NOT LIKE 'sqlite_%'").pluck().all());
+    .parse(
+      sqlite.prepare("SELECT name FROM sqlite_schema WHERE type = 'table' AND name NOT LIKE 'sqlite_%'").pluck().all(),
+    );
   return new Map(
     names.map((name) => [name, z.int().parse(sqlite.prepare(`SELECT count(*) FROM "${name}"`).pluck().get())]),
   );
@@ -59,7 +73,9 @@ export async function backUp({ sqlite }: Database, folder: string, name: string)
   fsyncSync(handle);
   closeSync(handle);
   renameSync(temporary, target);
-  const copies = readdirSync(folder).filter((file) => file.endsWith('.db')).sort();
+  const copies = readdirSync(folder)
+    .filter((file) => file.endsWith('.db'))
+    .sort();
   for (const old of copies.slice(0, -BACKUPS_KEPT)) rmSync(path.join(folder, old), { force: true });
   return target;
 }
@@ -71,16 +87,22 @@ export type MigrateOptions = { migrationsDir: string; backupDir: string; now: Da
  * since a rebuilt table would otherwise take its children with it, and no table may come out with fewer rows than it had.
  * Throws on a file from a newer version and on a migration that was edited after it had been applied.
  */
-export async function migrateDatabase(database: Database, options: MigrateOptions): Promise<{ applied: number; backup: string | null }> {
+export async function migrateDatabase(
+  database: Database,
+  options: MigrateOptions,
+): Promise<{ applied: number; backup: string | null }> {
   const { sqlite, db } = database;
   const known = knownMigrations(options.migrationsDir);
   const applied = appliedHashes(database);
   const version = z.int().parse(sqlite.pragma('user_version', { simple: true }));
   if (applied.length > known.length || version > known.length) {
-    throw new Error('The database was written by a newer version of Gablebook. Start that version, or restore a backup.');
+    throw new Error(
+      'The database was written by a newer version of Gablebook. Start that version, or restore a backup.',
+    );
   }
   for (const [index, hash] of applied.entries()) {
-    if (known[index]?.hash !== hash) throw new Error(`migration ${known[index]?.tag} was changed after it had been applied`);
+    if (known[index]?.hash !== hash)
+      throw new Error(`migration ${known[index]?.tag} was changed after it had been applied`);
   }
   if (applied.length === known.length) return { applied: 0, backup: null };
 
@@ -94,7 +116,8 @@ export async function migrateDatabase(database: Database, options: MigrateOption
     mustHaveNoBrokenKeys(sqlite);
     const after = rowCounts(database);
     for (const [table, count] of before) {
-      if ((after.get(table) ?? 0) < count) throw new Error(`a migration lost rows of ${table}; the backup is ${backup}`);
+      if ((after.get(table) ?? 0) < count)
+        throw new Error(`a migration lost rows of ${table}; the backup is ${backup}`);
     }
   } finally {
     sqlite.pragma('foreign_keys = ON');

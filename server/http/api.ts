@@ -35,9 +35,17 @@ export type Api = {
   router: Router;
   /** Every endpoint that has a route. */
   mounted: Route[];
-  anyone<B, R>(endpoint: Endpoint<B, R>, call: (call: Call<B> & { session: SignedIn | null }) => Answer<R>, before?: RequestHandler[]): void;
+  anyone<B, R>(
+    endpoint: Endpoint<B, R>,
+    call: (call: Call<B> & { session: SignedIn | null }) => Answer<R>,
+    before?: RequestHandler[],
+  ): void;
   anyoneDownload(endpoint: Endpoint<undefined, undefined>, call: (call: Call<undefined>) => Answer<Download>): void;
-  signedIn<B, R>(endpoint: Endpoint<B, R>, call: (call: Call<B> & { session: SignedIn }) => Answer<R>, before?: RequestHandler[]): void;
+  signedIn<B, R>(
+    endpoint: Endpoint<B, R>,
+    call: (call: Call<B> & { session: SignedIn }) => Answer<R>,
+    before?: RequestHandler[],
+  ): void;
   household<B, R>(endpoint: Endpoint<B, R>, call: (call: HouseholdCall<B>) => Answer<R>): void;
   upload<R>(endpoint: Endpoint<undefined, R>, call: (call: UploadCall) => Answer<R>): void;
   download(endpoint: Endpoint<undefined, undefined>, call: (call: HouseholdCall<undefined>) => Answer<Download>): void;
@@ -198,7 +206,10 @@ export function createApi(deps: Deps, sessions: Sessions): Api {
         const file = pass(uploadedFile(req.file));
         const fields: unknown = req.body;
         const field = (name: string) => {
-          const value = typeof fields === 'object' && fields !== null ? Object.entries(fields).find(([key]) => key === name)?.[1] : '';
+          const value =
+            typeof fields === 'object' && fields !== null
+              ? Object.entries(fields).find(([key]) => key === name)?.[1]
+              : '';
           return typeof value === 'string' ? value : '';
         };
         return call({ ...callOf(req, res, undefined), actor, file, field });

@@ -9,7 +9,10 @@ export type Download = { fileName: string; contentType: string; body: Uint8Array
 export function sendDownload(res: Response, download: Download): void {
   const name = safeFileName(download.fileName);
   const ascii = name.replaceAll(/[^\x20-\x7e]/g, '_').replaceAll(/["\\%]/g, '_');
-  const encoded = encodeURIComponent(name).replaceAll(/['()*]/g, (letter) => `%${letter.charCodeAt(0).toString(16).toUpperCase()}`);
+  const encoded = encodeURIComponent(name).replaceAll(
+    /['()*]/g,
+    (letter) => `%${letter.charCodeAt(0).toString(16).toUpperCase()}`,
+  );
   res.set({
     'Content-Type': download.contentType,
     'Content-Disposition': `attachment; filename="${ascii}"; filename*=UTF-8''${encoded}`,

@@ -19,7 +19,13 @@ function emailOf(req: Request): string {
   return createHash('sha256').update(String(email).trim().toLowerCase()).digest('hex').slice(0, 32);
 }
 
-function limiter(options: { windowMs: number; limit: number; key: (req: Request) => string; failuresOnly: boolean; words: string }): RequestHandler {
+function limiter(options: {
+  windowMs: number;
+  limit: number;
+  key: (req: Request) => string;
+  failuresOnly: boolean;
+  words: string;
+}): RequestHandler {
   return rateLimit({
     windowMs: options.windowMs,
     limit: options.limit,

@@ -1,4 +1,4 @@
-import { type Problem, problem, type ProblemCode } from '#shared/problem.ts';
+import { type Problem, type ProblemCode, problem } from '#shared/problem.ts';
 
 /** Carries an expected refusal out of the middle of a request to where it is sent. */
 export class Refused extends Error {

@@ -13,15 +13,24 @@ export function sameOriginOnly(origins: readonly string[], log: Log) {
   return (req: Request, res: Response, next: NextFunction): void => {
     res.vary('Sec-Fetch-Site');
     res.vary('Origin');
-    if (SAFE.has(req.method)) return next();
+    if (SAFE.has(req.method)) {
+      next();
+      return;
+    }
     const site = req.get('sec-fetch-site');
     const origin = req.get('origin');
     const ours = site === undefined ? origin !== undefined && origins.includes(origin) : site === 'same-origin';
-    if (ours) return next();
+    if (ours) {
+      next();
+      return;
+    }
     log('warn', 'cross-site-refused', { method: req.method, path: req.path, site: site ?? '-', origin: origin ?? '-' });
     sendProblem(
       res,
-      problem('cross-site', 'This request did not come from a Gablebook page. If the address is right, set ORIGIN to it.'),
+      problem(
+        'cross-site',
+        'This request did not come from a Gablebook page. If the address is right, set ORIGIN to it.',
+      ),
     );
   };
 }

@@ -14,7 +14,8 @@ export function statementFaults(body: StatementBody): ReturnType<typeof fieldFau
   const faults: ReturnType<typeof fieldFault>[] = [];
   if (body.from >= body.to) faults.push(fieldFault('statement.to', 'The end must lie after the start.'));
   for (const [index, read] of body.reads.entries()) {
-    if (read.from > read.to) faults.push(fieldFault(`statement.reads.${index}.to`, 'The end must lie after the start.'));
+    if (read.from > read.to)
+      faults.push(fieldFault(`statement.reads.${index}.to`, 'The end must lie after the start.'));
   }
   return faults;
 }

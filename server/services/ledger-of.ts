@@ -29,11 +29,7 @@ export function ledgerOf({ db, clock }: Pick<Deps, 'db' | 'clock'>, householdId:
   }
   const known = cache.get(householdId);
   if (known) {
-    const now = db
-      .select({ version: households.version })
-      .from(households)
-      .where(eq(households.id, householdId))
-      .get();
+    const now = db.select({ version: households.version }).from(households).where(eq(households.id, householdId)).get();
     if (now?.version === known.row.version && dayIn(known.row.timeZone, clock()) === known.today) {
       cache.delete(householdId);
       cache.set(householdId, known);

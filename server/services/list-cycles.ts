@@ -65,7 +65,10 @@ export function cycleRowOf(cycle: Cycle): CycleRow {
 }
 
 /** Every cycle as a row, oldest first, and the books that hold anything. */
-export function listCycles(deps: Pick<Deps, 'db' | 'clock'>, householdId: string): { rows: CycleRow[]; books: BookId[] } {
+export function listCycles(
+  deps: Pick<Deps, 'db' | 'clock'>,
+  householdId: string,
+): { rows: CycleRow[]; books: BookId[] } {
   const { ledger } = ledgerOf(deps, householdId);
   const used = new Set(ledger.entries.map((entry) => entry.book));
   return { rows: ledger.cycles.map(cycleRowOf), books: BOOKS.filter((book) => used.has(book)) };

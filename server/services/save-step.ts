@@ -68,8 +68,18 @@ export function saveHouse(deps: StepDeps, actor: Actor, body: z.infer<typeof hou
 
 export function saveRoof(deps: StepDeps, actor: Actor, body: z.infer<typeof roofBody>): Saved {
   const faults = [
-    ...refuseRepeated('arrays', 'id', body.arrays.map(({ id }) => id), 'Two arrays have the same id.'),
-    ...refuseRepeated('meters', 'id', body.meters.map(({ id }) => id), 'Two meters have the same number.'),
+    ...refuseRepeated(
+      'arrays',
+      'id',
+      body.arrays.map(({ id }) => id),
+      'Two arrays have the same id.',
+    ),
+    ...refuseRepeated(
+      'meters',
+      'id',
+      body.meters.map(({ id }) => id),
+      'Two meters have the same number.',
+    ),
   ];
   if (faults.length > 0) return fail('invalid-fields', null, faults);
   return saveStep(deps, actor, 'roof', (tx) => replaceRoof(tx, actor.householdId, body));
@@ -77,7 +87,12 @@ export function saveRoof(deps: StepDeps, actor: Actor, body: z.infer<typeof roof
 
 /** The plans, each held against the rules of the plan's language; `plan-invalid` with every fault found. */
 export function savePlans(deps: StepDeps, actor: Actor, body: z.infer<typeof planBody>): Saved {
-  const twice = refuseRepeated('plans', 'from', body.plans.map(({ from }) => from), 'Two plans begin on the same day.');
+  const twice = refuseRepeated(
+    'plans',
+    'from',
+    body.plans.map(({ from }) => from),
+    'Two plans begin on the same day.',
+  );
   if (twice.length > 0) return fail('invalid-fields', null, twice);
   const faults: Fault[] = [];
   const plans = body.plans.map(({ from, plan, withoutRoof }, index) => {
@@ -106,7 +121,9 @@ export function saveBefore(deps: StepDeps, actor: Actor, body: z.infer<typeof be
   for (const [index, row] of rows.entries()) {
     const next = rows[index + 1];
     if (next !== undefined && next.from < row.to) {
-      faults.push(fieldFault(`usageBefore.${body.usageBefore.indexOf(next)}.from`, 'This period overlaps another one.'));
+      faults.push(
+        fieldFault(`usageBefore.${body.usageBefore.indexOf(next)}.from`, 'This period overlaps another one.'),
+      );
     }
   }
   if (faults.length > 0) return fail('invalid-fields', null, faults);
@@ -115,7 +132,9 @@ export function saveBefore(deps: StepDeps, actor: Actor, body: z.infer<typeof be
 
 export function saveLoan(deps: StepDeps, actor: Actor, { loan }: z.infer<typeof loanBody>): Saved {
   if (loan !== null && loan.firstPaymentOn < loan.fundedOn) {
-    return fail('invalid-fields', null, [fieldFault('loan.firstPaymentOn', 'The first payment cannot come before the funding.')]);
+    return fail('invalid-fields', null, [
+      fieldFault('loan.firstPaymentOn', 'The first payment cannot come before the funding.'),
+    ]);
   }
   return saveStep(deps, actor, 'loan', (tx) => writeLoan(tx, actor.householdId, loan));
 }
@@ -126,14 +145,21 @@ export function saveMortgage(deps: StepDeps, actor: Actor, { mortgage }: z.infer
 
 export function saveCredit(deps: StepDeps, actor: Actor, { credit }: z.infer<typeof creditBody>): Saved {
   const costs = credit?.costs ?? [];
-  const twice = refuseRepeated('credit.costs', 'id', costs.map(({ id }) => id), 'Two costs have the same id.');
+  const twice = refuseRepeated(
+    'credit.costs',
+    'id',
+    costs.map(({ id }) => id),
+    'Two costs have the same id.',
+  );
   if (twice.length > 0) return fail('invalid-fields', null, twice);
   return saveStep(deps, actor, 'credit', (tx) => writeCredit(tx, actor.householdId, credit));
 }
 
 export function saveIncentive(deps: StepDeps, actor: Actor, { incentive }: z.infer<typeof incentiveBody>): Saved {
   if (incentive !== null && incentive.lastDay < incentive.firstDay) {
-    return fail('invalid-fields', null, [fieldFault('incentive.lastDay', 'The last day cannot come before the first.')]);
+    return fail('invalid-fields', null, [
+      fieldFault('incentive.lastDay', 'The last day cannot come before the first.'),
+    ]);
   }
   return saveStep(deps, actor, 'incentive', (tx) => writeIncentive(tx, actor.householdId, incentive));
 }
@@ -142,11 +168,24 @@ export function saveCash(deps: StepDeps, actor: Actor, body: z.infer<typeof cash
   const faults = body.costs.flatMap((cost, index) =>
     CASH_KINDS.includes(cost.kind)
       ? []
-      : [fieldFault(`costs.${index}.kind`, 'Here stand cash at signing and permits; other costs are entered under Money.')],
+      : [
+          fieldFault(
+            `costs.${index}.kind`,
+            'Here stand cash at signing and permits; other costs are entered under Money.',
+          ),
+        ],
   );
-  faults.push(...refuseRepeated('costs', 'id', body.costs.map(({ id }) => id), 'Two costs have the same id.'));
+  faults.push(
+    ...refuseRepeated(
+      'costs',
+      'id',
+      body.costs.map(({ id }) => id),
+      'Two costs have the same id.',
+    ),
+  );
   for (const [index, cost] of body.costs.entries()) {
-    if (cost.amountCents < 0) faults.push(fieldFault(`costs.${index}.amountCents`, 'Write the amount without a minus.'));
+    if (cost.amountCents < 0)
+      faults.push(fieldFault(`costs.${index}.amountCents`, 'Write the amount without a minus.'));
     if (cost.documentId !== null) faults.push(fieldFault(`costs.${index}.documentId`, 'Papers are added under Money.'));
   }
   if (faults.length > 0) return fail('invalid-fields', null, faults);

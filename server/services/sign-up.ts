@@ -9,7 +9,13 @@ import { newId } from '../ids.ts';
 import { normalEmail, sessionViewOf } from './sign-in.ts';
 
 export function emailIsTaken(db: Reader, email: string): boolean {
-  return db.select({ id: users.id }).from(users).where(eq(users.email, normalEmail(email))).get() !== undefined;
+  return (
+    db
+      .select({ id: users.id })
+      .from(users)
+      .where(eq(users.email, normalEmail(email)))
+      .get() !== undefined
+  );
 }
 
 /** A new user without a household. */

@@ -12,7 +12,15 @@ export function statementsInForce(all: readonly Statement[]): Statement[] {
 }
 
 export function bodyOfStatement(statement: Statement): StatementBody {
-  const { id: _id, revision: _revision, source: _source, reason: _reason, enteredBy: _by, enteredAt: _at, ...body } = statement;
+  const {
+    id: _id,
+    revision: _revision,
+    source: _source,
+    reason: _reason,
+    enteredBy: _by,
+    enteredAt: _at,
+    ...body
+  } = statement;
   return body;
 }
 
@@ -30,7 +38,12 @@ export function overlap(a: Span, b: Span): boolean {
 /** The body with every place in a file left out, in one order of keys: what makes two statements say the same. */
 function content(body: StatementBody): string {
   const blank = <T extends { row: number | null }>(list: readonly T[]) => list.map((item) => ({ ...item, row: null }));
-  const plain: Record<string, unknown> = { ...body, reads: blank(body.reads), lines: blank(body.lines), banks: blank(body.banks) };
+  const plain: Record<string, unknown> = {
+    ...body,
+    reads: blank(body.reads),
+    lines: blank(body.lines),
+    banks: blank(body.banks),
+  };
   return JSON.stringify(plain, (_key, value: unknown) =>
     typeof value === 'object' && value !== null && !Array.isArray(value)
       ? Object.fromEntries(Object.entries(value).sort(([a], [b]) => (a < b ? -1 : 1)))

@@ -13,7 +13,8 @@ function documentsOf({ facts }: HouseholdLedger, cycle: Cycle): DocumentFacts[] 
     if (statement.id === cycle.statement.id && statement.source.kind === 'file') ids.add(statement.source.documentId);
   }
   for (const interval of facts.intervals) {
-    if (interval.documentId !== null && interval.day >= cycle.from && interval.day < cycle.to) ids.add(interval.documentId);
+    if (interval.documentId !== null && interval.day >= cycle.from && interval.day < cycle.to)
+      ids.add(interval.documentId);
   }
   return facts.documents.filter((document) => ids.has(document.id));
 }

@@ -1,6 +1,6 @@
 import { eq, sql } from 'drizzle-orm';
 import { fail, type Problem, type Result } from '#shared/problem.ts';
-import { inTransaction, type Tx } from '../db/client.ts';
+import { type Db, inTransaction, type Tx } from '../db/client.ts';
 import { auditEvents, households } from '../db/schema/households.ts';
 import type { Actor, Deps } from '../deps.ts';
 
@@ -10,6 +10,19 @@ class Refusal extends Error {
   constructor(problem: Problem) {
     super(problem.code);
     this.problem = problem;
+  }
+}
+
+function allOrNothing<T>(db: Db, work: (tx: Tx) => Result<T>): Result<T> {
+  try {
+    return inTransaction(db, (tx): Result<T> => {
+      const result = work(tx);
+      if (!result.ok) throw new Refusal(result.problem);
+      return result;
+    });
+  } catch (error) {
+    if (error instanceof Refusal) return fail(error.problem.code, error.problem.detail, error.problem.faults);
+    throw error;
   }
 }
 
@@ -23,10 +36,9 @@ export function writeHousehold<T>(
   event: { action: string; about: string },
   work: (tx: Tx) => Result<T>,
 ): Result<T> {
-  try {
-    return inTransaction(deps.db, (tx): Result<T> => {
-      const result = work(tx);
-      if (!result.ok) throw new Refusal(result.problem);
+  return allOrNothing(deps.db, (tx) => {
+    const result = work(tx);
+    if (result.ok) {
       tx.update(households)
         .set({ version: sql`${households.version} + 1` })
         .where(eq(households.id, actor.householdId))
@@ -41,10 +53,12 @@ export function writeHousehold<T>(
           about: event.about,
         })
         .run();
-      return result;
-    });
-  } catch (error) {
-    if (error instanceof Refusal) return fail(error.problem.code, error.problem.detail, error.problem.faults);
-    throw error;
-  }
+    }
+    return result;
+  });
+}
+
+/** A change to the log in progress, which is no fact yet: all or nothing, and the household's ledger stays as remembered. */
+export function writeDraft<T>(deps: Pick<Deps, 'db'>, work: (tx: Tx) => Result<T>): Result<T> {
+  return allOrNothing(deps.db, work);
 }

@@ -84,6 +84,8 @@ export const draftReadings = z.object({
   /** A total row in the file, in Wh, left out of the sum and compared with it; null when there is none. */
   statedTotalWh: z.nullable(whSchema),
   faults: z.array(faultSchema),
+  /** Rows with faults are left out when true: the owner has said so. Set by `keepGoodRows` with this `documentId`. */
+  keepGoodRows: z.boolean(),
   overlap: z.object({ sameDays: z.int(), differentDays: z.array(daySchema) }),
 });
 export type DraftReadings = z.infer<typeof draftReadings>;

@@ -1,6 +1,6 @@
 import { asc, eq } from 'drizzle-orm';
 import * as z from 'zod/mini';
-import { stepState, type SetupStep, SETUP_STEPS } from '#shared/api/setup.ts';
+import { SETUP_STEPS, type SetupStep, type stepState } from '#shared/api/setup.ts';
 import type { HouseFacts, MeterFacts, UsageBefore } from '#shared/facts/house.ts';
 import { type Assumptions, DEFAULT_ASSUMPTIONS, type PlanInForce } from '#shared/facts/household.ts';
 import { ratePlanSchema } from '#shared/settlement/plan.ts';

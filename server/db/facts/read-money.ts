@@ -66,7 +66,13 @@ export function readCredit(db: Reader, householdId: string): CreditFacts | null 
     .all();
   return {
     placedInServiceOn: row.placedInServiceOn,
-    costs: costRows.map(({ id, label, amountCents, treatment, reason }) => ({ id, label, amountCents, treatment, reason })),
+    costs: costRows.map(({ id, label, amountCents, treatment, reason }) => ({
+      id,
+      label,
+      amountCents,
+      treatment,
+      reason,
+    })),
     homeShare: row.homeShare,
     years: yearRows.map(({ householdId: _, ...year }) => year),
   };

@@ -45,7 +45,9 @@ export function replaceRoof(
     .run();
   db.delete(roofArrays).where(eq(roofArrays.householdId, householdId)).run();
   for (const [ordinal, array] of roof.arrays.entries()) {
-    db.insert(roofArrays).values({ householdId, ordinal, ...array }).run();
+    db.insert(roofArrays)
+      .values({ householdId, ordinal, ...array })
+      .run();
   }
   db.delete(meters).where(eq(meters.householdId, householdId)).run();
   for (const [ordinal, meter] of roof.meters.entries()) {
@@ -67,7 +69,10 @@ export function replacePlans(db: Reader, householdId: string, plans: readonly Pl
       })
       .run();
   }
-  db.update(households).set({ opening: JSON.stringify(opening) }).where(eq(households.id, householdId)).run();
+  db.update(households)
+    .set({ opening: JSON.stringify(opening) })
+    .where(eq(households.id, householdId))
+    .run();
 }
 
 export function replaceUsageBefore(db: Reader, householdId: string, rows: readonly UsageBefore[]): void {

@@ -131,7 +131,12 @@ export function deleteCost(db: Reader, householdId: string, id: string): boolean
 }
 
 /** Puts these costs in the place of all costs of the kinds given. */
-export function replaceCosts(db: Reader, householdId: string, kinds: readonly CostKind[], rows: readonly CostFacts[]): void {
+export function replaceCosts(
+  db: Reader,
+  householdId: string,
+  kinds: readonly CostKind[],
+  rows: readonly CostFacts[],
+): void {
   db.delete(costs)
     .where(and(eq(costs.householdId, householdId), inArray(costs.kind, [...kinds])))
     .run();

@@ -91,7 +91,10 @@ export const usageBefore = sqliteTable(
   },
   (table) => [
     primaryKey({ columns: [table.householdId, table.fromDay] }),
-    check('usage_before_days', sql`${isDay(table.fromDay)} AND ${isDay(table.toDay)} AND ${table.fromDay} < ${table.toDay}`),
+    check(
+      'usage_before_days',
+      sql`${isDay(table.fromDay)} AND ${isDay(table.toDay)} AND ${table.fromDay} < ${table.toDay}`,
+    ),
   ],
 );
 

@@ -57,10 +57,7 @@ export const loanPayments = sqliteTable(
     extraPrincipalCents: centsColumn('extra_principal_cents').notNull(),
     note: text('note'),
   },
-  (table) => [
-    primaryKey({ columns: [table.householdId, table.id] }),
-    check('loan_payments_on', isDay(table.on)),
-  ],
+  (table) => [primaryKey({ columns: [table.householdId, table.id] }), check('loan_payments_on', isDay(table.on))],
 );
 
 export const mortgages = sqliteTable(
@@ -182,10 +179,7 @@ export const incentiveReceipts = sqliteTable(
     amountCents: centsColumn('amount_cents').notNull(),
     note: text('note'),
   },
-  (table) => [
-    primaryKey({ columns: [table.householdId, table.id] }),
-    check('incentive_receipts_on', isDay(table.on)),
-  ],
+  (table) => [primaryKey({ columns: [table.householdId, table.id] }), check('incentive_receipts_on', isDay(table.on))],
 );
 
 export const costs = sqliteTable(

@@ -1,5 +1,15 @@
 import { sql } from 'drizzle-orm';
-import { blob, check, foreignKey, index, integer, primaryKey, sqliteTable, text, unique } from 'drizzle-orm/sqlite-core';
+import {
+  blob,
+  check,
+  foreignKey,
+  index,
+  integer,
+  primaryKey,
+  sqliteTable,
+  text,
+  unique,
+} from 'drizzle-orm/sqlite-core';
 import { centsColumn, dayColumn, flagColumn, isDay, isDecimal, isFlag, whColumn } from './columns.ts';
 import { households } from './households.ts';
 
@@ -73,8 +83,14 @@ export const statements = sqliteTable(
       foreignColumns: [documents.householdId, documents.id],
     }),
     check('statements_revision', sql`${table.revision} >= 1`),
-    check('statements_days', sql`${isDay(table.fromDay)} AND ${isDay(table.toDay)} AND ${table.fromDay} < ${table.toDay}`),
-    check('statements_dates', sql`(${table.statementOn} IS NULL OR ${isDay(table.statementOn)}) AND (${table.dueOn} IS NULL OR ${isDay(table.dueOn)}) AND (${table.typedOn} IS NULL OR ${isDay(table.typedOn)})`),
+    check(
+      'statements_days',
+      sql`${isDay(table.fromDay)} AND ${isDay(table.toDay)} AND ${table.fromDay} < ${table.toDay}`,
+    ),
+    check(
+      'statements_dates',
+      sql`(${table.statementOn} IS NULL OR ${isDay(table.statementOn)}) AND (${table.dueOn} IS NULL OR ${isDay(table.dueOn)}) AND (${table.typedOn} IS NULL OR ${isDay(table.typedOn)})`,
+    ),
     check(
       'statements_source',
       sql`(${table.sourceKind} = 'file' AND ${table.documentId} IS NOT NULL AND ${table.fileName} IS NOT NULL AND ${table.firstRow} IS NOT NULL AND ${table.lastRow} IS NOT NULL AND ${table.typedBy} IS NULL) OR (${table.sourceKind} = 'typed' AND ${table.documentId} IS NULL AND ${table.typedBy} IS NOT NULL AND ${table.typedOn} IS NOT NULL)`,
