@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { pathToFileURL } from 'node:url';
 import * as z from 'zod/mini';
-import { EXPORT_FORMAT, EXPORT_VERSION, householdExport, type HouseholdExport } from '#shared/facts/household.ts';
+import { EXPORT_FORMAT, EXPORT_VERSION, type HouseholdExport, householdExport } from '#shared/facts/household.ts';
 import { computeLedger } from '#shared/ledger/compute-ledger.ts';
 import { ledgerReport } from '#shared/ledger/report.ts';
 
@@ -52,7 +52,9 @@ function readExport(path: string): Read {
     return refuse(`${path}: this is not a household export. “format” must be “${EXPORT_FORMAT}”.`);
   }
   if (head.data.version !== EXPORT_VERSION) {
-    return refuse(`${path}: version ${head.data.version} is not known here; this program reads version ${EXPORT_VERSION}.`);
+    return refuse(
+      `${path}: version ${head.data.version} is not known here; this program reads version ${EXPORT_VERSION}.`,
+    );
   }
   const parsed = z.safeParse(householdExport, value);
   if (parsed.success) return { ok: true, found: parsed.data };

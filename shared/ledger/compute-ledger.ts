@@ -11,6 +11,7 @@ import { placeEntries } from '../position/place.ts';
 import { isIncentiveInBill } from '../reconcile/electric-lines.ts';
 import { cents, sumCents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
+import { computePosition } from './compute-position.ts';
 import { type AssembledCycle, assembleCycles } from './cycles.ts';
 import type { Ledger } from './ledger.ts';
 import { needsOf } from './needs.ts';
@@ -21,7 +22,10 @@ import { needsOf } from './needs.ts';
  */
 export function computeLedger(facts: HouseholdFacts, { today }: { today: Day }): Ledger {
   const { cycles: assembled, closing } = assembleCycles(facts);
-  const entries = placeEntries(unplacedEntries(facts, assembled, today), assembled.map((one) => one.cycle));
+  const entries = placeEntries(
+    unplacedEntries(facts, assembled, today),
+    assembled.map((one) => one.cycle),
+  );
   const cycles = assembled.map((one) => one.cycle);
   const byTo = new Map(cycles.map((cycle) => [cycle.to as string, cycle]));
   for (const entry of entries) byTo.get(entry.cycle)?.entries.push(entry);

@@ -1,9 +1,9 @@
+import type { Entry } from '../books/book.ts';
+import type { CreditLines } from '../books/credit-lines.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
 import type { Position } from '../position/position.ts';
 import { cents, subtractCents } from '../units/cents.ts';
 import { addDays, type Day, daysBetween } from '../units/day.ts';
-import type { Entry } from '../books/book.ts';
-import type { CreditLines } from '../books/credit-lines.ts';
 import type { Cycle } from './cycle.ts';
 import type { AssembledCycle } from './cycles.ts';
 import type { Need } from './ledger.ts';
@@ -39,7 +39,10 @@ export function needsOf(input: NeedsInput): Need[] {
     ...carriedCredit(input),
     ...missingFacts(input),
   ];
-  return [...needs.filter((need) => need.tone === 'bad'), ...needs.filter((need) => need.tone === 'note')].slice(0, MOST_NEEDS);
+  return [...needs.filter((need) => need.tone === 'bad'), ...needs.filter((need) => need.tone === 'note')].slice(
+    0,
+    MOST_NEEDS,
+  );
 }
 
 function differingCycles({ assembled }: NeedsInput): Need[] {
@@ -53,7 +56,10 @@ function differingCycles({ assembled }: NeedsInput): Need[] {
       return {
         key: `differs:${cycle.to}`,
         tone: 'bad' as const,
-        title: due && cycle.oursDueCents !== null ? billTitle(cycle) : `${possessive(cycle)} statement differs in one or more checks`,
+        title:
+          due && cycle.oursDueCents !== null
+            ? billTitle(cycle)
+            : `${possessive(cycle)} statement differs in one or more checks`,
         detail: due?.cause ?? first?.cause ?? first?.title ?? 'Look at its checks.',
         link: `cycles/${cycle.to}`,
       };
@@ -142,7 +148,9 @@ function nextStatement({ facts, assembled, today }: NeedsInput): Need[] {
   }
   const recent = assembled.slice(-5);
   const cycleDays = median(recent.map((one) => one.cycle.days)) ?? USUAL_CYCLE_DAYS;
-  const posted = recent.flatMap(({ cycle }) => (cycle.statement.statementOn ? [daysBetween(cycle.to, cycle.statement.statementOn)] : []));
+  const posted = recent.flatMap(({ cycle }) =>
+    cycle.statement.statementOn ? [daysBetween(cycle.to, cycle.statement.statementOn)] : [],
+  );
   const ends = addDays(last.cycle.to, cycleDays);
   const due = addDays(ends, median(posted) ?? USUAL_POST_DAYS);
   if (today < addDays(due, -STATEMENT_EARLY_DAYS)) return [];
@@ -179,7 +187,8 @@ function productionGaps({ assembled }: NeedsInput): Need[] {
         key: `production:${cycle.to}`,
         tone: 'note',
         title: `No production for ${sayDay(cycle.from)} – ${sayDay(cycle.to)}`,
-        detail: 'Upload the production file or enter the production meter’s reads; until then the bill avoided is an estimate or missing.',
+        detail:
+          'Upload the production file or enter the production meter’s reads; until then the bill avoided is an estimate or missing.',
         link: 'log',
       },
     ];
@@ -190,7 +199,8 @@ function productionGaps({ assembled }: NeedsInput): Need[] {
       key: `production-gap:${cycle.to}`,
       tone: 'note',
       title: `Production data lack ${monitorGapDays > 0 ? sayCount(monitorGapDays, 'day', 'days') : 'some readings'} of the last cycle`,
-      detail: 'Look whether the inverter was off or only its reporting, and upload the missing days if they can be had.',
+      detail:
+        'Look whether the inverter was off or only its reporting, and upload the missing days if they can be had.',
       link: `cycles/${cycle.to}`,
     },
   ];
@@ -200,7 +210,9 @@ function carriedCredit({ facts, creditLines, position }: NeedsInput): Need[] {
   const owed = position.settledParts.creditStillToCome.amountCents;
   if (facts.credit === null) return [];
   const carried = creditLines.findLast((lines) => lines.line16Cents !== null && lines.line16Cents > 0);
-  const planned = facts.credit.years.filter((year) => year.status === 'planned').sort((a, b) => a.taxYear - b.taxYear)[0];
+  const planned = facts.credit.years
+    .filter((year) => year.status === 'planned')
+    .sort((a, b) => a.taxYear - b.taxYear)[0];
   if (carried?.line16Cents != null && owed > 0) {
     const next = planned && planned.taxYear > carried.taxYear ? planned.taxYear : carried.taxYear + 1;
     return [

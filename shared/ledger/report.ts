@@ -57,7 +57,12 @@ type ReportedCycle = Pick<
   lines: NonNullable<Cycle['settlement']>['lines'] | null;
   banks: NonNullable<Cycle['settlement']>['banks'] | null;
   payouts: NonNullable<Cycle['settlement']>['payouts'] | null;
-  withoutRoof: { amountCents: Cents; method: string; useWh: number; working: NonNullable<Cycle['withoutRoof']>['working'] } | null;
+  withoutRoof: {
+    amountCents: Cents;
+    method: string;
+    useWh: number;
+    working: NonNullable<Cycle['withoutRoof']>['working'];
+  } | null;
   statement: { id: string; revision: number };
   entryIds: string[];
 };

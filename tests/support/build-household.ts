@@ -254,7 +254,9 @@ function builtStatements(built: readonly BuiltCycle[], exportTo: 'bill' | 'credi
       line('customer', 'fixed', 'Customer charge', null, null, customer, true),
       line('benefits', 'nonbypassable', 'Public benefits, on import', cycle.importKwh, '0.0061', benefits, true),
       line('franchise', 'tax', 'City franchise, 3.1%', null, null, franchise, true),
-      ...(exportTo === 'creditBank' ? [line('creditBank', 'credit', 'Credit brought in', null, null, -used, true)] : []),
+      ...(exportTo === 'creditBank'
+        ? [line('creditBank', 'credit', 'Credit brought in', null, null, -used, true)]
+        : []),
     ];
     const open = bank;
     bank += exportTo === 'creditBank' ? earned - used : 0;
@@ -279,7 +281,15 @@ function builtStatements(built: readonly BuiltCycle[], exportTo: 'bill' | 'credi
       lines,
       banks:
         exportTo === 'creditBank'
-          ? [{ bank: 'creditBank', unit: 'USD', open: dollarsText(cents(open)), close: dollarsText(cents(bank)), row: null }]
+          ? [
+              {
+                bank: 'creditBank',
+                unit: 'USD',
+                open: dollarsText(cents(open)),
+                close: dollarsText(cents(bank)),
+                row: null,
+              },
+            ]
           : [],
       previousBalanceCents: at === 0 ? null : cents(lastDue),
       paymentsCents: at === 0 ? null : cents(-lastDue),
@@ -346,15 +356,30 @@ function read(
   };
 }
 
-function builtIntervals(built: readonly BuiltCycle[], channels: readonly IntervalChannel[], minutes: 60 | 1440): IntervalDay[] {
+function builtIntervals(
+  built: readonly BuiltCycle[],
+  channels: readonly IntervalChannel[],
+  minutes: 60 | 1440,
+): IntervalDay[] {
   const days: IntervalDay[] = [];
   for (const cycle of built) {
     const count = daysBetween(cycle.from, cycle.to);
     for (const channel of channels) {
-      const kwh = { import: cycle.importKwh, export: cycle.exportKwh, production: cycle.productionKwh, monitor: cycle.productionKwh }[channel];
+      const kwh = {
+        import: cycle.importKwh,
+        export: cycle.exportKwh,
+        production: cycle.productionKwh,
+        monitor: cycle.productionKwh,
+      }[channel];
       for (let at = 0; at < count; at += 1) {
         const total = Math.floor(((at + 1) * kwh * 1000) / count) - Math.floor((at * kwh * 1000) / count);
-        days.push({ channel, day: addDays(cycle.from, at), minutes, values: stepsOf(total, minutes), documentId: null });
+        days.push({
+          channel,
+          day: addDays(cycle.from, at),
+          minutes,
+          values: stepsOf(total, minutes),
+          documentId: null,
+        });
       }
     }
   }
@@ -364,5 +389,8 @@ function builtIntervals(built: readonly BuiltCycle[], channels: readonly Interva
 /** A day's energy in equal steps, the remainder in the first ones. Days of 23 and 25 hours are not built. */
 function stepsOf(total: number, minutes: 60 | 1440): number[] {
   const count = 1440 / minutes;
-  return Array.from({ length: count }, (_, at) => Math.floor(((at + 1) * total) / count) - Math.floor((at * total) / count));
+  return Array.from(
+    { length: count },
+    (_, at) => Math.floor(((at + 1) * total) / count) - Math.floor((at * total) / count),
+  );
 }

@@ -1,6 +1,6 @@
-import { kwhOf, usdOf } from '#shared/units/rate.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import type { Wh } from '#shared/units/energy.ts';
+import { kwhOf, usdOf } from '#shared/units/rate.ts';
 import { type Working, workingSchema } from '#shared/working.ts';
 import { evaluateWorking } from '#shared/working-formula.ts';
 
@@ -26,7 +26,8 @@ export function everyWorking(root: unknown): WorkedFigure[] {
     const record = value as Record<string, unknown>;
     const working = workingSchema.safeParse(record.working);
     if (working.success) found.push(check(record, working.data, path));
-    for (const [key, inner] of Object.entries(record)) if (key !== 'working') visit(inner, path === '' ? key : `${path}.${key}`);
+    for (const [key, inner] of Object.entries(record))
+      if (key !== 'working') visit(inner, path === '' ? key : `${path}.${key}`);
   };
   visit(root, '');
   return found;
@@ -45,5 +46,11 @@ function check(record: Record<string, unknown>, working: Working, path: string):
   } catch (error) {
     evaluated = error instanceof Error ? error.message : String(error);
   }
-  return { path, figure: figure?.toString() ?? 'none', evaluated, agrees, words: `${working.words} [${working.formula}]` };
+  return {
+    path,
+    figure: figure?.toString() ?? 'none',
+    evaluated,
+    agrees,
+    words: `${working.words} [${working.formula}]`,
+  };
 }

@@ -25,14 +25,16 @@ for (const point of printed.position.byCycle) {
   running += point.addedCents;
   const own = cycles.get(point.cycle) ?? 0;
   if (own !== point.addedCents) faults.push(`cycle ${point.cycle}: entries add to ${own}, printed ${point.addedCents}`);
-  if (running !== point.cashSoFarCents) faults.push(`cycle ${point.cycle}: cash so far is ${running}, printed ${point.cashSoFarCents}`);
+  if (running !== point.cashSoFarCents)
+    faults.push(`cycle ${point.cycle}: cash so far is ${running}, printed ${point.cashSoFarCents}`);
   const settled =
     point.cashSoFarCents +
     point.loanPayoffCents +
     point.creditStillToComeCents +
     point.incentiveOwedCents +
     point.utilityBankCents;
-  if (settled !== point.settledTodayCents) faults.push(`cycle ${point.cycle}: settled today is ${settled}, printed ${point.settledTodayCents}`);
+  if (settled !== point.settledTodayCents)
+    faults.push(`cycle ${point.cycle}: settled today is ${settled}, printed ${point.settledTodayCents}`);
   cycles.delete(point.cycle);
 }
 for (const key of cycles.keys()) faults.push(`entries name cycle ${key}, which the position does not hold`);
@@ -44,7 +46,8 @@ for (const cycle of printed.cycles) {
   for (const entries of Object.values(printed.books)) {
     for (const entry of entries) if (ids.has(entry.id) && entry.basis !== 'memo') sum += entry.amountCents;
   }
-  if (sum !== cycle.addedCents) faults.push(`cycle ${cycle.to}: its entries add to ${sum}, printed ${cycle.addedCents}`);
+  if (sum !== cycle.addedCents)
+    faults.push(`cycle ${cycle.to}: its entries add to ${sum}, printed ${cycle.addedCents}`);
 }
 
 let byBook = 0;
@@ -52,7 +55,8 @@ for (const [book, sum] of books) {
   byBook += sum;
   const point = printed.position.byCycle.reduce((total, one) => total + one.books[book], 0);
   if (point !== sum) faults.push(`book ${book}: entries add to ${sum}, by cycle ${point}`);
-  if (printed.position.byBook[book] !== sum) faults.push(`book ${book}: printed ${printed.position.byBook[book]}, entries ${sum}`);
+  if (printed.position.byBook[book] !== sum)
+    faults.push(`book ${book}: printed ${printed.position.byBook[book]}, entries ${sum}`);
   const listed = printed.position.sums.all[book]?.amountCents ?? 0;
   if (listed !== sum) faults.push(`book ${book}: how it adds up says ${listed}, entries ${sum}`);
 }
@@ -61,5 +65,7 @@ const position = printed.position.cashSoFar.amountCents;
 if (byEntry !== byCycle || byEntry !== byBook || byEntry !== position) {
   faults.push(`by entry ${byEntry}, by cycle ${byCycle}, by book ${byBook}, printed ${position}`);
 }
-process.stdout.write(`${JSON.stringify({ byEntry, byCycle, byBook, position, entries: [...books.keys()].length, faults })}\n`);
+process.stdout.write(
+  `${JSON.stringify({ byEntry, byCycle, byBook, position, entries: [...books.keys()].length, faults })}\n`,
+);
 process.exitCode = faults.length === 0 ? 0 : 1;

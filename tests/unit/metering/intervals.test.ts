@@ -49,7 +49,15 @@ describe('interval data over a cycle', () => {
   });
 
   test('a missing day leaves them incomplete and is counted', () => {
-    const found = intervalEnergy(indexIntervals(month((_, at) => (at < 3 ? null : Array(24).fill(100))), FILES), 'export', FROM, TO);
+    const found = intervalEnergy(
+      indexIntervals(
+        month((_, at) => (at < 3 ? null : Array(24).fill(100))),
+        FILES,
+      ),
+      'export',
+      FROM,
+      TO,
+    );
     expect(found?.complete).toBe(false);
     expect(found?.missingDays).toBe(3);
     expect(found?.figure.coverage).toBe(0.9);
@@ -57,7 +65,10 @@ describe('interval data over a cycle', () => {
 
   test('a missing reading is neither zero nor the end of the day', () => {
     const found = intervalEnergy(
-      indexIntervals(month((_, at) => [at === 4 ? null : 100, ...Array(23).fill(100)]), FILES),
+      indexIntervals(
+        month((_, at) => [at === 4 ? null : 100, ...Array(23).fill(100)]),
+        FILES,
+      ),
       'export',
       FROM,
       TO,
@@ -69,7 +80,17 @@ describe('interval data over a cycle', () => {
 
   test('no data is nothing, not zero', () => {
     expect(intervalEnergy(indexIntervals([], FILES), 'export', FROM, TO)).toBeNull();
-    expect(intervalEnergy(indexIntervals(month(() => Array(24).fill(null)), FILES), 'export', FROM, TO)).toBeNull();
+    expect(
+      intervalEnergy(
+        indexIntervals(
+          month(() => Array(24).fill(null)),
+          FILES,
+        ),
+        'export',
+        FROM,
+        TO,
+      ),
+    ).toBeNull();
   });
 });
 
