@@ -78,7 +78,7 @@ function known<T>(value: T | null, text: string): T {
 }
 
 /** Values of fields that have passed their schema. */
-export const valueOf = {
+export const fieldValue = {
   cents: (text: string): Cents => known(parseDollars(text), text),
   centsOr: (text: string, none: Cents): Cents => (text.trim() === '' ? none : known(parseDollars(text), text)),
   centsOrNull: (text: string): Cents | null => (text.trim() === '' ? null : known(parseDollars(text), text)),

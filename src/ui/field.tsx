@@ -8,7 +8,7 @@ function useShell(error: string | undefined, hint: ReactNode) {
   return { id, describedBy: described === '' ? undefined : described };
 }
 
-/** A labelled text input with hint and error; spread react-hook-form's `register(…)` into it. */
+/** A labelled text input with hint and error; spread react-hook-form's `register(…)` into it. A unit stands after the input, `$` before. */
 export function Field({
   label,
   hint,
@@ -34,6 +34,7 @@ export function Field({
         </span>
       )}
       <span className="flex items-center gap-2">
+        {unit === '$' && <span className="hint">$</span>}
         <input
           {...input}
           id={id}
@@ -41,7 +42,7 @@ export function Field({
           aria-invalid={error ? true : undefined}
           className={`input ${className ?? ''}`}
         />
-        {unit && <span className="hint whitespace-nowrap">{unit}</span>}
+        {unit && unit !== '$' && <span className="hint whitespace-nowrap">{unit}</span>}
       </span>
     </div>
   );

@@ -61,7 +61,11 @@ export function StartPage() {
           error={formState.errors.name?.message}
           {...register('name')}
         />
-        <TimeZoneField current={watch('timeZone')} error={formState.errors.timeZone?.message} {...register('timeZone')} />
+        <TimeZoneField
+          current={watch('timeZone')}
+          error={formState.errors.timeZone?.message}
+          {...register('timeZone')}
+        />
         <p className="mt-6">
           <Button type="submit" busy={create.isPending}>
             Start the book
@@ -70,7 +74,8 @@ export function StartPage() {
       </form>
       {others.length > 0 && (
         <p className="hint mt-8">
-          You can open already: {others.map((one, index) => (
+          You can open already:{' '}
+          {others.map((one, index) => (
             <span key={one.id}>
               {index > 0 && ', '}
               <Link to={`/h/${one.id}`}>{one.name}</Link>

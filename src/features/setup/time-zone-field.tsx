@@ -20,7 +20,10 @@ export function guessedTimeZone(): string {
 }
 
 /** A household's time zone: the United States by name, the rest of the world by IANA name. */
-export function TimeZoneField({ current, ...rest }: { current: string; error?: string | undefined } & ComponentProps<'select'>) {
+export function TimeZoneField({
+  current,
+  ...rest
+}: { current: string; error?: string | undefined } & ComponentProps<'select'>) {
   const strange = current !== '' && !NAMED.has(current) && !OTHERS.includes(current);
   return (
     <SelectField {...rest} label="Time zone" hint="Days of your production file begin at midnight here.">

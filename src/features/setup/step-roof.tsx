@@ -1,0 +1,282 @@
+import { zodResolver } from '@hookform/resolvers/zod';
+import { useFieldArray, useForm, useWatch } from 'react-hook-form';
+import * as z from 'zod/mini';
+import { type SetupView, setupApi } from '#shared/api/setup.ts';
+import type { MeterFacts } from '#shared/facts/house.ts';
+import { sumWh } from '#shared/units/energy.ts';
+import { decimal, kwh } from '#src/lib/format.ts';
+import { newId } from '#src/lib/new-id.ts';
+import { fieldValue, plainDecimal, textOf, typed, typedWhole } from '#src/lib/typed-values.ts';
+import { Field, SelectField } from '#src/ui/field.tsx';
+import { AddRow, Columns, FormRow, Part } from './rows.tsx';
+import { StepForm } from './step-form.tsx';
+
+const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
+
+/** Which registers a meter has, as people say it. */
+const METER_KINDS = {
+  net: { words: 'Net meter: bought and sent out', channels: ['import', 'export'] },
+  import: { words: 'Bought only', channels: ['import'] },
+  export: { words: 'Sent out only', channels: ['export'] },
+  production: { words: 'Production meter', channels: ['production'] },
+  all: { words: 'All three', channels: ['import', 'export', 'production'] },
+} as const satisfies Record<string, { words: string; channels: readonly MeterFacts['channels'][number][] }>;
+type MeterKind = keyof typeof METER_KINDS;
+const KINDS = Object.keys(METER_KINDS) as MeterKind[];
+
+const roofForm = z
+  .object({
+    arrays: z.array(
+      z.object({
+        key: z.string(),
+        label: z.string().check(z.trim(), z.minLength(1, { error: 'Name the array, such as South.' }), z.maxLength(80)),
+        modules: typedWhole(1, 500),
+        watts: typedWhole(50, 1000),
+        tilt: typedWhole(0, 90, true),
+        facing: typedWhole(0, 359, true),
+      }),
+    ),
+    acKw: z.string().check(
+      z.refine((text) => text.trim() === '' || (wattsOf(text) ?? 0) >= 100, {
+        error: 'Write kilowatts such as 10, or leave it empty.',
+      }),
+    ),
+    months: z.array(z.object({ kwh: typed.kwhOrNone })),
+    meters: z.array(
+      z.object({
+        key: z.string(),
+        label: z.string().check(z.trim(), z.minLength(1, { error: 'Write the meter’s number.' })),
+        kind: z.enum(KINDS),
+        dials: typedWhole(3, 9),
+        multiplier: typed.rate,
+      }),
+    ),
+  })
+  .check(
+    z.refine((form) => [0, 12].includes(form.months.filter((month) => month.kwh.trim() !== '').length), {
+      error: 'Fill in all twelve months of the estimate, or none.',
+      path: ['months', 0, 'kwh'],
+    }),
+  );
+
+/** Kilowatts as typed in whole watts, by moving the point; null when finer than a watt or no number. */
+function wattsOf(text: string): number | null {
+  const plain = plainDecimal(text);
+  const match = plain === null ? null : /^(\d{1,6})(?:\.(\d{1,3})0*)?$/.exec(plain);
+  return match ? Number(match[1]) * 1000 + Number((match[2] ?? '').padEnd(3, '0')) : null;
+}
+
+function kilowatts(watts: number): string {
+  const whole = Math.floor(watts / 1000);
+  const rest = String(watts % 1000).padStart(3, '0');
+  return decimal(`${whole}.${rest.endsWith('0') ? rest.slice(0, 2) : rest}`);
+}
+
+function kindOf(meter: MeterFacts): MeterKind {
+  const has = (kind: MeterKind) =>
+    METER_KINDS[kind].channels.length === meter.channels.length &&
+    METER_KINDS[kind].channels.every((channel) => meter.channels.includes(channel));
+  return KINDS.find(has) ?? 'net';
+}
+
+const emptyArray = () => ({ key: newId(), label: '', modules: '', watts: '', tilt: '', facing: '' });
+
+export function RoofStep({ view }: { view: SetupView }) {
+  const { house } = view;
+  const form = useForm({
+    resolver: zodResolver(roofForm),
+    mode: 'onTouched',
+    defaultValues: {
+      arrays:
+        house.arrays.length === 0
+          ? [{ ...emptyArray(), label: 'Roof' }]
+          : house.arrays.map((array) => ({
+              key: array.id,
+              label: array.label,
+              modules: String(array.modules),
+              watts: String(array.moduleWatts),
+              tilt: textOf.whole(array.tiltDegrees),
+              facing: textOf.whole(array.facingDegrees),
+            })),
+      acKw: house.inverterAcWatts === null ? '' : kilowatts(house.inverterAcWatts).replace(/\.00$/, ''),
+      months: MONTHS.map((_, index) => ({ kwh: textOf.wh(house.expectedMonthlyWh?.[index] ?? null) })),
+      meters: house.meters.map((meter) => ({
+        key: meter.id,
+        label: meter.label,
+        kind: kindOf(meter),
+        dials: String(meter.dials),
+        multiplier: meter.multiplier,
+      })),
+    },
+  });
+  const arrays = useFieldArray({ control: form.control, name: 'arrays' });
+  const meters = useFieldArray({ control: form.control, name: 'meters' });
+  const { errors } = form.formState;
+  return (
+    <StepForm
+      step="roof"
+      form={form}
+      endpoint={setupApi.roof}
+      toBody={(values) => ({
+        arrays: values.arrays.map((array) => ({
+          id: array.key,
+          label: array.label.trim(),
+          modules: fieldValue.whole(array.modules),
+          moduleWatts: fieldValue.whole(array.watts),
+          tiltDegrees: fieldValue.wholeOrNull(array.tilt),
+          facingDegrees: fieldValue.wholeOrNull(array.facing),
+        })),
+        inverterAcWatts: wattsOf(values.acKw),
+        expectedMonthlyWh:
+          values.months[0]?.kwh.trim() === '' ? null : values.months.map((month) => fieldValue.wh(month.kwh)),
+        meters: values.meters.map((meter) => ({
+          id: meter.key,
+          label: meter.label.trim(),
+          channels: [...METER_KINDS[meter.kind].channels],
+          dials: fieldValue.whole(meter.dials),
+          multiplier: fieldValue.decimal(meter.multiplier),
+        })),
+      })}
+    >
+      {arrays.fields.map((row, index) => {
+        const at = errors.arrays?.[index];
+        const remove = arrays.fields.length > 1 ? () => arrays.remove(index) : null;
+        return (
+          <FormRow key={row.id} title={arrays.fields.length > 1 ? `Array ${index + 1}` : 'The array'} onRemove={remove}>
+            <Field label="Name" error={at?.label?.message} {...form.register(`arrays.${index}.label`)} />
+            <Columns>
+              <Field
+                label="Modules"
+                inputMode="numeric"
+                error={at?.modules?.message}
+                {...form.register(`arrays.${index}.modules`)}
+              />
+              <Field
+                label="Watts each"
+                inputMode="numeric"
+                unit="W"
+                error={at?.watts?.message}
+                {...form.register(`arrays.${index}.watts`)}
+              />
+              <Field
+                label="Tilt, if known"
+                inputMode="numeric"
+                unit="°"
+                error={at?.tilt?.message}
+                {...form.register(`arrays.${index}.tilt`)}
+              />
+              <Field
+                label="Facing, if known"
+                inputMode="numeric"
+                unit="° (south 180)"
+                error={at?.facing?.message}
+                {...form.register(`arrays.${index}.facing`)}
+              />
+            </Columns>
+          </FormRow>
+        );
+      })}
+      <Rating control={form.control} />
+      <AddRow onClick={() => arrays.append(emptyArray())}>Add an array that faces another way</AddRow>
+      <Field
+        label="Inverters together, AC"
+        hint="The sum of the AC ratings on the plates or the contract, if you have them."
+        inputMode="decimal"
+        unit="kW"
+        className="max-w-[160px]"
+        error={errors.acKw?.message}
+        {...form.register('acKw')}
+      />
+      <Part
+        title="The installer’s estimate by month, if you have it"
+        hint="From the contract or proposal. Each month is then held against it, and a shaded or failed string shows."
+      >
+        <div className="grid grid-cols-2 gap-x-6 sm:grid-cols-4">
+          {MONTHS.map((month, index) => (
+            <Field
+              key={month}
+              label={month}
+              inputMode="decimal"
+              unit="kWh"
+              className="input-number"
+              error={errors.months?.[index]?.kwh?.message}
+              {...form.register(`months.${index}.kwh`)}
+            />
+          ))}
+        </div>
+        <YearTotal control={form.control} />
+      </Part>
+      <Part
+        title="Meters, if you like"
+        hint="With dials and multiplier a register that turns over or is exchanged still adds up."
+      >
+        {meters.fields.map((row, index) => {
+          const at = errors.meters?.[index];
+          return (
+            <FormRow key={row.id} title={`Meter ${index + 1}`} onRemove={() => meters.remove(index)}>
+              <Columns>
+                <Field
+                  label="Number on its face"
+                  error={at?.label?.message}
+                  {...form.register(`meters.${index}.label`)}
+                />
+                <SelectField
+                  label="What it counts"
+                  error={at?.kind?.message}
+                  {...form.register(`meters.${index}.kind`)}
+                >
+                  {KINDS.map((kind) => (
+                    <option key={kind} value={kind}>
+                      {METER_KINDS[kind].words}
+                    </option>
+                  ))}
+                </SelectField>
+                <Field
+                  label="Dials or digits"
+                  inputMode="numeric"
+                  error={at?.dials?.message}
+                  {...form.register(`meters.${index}.dials`)}
+                />
+                <Field
+                  label="Multiplier"
+                  inputMode="decimal"
+                  error={at?.multiplier?.message}
+                  {...form.register(`meters.${index}.multiplier`)}
+                />
+              </Columns>
+            </FormRow>
+          );
+        })}
+        <AddRow onClick={() => meters.append({ key: newId(), label: '', kind: 'net', dials: '5', multiplier: '1' })}>
+          Add a meter
+        </AddRow>
+      </Part>
+    </StepForm>
+  );
+}
+
+type Control = ReturnType<typeof useForm<z.infer<typeof roofForm>>>['control'];
+
+/** "28 × 410 W = 11.48 kW DC", as it is typed. */
+function Rating({ control }: { control: Control }) {
+  const arrays = useWatch({ control, name: 'arrays' });
+  const known = arrays.filter((array) => /^\d+$/.test(array.modules.trim()) && /^\d+$/.test(array.watts.trim()));
+  if (known.length === 0) return <p className="hint mt-3">The rating appears here: modules × watts.</p>;
+  const watts = known.reduce((sum, array) => sum + Number(array.modules) * Number(array.watts), 0);
+  const parts = known.map((array) => `${Number(array.modules)} × ${Number(array.watts)} W`).join(' + ');
+  return (
+    <p className="mt-3" aria-live="polite">
+      {parts} = <b>{kilowatts(watts)} kW DC</b>
+    </p>
+  );
+}
+
+function YearTotal({ control }: { control: Control }) {
+  const months = useWatch({ control, name: 'months' });
+  if (months.some((month) => month.kwh.trim() === '' || !typed.kwh.safeParse(month.kwh).success)) return null;
+  return (
+    <p className="mt-3">
+      A year: <b>{kwh(sumWh(months.map((month) => fieldValue.wh(month.kwh))))} kWh</b>
+    </p>
+  );
+}
