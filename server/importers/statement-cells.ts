@@ -69,14 +69,17 @@ export function readNumber(text: string, mark: DecimalMark): DecimalText | null 
   return signed(sign, value.toString());
 }
 
+const padded = (_: string, year: string, month: string, date: string) =>
+  `${year}-${month.padStart(2, '0')}-${date.padStart(2, '0')}`;
+
 /** A date as `2025-08-14` or, as United States statements and spreadsheets write it, `8/14/2025`; null when it is none. */
 export function readDate(text: string): Day | null {
   const body = text.trim();
   const slashed = /^(\d{1,2})[/-](\d{1,2})[/-](\d{4}|\d{2})$/.exec(body);
-  if (!slashed) return parseDay(body);
+  if (!slashed) return parseDay(body.replace(/^(\d{4})-(\d{1,2})-(\d{1,2})$/, padded));
   const [, month = '', date = '', year = ''] = slashed;
   const fullYear = year.length === 2 ? `20${year}` : year;
-  return parseDay(`${fullYear}-${month.padStart(2, '0')}-${date.padStart(2, '0')}`);
+  return parseDay(padded(body, fullYear, month, date));
 }
 
 const ONLY_COMMA_DECIMAL = /^[-+(\u2212]?\s*\$?(\d{1,3}(\.\d{3})+|\d+),(\d{1,2}|\d{4,})\)?%?$/;

@@ -61,11 +61,12 @@ export function statementColumn(cell: string): StatementColumn | null {
   return STATEMENT_COLUMNS.find((column) => column === name) ?? ALIASES[name] ?? null;
 }
 
-/** True where a header row is that of a statement file, well or badly written: half of its needed columns are there. */
+/** True where a header row is that of a statement file, well or badly written: most of what sets the layout apart is there. */
 export function isStatementHeader(cells: readonly string[]): boolean {
+  const names = new Set(cells.map(plainName));
   const found = new Set(cells.map(statementColumn));
-  const needed = REQUIRED_COLUMNS.filter((column) => found.has(column));
-  return needed.length >= 3 || (found.has('record') && needed.length >= 2);
+  const needed = REQUIRED_COLUMNS.filter((column) => found.has(column)).length;
+  return (names.has('record') && needed >= 3) || (names.has('service_from') && names.has('service_to') && needed >= 3);
 }
 
 export type StatementHeader = { at: Map<StatementColumn, number>; cells: string[] };

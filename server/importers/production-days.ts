@@ -1,0 +1,115 @@
+import type { IntervalChannel, IntervalDay } from '#shared/facts/papers.ts';
+import { dayFromNumber } from '#shared/units/day.ts';
+import { type Wh, wh } from '#shared/units/energy.ts';
+import type { Scale, Step } from './production-energy.ts';
+import type { Grid } from './production-grid.ts';
+
+export type Days = {
+  days: Omit<IntervalDay, 'documentId'>[];
+  totalWh: Wh;
+  missingSteps: number;
+  clippedNegativeWh: Wh;
+  /** Days after the last with any energy that held only zeros; they are left out as missing. */
+  trailingZeroDays: number;
+  /** Energy of steps whose stored step is not whole, in Wh; it is left out with them. */
+  partialWh: Wh;
+};
+
+/** Whole Wh of an exact count, half up. */
+function wholeWh(amount: number, scale: Scale): Wh {
+  return wh(Math.floor((amount * scale.factor) / scale.divisor + 0.5));
+}
+
+/** Days of steps, in order; NaN where nothing was read. */
+function byDay(steps: readonly Step[], grid: Grid): Map<number, Float64Array> {
+  const days = new Map<number, Float64Array>();
+  for (const step of steps) {
+    let day = days.get(step.day);
+    if (day === undefined) {
+      day = new Float64Array(grid.stepsIn(step.day)).fill(Number.NaN);
+      days.set(step.day, day);
+    }
+    if (step.index < day.length) day[step.index] = step.amount;
+  }
+  return new Map([...days].sort(([a], [b]) => a - b));
+}
+
+/** Drops the days after the last with any energy: a file made before its last days were uploaded fills them with zeros. */
+function dropTrailingZeros(days: Map<number, Float64Array>): number {
+  const order = [...days.keys()];
+  let last = order.length - 1;
+  while (last >= 0 && (days.get(order[last] ?? 0) ?? []).every((amount) => amount === 0 || Number.isNaN(amount))) last -= 1;
+  if (last < 0) return 0;
+  for (const day of order.slice(last + 1)) days.delete(day);
+  return order.length - 1 - last;
+}
+
+/**
+ * Turns exact steps into whole Wh. Each stored value is the rounded running total less what was given before, so that the whole Wh add up to
+ * the true total and no sum from the start is out by more than half a Wh. Negative amounts count as nothing and are summed apart.
+ */
+export function daysOf(
+  steps: readonly Step[],
+  grid: Grid,
+  scale: Scale,
+  channel: IntervalChannel,
+  zerosMayBeMissing: boolean,
+): Days {
+  const exact = byDay(steps, grid);
+  const trailingZeroDays = zerosMayBeMissing ? dropTrailingZeros(exact) : 0;
+  const perStored = grid.storedStep / grid.step;
+  const minutes = grid.storedStep / 60;
+  const days: Days['days'] = [];
+  let rest = 0;
+  let total = 0;
+  let clipped = 0;
+  let partial = 0;
+  let firstSlot = -1;
+  let missing = 0;
+  let missingSince = 0;
+  let dayBefore = Number.NaN;
+  for (const [day, amounts] of exact) {
+    for (let gone = dayBefore + 1; gone < day; gone += 1) missingSince += Math.ceil(grid.stepsIn(gone) / perStored);
+    const count = Math.ceil(amounts.length / perStored);
+    const values: (number | null)[] = new Array(count).fill(null);
+    let held = false;
+    for (let slot = 0; slot < count; slot += 1) {
+      let sum = 0;
+      let read = 0;
+      let negative = 0;
+      const wanted = Math.min(perStored, amounts.length - slot * perStored);
+      for (let part = 0; part < wanted; part += 1) {
+        const amount = amounts[slot * perStored + part] ?? Number.NaN;
+        if (Number.isNaN(amount)) continue;
+        read += 1;
+        if (amount < 0) negative -= amount;
+        else sum += amount;
+      }
+      if (read < wanted) {
+        partial += sum;
+        missingSince += 1;
+        continue;
+      }
+      clipped += negative;
+      rest += sum * scale.factor;
+      const whole = Math.floor((rest + scale.divisor / 2) / scale.divisor);
+      rest -= whole * scale.divisor;
+      values[slot] = whole;
+      total += whole;
+      held = true;
+      if (firstSlot >= 0) missing += missingSince;
+      firstSlot = slot;
+      missingSince = 0;
+    }
+    if (held) days.push({ channel, day: dayFromNumber(day), minutes, values });
+    dayBefore = day;
+  }
+  return {
+    days,
+    totalWh: wh(total),
+    missingSteps: missing,
+    clippedNegativeWh: wholeWh(clipped, scale),
+    trailingZeroDays,
+    partialWh: wholeWh(partial, scale),
+  };
+}
