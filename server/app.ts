@@ -13,8 +13,11 @@ import { sendProblem } from './http/problems.ts';
 import { requestLog } from './http/request-log.ts';
 import { sameOriginOnly } from './http/same-origin.ts';
 import { securityHeaders } from './http/security-headers.ts';
+import { creditRoutes } from './routes/credit-routes.ts';
 import { cyclesRoutes } from './routes/cycles-routes.ts';
 import { logRoutes } from './routes/log-routes.ts';
+import { moneyRoutes } from './routes/money-routes.ts';
+import { peopleRoutes } from './routes/people-routes.ts';
 import { positionRoutes } from './routes/position-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
 import { setupRoutes } from './routes/setup-routes.ts';
@@ -55,6 +58,9 @@ export function createApp(deps: Deps): App {
   cyclesRoutes(api, deps);
   positionRoutes(api, deps);
   logRoutes(api, deps);
+  moneyRoutes(api, deps);
+  creditRoutes(api, deps);
+  peopleRoutes(api, deps, sessions, limits);
   app.use(api.router);
 
   app.use('/api', (_req, res) => sendProblem(res, problem('not-found')));

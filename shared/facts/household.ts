@@ -66,6 +66,21 @@ export const householdExport = z.object({
   today: daySchema,
   facts: householdFacts,
   documentBytes: z.record(z.string(), z.string()),
+  /** What is no input of the ledger and still must not be lost: how far the set-up got, and rows left out of a file with the reason. */
+  record: z.optional(
+    z.object({
+      steps: z.array(z.object({ step: z.string(), state: z.enum(['open', 'done', 'skipped']) })),
+      rejectedRows: z.array(
+        z.object({
+          documentId: z.string(),
+          row: z.nullable(z.int()),
+          column: z.nullable(z.string()),
+          found: z.nullable(z.string()),
+          reason: z.string(),
+        }),
+      ),
+    }),
+  ),
 });
 export type HouseholdExport = z.infer<typeof householdExport>;
 

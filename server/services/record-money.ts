@@ -1,0 +1,80 @@
+import type * as z from 'zod/mini';
+import type { costBody, loanPaymentBody, receiptBody } from '#shared/api/money.ts';
+import { fail, type Result, succeed } from '#shared/problem.ts';
+import { dollarsText } from '#shared/units/cents.ts';
+import type { Tx } from '../db/client.ts';
+import { readCosts, readIncentive, readLoan } from '../db/facts/read-money.ts';
+import {
+  deleteCost,
+  deleteLoanPayment,
+  deleteReceipt,
+  insertCost,
+  insertLoanPayment,
+  insertReceipt,
+} from '../db/facts/write-money.ts';
+import type { Actor, Deps } from '../deps.ts';
+import { newId } from '../ids.ts';
+import { fieldFault } from './field-fault.ts';
+import { writeHousehold } from './write-household.ts';
+
+type MoneyDeps = Pick<Deps, 'db' | 'clock'>;
+
+/** Records a payment of the loan as it was made. */
+export function addLoanPayment(deps: MoneyDeps, actor: Actor, body: z.infer<typeof loanPaymentBody>): Result<null> {
+  const loan = readLoan(deps.db, actor.householdId);
+  if (loan === null) return fail('conflict', 'Enter the loan first.');
+  if (body.on < loan.fundedOn) {
+    return fail('invalid-fields', null, [fieldFault('on', 'A payment cannot come before the loan was funded.')]);
+  }
+  if (body.extraPrincipalCents > body.amountCents) {
+    return fail('invalid-fields', null, [
+      fieldFault('extraPrincipalCents', 'The extra principal is a part of the payment and cannot be more than it.'),
+    ]);
+  }
+  const about = `${body.on} ${dollarsText(body.amountCents)}`;
+  return writeHousehold(deps, actor, { action: 'loan-payment-added', about }, (tx) => {
+    insertLoanPayment(tx, actor.householdId, { id: newId(), ...body });
+    return succeed(null);
+  });
+}
+
+/** Records money received from the incentive's payer. */
+export function addReceipt(deps: MoneyDeps, actor: Actor, body: z.infer<typeof receiptBody>): Result<null> {
+  if (readIncentive(deps.db, actor.householdId) === null) return fail('conflict', 'Enter the incentive first.');
+  const about = `${body.on} ${dollarsText(body.amountCents)}`;
+  return writeHousehold(deps, actor, { action: 'receipt-added', about }, (tx) => {
+    insertReceipt(tx, actor.householdId, { id: newId(), ...body });
+    return succeed(null);
+  });
+}
+
+/** Records a cost or an income outside the other books. */
+export function addCost(deps: MoneyDeps, actor: Actor, body: z.infer<typeof costBody>): Result<null> {
+  const about = `${body.on} ${body.kind} ${dollarsText(body.amountCents)}`;
+  return writeHousehold(deps, actor, { action: 'cost-added', about }, (tx) => {
+    insertCost(tx, actor.householdId, { id: newId(), ...body, documentId: null });
+    return succeed(null);
+  });
+}
+
+function remove(deps: MoneyDeps, actor: Actor, action: string, id: string, work: (tx: Tx) => boolean): Result<null> {
+  return writeHousehold(deps, actor, { action, about: id }, (tx) =>
+    work(tx) ? succeed(null) : fail('not-found', 'This entry is not there any more.'),
+  );
+}
+
+export function removeLoanPayment(deps: MoneyDeps, actor: Actor, id: string): Result<null> {
+  return remove(deps, actor, 'loan-payment-removed', id, (tx) => deleteLoanPayment(tx, actor.householdId, id));
+}
+
+export function removeReceipt(deps: MoneyDeps, actor: Actor, id: string): Result<null> {
+  return remove(deps, actor, 'receipt-removed', id, (tx) => deleteReceipt(tx, actor.householdId, id));
+}
+
+export function removeCost(deps: MoneyDeps, actor: Actor, id: string): Result<null> {
+  const known = readCosts(deps.db, actor.householdId).find((cost) => cost.id === id);
+  const about = known === undefined ? id : `${known.on} ${known.kind} ${dollarsText(known.amountCents)}`;
+  return writeHousehold(deps, actor, { action: 'cost-removed', about }, (tx) =>
+    deleteCost(tx, actor.householdId, id) ? succeed(null) : fail('not-found', 'This entry is not there any more.'),
+  );
+}

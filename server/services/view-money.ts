@@ -1,0 +1,78 @@
+import type { MoneyView } from '#shared/api/money.ts';
+import type { BookId, Entry } from '#shared/books/book.ts';
+import { levelPayment, loanPayoff, loanSchedule } from '#shared/books/loan.ts';
+import { governingEnd, insuranceEnds } from '#shared/books/mortgage-insurance.ts';
+import { INCOME_KINDS } from '#shared/facts/house.ts';
+import { type Cents, negateCents, sumCents } from '#shared/units/cents.ts';
+import type { Deps } from '../deps.ts';
+import { type HouseholdLedger, ledgerOf } from './ledger-of.ts';
+
+function sumOf(entries: readonly Entry[], book: BookId, counted: boolean): Cents {
+  return sumCents(
+    entries
+      .filter((entry) => entry.book === book && (entry.basis !== 'memo') === counted)
+      .map((entry) => entry.amountCents),
+  );
+}
+
+function loanView({ facts, ledger, today }: HouseholdLedger): MoneyView['loan'] {
+  const { loan } = facts;
+  if (loan === null) return null;
+  const schedule = loanSchedule(loan).map((row) => ({
+    number: row.number,
+    on: row.on,
+    paymentCents: row.paymentCents,
+    interestCents: row.interestCents,
+    principalCents: row.principalCents,
+    balanceCents: row.balanceCents,
+    recorded: row.recorded,
+    past: row.on <= today,
+  }));
+  return {
+    facts: loan,
+    paymentCents: levelPayment(loan.principalCents, loan.annualRate, loan.termMonths),
+    payoffCents: loanPayoff(loan, today).amountCents,
+    payoffOn: today,
+    paidCents: negateCents(sumOf(ledger.entries, 'loan', true)),
+    interestPaidCents: sumCents(schedule.filter((row) => row.past).map((row) => row.interestCents)),
+    lastPaymentOn: schedule.at(-1)?.on ?? null,
+    schedule,
+  };
+}
+
+function insuranceView({ facts, ledger }: HouseholdLedger): MoneyView['insurance'] {
+  const { mortgage } = facts;
+  if (mortgage === null) return null;
+  return {
+    facts: mortgage,
+    ends: insuranceEnds(mortgage).map(({ rule, on, words }) => ({ rule, on, words })),
+    governs: mortgage.insurance === null ? null : governingEnd(mortgage).rule,
+    avoidedCents: sumOf(ledger.entries, 'insurance', true),
+  };
+}
+
+function incentiveView({ facts, ledger }: HouseholdLedger): MoneyView['incentive'] {
+  if (facts.incentive === null) return null;
+  return {
+    facts: facts.incentive,
+    earnedCents: sumOf(ledger.entries, 'incentive', false),
+    receivedCents: sumOf(ledger.entries, 'incentive', true),
+    owedCents: ledger.position.settledParts.incentiveOwed.amountCents,
+    earned: ledger.entries.filter((entry) => entry.book === 'incentive' && entry.basis === 'memo'),
+  };
+}
+
+/** Loan, mortgage insurance, incentive and costs as they stand today. */
+export function viewMoney(deps: Pick<Deps, 'db' | 'clock'>, householdId: string): MoneyView {
+  const household = ledgerOf(deps, householdId);
+  const { costs } = household.facts;
+  const isIncome = (cost: (typeof costs)[number]) => INCOME_KINDS.includes(cost.kind);
+  return {
+    loan: loanView(household),
+    insurance: insuranceView(household),
+    incentive: incentiveView(household),
+    costs,
+    costsCents: sumCents(costs.filter((cost) => !isIncome(cost)).map((cost) => cost.amountCents)),
+    incomeCents: sumCents(costs.filter(isIncome).map((cost) => cost.amountCents)),
+  };
+}
