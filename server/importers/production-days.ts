@@ -34,14 +34,26 @@ function byDay(steps: readonly Step[], grid: Grid): Map<number, Float64Array> {
   return new Map([...days].sort(([a], [b]) => a - b));
 }
 
-/** Drops the days after the last with any energy: a file made before its last days were uploaded fills them with zeros. */
-function dropTrailingZeros(days: Map<number, Float64Array>): number {
+/** Hours after local midnight at which the sun is up on any day of the year (common practice, no source). */
+const MIDDAY_FROM = 10 * 3600;
+const MIDDAY_TO = 14 * 3600;
+
+/**
+ * Drops the days after the last with any energy: a file made before its last days were uploaded fills them with zeros. Zeros of a night alone
+ * are what a night gives, and stay.
+ */
+function dropTrailingZeros(days: Map<number, Float64Array>, grid: Grid): number {
   const order = [...days.keys()];
+  const isZero = (amount: number) => amount === 0 || Number.isNaN(amount);
   let last = order.length - 1;
-  while (last >= 0 && (days.get(order[last] ?? 0) ?? []).every((amount) => amount === 0 || Number.isNaN(amount))) last -= 1;
-  if (last < 0) return 0;
-  for (const day of order.slice(last + 1)) days.delete(day);
-  return order.length - 1 - last;
+  while (last >= 0 && (days.get(order[last] ?? 0) ?? []).every(isZero)) last -= 1;
+  const trailing = order.slice(last + 1);
+  const atMidday = (amount: number, index: number) =>
+    !Number.isNaN(amount) &&
+    (grid.stepsIn(0) === 1 || (index * grid.step >= MIDDAY_FROM && index * grid.step < MIDDAY_TO));
+  if (last < 0 || !trailing.some((day) => days.get(day)?.some(atMidday))) return 0;
+  for (const day of trailing) days.delete(day);
+  return trailing.length;
 }
 
 /**
@@ -56,7 +68,7 @@ export function daysOf(
   zerosMayBeMissing: boolean,
 ): Days {
   const exact = byDay(steps, grid);
-  const trailingZeroDays = zerosMayBeMissing ? dropTrailingZeros(exact) : 0;
+  const trailingZeroDays = zerosMayBeMissing ? dropTrailingZeros(exact, grid) : 0;
   const perStored = grid.storedStep / grid.step;
   const minutes = grid.storedStep / 60;
   const days: Days['days'] = [];
