@@ -18,6 +18,7 @@ export function filesBelow(folder: string): string[] {
 }
 
 const YEARS = ['2024', '2025', '2026'];
+const DOWNLOADS = ['2025-08', '2026-08', '2026-10'];
 const rowsOf = (text: string) => text.split(/\r?\n/).filter((row) => row !== '');
 
 /** kWh with three decimals as Wh, without going through a float. */
@@ -31,12 +32,12 @@ export type SampleHour = { day: string; clock: string; productionWh: number; imp
 
 /** The hourly record, read by this test alone: production meter, delivered, received. */
 export function sampleHours(): SampleHour[] {
-  return YEARS.flatMap((year) => {
-    const production = rowsOf(sampleText(`readings/production-meter-${year}.csv`)).slice(1);
-    const delivered = rowsOf(sampleText(`readings/delivered-${year}.csv`)).slice(3);
-    const received = rowsOf(sampleText(`readings/received-${year}.csv`)).slice(3);
+  return DOWNLOADS.flatMap((name) => {
+    const production = rowsOf(sampleText(`readings/production-meter-${name}.csv`)).slice(1);
+    const delivered = rowsOf(sampleText(`readings/delivered-${name}.csv`)).slice(3);
+    const received = rowsOf(sampleText(`readings/received-${name}.csv`)).slice(3);
     if (production.length !== delivered.length || production.length !== received.length) {
-      throw new Error(`the files of ${year} differ in length`);
+      throw new Error(`the files of ${name} differ in length`);
     }
     return production.map((row, at) => {
       const [stamp = '', made = ''] = row.split(',');
@@ -44,7 +45,7 @@ export function sampleHours(): SampleHour[] {
       const [day = '', clock = ''] = stamp.split(' ');
       const [month = '', date = '', fullYear = ''] = (bought?.[0] ?? '').split('/');
       if (`${fullYear}-${month.padStart(2, '0')}-${date.padStart(2, '0')}` !== day) {
-        throw new Error(`row ${at} of ${year}: the dates differ`);
+        throw new Error(`row ${at} of ${name}: the dates differ`);
       }
       return {
         day,
@@ -60,8 +61,8 @@ export function sampleHours(): SampleHour[] {
 export type MonitorHour = { stamp: string; watts: number };
 
 export function monitorHours(): MonitorHour[] {
-  return YEARS.flatMap((year) =>
-    rowsOf(sampleText(`readings/monitor-${year}.csv`))
+  return DOWNLOADS.flatMap((name) =>
+    rowsOf(sampleText(`readings/monitor-${name}.csv`))
       .slice(1)
       .map((row) => {
         const [stamp = '', watts = ''] = row.split(',');
