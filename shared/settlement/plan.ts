@@ -15,6 +15,15 @@ const label = z.string().check(z.minLength(1), z.maxLength(120));
 const yearlyDay = z.string().check(z.regex(/^(0[1-9]|1[0-2])-(0[1-9]|[12]\d|3[01])$/));
 const clock = z.string().check(z.regex(/^([01]\d|2[0-3]):[0-5]\d$|^24:00$/));
 
+/** Counts are numbers; a plan may write one as text, as it writes its other figures. */
+const wholeNumber = z.union([
+  z.int().check(z.minimum(0)),
+  z.pipe(
+    z.string().check(z.regex(/^\d{1,4}$/)),
+    z.transform((text) => Number(text)),
+  ),
+]);
+
 export const nettingSchema = z.enum(['none', '15min', 'hour', 'period', 'cycle']);
 export type Netting = z.infer<typeof nettingSchema>;
 
@@ -112,7 +121,7 @@ export const trueUpSchema = z.object({
     z.nullable(
       z.union([
         z.object({ amount: decimalText }),
-        z.object({ averageCycles: z.int(), usage: z.enum(['import', 'load', 'net']) }),
+        z.object({ averageCycles: wholeNumber, usage: z.enum(['import', 'load', 'net']) }),
       ]),
     ),
     null,

@@ -92,11 +92,12 @@ export const settlementSchema = z.object({
 });
 export type Settlement = z.infer<typeof settlementSchema>;
 
-/** A balance brought into a cycle: plain, by period, or in lots (oldest first). */
+/** A balance brought into a cycle: plain, by period, in lots (oldest first), or in lots by period. */
 export const openingBalance = z.union([
   decimalText,
   z.record(z.string(), decimalText),
   z.object({ lots: z.array(lotSchema) }),
+  z.record(z.string(), z.object({ lots: z.array(lotSchema) })),
 ]);
 export type OpeningBalance = z.infer<typeof openingBalance>;
 

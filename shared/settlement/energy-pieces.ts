@@ -1,0 +1,108 @@
+import { periodExists } from './calendar.ts';
+import type { Cycle } from './cycle-flows.ts';
+import { basisInput, canUseIntervals, type Figure, figuresOf } from './energy-figures.ts';
+import { dayInputs, type EnergyItem, mustPrice, type Share } from './energy-share.ts';
+import { type Part, splitCycle } from './parts.ts';
+import type { Piece } from './piece.ts';
+import { plus, type Qty, roundToWhole, times } from './quantity.ts';
+import { limitsAt, type Price } from './rates-in-force.ts';
+import { tierPieces } from './tier-pieces.ts';
+
+/** Kilowatt-hours as a statement prints them, to be priced in place of the cycle's own; `tier`: all of them at that tier's rate. */
+export type BilledEnergy = { figure: Figure; tier: number | null };
+
+/** What an item priced by the kWh comes to in a cycle: a piece for each part, period and tier, also at zero. */
+export function energyPieces(cycle: Cycle, item: EnergyItem, billed: BilledEnergy | null = null): Piece[] {
+  const parts = splitCycle(cycle, item.pricing, billed === null && canUseIntervals(cycle, item));
+  const pieces: Piece[] = [];
+  const given = new Map<string, { days: number; whole: Qty }>();
+  for (const part of parts) {
+    const shares: Share[] = [];
+    for (const figure of billed ? [billed.figure] : figuresOf(cycle, item, part.group)) {
+      const share = shareOf(cycle, figure, part, parts, given);
+      if (share) shares.push(share);
+    }
+    const tier = billed?.tier ?? null;
+    const tiered = item.pricing.tiers.length > 0 && tier === null;
+    const limits = tiered ? limitsAt(item.pricing, part.rateDay, part.season) : null;
+    const split = parts.length > 1;
+    if (limits) {
+      pieces.push(...tierPieces(cycle, item, part, split, shares, limits));
+      continue;
+    }
+    for (const share of shares) {
+      const price = mustPrice(item, item.label, part, share.period, tier);
+      pieces.push(energyPiece(part, split, share, price));
+    }
+  }
+  return pieces;
+}
+
+function energyPiece(part: Part, split: boolean, share: Share, price: Price): Piece {
+  const { period, n, d, top, bottom } = share;
+  const formula = bottom === '' ? `${top} * ${price.formula}` : `${top} * ${price.formula} / ${bottom}`;
+  return {
+    part,
+    split,
+    period,
+    tier: null,
+    n,
+    d,
+    unit: 'kWh',
+    price,
+    formula,
+    inputs: [...share.inputs, ...price.inputs],
+  };
+}
+
+/**
+ * The part's share of a figure by days: multiplied first, divided last. A period that has no hours in the season of some parts is shared among
+ * the others. Whole kWh are rounded on the running sum, so that the parts add up to what is shared.
+ */
+function shareOf(
+  cycle: Cycle,
+  figure: Figure,
+  part: Part,
+  parts: readonly Part[],
+  given: Map<string, { days: number; whole: Qty }>,
+): Share | null {
+  const { period } = figure;
+  const days = parts.length === 1 ? part.days : daysHeld(cycle, period, part, parts);
+  if (days === null) return null;
+  if (days === part.days)
+    return { period, n: figure.n, d: figure.d, top: figure.top, bottom: figure.bottom, inputs: figure.inputs };
+
+  const n = times(figure.n, part.days);
+  const d = times(figure.d, days);
+  if (cycle.prepared.plan.rounding.kWh === 'whole') {
+    const key = `${part.group.from} ${period ?? ''}`;
+    const before = given.get(key) ?? { days: 0, whole: 0 };
+    const through = { days: before.days + part.days, whole: roundToWhole(times(figure.n, before.days + part.days), d) };
+    given.set(key, through);
+    const whole = plus(through.whole, times(before.whole, -1));
+    const input = basisInput('kWh', `${figure.label}, ${part.days} of ${days} days, whole kWh`, whole, figure.basis);
+    return { period, n: whole, d: 1, top: 'kWh', bottom: '', inputs: [input] };
+  }
+  return {
+    period,
+    n,
+    d,
+    top: `${figure.top} * days`,
+    bottom: figure.bottom === '' ? 'allDays' : `${figure.bottom} / allDays`,
+    inputs: [...figure.inputs, ...dayInputs(part.days, days)],
+  };
+}
+
+/** The days a figure is shared over: of the parts in which its period has hours, or of all where none says so; null when this part has none. */
+function daysHeld(cycle: Cycle, period: string | null, part: Part, parts: readonly Part[]): number | null {
+  const group = parts.filter((other) => other.group === part.group);
+  const held = group.filter((other) => holds(cycle, period, other));
+  if (held.length > 0 && !held.includes(part)) return null;
+  return (held.length > 0 ? held : group).reduce((sum, other) => sum + other.days, 0);
+}
+
+function holds(cycle: Cycle, period: string | null, part: Part): boolean {
+  if (period === null) return true;
+  const found = cycle.prepared.period.get(period);
+  return found !== undefined && periodExists(found, part.season);
+}
