@@ -6,12 +6,11 @@ import { type DocumentFacts, type IntervalChannel, intervalDay } from '#shared/f
 import { type Fault, faultSchema } from '#shared/problem.ts';
 import { daySchema } from '#shared/units/day.ts';
 import { whSchema } from '#shared/units/energy.ts';
-import type { ProductionReading } from '../importers/contract.ts';
 import type { Reader } from './client.ts';
 import { draftFiles, draftReadings, draftStatements } from './schema/drafts.ts';
 import { documents } from './schema/papers.ts';
 
-/** A reading as it is stored between requests; the type says that it is the importers' own. */
+/** What an importer made of an interval or register file, as it is stored between requests. */
 const readingSchema = z.object({
   mapping: productionMapping,
   doubts: z.array(z.object({ field: z.string(), message: z.string() })),
@@ -29,7 +28,7 @@ const readingSchema = z.object({
   statedTotalWh: z.nullable(whSchema),
   unallocatedWh: whSchema,
   faults: z.array(faultSchema),
-}) satisfies z.ZodMiniType<ProductionReading>;
+});
 const faultsSchema = z.array(faultSchema);
 
 export type DraftFile = {
@@ -56,7 +55,7 @@ export type DraftedReading = {
   fileName: string;
   channel: IntervalChannel;
   keepGoodRows: boolean;
-  reading: ProductionReading;
+  reading: z.infer<typeof readingSchema>;
 };
 /** The log in progress. */
 export type Draft = {

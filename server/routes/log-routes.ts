@@ -3,7 +3,6 @@ import { intervalChannel } from '#shared/facts/papers.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
 import type { Actor, Deps } from '../deps.ts';
 import type { Api } from '../http/api.ts';
-import { statementTemplateCsv } from '../importers/statement-template.ts';
 import { addProductionFile, changeMapping } from '../services/log/add-production.ts';
 import {
   addStatementFile,
@@ -13,6 +12,7 @@ import {
 } from '../services/log/add-statement.ts';
 import { discardDraft, removeFile, setKeepGoodRows } from '../services/log/change-files.ts';
 import { postDraft } from '../services/log/post-draft.ts';
+import { statementTemplate } from '../services/log/statement-template.ts';
 import { viewDraft } from '../services/log/view-draft.ts';
 
 export function logRoutes(api: Api, deps: Deps): void {
@@ -47,11 +47,5 @@ export function logRoutes(api: Api, deps: Deps): void {
   );
   api.household(logApi.post, ({ actor, body }) => postDraft(deps, actor, body));
   api.household(logApi.discard, ({ actor }) => viewAfter(discardDraft(deps, actor), actor));
-  api.anyoneDownload(logApi.template, () =>
-    succeed({
-      fileName: 'statement-template.csv',
-      contentType: 'text/csv; charset=utf-8',
-      body: statementTemplateCsv(),
-    }),
-  );
+  api.anyoneDownload(logApi.template, () => succeed(statementTemplate()));
 }
