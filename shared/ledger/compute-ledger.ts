@@ -7,11 +7,13 @@ import { insuranceEntries } from '../books/mortgage-insurance.ts';
 import { creditEntries, creditLinesOf } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
 import { isComplete } from '../metering/cycle-energy.ts';
+import { computePosition } from '../position/compute-position.ts';
 import { placeEntries } from '../position/place.ts';
 import { isIncentiveInBill } from '../reconcile/electric-lines.ts';
 import { cents, sumCents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
-import { computePosition } from './compute-position.ts';
+import type { Wh } from '../units/energy.ts';
+import type { EnergyFigure } from './cycle.ts';
 import { type AssembledCycle, assembleCycles } from './cycles.ts';
 import type { Ledger } from './ledger.ts';
 import { needsOf } from './needs.ts';
@@ -36,9 +38,28 @@ export function computeLedger(facts: HouseholdFacts, { today }: { today: Day }):
     cycle.loanPayments = cycle.entries.filter((entry) => entry.book === 'loan' && entry.kind === 'payment').length;
   }
   const creditLines = facts.credit === null ? [] : creditLinesOf(facts.credit);
-  const position = computePosition(facts, { today, entries, assembled, closing });
+  const position = computePosition({
+    facts,
+    today,
+    entries,
+    cycles: assembled.map(({ cycle, utilityBank }) => ({
+      from: cycle.from,
+      to: cycle.to,
+      provisional: cycle.provisional,
+      utilityBank,
+      importWh: completeWh(cycle.energy.import),
+      exportWh: completeWh(cycle.energy.export),
+      productionWh: completeWh(cycle.energy.production),
+    })),
+    opening: closing,
+  });
   const needs = needsOf({ facts, assembled, entries, creditLines, position, today });
   return { today, cycles, entries, creditLines, position, needs };
+}
+
+/** An energy that covers its whole cycle; the projection repeats no part of one. */
+function completeWh(figure: EnergyFigure | null): Wh | null {
+  return isComplete(figure) ? figure.wh : null;
 }
 
 function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCycle[], today: Day): UnplacedEntry[] {

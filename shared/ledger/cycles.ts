@@ -15,7 +15,7 @@ import { facingLines } from './facing.ts';
 import { firstOpening, nextOpening, type SettledCycle, settleOne } from './settle-cycle.ts';
 import { usageBeforeRoof } from './use-before.ts';
 import { utilityBank } from './utility-bank.ts';
-import { billWithoutRoof, type WithoutRoofPlans } from './without-roof.ts';
+import { billWithoutRoof } from './without-roof.ts';
 
 /** A cycle before its entries are placed, with what the position and the "Needs you" list ask of it. */
 export type AssembledCycle = {
@@ -45,7 +45,6 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
   const runs = estimatedRuns(papers);
   const witnessed: WitnessedCycle[] = papers.map((paper) => witnessCycle(paper, index));
   const usage = usageBeforeRoof(facts.usageBefore, inForce, facts.house.switchOn);
-  const plans: WithoutRoofPlans = new Map();
   const cycles: AssembledCycle[] = [];
   let opening: Opening | null = null;
   let before: SettledCycle | null = null;
@@ -83,7 +82,7 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
         facing: facing.lines,
         billedDueCents: facing.billedDueCents,
         oursDueCents: facing.oursDueCents,
-        withoutRoof: billWithoutRoof(paper, metered.energy, settled.plan, usage, plans),
+        withoutRoof: billWithoutRoof(paper, metered.energy, settled.plan, usage),
         asItWas: billAsItWas(paper, facts.incentive),
         checks,
         entries: [],

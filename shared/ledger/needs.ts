@@ -4,10 +4,11 @@ import type { HouseholdFacts } from '../facts/household.ts';
 import type { Position } from '../position/position.ts';
 import { cents, subtractCents } from '../units/cents.ts';
 import { addDays, type Day, daysBetween } from '../units/day.ts';
+import { parseKwh, ZERO_WH } from '../units/energy.ts';
 import type { Cycle } from './cycle.ts';
 import type { AssembledCycle } from './cycles.ts';
 import type { Need } from './ledger.ts';
-import { sayCount, sayDate, sayDay, sayMoney, sayMonth } from './say.ts';
+import { sayCount, sayDate, sayDay, sayKwh, sayMoney, sayMonth } from './say.ts';
 
 /** As many as a person will look at; what is wrong comes first. */
 const MOST_NEEDS = 6;
@@ -60,10 +61,29 @@ function differingCycles({ assembled }: NeedsInput): Need[] {
           due && cycle.oursDueCents !== null
             ? billTitle(cycle)
             : `${possessive(cycle)} statement differs in one or more checks`,
-        detail: due?.cause ?? first?.cause ?? first?.title ?? 'Look at its checks.',
+        detail: quantityDetail(cycle) ?? due?.cause ?? first?.cause ?? first?.title ?? 'Look at its checks.',
         link: `cycles/${cycle.to}`,
       };
     });
+}
+
+/** "Billed 212 kWh exported; your meter and interval data agree on 256." Null where no billed quantity differs. */
+function quantityDetail(cycle: Cycle): string | null {
+  for (const [id, energy, word] of [
+    ['exportAgainstIntervals', cycle.energy.export, 'exported'],
+    ['importAgainstIntervals', cycle.energy.import, 'imported'],
+  ] as const) {
+    const check = cycle.checks.find((one) => one.check === id && one.verdict === 'differs' && one.accepted === null);
+    if (!check || check.stated === null || check.found === null) continue;
+    const byReads = check.title.endsWith('meter reads');
+    const witness = byReads
+      ? 'the meter reads give'
+      : energy?.from === 'register'
+        ? 'your meter and interval data agree on'
+        : 'your interval data give';
+    return `Billed ${sayKwh(parseKwh(check.stated) ?? ZERO_WH)} kWh ${word}; ${witness} ${sayKwh(parseKwh(check.found) ?? ZERO_WH)}.`;
+  }
+  return null;
 }
 
 function billTitle(cycle: Cycle): string {

@@ -1,7 +1,6 @@
 import type { UsageBefore } from '../facts/house.ts';
 import type { PlanInForce } from '../facts/household.ts';
 import { input, ownFigure } from '../metering/source.ts';
-import type { RatePlan } from '../settlement/plan.ts';
 import { settleCycle } from '../settlement/settle.ts';
 import { type CycleUsage, EMPTY_OPENING, type Settlement } from '../settlement/settlement.ts';
 import { planWithoutRoof } from '../settlement/without-roof.ts';
@@ -13,9 +12,6 @@ import type { CyclePaper } from './cycle-papers.ts';
 import { sayKwh } from './say.ts';
 import { estimateUse } from './use-before.ts';
 
-/** Plans without the roof, made once per plan in force. */
-export type WithoutRoofPlans = Map<PlanInForce, RatePlan>;
-
 /**
  * The bill for the same use without the roof, on the plan of the cycle's own dates (ledger.md §5.1): the measured use, else the same
  * month's use before the roof, else the yearly mean; never old dollars. A cycle split from its first statement is settled over the whole statement and
@@ -26,14 +22,13 @@ export function billWithoutRoof(
   energy: CycleEnergy,
   inForce: PlanInForce | null,
   before: readonly UsageBefore[],
-  plans: WithoutRoofPlans,
 ): Cycle['withoutRoof'] {
   if (inForce === null) return null;
   const measured = energy.use !== null && energy.use.wh >= 0 ? energy.use.wh : null;
   const estimated = measured === null ? estimateUse(before, paper.from, paper.to) : null;
   const useWh = measured ?? estimated?.wh ?? null;
   if (useWh === null) return null;
-  const plan = planOf(inForce, plans);
+  const plan = planWithoutRoof(inForce);
   const { split } = paper;
   const whole = split === null ? useWh : roundToWh(kwhOf(useWh).times(split.of).div(split.days));
   const settled = settleCycle(
@@ -96,14 +91,6 @@ function amount(
       basis: 'estimated',
     },
   };
-}
-
-function planOf(inForce: PlanInForce, plans: WithoutRoofPlans): RatePlan {
-  const known = plans.get(inForce);
-  if (known) return known;
-  const made = planWithoutRoof(inForce);
-  plans.set(inForce, made);
-  return made;
 }
 
 function usageWithout(from: CycleUsage['from'], to: CycleUsage['to'], useWh: Wh): CycleUsage {

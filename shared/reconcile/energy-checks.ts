@@ -82,17 +82,17 @@ export function channelCheck(context: CheckContext, channel: 'import' | 'export'
 function channelTexts(
   channel: 'import' | 'export',
   difference: Wh,
-  more: string | null,
+  reads: string | null,
 ): { cause: string; advice: string } {
   const size = `${sayKwh(wh(Math.abs(difference)))} kWh`;
   const way = difference < 0 ? 'less' : 'more';
-  const cause =
-    channel === 'export'
-      ? `It credits ${size} ${way} than your meter saw leave.`
-      : `It charges ${size} ${way} than your meter saw come in.`;
+  const write = 'Write to the utility with both figures, or accept the difference with a note.';
   return {
-    cause: more === null ? cause : `${cause} ${more}`,
-    advice: 'Write to the utility with both figures, or accept the difference with a note.',
+    cause:
+      channel === 'export'
+        ? `It credits ${size} ${way} than your meter saw leave.`
+        : `It charges ${size} ${way} than your meter saw come in.`,
+    advice: reads === null ? write : `${reads} ${write}`,
   };
 }
 
