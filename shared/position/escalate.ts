@@ -18,12 +18,32 @@ export function escalateRate(
     .toString();
 }
 
+/** Plans kept per plan: settling makes each ready once, so the same object must come back. */
+const MADE_AT_MOST = 120;
+const made = new WeakMap<RatePlan, Map<string, RatePlan>>();
+
 /**
  * The plan with every price raised: energy, fixed, per-day and per-kW charges, minimums, export credits and the prices a true-up pays. Percentages
  * (taxes), tier limits, caps, and an incentive's contracted rate stay.
  */
 export function escalatePlan(plan: RatePlan, rise: DecimalText, years: number): RatePlan {
   if (years === 0 || exact(rise).isZero()) return plan;
+  let ofPlan = made.get(plan);
+  if (!ofPlan) {
+    ofPlan = new Map();
+    made.set(plan, ofPlan);
+  }
+  const key = `${rise} ${years}`;
+  const known = ofPlan.get(key);
+  if (known) return known;
+  const raised = raisedPlan(plan, rise, years);
+  // Sliders try many rises; only the latest few are worth keeping.
+  if (ofPlan.size >= MADE_AT_MOST) ofPlan.clear();
+  ofPlan.set(key, raised);
+  return raised;
+}
+
+function raisedPlan(plan: RatePlan, rise: DecimalText, years: number): RatePlan {
   const raised = (rows: RateRow[]): RateRow[] =>
     rows.map((row) => ({ ...row, rate: escalateRate(row.rate, rise, years) }));
   return {

@@ -1,5 +1,5 @@
 import type { UsageBefore } from '../facts/house.ts';
-import { type Day, dayNumber, dayOf, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
+import { type Day, dayOfMonth, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
 import { type Wh, wh } from '../units/energy.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { DecimalText } from '../units/rate-text.ts';
@@ -54,14 +54,16 @@ export function monthlyEnergy(input: MonthlyEnergyInput): MonthlyEnergy | null {
   for (const cycle of input.cycles) {
     const age = Math.max(0, Math.floor(daysBetween(cycle.to, input.lastTo) / DAYS_PER_YEAR));
     const { importWh, exportWh, productionWh } = cycle;
-    if (productionWh !== null) gather(production, age, cycle, productionWh);
-    if (productionWh === null || exportWh === null) continue;
-    gather(exported, age, cycle, exportWh);
-    gather(producedWithExport, age, cycle, productionWh);
-    if (importWh !== null) gather(use, age, cycle, importWh + productionWh - exportWh);
+    if (productionWh === null) continue;
+    const segments = segmentsOf(cycle.from, cycle.to);
+    gather(production, age, segments, productionWh);
+    if (exportWh === null) continue;
+    gather(exported, age, segments, exportWh);
+    gather(producedWithExport, age, segments, productionWh);
+    if (importWh !== null) gather(use, age, segments, importWh + productionWh - exportWh);
   }
   const before: Heaps = new Map();
-  for (const bill of input.usageBefore) gather(before, 0, bill, bill.importWh);
+  for (const bill of input.usageBefore) gather(before, 0, segmentsOf(bill.from, bill.to), bill.importWh);
 
   const aged = MONTHS.map((month) => agedMean(production, month, input.degradation));
   const made = fillProduction(aged, input.expectedMonthlyWh);
@@ -79,36 +81,44 @@ export function monthlyEnergy(input: MonthlyEnergyInput): MonthlyEnergy | null {
   };
 }
 
+/** The days of a span that lie in one calendar month, and how many of its days are done with it. */
+type Segment = { month: number; days: number; done: number };
+
+function segmentsOf(from: Day, to: Day): Segment[] {
+  const days = daysBetween(from, to);
+  const segments: Segment[] = [];
+  let year = yearOf(from);
+  let month = monthOf(from);
+  let left = daysInMonth(year, month) - dayOfMonth(from) + 1;
+  let done = 0;
+  while (done < days) {
+    const part = Math.min(left, days - done);
+    done += part;
+    segments.push({ month: month - 1, days: part, done });
+    month = month === 12 ? 1 : month + 1;
+    if (month === 1) year += 1;
+    left = daysInMonth(year, month);
+  }
+  return segments;
+}
+
 /** Shares a span's energy by days between its calendar months, in whole Wh that add up. */
-function gather(heaps: Heaps, age: number, span: { from: Day; to: Day }, energy: number): void {
-  const days = daysBetween(span.from, span.to);
-  if (days <= 0) return;
+function gather(heaps: Heaps, age: number, segments: readonly Segment[], energy: number): void {
   let months = heaps.get(age);
   if (!months) {
     months = MONTHS.map(() => ({ energy: 0, days: 0 }));
     heaps.set(age, months);
   }
-  const start = dayNumber(span.from);
-  let year = yearOf(span.from);
-  let month = monthOf(span.from);
-  let done = 0;
+  const days = segments.at(-1)?.done ?? 0;
   let given = 0;
-  while (done < days) {
-    const monthEnd = dayNumber(dayOf(year, month + 1, 1)) - start;
-    const upTo = Math.min(days, monthEnd);
-    const share = Math.round((energy * upTo) / days);
-    const heap = months[month - 1];
+  for (const segment of segments) {
+    const share = Math.round((energy * segment.done) / days);
+    const heap = months[segment.month];
     if (heap) {
       heap.energy += share - given;
-      heap.days += upTo - done;
+      heap.days += segment.days;
     }
     given = share;
-    done = upTo;
-    month += 1;
-    if (month > 12) {
-      month = 1;
-      year += 1;
-    }
   }
 }
 

@@ -145,7 +145,9 @@ function flowsAfter(input: ProjectionInput, periods: readonly Period[], lastTo: 
   if (facts.credit) {
     for (const part of creditExpected(facts.credit, today)) add(part.on, 'credit', part.amountCents);
   }
-  for (const part of upkeepOf(facts.assumptions.upkeepYearlyCents, periods)) add(part.on, 'upkeep', -part.cents);
+  const { upkeepYearlyCents } = facts.assumptions;
+  const upkeep = upkeepYearlyCents === 0 ? [] : upkeepOf(upkeepYearlyCents, periods);
+  for (const part of upkeep) add(part.on, 'upkeep', -part.cents);
   return flows.sort((a, b) => (a.on < b.on ? -1 : a.on > b.on ? 1 : 0));
 }
 
