@@ -13,6 +13,22 @@ export function planFaults(plan: RatePlan): PlanFault[] {
   ];
 }
 
+const timeZones = new Map<string, boolean>();
+
+/** Asked once per name: making a formatter is slow, and a projection makes ready a plan for every year. */
+function isTimeZone(name: string): boolean {
+  const known = timeZones.get(name);
+  if (known !== undefined) return known;
+  let exists = true;
+  try {
+    new Intl.DateTimeFormat('en-US', { timeZone: name });
+  } catch {
+    exists = false;
+  }
+  timeZones.set(name, exists);
+  return exists;
+}
+
 function nameFaults(plan: RatePlan): PlanFault[] {
   const faults: PlanFault[] = [];
   const once = (path: string, ids: readonly string[]) => {
@@ -33,9 +49,7 @@ function nameFaults(plan: RatePlan): PlanFault[] {
     'calendar.periods',
     plan.calendar.periods.map((period) => period.id),
   );
-  try {
-    new Intl.DateTimeFormat('en-US', { timeZone: plan.timeZone });
-  } catch {
+  if (!isTimeZone(plan.timeZone)) {
     faults.push({
       path: ['timeZone'],
       message: `${plan.timeZone} is not the name of a time zone; use one such as America/Denver.`,
