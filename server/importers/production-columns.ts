@@ -86,10 +86,7 @@ function timeColumnsOf(row: SheetRow, headerName: (column: number) => string): T
 
 function isDataRow(row: SheetRow, headerName: (column: number) => string): boolean {
   const times = timeColumnsOf(row, headerName).map((time) => time.column);
-  return (
-    times.length > 0 &&
-    row.cells.some((cell, column) => !times.includes(column) && looksLikeNumber(cell.trim()) && !looksLikeClock(cell))
-  );
+  return times.length > 0 && row.cells.some((cell, column) => !times.includes(column) && looksLikeNumber(cell.trim()));
 }
 
 const isUnitsCell = (cell: string) => cell.trim() === '' || (cell.trim().length <= 12 && !/\d/.test(cell));
@@ -194,9 +191,9 @@ export function findLayout(rows: SheetRow[], channel: IntervalChannel): Layout |
   if (dateOnly) {
     for (let column = 0; column < width && clockColumn === null; column += 1) {
       if (timeColumns.includes(column)) continue;
-      const hours =
-        /^\s*hour/i.test(columns[column] ?? '') &&
-        share((cell) => /^\d{1,2}$/.test(cell) && Number(cell) <= 24, column) > 0.8;
+      const clockish = (cell: string) =>
+        (/^\d{1,2}$/.test(cell) && Number(cell) <= 24) || /^([01]\d|2[0-4])[0-5]\d$/.test(cell);
+      const hours = /^\s*(hour|time|clock)/i.test(columns[column] ?? '') && share(clockish, column) > 0.8;
       if (hours || share((cell) => /:/.test(cell) && looksLikeClock(cell), column) > 0.8) clockColumn = column;
     }
   }

@@ -58,7 +58,10 @@ function addDataDoubts(doubts: Doubts, steps: Steps, days: Days, unallocatedWh: 
     );
   }
   if (steps.sameTwice > 0)
-    say('timeColumn', `${counted(steps.sameTwice, 'row repeats', 'rows repeat')} an earlier row and change nothing.`);
+    say(
+      'timeColumn',
+      `${counted(steps.sameTwice, 'row says', 'rows say')} what an earlier row says already. Nothing is counted twice.`,
+    );
   if (days.trailingZeroDays > 0) {
     const held = counted(days.trailingZeroDays, 'day at the end holds', 'days at the end hold');
     say(

@@ -61,12 +61,12 @@ export function placeInTime(rows: Rows, how: How, doubts: Doubts): Placed {
       const rowsSaid = placed.gapRows.length === 1 ? '1 row stands' : `${placed.gapRows.length} rows stand`;
       doubts.push({
         field: 'timeZone',
-        message: `${rowsSaid} in an hour the clocks skip (first on ${day}). They are read as one hour later.`,
+        message: `${rowsSaid} in an hour the clocks skip (first on ${day}). Read as one hour later.`,
       });
     }
   }
   if (placed.onceOfTwo > 0 && timeZone === how.timeZone) {
-    const message = `${placed.onceOfTwo} times in the hour the clocks repeat stand in the file once. They are read as the first, in daylight time.`;
+    const message = `The hour the clocks repeat is in the file once, not twice (${placed.onceOfTwo} ${placed.onceOfTwo === 1 ? 'row' : 'rows'}). It is read as the first, in daylight time.`;
     doubts.push({ field: 'timeZone', message });
   }
   return { at: placed.utc, house, timeZone };

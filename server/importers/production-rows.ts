@@ -162,6 +162,8 @@ export function dateOrderOf(sheet: SheetRow[], from: number, column: number): { 
   }
   if (pairs === 0) return { order: 'ymd', certain: true };
   if (firstOver !== secondOver) return { order: firstOver > secondOver ? 'dmy' : 'mdy', certain: true };
+  // A dotted date is written day first; the days following on from one another bear it out.
+  if (mark === '.' && follows.dmy > follows.mdy) return { order: 'dmy', certain: true };
   if (follows.mdy !== follows.dmy) return { order: follows.mdy > follows.dmy ? 'mdy' : 'dmy', certain: false };
   return { order: mark === '.' ? 'dmy' : 'mdy', certain: false };
 }
