@@ -83,7 +83,7 @@ export function CyclesTable({ table, base, phone }: { table: CyclesTableModel; b
                   ) : (
                     <button
                       type="button"
-                      className="min-h-8 border-0 bg-transparent p-0 text-inherit font-semibold hover:underline"
+                      className="min-h-8 border-0 bg-transparent p-0 text-inherit font-semibold [text-align:inherit] hover:underline"
                       onClick={header.column.getToggleSortingHandler()}
                     >
                       {label}
@@ -105,7 +105,12 @@ export function CyclesTable({ table, base, phone }: { table: CyclesTableModel; b
             <Fragment key={row.original.to}>
               <tr>
                 <th scope="row" className="whitespace-nowrap">
-                  <Link to={`${base}/cycles/${row.original.to}`}>{rangeWithYear(row.original)}</Link>
+                  <Link
+                    to={`${base}/cycles/${row.original.to}`}
+                    className="underline decoration-rule underline-offset-4 hover:decoration-current"
+                  >
+                    {rangeWithYear(row.original)}
+                  </Link>
                 </th>
                 {visible.map((column) => (
                   <td key={column.id} data-label={column.unit ? `${column.head}, ${column.unit}` : column.head}>
@@ -167,13 +172,12 @@ function Sum({ column, rows }: { column: NonNullable<CycleColumn['sum']>; rows: 
   const { total, missing } = sumOf(rows, column.of);
   if (missing === 0) return column.show(total);
   return (
-    <span className="whitespace-nowrap">
+    <span className="relative whitespace-nowrap">
       {column.show(total)}
       <abbr
-        className="no-underline"
+        className="absolute left-full pl-0.5 font-normal no-underline"
         title={`Without ${missing} ${missing === 1 ? 'cycle that has' : 'cycles that have'} no figure`}
       >
-        {' '}
         †
       </abbr>
     </span>
