@@ -35,7 +35,9 @@ export function SignInPage() {
     signIn.mutate(typed, {
       onError: (error) => {
         const wrong = error instanceof ApiError && error.problem.code === 'wrong-sign-in';
-        setRefusal(wrong ? 'That e-mail and password do not go together. Check both and try again.' : errorWords(error));
+        setRefusal(
+          wrong ? 'That e-mail and password do not go together. Check both and try again.' : errorWords(error),
+        );
         if (wrong) {
           resetField('password', { keepTouched: false });
           setFocus('password');
@@ -70,8 +72,8 @@ export function SignInPage() {
         </p>
       </form>
       <p className="hint mt-8">
-        New here? <Link to="/sign-up">Start a book for your house</Link>. If somebody keeps the book already, ask them to
-        add you.
+        New here? <Link to="/sign-up">Start a book for your house</Link>. If somebody keeps the book already, ask them
+        to add you.
       </p>
     </PlainPage>
   );

@@ -1,0 +1,320 @@
+import type { StatementBody } from '#shared/api/cycles.ts';
+import type { DraftStatement } from '#shared/api/log.ts';
+import type { ReadChannel, RegisterRead } from '#shared/facts/papers.ts';
+import type { FacingLine } from '#shared/ledger/cycle.ts';
+import type { Check, CheckId } from '#shared/reconcile/check.ts';
+import { parseDollars } from '#shared/units/cents.ts';
+import { parseDay } from '#shared/units/day.ts';
+import { parseKwh } from '#shared/units/energy.ts';
+import { decimal, money } from '#src/lib/format.ts';
+import { plainDecimal, textOf } from '#src/lib/typed-values.ts';
+
+/** A value in an editable field. `put` gives the statement with another text in its place, or a sentence on what to write. */
+export type ReadField = {
+  name: string;
+  text: string;
+  type: 'date' | 'number' | 'text';
+  put: (text: string) => StatementBody | string;
+};
+
+export type ValueTone = 'ok' | 'no' | 'wait';
+
+/** One row of "What we read": a value or a pair, its verdict, and notes where it needs an eye. */
+export type ReadValue = {
+  key: string;
+  label: string;
+  fields: ReadField[];
+  tone: ValueTone | null;
+  verdict: string;
+  notes: string[];
+  doubtful: boolean;
+  /** Rows of the file it was read from; empty when typed or when the row is not known. */
+  rows: number[];
+  total: boolean;
+};
+
+const CHANNEL_WORDS: Record<ReadChannel, string> = { import: 'Import', export: 'Export', production: 'Production' };
+const KWH_FIELDS = { import: 'importWh', export: 'exportWh', production: 'productionWh' } as const;
+const INTERVAL_CHECKS: Record<ReadChannel, CheckId[]> = {
+  import: ['importAgainstIntervals'],
+  export: ['exportAgainstIntervals', 'exportWithinProduction'],
+  production: ['productionAgainstMonitor'],
+};
+
+/** How an agreeing check is said where the value stands. */
+const AGREES: Record<CheckId, string> = {
+  datesChain: 'follows the last',
+  days: 'agrees',
+  registersFollow: 'follows on',
+  readType: 'agrees',
+  importAgainstIntervals: 'agrees',
+  exportAgainstIntervals: 'agrees',
+  exportWithinProduction: 'agrees',
+  productionAgainstMonitor: 'agrees',
+  linePrice: 'adds up',
+  bankChain: 'follows the last',
+  balanceChain: 'carries over',
+  linesAddUp: 'lines add up',
+  amountDue: 'agrees',
+};
+
+/**
+ * Every value of a drafted statement with the checks that concern it. Where a printed line faces none of the plan's, it is a new line; a
+ * check that nothing here stands for is left for the foot of the list (`otherChecks`).
+ */
+export function readValues(drafted: DraftStatement): { values: ReadValue[]; otherChecks: Check[] } {
+  const { statement } = drafted;
+  const taken = new Set<Check>();
+  const take = (fits: (check: Check) => boolean): Check[] => {
+    const found = drafted.checks.filter((check) => !taken.has(check) && fits(check));
+    for (const check of found) taken.add(check);
+    return found;
+  };
+  const values: ReadValue[] = [
+    value(
+      'dates',
+      'Service dates',
+      dateFields(statement),
+      take((check) => check.check === 'datesChain' || check.check === 'days'),
+    ),
+  ];
+  statement.reads.forEach((read, index) => {
+    const mine = take(
+      (check) =>
+        (check.check === 'registersFollow' && check.about === `${read.channel}:${read.meter}`) ||
+        (check.check === 'readType' && read.type === 'estimated') ||
+        (statement[KWH_FIELDS[read.channel]] === null && INTERVAL_CHECKS[read.channel].includes(check.check)),
+    );
+    const row = value(
+      `read${index}`,
+      registerLabel(read, statement.reads),
+      readFields(statement, index),
+      mine,
+      read.row,
+    );
+    values.push(
+      read.type === 'estimated'
+        ? { ...row, verdict: row.tone === 'no' ? row.verdict : 'estimated', tone: row.tone ?? 'wait' }
+        : row,
+    );
+  });
+  for (const channel of ['import', 'export', 'production'] as const) {
+    const name = KWH_FIELDS[channel];
+    if (statement[name] === null) continue;
+    const put = (text: string) => {
+      const read = parseKwh(text);
+      return read === null ? 'Write kWh as a number.' : { ...statement, [name]: read };
+    };
+    const field: ReadField = {
+      name: `${CHANNEL_WORDS[channel]}, kWh`,
+      text: textOf.wh(statement[name]),
+      type: 'number',
+      put,
+    };
+    const rows = statement.reads.filter((read) => read.channel === channel).flatMap((read) => read.row ?? []);
+    const mine = take((check) => INTERVAL_CHECKS[channel].includes(check.check));
+    values.push({ ...value(name, `${CHANNEL_WORDS[channel]}, kWh as printed`, [field], mine), rows });
+  }
+  const faced = facingByLabel(drafted.facing);
+  statement.lines.forEach((line, index) => {
+    const facing = faced(line.label);
+    const component = line.component ?? componentOf(facing);
+    const mine = take((check) => check.check === 'linePrice' && check.about === component);
+    const made = value(`line${index}`, lineLabel(line), [lineField(statement, index)], mine, line.row);
+    values.push(isNewLine(facing, drafted) && made.tone !== 'no' ? newLine(made) : made);
+  });
+  statement.banks.forEach((bank, index) => {
+    const mine = take(
+      (check) =>
+        check.check === 'bankChain' &&
+        (statement.banks.length === 1 || check.about.replace(/\.close$/, '') === bank.bank),
+    );
+    values.push(
+      value(
+        `bank${index}`,
+        `Credit bank, ${bank.unit === 'USD' ? 'in dollars' : 'kWh'}`,
+        bankFields(statement, index),
+        mine,
+        bank.row,
+      ),
+    );
+  });
+  for (const name of ['previousBalanceCents', 'paymentsCents'] as const) {
+    const label = name === 'previousBalanceCents' ? 'Previous balance' : 'Payments';
+    if (statement[name] === null) continue;
+    const mine = name === 'previousBalanceCents' ? take((check) => check.check === 'balanceChain') : [];
+    values.push(value(name, label, [moneyField(statement, name, label)], mine));
+  }
+  const due = value(
+    'due',
+    'Due',
+    [moneyField(statement, 'amountDueCents', 'Due')],
+    take((check) => check.check === 'linesAddUp' || check.check === 'amountDue'),
+  );
+  values.push({ ...due, total: true });
+  return { values, otherChecks: drafted.checks.filter((check) => !taken.has(check) && check.verdict === 'differs') };
+}
+
+/** How many single values stand in the rows, and how many of the rows need an eye. */
+export function countValues(values: ReadValue[]): { read: number; doubtful: number } {
+  return {
+    read: values.reduce((sum, one) => sum + one.fields.filter((field) => field.text !== '').length, 0),
+    doubtful: values.filter((one) => one.doubtful).length,
+  };
+}
+
+function value(key: string, label: string, fields: ReadField[], checks: Check[], row: number | null = null): ReadValue {
+  const differing = checks.filter((check) => check.verdict === 'differs' && check.accepted === null);
+  const worst = differing[0] ?? checks.find((check) => check.verdict === 'agrees') ?? checks[0] ?? null;
+  const tone: ValueTone | null =
+    worst === null ? null : worst.verdict === 'differs' ? 'no' : worst.verdict === 'agrees' ? 'ok' : 'wait';
+  return {
+    key,
+    label,
+    fields,
+    tone,
+    verdict: worst === null ? '' : verdictWords(worst),
+    notes: differing.map(noteOf),
+    doubtful: differing.length > 0,
+    rows: row === null ? [] : [row],
+    total: false,
+  };
+}
+
+function verdictWords(check: Check): string {
+  if (check.verdict === 'agrees') return AGREES[check.check];
+  if (check.verdict === 'nothing-to-compare') return 'nothing to compare';
+  const size = check.difference?.replace('-', '');
+  if (size === undefined) return 'differs';
+  switch (check.unit) {
+    case 'USD':
+      return `differs, $${decimal(size)}`;
+    case 'kWh':
+      return `differs, ${decimal(size)} kWh`;
+    case 'days':
+      return `differs, ${decimal(size)} days`;
+    default:
+      return 'differs';
+  }
+}
+
+/** What differs and what to do. If the paper really says so, it is posted as printed. */
+function noteOf(check: Check): string {
+  const said = [
+    check.cause ?? `${check.title}: ${check.stated ?? 'nothing'} on the page, ${check.found ?? 'nothing'} found.`,
+    check.advice,
+  ];
+  return said.filter((part) => part !== null).join(' ');
+}
+
+function newLine(made: ReadValue): ReadValue {
+  return {
+    ...made,
+    tone: 'wait',
+    verdict: 'new line',
+    doubtful: true,
+    notes: [
+      ...made.notes,
+      'The rate plan has no such line, so its price cannot be checked. If it is a lasting charge, add it to the plan.',
+    ],
+  };
+}
+
+function facingByLabel(facing: FacingLine[]): (label: string) => FacingLine | null {
+  return (label) => facing.find((line) => line.billed !== null && line.label === label) ?? null;
+}
+
+function componentOf(facing: FacingLine | null): string | null {
+  return /^line:([^:]+):/.exec(facing?.key ?? '')?.[1] ?? null;
+}
+
+/** Electric lines that the plan says nothing of; only where there is a plan to compare with at all. */
+function isNewLine(facing: FacingLine | null, drafted: DraftStatement): boolean {
+  const planned = drafted.facing.some((line) => line.key.startsWith('line:') && line.ours !== null);
+  return planned && facing?.ours === null && facing.key.startsWith('printed:');
+}
+
+function registerLabel(read: RegisterRead, reads: RegisterRead[]): string {
+  const several = reads.filter((one) => one.channel === read.channel).length > 1;
+  return `${CHANNEL_WORDS[read.channel]} register${several ? `, ${read.meter}` : ''}`;
+}
+
+function lineLabel(line: StatementBody['lines'][number]): string {
+  if (line.quantity === null || line.rate === null || line.unit !== 'kWh') return line.label;
+  return `${line.label}, ${decimal(line.quantity)} kWh at ${line.rate}`;
+}
+
+function dateFields(statement: StatementBody): ReadField[] {
+  const put = (name: 'from' | 'to') => (text: string) => {
+    const day = parseDay(text);
+    if (day === null) return 'Choose a date.';
+    const next = { ...statement, [name]: day };
+    if (next.from >= next.to) return 'The later read must come after the earlier one.';
+    // Reads that ran over the whole cycle follow its dates.
+    const reads = statement.reads.map((read) => (read[name] === statement[name] ? { ...read, [name]: day } : read));
+    return { ...next, reads };
+  };
+  return [
+    { name: 'Service from', text: statement.from, type: 'date', put: put('from') },
+    { name: 'Service to', text: statement.to, type: 'date', put: put('to') },
+  ];
+}
+
+function readFields(statement: StatementBody, index: number): ReadField[] {
+  const read = statement.reads[index];
+  if (!read) return [];
+  const put = (name: 'previous' | 'current') => (text: string) => {
+    const plain = plainDecimal(text);
+    if (plain === null || plain.startsWith('-')) return 'Write the read as the meter shows it.';
+    return { ...statement, reads: statement.reads.map((one, at) => (at === index ? { ...one, [name]: plain } : one)) };
+  };
+  const label = registerLabel(read, statement.reads);
+  return [
+    { name: `${label}, previous`, text: read.previous, type: 'number', put: put('previous') },
+    { name: `${label}, current`, text: read.current, type: 'number', put: put('current') },
+  ];
+}
+
+function lineField(statement: StatementBody, index: number): ReadField {
+  const line = statement.lines[index];
+  return {
+    name: line?.label ?? '',
+    text: line ? money(line.amountCents) : '',
+    type: 'text',
+    put: (text) => {
+      const amountCents = parseDollars(text);
+      if (amountCents === null) return 'Write an amount such as 14.50.';
+      return { ...statement, lines: statement.lines.map((one, at) => (at === index ? { ...one, amountCents } : one)) };
+    },
+  };
+}
+
+function bankFields(statement: StatementBody, index: number): ReadField[] {
+  const bank = statement.banks[index];
+  const put = (name: 'open' | 'close') => (text: string) => {
+    const plain = text.trim() === '' ? null : plainDecimal(text);
+    if (plain === null && text.trim() !== '') return 'Write a number such as 31.77.';
+    return { ...statement, banks: statement.banks.map((one, at) => (at === index ? { ...one, [name]: plain } : one)) };
+  };
+  return [
+    { name: 'Credit bank, brought in', text: bank?.open ?? '', type: 'text', put: put('open') },
+    { name: 'Credit bank, carried on', text: bank?.close ?? '', type: 'text', put: put('close') },
+  ];
+}
+
+function moneyField(
+  statement: StatementBody,
+  name: 'previousBalanceCents' | 'paymentsCents' | 'amountDueCents',
+  label: string,
+): ReadField {
+  const amount = statement[name];
+  return {
+    name: label,
+    text: amount === null ? '' : money(amount),
+    type: 'text',
+    put: (text) => {
+      const read = parseDollars(text);
+      return read === null ? 'Write an amount such as 52.01.' : { ...statement, [name]: read };
+    },
+  };
+}
