@@ -4,7 +4,7 @@ import { printedBankId } from '../ledger/settle-cycle.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
-import { nothingToCompare } from './make-check.ts';
+import { compareDecimals, type Difference, nothingToCompare } from './make-check.ts';
 
 /** A printed balance of kWh is whole; one of dollars is to the cent. */
 const TOLERANCE = { kWh: '1', USD: '0.01' } as const;
@@ -19,16 +19,17 @@ export function bankChainChecks(context: CheckContext): Check[] {
   const { plan } = settled.plan;
   const checks: Check[] = [];
   for (const printed of paper.statement.banks) {
+    const { open, close } = printed;
     const id = printedBankId(printed, plan);
     const label = plan.banks.find((bank) => bank.id === id)?.label ?? printed.bank;
     const about = id ?? printed.bank;
     const last = lastClose(context, about);
     const opens = `${label}: opens as the last cycle closed`;
-    if (printed.open === null || last === null) {
+    if (open === null || last === null) {
       checks.push(
         nothingToCompare('bankChain', about, printed.unit, {
           title: opens,
-          stated: printed.open,
+          stated: open,
           found: last,
           cause:
             before === null ? 'This is the first cycle.' : 'One of the two statements does not print this balance.',
@@ -36,32 +37,32 @@ export function bankChainChecks(context: CheckContext): Check[] {
       );
     } else {
       checks.push(
-        compare(`${about}`, printed.unit, printed.open, last, opens, {
-          cause: `It closed at ${amount(last, printed.unit)}${paper.previous ? ` on ${sayDay(paper.previous.to)}` : ''} and opens at ${amount(printed.open, printed.unit)}.`,
+        compare(about, printed.unit, open, last, opens, () => ({
+          cause: `It closed at ${amount(last, printed.unit)}${paper.previous ? ` on ${sayDay(paper.previous.to)}` : ''} and opens at ${amount(open, printed.unit)}.`,
           advice: 'Ask the utility what became of the balance, and for it to be put back.',
-        }),
+        })),
       );
     }
     const closes = `${label}: closes as it should`;
     const settledClose = paper.split === null ? closeOf(context, about) : null;
-    if (printed.close === null || settledClose === null) {
+    if (close === null || settledClose === null) {
       checks.push(
         nothingToCompare('bankChain', `${about}.close`, printed.unit, {
           title: closes,
-          stated: printed.close,
+          stated: close,
           found: settledClose,
           cause:
-            printed.close === null
+            close === null
               ? 'The statement prints no closing balance.'
               : 'The cycle cannot be settled on the billed kWh.',
         }),
       );
     } else {
       checks.push(
-        compare(`${about}.close`, printed.unit, printed.close, settledClose, closes, {
-          cause: `On the billed kWh it should close at ${amount(settledClose, printed.unit)}; the statement prints ${amount(printed.close, printed.unit)}.`,
+        compare(`${about}.close`, printed.unit, close, settledClose, closes, () => ({
+          cause: `On the billed kWh it should close at ${amount(settledClose, printed.unit)}; the statement prints ${amount(close, printed.unit)}.`,
           advice: 'Ask the utility how it came to the closing balance.',
-        }),
+        })),
       );
     }
   }
@@ -91,25 +92,9 @@ function compare(
   stated: string,
   found: string,
   title: string,
-  texts: { cause: string; advice: string },
+  differs: () => Difference,
 ): Check {
-  const difference = exact(stated).minus(exact(found));
-  const agrees = difference.abs().lte(TOLERANCE[unit]);
-  return {
-    check: 'bankChain',
-    about,
-    key: `bankChain:${about}`,
-    title,
-    verdict: agrees ? 'agrees' : 'differs',
-    stated,
-    found,
-    difference: difference.toString(),
-    tolerance: TOLERANCE[unit],
-    unit,
-    cause: agrees ? null : texts.cause,
-    advice: agrees ? null : texts.advice,
-    accepted: null,
-  };
+  return compareDecimals('bankChain', about, title, { stated, found, tolerance: TOLERANCE[unit], unit }, differs);
 }
 
 function amount(value: string, unit: 'kWh' | 'USD'): string {

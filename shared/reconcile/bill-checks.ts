@@ -1,6 +1,6 @@
 import { accountLines, totalToleranceCents } from '../ledger/facing.ts';
 import { sayDate, sayMoney } from '../ledger/say.ts';
-import { type Cents, cents, sumCents } from '../units/cents.ts';
+import { type Cents, cents, sumCents, ZERO_CENTS } from '../units/cents.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
 import { compareCents, nothingToCompare } from './make-check.ts';
@@ -18,11 +18,11 @@ export function linesAddUpCheck({ paper }: CheckContext): Check {
   }
   const parts = [...statement.lines.filter((line) => line.inDue), ...accountLines({ ...paper, split: null })];
   const found = sumCents(parts.map((line) => line.amountCents));
-  return compareCents('linesAddUp', '', statement.amountDueCents, found, cents(totalToleranceCents(parts.length)), {
-    title,
+  const sides = { stated: statement.amountDueCents, found, tolerance: cents(totalToleranceCents(parts.length)) };
+  return compareCents('linesAddUp', '', title, sides, () => ({
     cause: `The lines come to ${sayMoney(found)}; the statement asks for ${sayMoney(statement.amountDueCents)}.`,
     advice: 'Look for a line that was read wrong or left out. If every line is as printed, ask the utility.',
-  });
+  }));
 }
 
 /** The previous balance is what the last statement asked for; on the first, what the opening states (net-metering.md §4 "balance"). */
@@ -31,11 +31,11 @@ export function balanceChainCheck({ paper, openingBalanceCents }: CheckContext):
   const stated = previousBalance(paper);
   const last = paper.previous;
   if (stated !== null && last === null && openingBalanceCents !== null) {
-    return compareCents('balanceChain', '', stated, openingBalanceCents, cents(0), {
-      title,
+    const sides = { stated, found: openingBalanceCents, tolerance: ZERO_CENTS };
+    return compareCents('balanceChain', '', title, sides, () => ({
       cause: `The set-up states a balance of ${sayMoney(openingBalanceCents)} before the first cycle; the statement brings in ${sayMoney(stated)}.`,
       advice: 'Correct the opening balance in the set-up, or ask the utility.',
-    });
+    }));
   }
   if (stated === null || last === null) {
     return nothingToCompare('balanceChain', '', 'USD', {
@@ -46,11 +46,11 @@ export function balanceChainCheck({ paper, openingBalanceCents }: CheckContext):
           : 'There is no earlier statement to compare with.',
     });
   }
-  return compareCents('balanceChain', '', stated, last.amountDueCents, cents(0), {
-    title,
+  const sides = { stated, found: last.amountDueCents, tolerance: ZERO_CENTS };
+  return compareCents('balanceChain', '', title, sides, () => ({
     cause: `The statement of ${sayDate(last.statementOn ?? last.to)} asked for ${sayMoney(last.amountDueCents)}; this one brings in ${sayMoney(stated)}.`,
     advice: 'Look for a correction or a fee between the two statements, or ask the utility.',
-  });
+  }));
 }
 
 /** The amount due against ours on the metered energy. Its cause is the first other check that differs, or the lines that do. */
@@ -67,11 +67,15 @@ export function amountDueCheck(context: CheckContext, others: readonly Check[]):
     });
   }
   const lines = facing.lines.length - 1;
-  return compareCents('amountDue', '', facing.billedDueCents, facing.oursDueCents, cents(totalToleranceCents(lines)), {
-    title,
+  const sides = {
+    stated: facing.billedDueCents,
+    found: facing.oursDueCents,
+    tolerance: cents(totalToleranceCents(lines)),
+  };
+  return compareCents('amountDue', '', title, sides, () => ({
     cause: dueCause(context, others),
     advice: 'Write to the utility about it, or accept the difference with a note.',
-  });
+  }));
 }
 
 function dueCause({ facing, paper }: CheckContext, others: readonly Check[]): string {

@@ -18,11 +18,9 @@ export function datesChainCheck({ paper }: CheckContext): Check {
       cause: 'This is the first statement.',
     });
   }
-  return compareText('datesChain', '', 'date', statement.from, previous.to, {
-    title,
-    difference: String(daysBetween(previous.to, statement.from)),
-    ...chainTexts(previous.to, statement.from),
-  });
+  const difference = String(daysBetween(previous.to, statement.from));
+  const sides = { stated: statement.from, found: previous.to, difference, unit: 'date' as const };
+  return compareText('datesChain', '', title, sides, () => chainTexts(previous.to, statement.from));
 }
 
 function chainTexts(ended: Day, begins: Day): { cause: string; advice: string } {
@@ -56,11 +54,15 @@ export function daysCheck({ paper }: CheckContext): Check {
       advice: unusual,
     });
   }
-  const check = compareText('days', '', 'days', String(statement.printedDays), String(days), {
-    title,
+  const sides = {
+    stated: String(statement.printedDays),
+    found: String(days),
     difference: String(statement.printedDays - days),
+    unit: 'days' as const,
+  };
+  const check = compareText('days', '', title, sides, () => ({
     cause: `The dates make ${days} days; the statement counts ${statement.printedDays}.`,
     advice: 'Charges by the day may be wrong with it. Compare the dates with the meter reads.',
-  });
-  return check.verdict === 'agrees' ? { ...check, tolerance: '0', advice: unusual } : { ...check, tolerance: '0' };
+  }));
+  return unusual !== null && check.verdict === 'agrees' ? { ...check, advice: unusual } : check;
 }

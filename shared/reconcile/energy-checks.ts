@@ -43,11 +43,16 @@ export function channelCheck(context: CheckContext, channel: 'import' | 'export'
   if (run) {
     const totals = runTotals(run, context.witnessed);
     if (totals !== null) {
-      return compareWh(check, '', wh(totals.registerWh), wh(totals.intervalsWh), wh(totals.toleranceWh), {
-        title: `${title}, over ${run.cycles.length} cycles joined by an estimated read`,
-        cause: `The estimate was not made up for: the reads give ${sayKwh(wh(totals.registerWh))} kWh over these cycles, the interval file ${sayKwh(wh(totals.intervalsWh))}.`,
+      const sums = {
+        stated: wh(totals.registerWh),
+        found: wh(totals.intervalsWh),
+        tolerance: wh(totals.toleranceWh),
+      };
+      const joined = `${title}, over ${run.cycles.length} cycles joined by an estimated read`;
+      return compareWh(check, '', joined, sums, () => ({
+        cause: `The estimate was not made up for: the reads give ${sayKwh(sums.stated)} kWh over these cycles, the interval file ${sayKwh(sums.found)}.`,
         advice: 'Ask the utility to read the meter again and correct both statements.',
-      });
+      }));
     }
   }
   const billed = billedQuantity(paper, channel, settled.plan?.plan ?? null, settled.components);
@@ -61,16 +66,16 @@ export function channelCheck(context: CheckContext, channel: 'import' | 'export'
     });
   }
   if (seen.intervals?.complete) {
-    return compareWh(check, '', stated, seen.intervals.figure.wh, seen.toleranceWh, {
-      title,
-      ...channelTexts(channel, wh(stated - seen.intervals.figure.wh), readsSay(seen.register?.wh ?? null, stated)),
-    });
+    const sides = { stated, found: seen.intervals.figure.wh, tolerance: seen.toleranceWh };
+    return compareWh(check, '', title, sides, () =>
+      channelTexts(channel, wh(stated - sides.found), readsSay(seen.register?.wh ?? null, stated)),
+    );
   }
   if (billed !== null && seen.register !== null && paper.readsFit) {
-    return compareWh(check, '', billed, seen.register.wh, seen.toleranceWh, {
-      title: `${name}, billed against the meter reads`,
-      ...channelTexts(channel, wh(billed - seen.register.wh), null),
-    });
+    const sides = { stated: billed, found: seen.register.wh, tolerance: seen.toleranceWh };
+    return compareWh(check, '', `${name}, billed against the meter reads`, sides, () =>
+      channelTexts(channel, wh(billed - sides.found), null),
+    );
   }
   return nothingToCompare(check, '', 'kWh', {
     title,
@@ -132,26 +137,14 @@ export function exportWithinProductionCheck({ metered }: CheckContext): Check {
     });
   }
   const most = wh(new Exact(production.wh).times(EXPORT_FACTOR).floor().toNumber() + EXPORT_STEP_WH);
-  const within = exporting.wh <= most;
-  return {
-    check: 'exportWithinProduction',
-    about: '',
-    key: 'exportWithinProduction:',
-    title,
-    verdict: within ? 'agrees' : 'differs',
-    stated: kwhText(exporting.wh),
-    found: kwhText(production.wh),
-    difference: kwhText(wh(exporting.wh - production.wh)),
-    tolerance: kwhText(wh(most - production.wh)),
-    unit: 'kWh',
-    cause: within
-      ? null
-      : 'More left the house than the roof made. Import and export may be exchanged, or production is from other days.',
-    advice: within
-      ? null
-      : 'Look which register is which on the meter, and whether the production covers the same days.',
-    accepted: null,
-  };
+  const sides = { stated: exporting.wh, found: production.wh, tolerance: wh(most - production.wh) };
+  const made = compareWh('exportWithinProduction', '', title, sides, () => ({
+    cause:
+      'More left the house than the roof made. Import and export may be exchanged, or production is from other days.',
+    advice: 'Look which register is which on the meter, and whether the production covers the same days.',
+  }));
+  // Only an export above production is wrong; below it, whatever the distance, the house used the rest.
+  return exporting.wh <= most ? { ...made, verdict: 'agrees', cause: null, advice: null } : made;
 }
 
 /** The production meter against the inverter's monitoring, within 5 %, over equal windows only. */
@@ -182,11 +175,11 @@ export function productionAgainstMonitorCheck({ metered }: CheckContext): Check 
     apart === null
       ? 'They lie apart.'
       : `They lie ${apart.toDecimalPlaces(1).toString()} % apart; up to 5 % is ordinary.`;
-  const made = compareWh(check, '', meter.wh, monitor.figure.wh, tolerance, {
-    title,
+  const sides = { stated: meter.wh, found: monitor.figure.wh, tolerance };
+  const made = compareWh(check, '', title, sides, () => ({
     cause: said,
     advice:
       'Look for an inverter that stopped reporting, a missing day in the file, or a production meter that has to be tested.',
-  });
+  }));
   return made.verdict === 'agrees' ? { ...made, cause: said } : made;
 }

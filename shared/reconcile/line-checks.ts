@@ -45,12 +45,12 @@ function priceCheck(context: CheckContext, plan: RatePlan, component: string, li
   if ('why' in priced) {
     return nothingToCompare('linePrice', component, 'USD', { title, stated: dollarsText(stated), cause: priced.why });
   }
-  return compareCents('linePrice', component, stated, priced.amountCents, cents(LINE_TOLERANCE_CENTS * lines.length), {
-    title,
+  const sides = { stated, found: priced.amountCents, tolerance: cents(LINE_TOLERANCE_CENTS * lines.length) };
+  return compareCents('linePrice', component, title, sides, () => ({
     cause: `${label} is billed at ${sayMoney(stated)}; by the rate plan it is ${priced.said}, ${sayMoney(priced.amountCents)}.`,
     advice:
       'Compare the rate printed with the plan. If the utility changed it, add the new rate to the plan with its date.',
-  });
+  }));
 }
 
 function priceOf(context: CheckContext, plan: RatePlan, component: string, lines: readonly PrintedLine[]): Priced {

@@ -1,19 +1,31 @@
 import type { Cents } from '../units/cents.ts';
 import { dollarsText, subtractCents } from '../units/cents.ts';
 import { kwhText, type Wh, wh } from '../units/energy.ts';
+import { type Exact, exact } from '../units/rate.ts';
 import type { Check, CheckId } from './check.ts';
 
-type Texts = { title: string; cause?: string | null; advice?: string | null };
+/** What to say of a difference: its likely cause and what to do. Asked for only where there is one. */
+export type Difference = { cause: string | null; advice: string | null };
+
+const NO_DIFFERENCE: Difference = { cause: null, advice: null };
 
 /** A check that has nothing to compare: `cause` says what is missing and what would settle it. */
 export function nothingToCompare(
   check: CheckId,
   about: string,
   unit: Check['unit'],
-  texts: Texts & { stated?: string | null; found?: string | null },
+  texts: {
+    title: string;
+    cause?: string | null;
+    advice?: string | null;
+    stated?: string | null;
+    found?: string | null;
+  },
 ): Check {
   return {
-    ...keyed(check, about),
+    check,
+    about,
+    key: `${check}:${about}`,
     title: texts.title,
     verdict: 'nothing-to-compare',
     stated: texts.stated ?? null,
@@ -27,76 +39,99 @@ export function nothingToCompare(
   };
 }
 
-/** Compares energies in kWh; agrees while they lie within the tolerance. Cause and advice are for a difference and left out where there is none. */
-export function compareWh(check: CheckId, about: string, stated: Wh, found: Wh, tolerance: Wh, texts: Texts): Check {
+/** Compares energies in kWh; agrees while they lie within the tolerance. */
+export function compareWh(
+  check: CheckId,
+  about: string,
+  title: string,
+  sides: { stated: Wh; found: Wh; tolerance: Wh },
+  differs: () => Difference,
+): Check {
+  const { stated, found, tolerance } = sides;
   const difference = wh(stated - found);
   const agrees = Math.abs(difference) <= tolerance;
-  return {
-    ...keyed(check, about),
-    title: texts.title,
-    verdict: agrees ? 'agrees' : 'differs',
+  return made(check, about, title, 'kWh', agrees, differs, {
     stated: kwhText(stated),
     found: kwhText(found),
     difference: kwhText(difference),
     tolerance: kwhText(tolerance),
-    unit: 'kWh',
-    cause: agrees ? null : (texts.cause ?? null),
-    advice: agrees ? null : (texts.advice ?? null),
-    accepted: null,
-  };
+  });
 }
 
 /** Compares sums of money. */
 export function compareCents(
   check: CheckId,
   about: string,
-  stated: Cents,
-  found: Cents,
-  toleranceCents: Cents,
-  texts: Texts,
+  title: string,
+  sides: { stated: Cents; found: Cents; tolerance: Cents },
+  differs: () => Difference,
 ): Check {
+  const { stated, found, tolerance } = sides;
   const difference = subtractCents(stated, found);
-  const agrees = Math.abs(difference) <= toleranceCents;
-  return {
-    ...keyed(check, about),
-    title: texts.title,
-    verdict: agrees ? 'agrees' : 'differs',
+  const agrees = Math.abs(difference) <= tolerance;
+  return made(check, about, title, 'USD', agrees, differs, {
     stated: dollarsText(stated),
     found: dollarsText(found),
     difference: dollarsText(difference),
-    tolerance: dollarsText(toleranceCents),
-    unit: 'USD',
-    cause: agrees ? null : (texts.cause ?? null),
-    advice: agrees ? null : (texts.advice ?? null),
-    accepted: null,
-  };
+    tolerance: dollarsText(tolerance),
+  });
 }
 
-/** Compares two texts or dates. */
+/** Compares decimal figures as they are printed: register reads, a bank's balances. */
+export function compareDecimals(
+  check: CheckId,
+  about: string,
+  title: string,
+  sides: { stated: string; found: string; tolerance: string; unit: 'kWh' | 'USD' },
+  differs: () => Difference,
+): Check {
+  const { stated, found, tolerance, unit } = sides;
+  const difference: Exact = exact(stated).minus(exact(found));
+  const agrees = difference.abs().lte(exact(tolerance));
+  return made(check, about, title, unit, agrees, differs, {
+    stated,
+    found,
+    difference: difference.toString(),
+    tolerance,
+  });
+}
+
+/** Compares two texts or dates, or counts of days; `difference` is what to show between them. */
 export function compareText(
   check: CheckId,
   about: string,
-  unit: 'date' | 'text' | 'days',
-  stated: string,
-  found: string,
-  texts: Texts & { difference?: string | null },
+  title: string,
+  sides: { stated: string; found: string; difference: string | null; unit: 'date' | 'text' | 'days' },
+  differs: () => Difference,
 ): Check {
-  const agrees = stated === found;
-  return {
-    ...keyed(check, about),
-    title: texts.title,
-    verdict: agrees ? 'agrees' : 'differs',
-    stated,
-    found,
-    difference: texts.difference ?? null,
-    tolerance: null,
-    unit,
-    cause: agrees ? null : (texts.cause ?? null),
-    advice: agrees ? null : (texts.advice ?? null),
-    accepted: null,
-  };
+  const { stated, found, difference, unit } = sides;
+  const tolerance = unit === 'days' ? '0' : null;
+  return made(check, about, title, unit, stated === found, differs, { stated, found, difference, tolerance });
 }
 
-function keyed(check: CheckId, about: string): Pick<Check, 'check' | 'about' | 'key'> {
-  return { check, about, key: `${check}:${about}` };
+function made(
+  check: CheckId,
+  about: string,
+  title: string,
+  unit: Check['unit'],
+  agrees: boolean,
+  differs: () => Difference,
+  values: Pick<Check, 'stated' | 'found' | 'difference' | 'tolerance'>,
+): Check {
+  const said = agrees ? NO_DIFFERENCE : differs();
+  return {
+    check,
+    about,
+    key: `${check}:${about}`,
+    title,
+    verdict: agrees ? 'agrees' : 'differs',
+    stated: values.stated,
+    found: values.found,
+    difference: values.difference,
+    tolerance: values.tolerance,
+    unit,
+    cause: said.cause,
+    advice: said.advice,
+    accepted: null,
+  };
 }

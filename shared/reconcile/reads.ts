@@ -1,10 +1,9 @@
 import type { RegisterRead } from '../facts/papers.ts';
 import { sayDate, sayDay } from '../ledger/say.ts';
 import { closesEstimated, runKey } from '../metering/estimated-reads.ts';
-import { type Exact, exact } from '../units/rate.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
-import { compareText, nothingToCompare } from './make-check.ts';
+import { compareDecimals, compareText, nothingToCompare } from './make-check.ts';
 
 const CHANNELS = ['import', 'export', 'production'] as const;
 const CHANNEL_WORDS = { import: 'Import', export: 'Export', production: 'Production' };
@@ -54,13 +53,17 @@ function followCheck(
     const read = own[at];
     const prior = at === 0 ? last : own[at - 1];
     if (!read || !prior) continue;
-    const check = numberCheck(about, title, read.previous, prior.current, {
+    const check = compareDecimals('registersFollow', about, title, followSides(read, prior), () => ({
       cause: `Meter ${meter} was read ${prior.current} on ${sayDate(prior.to)}; this statement starts from ${read.previous}.`,
       advice: 'Ask the utility which read is right. The kWh between the two are billed twice or not at all.',
-    });
+    }));
     if (check.verdict === 'differs' || at === own.length - 1) return [check];
   }
   return [];
+}
+
+function followSides(read: RegisterRead, prior: RegisterRead) {
+  return { stated: read.previous, found: prior.current, tolerance: '0', unit: 'kWh' as const };
 }
 
 function exchangeCheck(
@@ -71,42 +74,16 @@ function exchangeCheck(
   before: RegisterRead[],
 ): Check {
   const removed = [...before, ...reads].filter((read) => read.meter !== first.meter && read.to <= first.from).at(-1);
-  const check = compareText('registersFollow', about, 'date', first.from, removed?.to ?? 'no final read', {
-    title: `${title}, new meter`,
+  const sides = { stated: first.from, found: removed?.to ?? 'no final read', difference: null, unit: 'date' as const };
+  const check = compareText('registersFollow', about, `${title}, new meter`, sides, () => ({
     cause: removed
       ? `The old meter was last read on ${sayDate(removed.to)}; the new meter ${first.meter} begins on ${sayDate(first.from)}.`
       : `Meter ${first.meter} is new and the old meter has no final read.`,
     advice: 'Ask the utility for the final read of the old meter and the first read of the new one.',
-  });
+  }));
   return check.verdict === 'agrees'
     ? { ...check, cause: `Meter ${first.meter} was put in on ${sayDate(first.from)}.` }
     : check;
-}
-
-function numberCheck(
-  about: string,
-  title: string,
-  stated: string,
-  found: string,
-  texts: { cause: string; advice: string },
-): Check {
-  const difference: Exact = exact(stated).minus(exact(found));
-  const agrees = difference.isZero();
-  return {
-    check: 'registersFollow',
-    about,
-    key: `registersFollow:${about}`,
-    title,
-    verdict: agrees ? 'agrees' : 'differs',
-    stated,
-    found,
-    difference: difference.toString(),
-    tolerance: '0',
-    unit: 'kWh',
-    cause: agrees ? null : texts.cause,
-    advice: agrees ? null : texts.advice,
-    accepted: null,
-  };
 }
 
 /** Actual reads agree; an estimated one is nothing to compare until the next actual read settles both cycles (net-metering.md §4). */
@@ -121,7 +98,10 @@ export function readTypeCheck(context: CheckContext): Check {
       advice: 'Add them to check that the kWh follow from the meter.',
     });
   }
-  if (estimated.length === 0) return compareText('readType', '', 'text', 'actual', 'actual', { title });
+  if (estimated.length === 0) {
+    const sides = { stated: 'actual', found: 'actual', difference: null, unit: 'text' as const };
+    return compareText('readType', '', title, sides, () => ({ cause: null, advice: null }));
+  }
   const names = estimated.join(' and ');
   const open = estimated.some((channel) => runs.get(runKey(paper.index, channel))?.pending ?? true);
   if (open) {
