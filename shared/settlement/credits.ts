@@ -4,6 +4,7 @@ import type { Working, WorkingInput } from '../working.ts';
 import type { Cycle } from './cycle-flows.ts';
 import { energyPieces } from './energy-pieces.ts';
 import { type Piece, pieceCents, pieceQuantity, pieceWords, pieceWorking } from './piece.ts';
+import type { Credit } from './plan.ts';
 import type { PreparedCredit } from './prepare.ts';
 import { refuse } from './refused.ts';
 import type { Payout, SettledLine } from './settlement.ts';
@@ -37,24 +38,21 @@ export function settleCredit(cycle: Cycle, item: PreparedCredit, capUsed: CapUse
         : pieceWorking(cycle, piece, quantity, !separate);
     if (cap) cap.left -= amount;
     result.earned = cents(result.earned + amount);
-    const said = {
-      component: credit.id,
-      kind: credit.kind,
-      label: credit.label,
-      quantity,
-      unit: 'kWh' as const,
-      rate: piece.price.rate.text,
-    };
     if (separate) {
-      if (amount !== 0) result.payouts.push({ ...said, amountCents: amount, working });
+      if (amount !== 0) result.payouts.push(payoutOf(credit, quantity, piece.price.rate.text, amount, working));
       continue;
     }
     result.lines.push({
-      ...said,
+      component: credit.id,
+      kind: credit.kind,
+      label: credit.label,
       period: piece.period,
       tier: null,
       from: piece.split ? piece.part.from : null,
       to: piece.split ? piece.part.to : null,
+      quantity,
+      unit: 'kWh',
+      rate: piece.price.rate.text,
       amountCents: cents(-amount),
       inDue: credit.to === 'bill',
       working,
@@ -62,6 +60,19 @@ export function settleCredit(cycle: Cycle, item: PreparedCredit, capUsed: CapUse
   }
   if (cap) capUsed[credit.id] = { ...capUsed[credit.id], [cap.key]: dollarsText(cents(cap.used + result.earned)) };
   return result;
+}
+
+function payoutOf(credit: Credit, quantity: string, rate: string, amountCents: Cents, working: Working): Payout {
+  return {
+    component: credit.id,
+    kind: credit.kind,
+    label: credit.label,
+    quantity,
+    unit: 'kWh',
+    rate,
+    amountCents,
+    working,
+  };
 }
 
 type Cap = { key: string; amount: Cents; used: Cents; left: number };

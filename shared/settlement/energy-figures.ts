@@ -3,7 +3,7 @@ import { type Cycle, flowOf, type NettedFlow, viewOf } from './cycle-flows.ts';
 import { nettedOver, producedOver } from './interval-flows.ts';
 import type { Group } from './parts.ts';
 import type { Netting } from './plan.ts';
-import { compare, minus, type Qty, qtyText, times } from './quantity.ts';
+import { compare, exactText, minus, type Qty, times } from './quantity.ts';
 import type { Pricing } from './rates-in-force.ts';
 import { refuse } from './refused.ts';
 
@@ -43,7 +43,7 @@ const NETTED: Record<Netting, string> = {
 };
 
 export function basisInput(name: string, label: string, value: Qty, basis: Basis | 'fromBank'): WorkingInput {
-  return { name, label, value: qtyText(value), unit: 'kWh', source: SOURCES[basis] };
+  return { name, label, value: exactText(value), unit: 'kWh', source: SOURCES[basis] };
 }
 
 /** Whether the item's kWh can be told interval by interval: both by the plan's word and by the data. */

@@ -5,12 +5,24 @@ import type { Cycle } from './cycle-flows.ts';
 import { dayInputs, mustPrice } from './energy-share.ts';
 import { splitCycle } from './parts.ts';
 import type { PreparedCharge } from './prepare.ts';
+import { ONE_UNIT, priced } from './quantity.ts';
 import type { SettledLine } from './settlement.ts';
 
 /** What a floor asks for in the whole cycle, to the cent: rate, × days if per day; each part of a split cycle by its days. */
 export function floorCents(cycle: Cycle, item: PreparedCharge): Cents {
+  const parts = splitCycle(cycle, item.pricing, false);
+  const [only] = parts;
+  if (only && parts.length === 1) {
+    const { rate } = mustPrice(item, item.charge.label, only, null, null);
+    return priced(
+      item.charge.per === 'day' ? cycle.days * ONE_UNIT : ONE_UNIT,
+      1,
+      rate,
+      cycle.prepared.plan.rounding.money,
+    );
+  }
   let least = new Exact(0);
-  for (const part of splitCycle(cycle, item.pricing, false)) {
+  for (const part of parts) {
     const { rate } = mustPrice(item, item.charge.label, part, null, null);
     const times = item.charge.per === 'day' ? new Exact(part.days) : new Exact(part.days).div(cycle.days);
     least = least.plus(exact(rate.text).times(times));

@@ -13,20 +13,18 @@ export function planFaults(plan: RatePlan): PlanFault[] {
   ];
 }
 
-const timeZones = new Map<string, boolean>();
+const timeZones = new Set<string>();
 
-/** Asked once per name: making a formatter is slow, and a projection makes ready a plan for every year. */
+/** Names found good are remembered: making a formatter is slow, and a projection makes ready a plan for every year. */
 function isTimeZone(name: string): boolean {
-  const known = timeZones.get(name);
-  if (known !== undefined) return known;
-  let exists = true;
+  if (timeZones.has(name)) return true;
   try {
     new Intl.DateTimeFormat('en-US', { timeZone: name });
   } catch {
-    exists = false;
+    return false;
   }
-  timeZones.set(name, exists);
-  return exists;
+  timeZones.add(name);
+  return true;
 }
 
 function nameFaults(plan: RatePlan): PlanFault[] {

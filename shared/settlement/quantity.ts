@@ -102,6 +102,11 @@ export function qtyText(value: Qty): string {
   return `${value < 0 ? '-' : ''}${Math.floor(size / ONE_UNIT)}.${tail}`;
 }
 
+/** A quantity as text with all its digits, for the inputs of a working. */
+export function exactText(value: Qty): string {
+  return typeof value === 'number' ? qtyText(value) : value.div(ONE_UNIT).toString();
+}
+
 export function ratioText(ratio: Ratio): string {
   return ratio.d === 1 ? qtyText(ratio.n) : decimalTextOf(big(ratio.n).div(big(ratio.d)).div(ONE_UNIT));
 }

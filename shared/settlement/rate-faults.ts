@@ -1,6 +1,6 @@
-import { type Day, dayOf } from '../units/day.ts';
+import { dayOf } from '../units/day.ts';
 import { exact } from '../units/rate.ts';
-import { periodExists, seasonOf } from './calendar.ts';
+import { periodExists, seasonChanges, seasonOf } from './calendar.ts';
 import type { Charge, RatePlan, RateRow, RatesOf, TierRow } from './plan.ts';
 import { isEnergy, type PlanFault } from './plan-kinds.ts';
 
@@ -63,13 +63,11 @@ function unknownNames(plan: RatePlan, rows: readonly (RateRow | TierRow)[], labe
   ]);
 }
 
-/** The seasons that days of a year fall in; null stands for days outside every season. */
+/** The seasons that days of a year fall in; null stands for days outside every season. Seasons change only where one begins or ends. */
 function seasonsOfYear(plan: RatePlan): (string | null)[] {
-  if (plan.calendar.seasons.length === 0) return [null];
-  const found = new Set<string | null>();
-  for (let number = 1; number <= 366; number += 1) {
-    const date: Day = dayOf(LEAP_YEAR, 1, number);
-    found.add(seasonOf(plan.calendar, date));
+  const found = new Set([seasonOf(plan.calendar, dayOf(LEAP_YEAR, 1, 1))]);
+  for (const change of seasonChanges(plan.calendar, dayOf(LEAP_YEAR, 1, 1), dayOf(LEAP_YEAR + 1, 1, 1))) {
+    found.add(seasonOf(plan.calendar, change));
   }
   return [...found];
 }

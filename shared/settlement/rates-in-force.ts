@@ -28,7 +28,8 @@ export type Pricing = {
   tiers: readonly Limits[];
   /** Every day on which a row of the item comes into force, with the season it holds for, in order. */
   changes: readonly { from: Day; season: string | null }[];
-  cache: Map<string, Price>;
+  /** Derived prices by the rows they come from: a plan has few. */
+  cache: { rows: readonly PricedRow[]; price: Price }[];
 };
 
 /** Latest first, and of the same day the one that names more: the order in which a row in force is looked for. */
@@ -84,25 +85,26 @@ export function ownPricing(
     bySeason: [...table, ...limits].some((row) => row.season !== null),
     tiers: limits,
     changes: [...table, ...limits].map(({ from, season }) => ({ from, season })),
-    cache: new Map(),
+    cache: [],
   };
 }
 
 /** Pricing as a fraction of the sum of other charges' rates at one of their tiers, by their periods and their changes. */
 export function derivedPricing(ratesOf: RatesOf, charges: readonly { label: string; pricing: Pricing }[]): Pricing {
-  const pricings = charges.map((charge) => charge.pricing);
+  const tables = charges.flatMap((charge) => charge.pricing.tables);
+  const rows = tables.flat().filter((row) => row.tier === null || row.tier === ratesOf.tier);
   return {
-    tables: pricings.flatMap((pricing) => pricing.tables),
+    tables,
     derived: {
       fraction: ratesOf.fraction,
       tier: ratesOf.tier,
       words: charges.map((charge) => charge.label).join(' + '),
     },
-    byPeriod: pricings.some((pricing) => pricing.byPeriod),
-    bySeason: pricings.some((pricing) => pricing.bySeason),
+    byPeriod: rows.some((row) => row.period !== null),
+    bySeason: rows.some((row) => row.season !== null),
     tiers: [],
-    changes: pricings.flatMap((pricing) => pricing.changes),
-    cache: new Map(),
+    changes: rows.map(({ from, season }) => ({ from, season })),
+    cache: [],
   };
 }
 
@@ -139,12 +141,10 @@ export function priceAt(
     if (row === null) return null;
     rows.push(row);
   }
-  const key = rows.map((row) => `${row.from} ${row.price.rate.text}`).join('|');
-  const known = pricing.cache.get(key);
-  if (known) return known;
-  const made = derivedPrice(rows, derived);
-  pricing.cache.set(key, made);
-  return made;
+  for (const known of pricing.cache) if (known.rows.every((row, index) => row === rows[index])) return known.price;
+  const price = derivedPrice(rows, derived);
+  pricing.cache.push({ rows, price });
+  return price;
 }
 
 function derivedPrice(rows: readonly PricedRow[], derived: NonNullable<Pricing['derived']>): Price {

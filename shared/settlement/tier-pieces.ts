@@ -3,7 +3,7 @@ import type { Cycle } from './cycle-flows.ts';
 import { type EnergyItem, mustPrice, type Share } from './energy-share.ts';
 import type { Part } from './parts.ts';
 import type { Piece } from './piece.ts';
-import { compare, greater, lesser, minus, plus, type Qty, qtyText, roundToWhole, times } from './quantity.ts';
+import { compare, exactText, greater, lesser, minus, plus, type Qty, roundToWhole, times } from './quantity.ts';
 import type { Limits } from './rates-in-force.ts';
 import { refuse } from './refused.ts';
 
@@ -110,7 +110,7 @@ function sayTier(
 ): { top: string; bottom: string; inputs: WorkingInput[] } {
   const inputs: WorkingInput[] = [...share.inputs];
   const limit = (name: string, value: Qty): string => {
-    inputs.push({ name, label: bounds.label, value: qtyText(value), unit: 'kWh', source: bounds.limits.source });
+    inputs.push({ name, label: bounds.label, value: exactText(value), unit: 'kWh', source: bounds.limits.source });
     const over = share.bottom === '' ? '' : ` * ${share.bottom.replaceAll(' / ', ' * ')}`;
     return bounds.scale === 1 ? `${name}${over}` : `${name} * partDays${over}`;
   };

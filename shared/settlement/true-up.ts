@@ -1,40 +1,15 @@
-import { type Cents, cents, dollarsText } from '../units/cents.ts';
 import { monthOf, yearOf } from '../units/day.ts';
-import type { Working, WorkingInput } from '../working.ts';
-import { type BankState, centsOfQty, type Pocket, take } from './bank-state.ts';
-import { seasonOf, yearlyDayIn } from './calendar.ts';
+import type { BankState } from './bank-state.ts';
+import { yearlyDayIn } from './calendar.ts';
 import type { Cycle } from './cycle-flows.ts';
 import type { TrueUp } from './plan.ts';
 import type { PreparedTrueUp } from './prepare.ts';
-import {
-  big,
-  compare,
-  greater,
-  lesser,
-  minus,
-  plus,
-  priced,
-  type Qty,
-  qtyOfText,
-  qtyText,
-  roundToWhole,
-} from './quantity.ts';
-import { priceAt } from './rates-in-force.ts';
+import { big, compare, greater, minus, plus, type Qty, qtyOfText, roundToWhole } from './quantity.ts';
 import { refuse } from './refused.ts';
-import type { Opening, Payout, SettledLine } from './settlement.ts';
+import type { Opening } from './settlement.ts';
+import { billDebts, type TrueUpResult, takeOver } from './true-up-payments.ts';
 
 export type Usage = { cycles: number; kWh: Qty };
-export type TrueUpResult = { lines: SettledLine[]; payouts: Payout[] };
-
-/** A money movement of a true-up: positive to the customer. */
-type Payment = {
-  label: string;
-  period: string | null;
-  quantity: string | null;
-  rate: string | null;
-  amount: Cents;
-  working: Working;
-};
 
 /** Whether a true-up is due at the close of a cycle. */
 export function isDue(at: TrueUp['at'], cycle: Cycle): boolean {
@@ -61,8 +36,9 @@ export function countUsage(cycle: Cycle, state: BankState, opening: Opening): Us
 
 function loadOf(cycle: Cycle): number {
   const { usage, prepared } = cycle;
-  if (prepared.plan.load === 'metered')
+  if (prepared.plan.load === 'metered') {
     return usage.loadWh ?? refuse('The plan goes by the load meter: its kWh are needed.');
+  }
   const produced = usage.productionWh ?? refuse('The plan goes by the house’s use: production is needed.');
   return usage.importWh + produced - usage.exportWh;
 }
@@ -70,6 +46,7 @@ function loadOf(cycle: Cycle): number {
 /** The true-ups of a bank at the close, in order. `usage` is counted on and starts again after one that happens. */
 export function trueUpBank(cycle: Cycle, state: BankState, usage: Usage | null): TrueUpResult {
   const result: TrueUpResult = { lines: [], payouts: [] };
+  let happened = false;
   for (const item of state.prepared.trueUps) {
     if (!isDue(item.trueUp.at, cycle)) continue;
     billDebts(state, result);
@@ -78,37 +55,13 @@ export function trueUpBank(cycle: Cycle, state: BankState, usage: Usage | null):
     const over = greater(minus(total, kept), 0);
     if (compare(over, item.atLeast) < 0) continue;
     takeOver(cycle, state, item, over, result);
-    if (usage) {
-      usage.cycles = 0;
-      usage.kWh = 0;
-    }
+    happened = true;
+  }
+  if (usage && happened) {
+    usage.cycles = 0;
+    usage.kWh = 0;
   }
   return result;
-}
-
-/** A balance below zero: billed whole in USD, dropped in kWh. */
-function billDebts(state: BankState, result: TrueUpResult): void {
-  const { bank } = state.prepared;
-  for (const pocket of state.pockets) {
-    if (compare(pocket.balance, 0) >= 0) continue;
-    if (bank.unit === 'kWh') {
-      take(pocket, pocket.balance, 'expired');
-      continue;
-    }
-    const debt = centsOfQty(pocket.balance);
-    take(pocket, pocket.balance, 'paid');
-    const working = amountWorking(`${bank.label} below zero, billed`, 'balance', 'Balance', debt, bank.id, 'balance');
-    result.lines.push(
-      lineOf(bank.id, {
-        label: `${bank.label}, billed at true-up`,
-        period: null,
-        quantity: null,
-        rate: null,
-        amount: debt,
-        working,
-      }),
-    );
-  }
 }
 
 function keptOf(cycle: Cycle, item: PreparedTrueUp, usage: Usage | null): Qty {
@@ -119,156 +72,4 @@ function keptOf(cycle: Cycle, item: PreparedTrueUp, usage: Usage | null): Qty {
   const n = big(usage.kWh).times(keep.averageCycles);
   const kept = cycle.prepared.plan.rounding.limits === 'whole' ? roundToWhole(n, usage.cycles) : n.div(usage.cycles);
   return greater(kept, 0);
-}
-
-/** Takes what is over out of the bank, in the order its balances stand, and pays it where the true-up says so. */
-function takeOver(cycle: Cycle, state: BankState, item: PreparedTrueUp, over: Qty, result: TrueUpResult): void {
-  const { trueUp } = item;
-  const payments: Payment[] = [];
-  let left = over;
-  for (const pocket of state.pockets) {
-    const part = lesser(pocket.balance, left);
-    if (compare(part, 0) <= 0) continue;
-    const before = pocket.balance;
-    left = minus(left, part);
-    take(pocket, part, trueUp.action === 'pay' ? 'paid' : 'expired');
-    if (trueUp.action === 'pay') payments.push(paymentOf(cycle, state, item, pocket, part, before));
-  }
-  const paid = payments.reduce((sum, payment) => sum + payment.amount, 0);
-  const fee = centsOfQty(item.fee);
-  if (fee > 0 && paid > 0) payments.push(feeOf(state, fee, cents(paid)));
-  for (const payment of payments) {
-    if (payment.amount === 0) continue;
-    const { id } = state.prepared.bank;
-    if (trueUp.to === 'separate') result.payouts.push(payoutOf(id, payment));
-    else result.lines.push(lineOf(id, payment));
-  }
-}
-
-function paymentOf(
-  cycle: Cycle,
-  state: BankState,
-  item: PreparedTrueUp,
-  pocket: Pocket,
-  part: Qty,
-  before: Qty,
-): Payment {
-  const { bank } = state.prepared;
-  const label = `${bank.label}, paid at true-up`;
-  if (bank.unit === 'USD') {
-    const amount = centsOfQty(part);
-    const kept = centsOfQty(minus(before, part));
-    const working = amountWorking(
-      `${bank.label} at the true-up`,
-      'balance',
-      'Balance',
-      cents(amount + kept),
-      bank.id,
-      'balance',
-    );
-    if (kept !== 0) {
-      working.formula = 'balance - kept';
-      working.inputs.push(usdInput('kept', 'Stays in the bank', kept, bank.id));
-    }
-    return { label, period: pocket.period, quantity: null, rate: null, amount, working };
-  }
-  const { plan, round } = cycle.prepared;
-  const { pricing } = item;
-  const price = pricing && priceAt(pricing, cycle.to, seasonOf(plan.calendar, cycle.to), pocket.period, null);
-  if (!price) return refuse(`${bank.label} has no true-up rate in force on ${cycle.to}.`);
-  const quantity = qtyText(part);
-  const kWh: WorkingInput = {
-    name: 'kWh',
-    label: `${bank.label}, paid`,
-    value: quantityInput(part),
-    unit: 'kWh',
-    source: { kind: 'figure', name: bank.id },
-  };
-  return {
-    label,
-    period: pocket.period,
-    quantity,
-    rate: price.rate.text,
-    amount: priced(part, 1, price.rate, plan.rounding.money),
-    working: {
-      words: `${quantity} kWh × $${price.rate.text}, rounded to the cent`,
-      formula: `${round}(kWh * ${price.formula})`,
-      inputs: [kWh, ...price.inputs],
-      unit: 'USD',
-      basis: 'computed',
-    },
-  };
-}
-
-/** A quantity as an exact input, also where its shown text would be cut. */
-function quantityInput(value: Qty): string {
-  return typeof value === 'number' ? qtyText(value) : value.div(1000).toString();
-}
-
-function feeOf(state: BankState, fee: Cents, paid: Cents): Payment {
-  const { bank } = state.prepared;
-  const working = amountWorking(
-    'the true-up fee, no more than the payment',
-    'fee',
-    'Fee',
-    fee,
-    bank.id,
-    '-min(fee, payment)',
-  );
-  working.inputs.push(usdInput('payment', 'True-up payment', paid, bank.id));
-  return {
-    label: `${bank.label}, true-up fee`,
-    period: null,
-    quantity: null,
-    rate: null,
-    amount: cents(-Math.min(fee, paid)),
-    working,
-  };
-}
-
-function usdInput(name: string, label: string, amount: Cents, bankId: string): WorkingInput {
-  return { name, label, value: dollarsText(amount), unit: 'USD', source: { kind: 'figure', name: bankId } };
-}
-
-function amountWorking(
-  words: string,
-  name: string,
-  label: string,
-  amount: Cents,
-  bankId: string,
-  formula: string,
-): Working {
-  return { words, formula, inputs: [usdInput(name, label, amount, bankId)], unit: 'USD', basis: 'computed' };
-}
-
-function payoutOf(component: string, payment: Payment): Payout {
-  const { label, quantity, rate, amount, working } = payment;
-  return {
-    component,
-    kind: 'trueup',
-    label,
-    quantity,
-    unit: quantity === null ? null : 'kWh',
-    rate,
-    amountCents: amount,
-    working,
-  };
-}
-
-/** On the bill what is positive to the customer is negative. */
-function lineOf(component: string, payment: Payment): SettledLine {
-  const { period, working, amount, ...said } = payment;
-  return {
-    ...said,
-    component,
-    kind: 'trueup',
-    period,
-    tier: null,
-    from: null,
-    to: null,
-    unit: said.quantity === null ? null : 'kWh',
-    amountCents: cents(-amount),
-    inDue: true,
-    working: { ...working, formula: `-(${working.formula})` },
-  };
 }
