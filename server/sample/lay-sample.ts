@@ -2,6 +2,7 @@ import type { Result } from '#shared/problem.ts';
 import type { Actor, Deps } from '../deps.ts';
 import { acceptDifference } from '../services/accept-difference.ts';
 import { createHousehold } from '../services/create-household.ts';
+import { addPaper } from '../services/credit/papers.ts';
 import { putYear } from '../services/credit/put-year.ts';
 import { ledgerOf } from '../services/ledger-of.ts';
 import { addProductionFile } from '../services/log/add-production.ts';
@@ -76,8 +77,9 @@ function setUp(deps: LayDeps, actor: Actor, sample: SampleHousehold): void {
   must('cash', saveCash(deps, actor, sample.cash));
 }
 
-/** The back-log in one draft, as a bulk upload would be. */
+/** The papers of the credit, then the back-log in one draft, as a bulk upload would be. */
 function logPapers(deps: LayDeps, actor: Actor, sample: SampleHousehold): void {
+  for (const path of sample.papers.credit) must(path, addPaper(deps, actor, readSampleFile(path)));
   for (const path of sample.papers.statements) must(path, addStatementFile(deps, actor, readSampleFile(path)));
   for (const { path, channel } of sample.papers.readings) {
     must(path, addProductionFile(deps, actor, readSampleFile(path), channel));

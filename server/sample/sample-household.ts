@@ -40,6 +40,8 @@ export const sampleHousehold = z.strictObject({
   }),
   creditYears: z.array(z.extend(creditYearBody, { taxYear: z.int() })),
   papers: z.strictObject({
+    /** What the tax preparer finds behind the credit. */
+    credit: z.array(z.string()),
     statements: z.array(z.string()),
     readings: z.array(z.strictObject({ path: z.string(), channel: intervalChannel })),
   }),

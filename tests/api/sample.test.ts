@@ -9,6 +9,7 @@ import type { Deps } from '#server/deps.ts';
 import { silentLog } from '#server/log.ts';
 import { laySample, type SampleSignIn } from '#server/sample/lay-sample.ts';
 import { readSampleFile } from '#server/sample/sample-household.ts';
+import { readPaper } from '#server/services/credit/papers.ts';
 import { ledgerOf } from '#server/services/ledger-of.ts';
 import { loadFacts } from '#server/services/load-facts.ts';
 import { addProductionFile } from '#server/services/log/add-production.ts';
@@ -84,6 +85,18 @@ describe('laying the sample household', () => {
     const steps = readSteps(deps.db, householdId);
     expect(steps.map(({ step }) => step)).toEqual([...SETUP_STEPS]);
     expect(steps.filter(({ state }) => state !== 'done')).toEqual([]);
+  });
+
+  it('has the papers of the credit for the preparer to open', async () => {
+    const { householdId } = await owner();
+    const papers = loadFacts(deps.db, householdId)?.facts.documents.filter(({ kind }) => kind === 'credit') ?? [];
+    expect(papers.length).toBe(4);
+    const { user } = await signedIn('tax preparer');
+    const preparer = { userId: user.id, name: user.name, householdId, role: 'preparer' as const };
+    for (const { id } of papers) {
+      const opened = readPaper(deps, preparer, id);
+      expect(opened.ok && opened.value.contentType).toBe('application/pdf');
+    }
   });
 
   it('comes to the same figures as the files do without a server', async () => {
