@@ -1,5 +1,5 @@
 import { billAvoidedEntry } from '../books/bill-avoided.ts';
-import type { UnplacedEntry } from '../books/book.ts';
+import type { Entry, UnplacedEntry } from '../books/book.ts';
 import { costEntries } from '../books/costs.ts';
 import { type IncentiveCycle, incentiveEarned, incentiveReceived } from '../books/incentive.ts';
 import { loanEntries } from '../books/loan.ts';
@@ -13,8 +13,8 @@ import { isIncentiveInBill } from '../reconcile/electric-lines.ts';
 import { cents, sumCents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { Wh } from '../units/energy.ts';
-import type { EnergyFigure } from './cycle.ts';
-import { type AssembledCycle, assembleCycles } from './cycles.ts';
+import type { Cycle, EnergyFigure } from './cycle.ts';
+import { type Assembled, type AssembledCycle, assembleCycles } from './cycles.ts';
 import type { Ledger } from './ledger.ts';
 import { needsOf } from './needs.ts';
 
@@ -23,20 +23,13 @@ import { needsOf } from './needs.ts';
  * every book → position → what needs the owner. Pure and in one direction. Entries run through `today`.
  */
 export function computeLedger(facts: HouseholdFacts, { today }: { today: Day }): Ledger {
-  const { cycles: assembled, closing } = assembleCycles(facts);
-  const entries = placeEntries(
-    unplacedEntries(facts, assembled, today),
-    assembled.map((one) => one.cycle),
-  );
-  const cycles = assembled.map((one) => one.cycle);
-  const byTo = new Map(cycles.map((cycle) => [cycle.to as string, cycle]));
-  for (const entry of entries) byTo.get(entry.cycle)?.entries.push(entry);
-  for (const cycle of cycles) {
-    cycle.addedCents = sumCents(
-      cycle.entries.filter((entry) => entry.basis !== 'memo').map((entry) => entry.amountCents),
-    );
-    cycle.loanPayments = cycle.entries.filter((entry) => entry.book === 'loan' && entry.kind === 'payment').length;
-  }
+  return postLedger(facts, assembleCycles(facts), today);
+}
+
+/** From assembled cycles to the ledger: the entries of every book, placed; the position over them; what needs the owner. */
+export function postLedger(facts: HouseholdFacts, { cycles: assembled, closing }: Assembled, today: Day): Ledger {
+  const dates = assembled.map((one) => one.cycle);
+  const entries = placeEntries(unplacedEntries(facts, assembled, today), dates);
   const creditLines = facts.credit === null ? [] : creditLinesOf(facts.credit);
   const position = computePosition({
     facts,
@@ -53,8 +46,33 @@ export function computeLedger(facts: HouseholdFacts, { today }: { today: Day }):
     })),
     opening: closing,
   });
-  const needs = needsOf({ facts, assembled, entries, creditLines, position, today });
-  return { today, cycles, entries, creditLines, position, needs };
+  return {
+    today,
+    cycles: postedCycles(dates, entries),
+    entries,
+    creditLines,
+    position,
+    needs: needsOf({ facts, assembled, entries, creditLines, position, today }),
+  };
+}
+
+/** The cycles with their entries: the same objects as the ledger's, so that a figure has one working wherever it is shown. */
+function postedCycles(cycles: readonly Cycle[], entries: readonly Entry[]): Cycle[] {
+  const byTo = new Map<string, Entry[]>();
+  for (const entry of entries) {
+    const own = byTo.get(entry.cycle);
+    if (own) own.push(entry);
+    else byTo.set(entry.cycle, [entry]);
+  }
+  return cycles.map((cycle) => {
+    const own = byTo.get(cycle.to) ?? [];
+    return {
+      ...cycle,
+      entries: own,
+      addedCents: sumCents(own.filter((entry) => entry.basis !== 'memo').map((entry) => entry.amountCents)),
+      loanPayments: own.filter((entry) => entry.book === 'loan' && entry.kind === 'payment').length,
+    };
+  });
 }
 
 /** An energy that covers its whole cycle; the projection repeats no part of one. */

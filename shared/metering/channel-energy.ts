@@ -18,7 +18,7 @@ export type ChannelWitnesses = {
 };
 
 /** A register of whole kWh is right to ±1 kWh per difference (net-metering.md §5); the utility's own two records to 1 % (ledger.md §4). */
-const REGISTER_STEP_KWH = 1;
+const REGISTER_STEP_WH = 1000;
 const INTERVAL_SHARE = '0.01';
 
 export function channelWitnesses(paper: CyclePaper, index: IntervalIndex, channel: ReadChannel): ChannelWitnesses {
@@ -99,10 +99,17 @@ function printedEnergy(paper: CyclePaper, channel: ReadChannel, printed: Wh): En
 }
 
 function agreementTolerance(paper: CyclePaper, channel: ReadChannel, intervals: IntervalReading | null): Wh {
-  const steps = paper.reads
-    .filter((read) => read.channel === channel)
-    .reduce((sum, read) => sum.plus(Exact.max(1, exact(read.multiplier).abs()).times(REGISTER_STEP_KWH)), new Exact(0));
-  const least = Exact.max(steps, REGISTER_STEP_KWH).times(1000);
-  const share = new Exact(intervals?.figure.wh ?? 0).abs().times(INTERVAL_SHARE);
-  return wh(Exact.max(least, share).floor().toNumber());
+  let least = 0;
+  for (const read of paper.reads) {
+    if (read.channel === channel) least += read.multiplier === '1' ? REGISTER_STEP_WH : stepOf(read.multiplier);
+  }
+  least = Math.max(least, REGISTER_STEP_WH);
+  if (intervals === null) return wh(least);
+  const share = new Exact(intervals.figure.wh).abs().times(INTERVAL_SHARE).floor().toNumber();
+  return wh(Math.max(least, share));
+}
+
+/** A step of the dials in Wh; a multiplier below one is taken for one, since the printed kWh are whole. */
+function stepOf(multiplier: string): number {
+  return Exact.max(1, exact(multiplier).abs()).times(REGISTER_STEP_WH).floor().toNumber();
 }

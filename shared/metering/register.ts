@@ -4,9 +4,11 @@ import { Exact, exact, roundToWh } from '../units/rate.ts';
 import type { WorkingInput } from '../working.ts';
 import { input, paperSourceOf } from './source.ts';
 
+const NONE = new Exact(0);
+
 /** What a dial adds when it passes all nines: 10^dials where the current read is below the previous, else 0. */
 export function rollOver(read: RegisterRead): Exact {
-  return exact(read.current).lt(exact(read.previous)) ? new Exact(10).pow(read.dials) : new Exact(0);
+  return exact(read.current).lt(exact(read.previous)) ? new Exact(10).pow(read.dials) : NONE;
 }
 
 /**
@@ -48,7 +50,7 @@ export function registerEnergy(
       term += ` + over${n}`;
       said += ` + ${over.toString()} (the dials passed all nines)`;
     }
-    if (!exact(read.multiplier).eq(1)) {
+    if (read.multiplier !== '1') {
       inputs.push(input(`multiplier${n}`, `Multiplier of meter ${read.meter}`, read.multiplier, 'factor', source));
       term = `(${term}) * multiplier${n}`;
       said = `(${said}) × ${read.multiplier}`;
