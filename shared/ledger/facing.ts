@@ -41,7 +41,7 @@ export function facingLines(paper: CyclePaper, settled: SettledCycle): Facing {
     const line = facingLine(pair, at, judged);
     if (line) lines.push(line);
   });
-  for (const account of accountLines(paper)) {
+  for (const account of openAccountLines(paper)) {
     lines.push(carriedLine(paper, account, `carried:${account.kind}`, settled.ours !== null));
     carried.push(account.amountCents);
   }
@@ -72,6 +72,12 @@ export function accountLines(paper: CyclePaper): PrintedLine[] {
   add('previousBalance', 'Previous balance', statement.previousBalanceCents);
   add('payment', 'Payments', statement.paymentsCents);
   return made;
+}
+
+/** The same, left out where the payments have settled the balance: then they change nothing on this page. */
+function openAccountLines(paper: CyclePaper): PrintedLine[] {
+  const made = accountLines(paper);
+  return sumCents(made.map((line) => line.amountCents)) === 0 ? [] : made;
 }
 
 function pairUp(printed: readonly PrintedLine[], settled: SettledCycle): Pair[] {

@@ -2,13 +2,14 @@ import type { Entry } from '../books/book.ts';
 import type { CreditLines } from '../books/credit-lines.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
 import type { Position } from '../position/position.ts';
+import type { Check } from '../reconcile/check.ts';
 import { cents, subtractCents } from '../units/cents.ts';
 import { addDays, type Day, daysBetween } from '../units/day.ts';
 import { parseKwh, ZERO_WH } from '../units/energy.ts';
 import type { Cycle } from './cycle.ts';
 import type { AssembledCycle } from './cycles.ts';
 import type { Need } from './ledger.ts';
-import { sayCount, sayDate, sayDay, sayKwh, sayMoney, sayMonth } from './say.ts';
+import { sayCount, sayDate, sayDay, sayGap, sayKwh, sayMoney, sayMonth } from './say.ts';
 
 /** As many as a person will look at; what is wrong comes first. */
 const MOST_NEEDS = 6;
@@ -57,14 +58,22 @@ function differingCycles({ assembled }: NeedsInput): Need[] {
       return {
         key: `differs:${cycle.to}`,
         tone: 'bad' as const,
-        title:
-          due && cycle.oursDueCents !== null
-            ? billTitle(cycle)
-            : `${possessive(cycle)} statement differs in one or more checks`,
+        title: due && cycle.oursDueCents !== null ? billTitle(cycle) : checkTitle(cycle, first),
         detail: quantityDetail(cycle) ?? due?.cause ?? first?.cause ?? first?.title ?? 'Look at its checks.',
         link: `cycles/${cycle.to}`,
       };
     });
+}
+
+/** "October’s export is credited 13 kWh short", or the name of the check that differs. */
+function checkTitle(cycle: Cycle, check: Check | undefined): string {
+  if (!check) return `${possessive(cycle)} statement differs`;
+  const gap = check.difference === null ? null : parseKwh(check.difference);
+  const named = { exportAgainstIntervals: 'export is credited', importAgainstIntervals: 'import is charged' };
+  if (gap !== null && (check.check === 'exportAgainstIntervals' || check.check === 'importAgainstIntervals')) {
+    return `${possessive(cycle)} ${named[check.check]} ${sayGap(gap)} kWh ${gap < 0 ? 'short' : 'over'}`;
+  }
+  return `${possessive(cycle)} statement differs: ${check.title.charAt(0).toLowerCase()}${check.title.slice(1)}`;
 }
 
 /** "Billed 212 kWh exported; your meter and interval data agree on 256." Null where no billed quantity differs. */

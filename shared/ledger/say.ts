@@ -1,6 +1,6 @@
 import type { Cents } from '../units/cents.ts';
 import { type Day, dayOfMonth, monthOf, yearOf } from '../units/day.ts';
-import type { Wh } from '../units/energy.ts';
+import { type Wh, wh } from '../units/energy.ts';
 
 const MONTHS = [
   'January',
@@ -30,6 +30,12 @@ export function sayKwh(amount: Wh): string {
   if (size >= 100_000 || size % 1000 === 0) return `${sign}${grouped(Math.round(size / 1000))}`;
   const tenths = Math.round(size / 100);
   return `${sign}${Math.floor(tenths / 10)}.${tenths % 10}`;
+}
+
+/** A difference between two energies, without its sign: whole kWh from ten on, "44"; else with one decimal, "1.4". */
+export function sayGap(difference: Wh): string {
+  const size = Math.abs(difference);
+  return sayKwh(wh(size >= 10_000 ? Math.round(size / 1000) * 1000 : size));
 }
 
 /** "14 Sep". */

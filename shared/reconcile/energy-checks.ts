@@ -1,4 +1,4 @@
-import { sayCount, sayKwh } from '../ledger/say.ts';
+import { sayCount, sayGap, sayKwh } from '../ledger/say.ts';
 import { runTotals } from '../metering/cycle-energy.ts';
 import { runKey } from '../metering/estimated-reads.ts';
 import type { IntervalReading } from '../metering/interval-index.ts';
@@ -89,7 +89,7 @@ function channelTexts(
   difference: Wh,
   reads: string | null,
 ): { cause: string; advice: string } {
-  const size = `${sayKwh(wh(Math.abs(difference)))} kWh`;
+  const size = `${sayGap(difference)} kWh`;
   const way = difference < 0 ? 'less' : 'more';
   const write = 'Write to the utility with both figures, or accept the difference with a note.';
   return {

@@ -1,3 +1,4 @@
+import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import type { HouseholdFacts } from '#shared/facts/household.ts';
 import type { Statement } from '#shared/facts/papers.ts';
@@ -92,6 +93,60 @@ describe('a household whose bills agree with its meters', () => {
   });
 });
 
+describe('whatever the months were', () => {
+  const kwh = fc.integer({ min: 0, max: 2000 });
+  const months = fc.array(
+    fc.record({
+      importKwh: kwh,
+      exportKwh: kwh,
+      productionKwh: kwh,
+      short: fc.integer({ min: 0, max: 60 }),
+      estimated: fc.boolean(),
+    }),
+    { minLength: 1, maxLength: 6 },
+  );
+
+  test('the position is one figure by entry, by cycle and by book, and every working evaluates', () => {
+    fc.assert(
+      fc.property(months, fc.constantFrom('bill' as const, 'creditBank' as const), (built, exportTo) => {
+        const household = buildHousehold({
+          cycles: built.length,
+          exportTo,
+          change: (cycle, at) => {
+            const { short = 0, ...month } = built[at] ?? {};
+            const changed = { ...cycle, ...month };
+            return { ...changed, creditedKwh: Math.max(0, changed.exportKwh - short) };
+          },
+        });
+        // A short horizon: the projection is not what is tried here.
+        const ledger = compute({ ...household, assumptions: { ...household.assumptions, horizonMonths: 12 } });
+        const counted = ledger.entries.filter((entry) => entry.basis !== 'memo');
+        const byEntry = counted.reduce((sum, entry) => sum + entry.amountCents, 0);
+        const byCycle = ledger.position.points.reduce((sum, point) => sum + point.addedCents, 0);
+        const byBook = ledger.position.points.reduce(
+          (sum, point) => sum + Object.values(point.books).reduce((all, one) => all + one, 0),
+          0,
+        );
+        expect([byCycle, byBook, ledger.position.cashSoFar.amountCents]).toEqual([byEntry, byEntry, byEntry]);
+        expect(everyWorking(ledger).filter((one) => !one.agrees)).toEqual([]);
+      }),
+      { numRuns: 20 },
+    );
+  }, 60_000);
+});
+
+describe('a household without papers', () => {
+  test('has a position and is asked for its first statement', () => {
+    const ledger = compute({ ...buildHousehold(), statements: [] });
+    expect(ledger.cycles).toEqual([]);
+    expect(ledger.position.points.map((point) => point.cycle)).toEqual(['before']);
+    expect(ledger.needs.map((need) => need.key)).toContain('first-statement');
+    const bare = compute({ ...buildHousehold({ bare: true }), statements: [], plans: [] });
+    expect(bare.position.cashSoFar.amountCents).toBe(0);
+    expect(bare.needs.map((need) => need.key)).toContain('set-up');
+  });
+});
+
 describe('an export credited short', () => {
   test('is found by the interval file, named in kWh and in money', () => {
     const cycle = cycleAt(buildHousehold({ ...SHORT, exportTo: 'bill' }), 2);
@@ -120,8 +175,6 @@ describe('an export credited short', () => {
       ['Customer charge', 1450, 1450, 'agrees'],
       ['Public benefits, on import', 304, 304, 'agrees'],
       ['City franchise, 3.1%', 314, 314, 'agrees'],
-      expect.arrayContaining(['Previous balance']),
-      expect.arrayContaining(['Payments']),
       ['Due', cycle.billedDueCents, cycle.billedDueCents - 418, 'differs'],
     ]);
     expect(cycle.facing[1]?.billed?.quantity).toBe('212');
