@@ -29,12 +29,20 @@ export function assumptionsOf(facts: ProjectionFacts, energy: MonthlyEnergy, tod
       value: percent(assumptions.priceRise),
       source: isDefault('priceRise') ? 'Near the mean rise of the US residential price, 2010 to 2024 (EIA)' : OWN,
     },
-    { name: 'horizonMonths', label: 'Months projected', value: String(assumptions.horizonMonths), source: OWN },
+    {
+      name: 'horizonMonths',
+      label: 'Months projected',
+      value: String(assumptions.horizonMonths),
+      source:
+        assumptions.horizonMonths === DEFAULT_ASSUMPTIONS.horizonMonths
+          ? '25 years, the usual output warranty of modules'
+          : OWN,
+    },
     {
       name: 'upkeepYearlyCents',
       label: 'Upkeep each year',
       value: sayMoney(assumptions.upkeepYearlyCents),
-      source: OWN,
+      source: assumptions.upkeepYearlyCents === 0 ? 'None stated' : OWN,
     },
     {
       name: 'production',
@@ -65,7 +73,7 @@ export function assumptionsOf(facts: ProjectionFacts, energy: MonthlyEnergy, tod
     stated.push({
       name: 'incentive',
       label: 'Incentive',
-      value: 'paid in the month it is earned, to the end of its term',
+      value: 'what is owed is paid next, then each month’s in the month it is earned, to the end of the term',
       source: 'Incentive terms as entered',
     });
   }

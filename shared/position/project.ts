@@ -8,7 +8,7 @@ import { creditEarnedBy } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
 import type { Opening } from '../settlement/settlement.ts';
 import { cents, ZERO_CENTS } from '../units/cents.ts';
-import { type Day, dayOf, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
+import { addDays, type Day, dayOf, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
 import { assumptionsOf } from './assumptions.ts';
 import { bankWorth } from './bank-worth.ts';
 import { asByBook, counts, noSums, totalOf } from './books-sum.ts';
@@ -65,7 +65,7 @@ export function projectBase(input: ProjectionInput): Projected {
   const settled = projectBills(facts, periods, energies, input.opening);
   if (!settled.ok) return settled;
 
-  const flows = flowsAfter(input, periods, lastTo);
+  const flows = flowsAfter(input, periods, close);
   let next = 0;
   let cash: number = close.cashSoFarCents;
   let owed: number = close.incentiveOwedCents;
@@ -123,10 +123,12 @@ function evenOn(points: readonly PositionPoint[], months: readonly ProjectedMont
 }
 
 /** What is known or set to move on days from the last close on, in order: bills and the incentive are worked out by the month instead. */
-function flowsAfter(input: ProjectionInput, periods: readonly Period[], lastTo: Day): Flow[] {
+function flowsAfter(input: ProjectionInput, periods: readonly Period[], close: PositionPoint): Flow[] {
   const { facts, today } = input;
+  const lastTo = close.on;
   const horizon = periods.at(-1)?.to ?? lastTo;
   const flows: Flow[] = [];
+  let owed: number = close.incentiveOwedCents;
   const add = (on: Day, book: BookId, amount: number) => {
     if (on >= lastTo && on < horizon && amount !== 0) flows.push({ on, book, cents: amount });
   };
@@ -134,7 +136,11 @@ function flowsAfter(input: ProjectionInput, periods: readonly Period[], lastTo: 
     // Loan and insurance follow from their schedules below.
     const follows = entry.book === 'loan' || entry.book === 'insurance';
     if (counts(entry) && !follows) add(entry.date, entry.book, entry.amountCents);
+    if (counts(entry) && entry.book === 'incentive') owed -= entry.amountCents;
   }
+  // What is owed for production so far is collected next; an overpayment is left to whoever finds it.
+  const isLate = today < lastTo;
+  if (owed > 0) add(addDays(isLate ? lastTo : today, 1), 'incentive', owed);
   if (facts.loan) {
     for (const step of loanBook(facts.loan).steps)
       add(step.on, 'loan', -(step.regularCents + step.extraPrincipalCents));

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { costEntries } from '#shared/books/costs.ts';
+import { incentiveEarned } from '#shared/books/incentive.ts';
 import { loanEntries } from '#shared/books/loan.ts';
 import { foldPosition } from '#shared/position/fold.ts';
 import { monthlyEnergy } from '#shared/position/monthly-energy.ts';
@@ -171,6 +172,19 @@ describe('the projection', () => {
       ['2026-04-01', 505_000],
       ['2027-05-01', 187_000],
     ]);
+  });
+
+  it('collects what is owed of the incentive next, and owes nothing in the end', () => {
+    const incentive = incentiveOf({ firstDay: day('2025-01-01'), lastDay: day('2026-03-15') });
+    const today = day('2026-01-10');
+    const entries = placeEntries(incentiveEarned(incentive, YEAR), YEAR);
+    const folded = YEAR.map((cycle) => ({ ...cycle, provisional: false, utilityBank: NOTHING }));
+    const points = foldPosition({ entries, cycles: folded, today, loan: null, credit: null });
+    const { months } = project(factsOf({ incentive }), { points });
+    const owed = points.at(-1)?.incentiveOwedCents ?? cents(0);
+    expect(owed).toBe(sumCents(entries.map((entry) => entry.amountCents)));
+    expect(months[0]?.books.incentive).toBe(owed + Math.round(31 * 20 * 4.5));
+    expect(months.at(-1)?.settledTodayCents).toBe(months.at(-1)?.cashSoFarCents);
   });
 
   it('spends the upkeep of a year over its months, to the cent', () => {
