@@ -18,8 +18,8 @@ export type EnergyBars = {
 };
 
 /** What a letter and the room around a label take of a bar a thousand pixels wide. */
-const LETTER = 0.0083;
-const ROOM = 0.024;
+const LETTER = 0.0066;
+const ROOM = 0.022;
 
 /** The share of the width at which a part can carry its own label on a desk ("used at home 1,028 kWh"). */
 function labelShare(label: string): number {

@@ -81,7 +81,7 @@ function Bar({ parts, offset }: { parts: BarPart[]; offset: number }) {
           title={`${part.label} ${kwh(part.figure.wh)} kWh`}
         >
           <span className="hidden px-3 whitespace-nowrap @min-[88px]:inline">
-            <span className={part.label.length > 8 ? 'hidden @min-[212px]:inline' : 'hidden @min-[148px]:inline'}>
+            <span className={part.label.length > 8 ? 'hidden @min-[190px]:inline' : 'hidden @min-[148px]:inline'}>
               {part.label}{' '}
             </span>
             <FigureButton title={part.title} text={`${kwh(part.figure.wh)} kWh`} working={part.figure.working} />

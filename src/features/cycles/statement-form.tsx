@@ -1,35 +1,14 @@
-import { type ReactNode, useState } from 'react';
-import { type FieldErrors, type Resolver, useFieldArray, useForm } from 'react-hook-form';
+import { type ComponentProps, type ReactNode, useState } from 'react';
+import { type FieldErrors, useFieldArray, useForm } from 'react-hook-form';
 import type { Statement } from '#shared/facts/papers.ts';
 import { lineKind } from '#shared/settlement/settlement.ts';
-import { ApiError } from '#src/lib/api.ts';
-import { errorWords } from '#src/lib/problem-words.ts';
+import { refusalLines, resolverOf } from '#src/lib/form.ts';
 import { Button } from '#src/ui/button.tsx';
 import { ErrorSummary, Field, TextArea } from '#src/ui/field.tsx';
 import { useCorrect } from './cycles-queries.ts';
-import { readStatementValues, type StatementValues, type ValueFault, valuesOf } from './statement-values.ts';
+import { readStatementValues, type StatementValues, valuesOf } from './statement-values.ts';
 
-const resolver: Resolver<StatementValues> = (values) => {
-  const read = readStatementValues(values);
-  return read.ok ? { values, errors: {} } : { values: {}, errors: nested(read.faults) };
-};
-
-/** Faults by path as the form library nests them. */
-function nested(faults: readonly ValueFault[]): FieldErrors<StatementValues> {
-  const errors: Record<string, unknown> = {};
-  for (const { path, message } of faults) {
-    const keys = path.split('.');
-    const last = keys.pop() ?? path;
-    let at = errors;
-    for (const key of keys) {
-      const next = at[key] ?? {};
-      at[key] = next;
-      at = next as Record<string, unknown>;
-    }
-    at[last] = { type: 'value', message };
-  }
-  return errors as FieldErrors<StatementValues>;
-}
+const resolver = resolverOf(readStatementValues);
 
 const KIND_WORDS: Record<string, string> = {
   import: 'import',
@@ -78,7 +57,7 @@ export default function StatementForm({
     },
     () => setTried((n) => n + 1),
   );
-  const summary = [...(tried > 0 ? messagesOf(errors) : []), ...(correct.isError ? refusals(correct.error) : [])];
+  const summary = [...(tried > 0 ? messagesOf(errors) : []), ...(correct.isError ? refusalLines(correct.error) : [])];
   return (
     <form noValidate onSubmit={submit} className="sheet" aria-labelledby="correct-title">
       <h2 id="correct-title">Correct the statement</h2>
@@ -344,7 +323,7 @@ function Group({ title, children }: { title: string; children: ReactNode }) {
   );
 }
 
-function Select({ label, children, ...select }: React.ComponentProps<'select'> & { label: string }) {
+function Select({ label, children, ...select }: ComponentProps<'select'> & { label: string }) {
   return (
     <label className="field">
       <span className="field-label">{label}</span>
@@ -400,10 +379,4 @@ function placeOf(path: string[]): string {
   if (index === undefined) return FIELD_WORDS[head] ?? head;
   const what = head === 'lines' ? 'Line' : head === 'reads' ? 'Read' : 'Bank';
   return `${what} ${Number(index) + 1}, ${(FIELD_WORDS[field] ?? field).toLowerCase()}`;
-}
-
-function refusals(error: unknown): { text: string }[] {
-  const faults = error instanceof ApiError ? error.problem.faults : [];
-  const texts = [errorWords(error), ...faults.map((fault) => fault.message)];
-  return [...new Set(texts)].map((text) => ({ text }));
 }

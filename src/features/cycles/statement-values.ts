@@ -3,6 +3,7 @@ import type { PrintedLine, RegisterRead, Statement } from '#shared/facts/papers.
 import { type Cents, cents, dollarsText, parseDollars } from '#shared/units/cents.ts';
 import { type Day, parseDay } from '#shared/units/day.ts';
 import { kwhText, parseKwh, type Wh } from '#shared/units/energy.ts';
+import { FaultList, type Reading } from '#src/lib/form.ts';
 
 /** A statement as a person types it: every value a text. */
 export type StatementValues = {
@@ -79,43 +80,27 @@ function centsWords(amount: Cents | null): string {
   return amount === null ? '' : dollarsText(amount);
 }
 
-/** A value that cannot be read: the field's path (`lines.0.amountCents`) and what to do. */
-export type ValueFault = { path: string; message: string };
-
 const DECIMAL = /^-?\d{1,12}(\.\d{1,12})?$/;
+const NO_DATE = 'Write a date that exists.';
+const NO_AMOUNT = 'Write an amount such as 20.14 or −20.14.';
+const NO_NUMBER = 'Write a number such as 0.1684.';
 const UNITS = ['kWh', 'cycle', 'day', 'kW', 'USD'] as const;
 
 /** Reads the typed values as a statement and a reason; every fault is named, none stops at the first. */
-export function readStatementValues(
-  values: StatementValues,
-): { ok: true; body: { statement: StatementBody; reason: string } } | { ok: false; faults: ValueFault[] } {
-  const faults: ValueFault[] = [];
-  const fault = (path: string, message: string): null => {
-    faults.push({ path, message });
-    return null;
-  };
-  const optional = <T>(text: string, read: (text: string) => T | null, path: string, message: string): T | null =>
-    text.trim() === '' ? null : (read(text) ?? fault(path, message));
-  const day = (text: string, path: string): Day | null => optional(text, parseDay, path, 'Write a date that exists.');
-  const dollars = (text: string, path: string): Cents | null =>
-    optional(text, parseDollars, path, 'Write an amount such as 20.14 or −20.14.');
-  const energy = (text: string, path: string): Wh | null => optional(text, parseKwh, path, 'Write kWh, such as 498.');
-  const decimal = (text: string, path: string): string | null =>
-    optional(text, plainDecimal, path, 'Write a number such as 0.1684.');
-  const whole = (text: string, path: string): number | null =>
-    optional(text, wholeNumber, path, 'Write a whole number.');
-  const neededDay = (text: string, path: string): Day => day(text, path) ?? missing(path, '1970-01-01' as Day);
-  const neededDollars = (text: string, path: string): Cents => dollars(text, path) ?? missing(path, cents(0));
-  const neededDecimal = (text: string, path: string): string => decimal(text, path) ?? missing(path, '0');
-  const missing = <T>(path: string, instead: T): T => {
-    if (!faults.some((one) => one.path === path)) fault(path, 'This is needed.');
-    return instead;
-  };
+export function readStatementValues(values: StatementValues): Reading<{ statement: StatementBody; reason: string }> {
+  const list = new FaultList();
+  const day = (text: string, path: string) => list.optional(text, parseDay, path, NO_DATE);
+  const dollars = (text: string, path: string) => list.optional(text, parseDollars, path, NO_AMOUNT);
+  const energy = (text: string, path: string) => list.optional(text, parseKwh, path, 'Write kWh, such as 498.');
+  const decimal = (text: string, path: string) => list.optional(text, plainDecimal, path, NO_NUMBER);
+  const neededDay = (text: string, path: string) => list.needed(text, parseDay, path, NO_DATE, '1970-01-01' as Day);
+  const neededDollars = (text: string, path: string) => list.needed(text, parseDollars, path, NO_AMOUNT, cents(0));
+  const neededDecimal = (text: string, path: string) => list.needed(text, plainDecimal, path, NO_NUMBER, '0');
 
   const statement: StatementBody = {
     from: neededDay(values.from, 'from'),
     to: neededDay(values.to, 'to'),
-    printedDays: whole(values.printedDays, 'printedDays'),
+    printedDays: list.optional(values.printedDays, wholeNumber, 'printedDays', 'Write a whole number.'),
     statementOn: day(values.statementOn, 'statementOn'),
     dueOn: day(values.dueOn, 'dueOn'),
     importWh: energy(values.importWh, 'importWh'),
@@ -128,7 +113,7 @@ export function readStatementValues(
       to: neededDay(read.to, `reads.${index}.to`),
       previous: neededDecimal(read.previous, `reads.${index}.previous`),
       current: neededDecimal(read.current, `reads.${index}.current`),
-      dials: dialsOf(read.dials) ?? missing(`reads.${index}.dials`, 5),
+      dials: list.needed(read.dials, dialsOf, `reads.${index}.dials`, 'Write 3 to 9.', 5),
       multiplier: neededDecimal(read.multiplier, `reads.${index}.multiplier`),
       type: read.type,
       row: read.row,
@@ -136,7 +121,7 @@ export function readStatementValues(
     lines: values.lines.map((line, index) => ({
       component: line.component,
       kind: line.kind,
-      label: line.label.trim() || missing(`lines.${index}.label`, 'line'),
+      label: list.needed(line.label, (text) => text.trim(), `lines.${index}.label`, '', 'line'),
       quantity: decimal(line.quantity, `lines.${index}.quantity`),
       unit: UNITS.find((unit) => unit === line.unit) ?? null,
       rate: decimal(line.rate, `lines.${index}.rate`),
@@ -155,10 +140,10 @@ export function readStatementValues(
     paymentsCents: dollars(values.paymentsCents, 'paymentsCents'),
     amountDueCents: neededDollars(values.amountDueCents, 'amountDueCents'),
   };
-  if (faults.length === 0 && statement.to <= statement.from) fault('to', 'The last day comes after the first.');
+  if (list.faults.length === 0 && statement.to <= statement.from) list.add('to', 'The last day comes after the first.');
   const reason = values.reason.trim();
-  if (reason === '') fault('reason', 'Say why, in a few words.');
-  return faults.length > 0 ? { ok: false, faults } : { ok: true, body: { statement, reason } };
+  if (reason === '') list.add('reason', 'Say why, in a few words.');
+  return list.reading({ statement, reason });
 }
 
 function plainDecimal(text: string): string | null {

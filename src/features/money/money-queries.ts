@@ -1,0 +1,45 @@
+import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
+import type * as z from 'zod/mini';
+import { type costBody, type loanPaymentBody, type MoneyView, moneyApi, type receiptBody } from '#shared/api/money.ts';
+import { call } from '#src/lib/api.ts';
+
+export const moneyQuery = (householdId: string) =>
+  queryOptions({
+    queryKey: ['household', householdId, 'money'],
+    queryFn: ({ signal }) => call(moneyApi.view, { params: { householdId }, signal }),
+  });
+
+/** What can be recorded or taken back on the Money screen. */
+export type MoneyChange =
+  | { kind: 'loanPayment'; body: z.infer<typeof loanPaymentBody> }
+  | { kind: 'receipt'; body: z.infer<typeof receiptBody> }
+  | { kind: 'cost'; body: z.infer<typeof costBody> }
+  | { kind: 'removeLoanPayment' | 'removeReceipt' | 'removeCost'; id: string };
+
+/** Makes one change and keeps the answered view; every other screen of the household asks again. */
+export function useMoneyChange(householdId: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: (change: MoneyChange): Promise<MoneyView> => {
+      const params = { householdId };
+      switch (change.kind) {
+        case 'loanPayment':
+          return call(moneyApi.addLoanPayment, { params, body: change.body });
+        case 'receipt':
+          return call(moneyApi.addReceipt, { params, body: change.body });
+        case 'cost':
+          return call(moneyApi.addCost, { params, body: change.body });
+        case 'removeLoanPayment':
+          return call(moneyApi.removeLoanPayment, { params: { householdId, id: change.id } });
+        case 'removeReceipt':
+          return call(moneyApi.removeReceipt, { params: { householdId, id: change.id } });
+        case 'removeCost':
+          return call(moneyApi.removeCost, { params: { householdId, id: change.id } });
+      }
+    },
+    onSuccess: (view) => {
+      client.setQueryData(moneyQuery(householdId).queryKey, view);
+      return client.invalidateQueries({ queryKey: ['household', householdId] });
+    },
+  });
+}

@@ -1,0 +1,64 @@
+import type * as z from 'zod/mini';
+import type { costBody, loanPaymentBody, receiptBody } from '#shared/api/money.ts';
+import type { CostKind } from '#shared/facts/house.ts';
+import { type Cents, cents, parseDollars } from '#shared/units/cents.ts';
+import { type Day, parseDay } from '#shared/units/day.ts';
+import { FaultList, type Reading } from '#src/lib/form.ts';
+
+const NO_DATE = 'Write a date that exists.';
+const NO_AMOUNT = 'Write an amount such as 244.93.';
+const SOME_DAY = '1970-01-01' as Day;
+
+export type LoanPaymentValues = { on: string; amountCents: string; extraPrincipalCents: string; note: string };
+
+export function readLoanPayment(values: LoanPaymentValues): Reading<z.infer<typeof loanPaymentBody>> {
+  const list = new FaultList();
+  const amountCents = list.needed(values.amountCents, aboveZero, 'amountCents', NO_AMOUNT, cents(1));
+  const extra = list.optional(values.extraPrincipalCents, zeroOrMore, 'extraPrincipalCents', NO_AMOUNT) ?? cents(0);
+  if (extra > amountCents) {
+    list.add('extraPrincipalCents', 'The extra principal is a part of the payment and cannot be more than it.');
+  }
+  return list.reading({
+    on: list.needed(values.on, parseDay, 'on', NO_DATE, SOME_DAY),
+    amountCents,
+    extraPrincipalCents: extra,
+    note: noteOf(values.note),
+  });
+}
+
+export type ReceiptValues = { on: string; amountCents: string; note: string };
+
+export function readReceipt(values: ReceiptValues): Reading<z.infer<typeof receiptBody>> {
+  const list = new FaultList();
+  return list.reading({
+    on: list.needed(values.on, parseDay, 'on', NO_DATE, SOME_DAY),
+    amountCents: list.needed(values.amountCents, parseDollars, 'amountCents', NO_AMOUNT, cents(0)),
+    note: noteOf(values.note),
+  });
+}
+
+export type CostValues = { on: string; kind: CostKind; label: string; amountCents: string };
+
+export function readCost(values: CostValues): Reading<z.infer<typeof costBody>> {
+  const list = new FaultList();
+  return list.reading({
+    on: list.needed(values.on, parseDay, 'on', NO_DATE, SOME_DAY),
+    kind: values.kind,
+    label: list.needed(values.label, (text) => text.trim(), 'label', '', 'cost'),
+    amountCents: list.needed(values.amountCents, aboveZero, 'amountCents', NO_AMOUNT, cents(1)),
+  });
+}
+
+function aboveZero(text: string): Cents | null {
+  const amount = parseDollars(text);
+  return amount !== null && amount > 0 ? amount : null;
+}
+
+function zeroOrMore(text: string): Cents | null {
+  const amount = parseDollars(text);
+  return amount !== null && amount >= 0 ? amount : null;
+}
+
+function noteOf(text: string): string | null {
+  return text.trim() === '' ? null : text.trim();
+}
