@@ -2,7 +2,7 @@ import type { RatePlan, RateRow } from '../settlement/plan.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { DecimalText } from '../units/rate-text.ts';
 
-/** Decimals a projected price is rounded to: a tenth of a cent's hundredth, finer than any printed rate. */
+/** Decimals a projected price is rounded to: a ten-thousandth of a cent, finer than any printed rate. */
 const PRICE_DECIMALS = 6;
 
 /** A rate after whole years of a yearly rise: rate × (1 + rise)^years, rounded half-up to `decimals`. */

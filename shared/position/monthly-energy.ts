@@ -1,8 +1,9 @@
 import type { UsageBefore } from '../facts/house.ts';
-import { type Day, dayOfMonth, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
+import { type Day, daysBetween, daysInMonth } from '../units/day.ts';
 import { type Wh, wh } from '../units/energy.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { DecimalText } from '../units/rate-text.ts';
+import { gather, type Heap, type Heaps, MONTHS, monthOfAll, segmentsOf, wholeYear } from './month-heaps.ts';
 
 /** What is known of a closed cycle's energy; null where it is not measured. */
 export type EnergyCycle = {
@@ -34,11 +35,6 @@ export type MonthlyEnergy = {
   useBasis: MonthBasis[];
 };
 
-/** Wh and days gathered by year of age and calendar month. */
-type Heap = { energy: number; days: number };
-type Heaps = Map<number, Heap[]>;
-
-const MONTHS = Array.from({ length: 12 }, (_, index) => index);
 const DAYS_PER_YEAR = 365;
 
 /**
@@ -79,47 +75,6 @@ export function monthlyEnergy(input: MonthlyEnergyInput): MonthlyEnergy | null {
       (month) => shareOf(monthOfAll(exported, month), monthOfAll(producedWithExport, month)) ?? wholeShare,
     ),
   };
-}
-
-/** The days of a span that lie in one calendar month, and how many of its days are done with it. */
-type Segment = { month: number; days: number; done: number };
-
-function segmentsOf(from: Day, to: Day): Segment[] {
-  const days = daysBetween(from, to);
-  const segments: Segment[] = [];
-  let year = yearOf(from);
-  let month = monthOf(from);
-  let left = daysInMonth(year, month) - dayOfMonth(from) + 1;
-  let done = 0;
-  while (done < days) {
-    const part = Math.min(left, days - done);
-    done += part;
-    segments.push({ month: month - 1, days: part, done });
-    month = month === 12 ? 1 : month + 1;
-    if (month === 1) year += 1;
-    left = daysInMonth(year, month);
-  }
-  return segments;
-}
-
-/** Shares a span's energy by days between its calendar months, in whole Wh that add up. */
-function gather(heaps: Heaps, age: number, segments: readonly Segment[], energy: number): void {
-  let months = heaps.get(age);
-  if (!months) {
-    months = MONTHS.map(() => ({ energy: 0, days: 0 }));
-    heaps.set(age, months);
-  }
-  const days = segments.at(-1)?.done ?? 0;
-  let given = 0;
-  for (const segment of segments) {
-    const share = Math.round((energy * segment.done) / days);
-    const heap = months[segment.month];
-    if (heap) {
-      heap.energy += share - given;
-      heap.days += segment.days;
-    }
-    given = share;
-  }
 }
 
 function agedMean(heaps: Heaps, month: number, degradation: DecimalText): Exact | null {
@@ -183,25 +138,6 @@ function meanOf(values: readonly (Exact | null)[]): Exact | null {
 
 function meanOfHeap(heap: Heap | undefined): Exact | null {
   return heap === undefined || heap.days === 0 ? null : new Exact(heap.energy).div(heap.days);
-}
-
-function monthOfAll(heaps: Heaps, month: number): Heap {
-  const total: Heap = { energy: 0, days: 0 };
-  for (const months of heaps.values()) {
-    total.energy += months[month]?.energy ?? 0;
-    total.days += months[month]?.days ?? 0;
-  }
-  return total;
-}
-
-function wholeYear(heaps: Heaps): Heap {
-  const total: Heap = { energy: 0, days: 0 };
-  for (const month of MONTHS) {
-    const heap = monthOfAll(heaps, month);
-    total.energy += heap.energy;
-    total.days += heap.days;
-  }
-  return total;
 }
 
 /** Export ÷ production, between 0 and 1; null where nothing was produced. */

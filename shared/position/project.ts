@@ -16,6 +16,7 @@ import { lastingCrossing } from './even.ts';
 import { type EnergyCycle, monthlyEnergy } from './monthly-energy.ts';
 import type { PositionPoint, ProjectedMonth, Projection } from './position.ts';
 import { energyOfPeriods, type Period, type PeriodEnergy, projectBills } from './projected-bills.ts';
+import { roundedMean } from './sums.ts';
 
 export type ProjectionFacts = Pick<
   HouseholdFacts,
@@ -157,13 +158,15 @@ function flowsAfter(input: ProjectionInput, periods: readonly Period[], close: P
   return flows.sort((a, b) => (a.on < b.on ? -1 : a.on > b.on ? 1 : 0));
 }
 
-/** A twelfth of the year's upkeep on each month's first day, a part month by its days; cents carried so that twelve months make the year. */
+/** A twelfth of the year's upkeep on each month's first day, the first by its days; cents carried so that twelve months make the year. */
 function upkeepOf(yearlyCents: number, periods: readonly Period[]): { on: Day; cents: number }[] {
-  let months = 0;
+  const first = periods[0];
+  if (first === undefined) return [];
+  const monthDays = daysInMonth(yearOf(first.from), monthOf(first.from));
+  const firstDays = daysBetween(first.from, first.to);
   let given = 0;
   return periods.map((period) => {
-    months += daysBetween(period.from, period.to) / daysInMonth(yearOf(period.from), monthOf(period.from));
-    const due = Math.round((yearlyCents * months) / 12);
+    const due = roundedMean(cents(yearlyCents * (firstDays + period.index * monthDays)), 12 * monthDays);
     const part = due - given;
     given = due;
     return { on: period.from, cents: part };
