@@ -25,6 +25,8 @@ export type Layout = {
 
 const PROBED_ROWS = 60;
 const LONGEST_PREAMBLE = 120;
+/** A column is one of times when so many of its first rows hold one; the rest are faults of their rows. */
+const LEAST_SHARE = 0.2;
 
 const CHANNEL_WORDS: Record<'made' | 'in' | 'out', RegExp> = {
   made: /produc|generat|\bpv\b|solar|yield|inverter|\bmade\b/i,
@@ -169,7 +171,7 @@ export function findLayout(rows: SheetRow[], channel: IntervalChannel): Layout |
   const width = Math.max(...probe.map((row) => row.cells.length), rows[headerAt]?.cells.length ?? 0);
   const columns = columnNames(rows, headerAt, width);
   const header = rows[headerAt];
-  if (header && header.cells.filter((cell) => looksLikeClock(cell)).length >= 12) return 'pivoted';
+  if ((rows[dataAt - 1]?.cells ?? []).filter((cell) => looksLikeClock(cell)).length >= 12) return 'pivoted';
 
   const share = (test: (cell: string) => boolean, column: number) =>
     probe.filter((row) => test(cellOf(row, column))).length / probe.length;
@@ -177,7 +179,8 @@ export function findLayout(rows: SheetRow[], channel: IntervalChannel): Layout |
   const times = (first ? timeColumnsOf(first, (column) => cellOf(header, column)) : [])
     .filter(
       ({ column, numbers }) =>
-        share(numbers === null ? looksLikeStamp : (cell) => EPOCH.test(cell) || SERIAL.test(cell), column) > 0.4,
+        share(numbers === null ? looksLikeStamp : (cell) => EPOCH.test(cell) || SERIAL.test(cell), column) >
+        LEAST_SHARE,
     )
     .map((time) => ({ ...time, score: timeScore(columns[time.column] ?? '') }))
     .sort((a, b) => b.score - a.score || a.column - b.column);

@@ -81,7 +81,7 @@ export function daysOf(
   let missingSince = 0;
   let dayBefore = Number.NaN;
   for (const [day, amounts] of exact) {
-    for (let gone = dayBefore + 1; gone < day; gone += 1) missingSince += Math.ceil(grid.stepsIn(gone) / perStored);
+    if (day > dayBefore + 1) missingSince += Math.ceil(grid.stepsBetween(dayBefore + 1, day) / perStored);
     const count = Math.ceil(amounts.length / perStored);
     const values: (number | null)[] = new Array(count).fill(null);
     let held = false;

@@ -6,6 +6,7 @@ export type Delimiter = ',' | ';' | '\t' | '|';
 /** In order of preference where two divide a file equally well. */
 const DELIMITERS: readonly Delimiter[] = [',', ';', '\t', '|'];
 const PROBED_LINES = 120;
+const MOST_SCORED_CELLS = 3000;
 
 export type SheetRow = { row: number; cells: string[] };
 export type Sheet = { delimiter: Delimiter; rows: SheetRow[]; openQuoteRow: number | null };
@@ -52,7 +53,7 @@ function scoreOf(lines: string, delimiter: Delimiter): number {
   let whole = 0;
   let cells = 0;
   for (const row of rows) {
-    if (row.length !== width) continue;
+    if (row.length !== width || cells > MOST_SCORED_CELLS) continue;
     for (const cell of row) {
       cells += 1;
       if (isMissingMark(cell) || looksLikeStamp(cell) || looksLikeClock(cell) || looksLikeNumber(cell)) whole += 1;

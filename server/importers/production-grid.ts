@@ -18,6 +18,8 @@ export type Grid = {
   place: (utc: number) => { day: number; index: number } | null;
   /** The file's steps in a local day: one of 23 or 25 hours has fewer or more. */
   stepsIn: (day: number) => number;
+  /** The file's steps in the days from one up to another, not counting that. */
+  stepsBetween: (from: number, to: number) => number;
 };
 
 /** The stored step for a file's step; null when no stored one can hold it (or it is over a day). */
@@ -71,6 +73,10 @@ export function layGrid(zone: ZoneClock, step: number, starts: readonly number[]
       open(day);
       return Math.ceil((dayEnd - dayStart) / step);
     },
+    stepsBetween: (from, to) => {
+      const seconds = zone.toUtc(to * SECONDS_PER_DAY, false) - zone.toUtc(from * SECONDS_PER_DAY, false);
+      return Math.ceil(seconds / step);
+    },
   };
 }
 
@@ -82,5 +88,6 @@ export function dailyGrid(): Grid {
     phase: 0,
     place: (local) => ({ day: Math.floor(local / SECONDS_PER_DAY), index: 0 }),
     stepsIn: () => 1,
+    stepsBetween: (from, to) => to - from,
   };
 }

@@ -1,7 +1,14 @@
 import type { Rows } from './production-rows.ts';
 import type { ZoneClock } from './zone-clock.ts';
 
-const SECONDS_PER_DAY = 86_400;
+/** Steps loggers use, in minutes. */
+const USUAL_MINUTES = [5, 10, 15, 20, 30, 60, 120, 180, 240, 360, 480, 720];
+
+/** A step that is out by a minute, since its logger writes a little early and late, brought to the usual one it stands for. */
+function usual(step: number): number {
+  const minutes = USUAL_MINUTES.find((known) => Math.abs(known * 60 - step) <= 60);
+  return minutes === undefined ? step : minutes * 60;
+}
 
 /** The commonest distance between neighbouring moments, in seconds, to the minute; null with fewer than two moments. */
 export function commonStep(moments: readonly number[]): number | null {
@@ -22,7 +29,7 @@ export function commonStep(moments: readonly number[]): number | null {
       best = step;
     }
   }
-  return best;
+  return best === null ? null : usual(best);
 }
 
 /** True where most rows go back in time: the newest stands first. */
@@ -78,17 +85,6 @@ export function placeRows(rows: Rows, zone: ZoneClock, backwards: boolean, shift
   let onceOfTwo = 0;
   for (const times of seen.values()) if (times === 1) onceOfTwo += 1;
   return { utc, gapRows, onceOfTwo, clashes: count - new Set(utc).size };
-}
-
-/** Days since 1970 that the rows touch, for building a zone's clock. */
-export function daySpan(rows: Rows): { first: number; last: number } {
-  let first = Number.POSITIVE_INFINITY;
-  let last = Number.NEGATIVE_INFINITY;
-  for (const local of rows.local) {
-    if (local < first) first = local;
-    if (local > last) last = local;
-  }
-  return { first: Math.floor(first / SECONDS_PER_DAY), last: Math.floor(last / SECONDS_PER_DAY) };
 }
 
 /** Positions of the rows in time order; equal moments keep the order of the file (turned round where the newest stands first). */

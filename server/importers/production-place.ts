@@ -1,6 +1,6 @@
 import type { ProductionMapping } from '#shared/api/log.ts';
 import { dayFromNumber } from '#shared/units/day.ts';
-import { daySpan, placeRows } from './production-instants.ts';
+import { placeRows } from './production-instants.ts';
 import type { Doubts } from './production-mapping.ts';
 import type { Rows } from './production-rows.ts';
 import { type ZoneClock, zoneClock } from './zone-clock.ts';
@@ -37,9 +37,8 @@ function place(rows: Rows, zone: ZoneClock, how: How) {
 
 /** Where each row's step begins, in UTC seconds (for a running total: when it was read), and what the clock changes left in doubt. */
 export function placeInTime(rows: Rows, how: How, doubts: Doubts): Placed {
-  const span = daySpan(rows);
-  const house = zoneClock(how.houseZone, span.first, span.last);
-  const zone = how.timeZone === how.houseZone ? house : zoneClock(how.timeZone, span.first, span.last);
+  const house = zoneClock(how.houseZone);
+  const zone = zoneClock(how.timeZone);
   let placed = place(rows, zone, how);
   let timeZone = how.timeZone;
   const gap = placed.gapRows[0];
@@ -49,9 +48,7 @@ export function placeInTime(rows: Rows, how: How, doubts: Doubts): Placed {
     const before = local - (placed.utc[gap] ?? 0) - (how.stamp === 'end' && how.quantity === 'interval' ? how.step : 0);
     const fixed = fixedZone(before);
     const steady =
-      fixed !== null && how.mayChangeZone && placed.clashes > 0
-        ? place(rows, zoneClock(fixed, span.first, span.last), how)
-        : null;
+      fixed !== null && how.mayChangeZone && placed.clashes > 0 ? place(rows, zoneClock(fixed), how) : null;
     if (steady !== null && fixed !== null && steady.clashes < placed.clashes) {
       placed = steady;
       timeZone = fixed;

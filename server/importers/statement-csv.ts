@@ -13,6 +13,9 @@ import { type RowReader, rowReader } from './statement-row.ts';
 
 const MOST_BYTES = 2_000_000;
 const MOST_FAULTS = 200;
+/** Within so much of a file its header is found, or it is none of ours. */
+const HEAD_ROWS = 200;
+const HEAD_LETTERS = 100_000;
 
 type SheetRow = { row: number; cells: string[] };
 
@@ -24,16 +27,18 @@ function readSheet(
   text: string,
 ): { delimiter: string; header: SheetRow; rows: SheetRow[]; openQuote: number | null } | null {
   for (const delimiter of [',', ';', '\t']) {
+    const head = Papa.parse<string[]>(text.slice(0, HEAD_LETTERS), { delimiter, preview: HEAD_ROWS });
+    const first = head.data.find((cells) => !isBlank(cells) && !isComment(cells));
+    if (!first || !isStatementHeader(first)) continue;
     const parsed = Papa.parse<string[]>(text, { delimiter });
     const rows: SheetRow[] = [];
     parsed.data.forEach((cells, index) => {
       if (!isBlank(cells) && !isComment(cells)) rows.push({ row: index + 1, cells });
     });
     const [header, ...rest] = rows;
-    if (header && isStatementHeader(header.cells)) {
-      const open = parsed.errors.find((error) => error.type === 'Quotes');
-      return { delimiter, header, rows: rest, openQuote: open ? (open.row ?? 0) + 1 : null };
-    }
+    if (!header) continue;
+    const open = parsed.errors.find((error) => error.type === 'Quotes');
+    return { delimiter, header, rows: rest, openQuote: open ? (open.row ?? 0) + 1 : null };
   }
   return null;
 }

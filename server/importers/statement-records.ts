@@ -98,12 +98,17 @@ function readOf(cells: RowReader, from: Day, to: Day): RecordOfRow | null {
   return { record: 'read', channel, read, printedWh: printed === null ? null : parseKwh(printed) };
 }
 
+/** What may stand in `item`, the nearest word first: said only where a word was not understood. */
+function kindOffer(found: string): string {
+  const near = nearestName(plainWords(found), KNOWN_ITEMS);
+  const offer = `one of: ${OFFERED_ITEMS.join(', ')}`;
+  return near === null ? offer : `“${near}”, or ${offer}`;
+}
+
 function lineOf(cells: RowReader): RecordOfRow | null {
   cells.need('item', 'a line needs what it is in “item”, such as import or customer charge.');
   cells.need('amount', 'a line needs its amount. A credit is written with a minus: −12.34.');
-  const offer = `one of: ${OFFERED_ITEMS.join(', ')}`;
-  const near = nearestName(plainWords(cells.text('item')), KNOWN_ITEMS);
-  const kind = cells.word('item', kindOf, near === null ? offer : `“${near}”, or ${offer}`);
+  const kind = cells.word('item', kindOf, () => kindOffer(cells.text('item')));
   const amountCents = cells.money('amount');
   let quantity = cells.number('quantity');
   let unit = cells.word('unit', unitOf, 'kWh, kW, day, cycle or USD');

@@ -19,7 +19,7 @@ export type RowReader = {
   date: (column: StatementColumn) => Day | null;
   whole: (column: StatementColumn, least: number, most: number) => number | null;
   /** A word from a list: `read` gives its meaning or null, `offer` names what may stand there. */
-  word: <T>(column: StatementColumn, read: (text: string) => T | null, offer: string) => T | null;
+  word: <T>(column: StatementColumn, read: (text: string) => T | null, offer: string | (() => string)) => T | null;
   fault: (column: StatementColumn, code: string, message: string) => void;
   /** Notes a fault when a cell that the record needs is empty. */
   need: (column: StatementColumn, what: string) => void;
@@ -43,11 +43,21 @@ export function rowReader(
       fileFault(fileName, code, message, { row, column: nameOf(column), found: found === '' ? null : found }),
     );
   };
-  function cell<T>(column: StatementColumn, read: (found: string) => T | null, code: string, wrong: string): T | null {
+  function cell<T>(
+    column: StatementColumn,
+    read: (found: string) => T | null,
+    code: string,
+    wrong: string | (() => string),
+  ): T | null {
     const found = text(column);
     if (found === '') return null;
     const value = read(found);
-    if (value === null) fault(column, code, `Row ${row}, ${nameOf(column)}: ${quoted(found)} ${wrong}`);
+    if (value === null)
+      fault(
+        column,
+        code,
+        `Row ${row}, ${nameOf(column)}: ${quoted(found)} ${typeof wrong === 'string' ? wrong : wrong()}`,
+      );
     return value;
   }
   const example = mark === ',' ? ['12,34', '0,1684'] : ['12.34', '0.1684'];
@@ -78,7 +88,8 @@ export function rowReader(
         'not-whole',
         `is not a whole number from ${least} to ${most}.`,
       ),
-    word: (column, read, offer) => cell(column, read, 'not-known', `is not understood. Write ${offer}.`),
+    word: (column, read, offer) =>
+      cell(column, read, 'not-known', () => `is not understood. Write ${typeof offer === 'string' ? offer : offer()}.`),
     need: (column, what) => {
       if (text(column) === '') fault(column, 'missing-value', `Row ${row}: ${what}`);
     },

@@ -1,13 +1,15 @@
 const SECONDS_PER_DAY = 86_400;
 /** Clock changes lie further apart than this in every zone of the United States, so that no pair hides between two samples. */
 const SAMPLE_DAYS = 14;
+/** A zone is looked up in stretches of this length, each when it is first needed. */
+const STRETCH = 26 * SAMPLE_DAYS * SECONDS_PER_DAY;
 
 /** How a wall-clock time stands in its zone: it happened once, twice (clocks set back) or never (clocks set forward). */
 export type WallKind = 'once' | 'twice' | 'gap';
 
 /**
- * A zone's offsets over a span of years, looked up once: Intl is far too slow to ask for every row. Seconds throughout; local seconds are a
- * wall clock written as if it were UTC.
+ * A zone's offsets, looked up once: Intl is far too slow to ask for every row. Seconds throughout; local seconds are a wall clock written as
+ * if it were UTC.
  */
 export type ZoneClock = {
   offsetAt: (utc: number) => number;
@@ -16,7 +18,13 @@ export type ZoneClock = {
   kindOf: (local: number) => WallKind;
 };
 
+/** A stretch of time with one offset. */
+type Span = { from: number; to: number; offset: number };
+
+const clocks = new Map<string, ZoneClock>();
+
 export function isTimeZone(name: string): boolean {
+  if (clocks.has(name)) return true;
   try {
     new Intl.DateTimeFormat('en-US', { timeZone: name });
     return name !== '';
@@ -44,68 +52,75 @@ function offsetAsker(zone: string): (utc: number) => number {
   };
 }
 
-/** The zone's clock for instants from `firstDay` to `lastDay` (days since 1970) and a little beyond. Throws on an unknown zone. */
-export function zoneClock(zone: string, firstDay: number, lastDay: number): ZoneClock {
-  const ask = offsetAsker(zone);
-  const begin = (firstDay - 3) * SECONDS_PER_DAY;
-  const end = (lastDay + 4) * SECONDS_PER_DAY;
-  const starts = [Number.NEGATIVE_INFINITY];
-  const offsets = [ask(begin)];
-  for (let at = begin, before = ask(begin); at < end; at += SAMPLE_DAYS * SECONDS_PER_DAY) {
+/** The spans of one stretch: sampled, and each change between two samples found to the second by halving. */
+function spansOf(ask: (utc: number) => number, begin: number): Span[] {
+  const end = begin + STRETCH;
+  const spans: Span[] = [];
+  let open: Span = { from: begin, to: end, offset: ask(begin) };
+  for (let at = begin; at < end; at += SAMPLE_DAYS * SECONDS_PER_DAY) {
     const next = at + SAMPLE_DAYS * SECONDS_PER_DAY;
     const after = ask(next);
-    if (after !== before) {
-      let low = at;
-      let high = next;
-      while (high - low > 1) {
-        const middle = Math.floor((low + high) / 2);
-        if (ask(middle) === before) low = middle;
-        else high = middle;
-      }
-      starts.push(high);
-      offsets.push(after);
+    if (after === open.offset) continue;
+    let low = at;
+    let high = next;
+    while (high - low > 1) {
+      const middle = Math.floor((low + high) / 2);
+      if (ask(middle) === open.offset) low = middle;
+      else high = middle;
     }
-    before = after;
+    open.to = high;
+    spans.push(open);
+    open = { from: high, to: end, offset: after };
   }
-  const last = starts.length - 1;
-  const start = (index: number) => (index > last ? Number.POSITIVE_INFINITY : (starts[index] ?? 0));
-  const offset = (index: number) => offsets[Math.min(index, last)] ?? 0;
-  let segment = 0;
-  const seek = (utc: number) => {
-    while (utc < start(segment)) segment -= 1;
-    while (utc >= start(segment + 1)) segment += 1;
-    return segment;
-  };
-  /** The segments in which a wall-clock time can lie are the one its own offset leads to, and its neighbours. */
-  const readings = (local: number): number[] => {
-    const near = seek(local - offset(segment));
-    const found: number[] = [];
-    for (let index = Math.max(0, near - 1); index <= Math.min(last, near + 1); index += 1) {
-      const utc = local - offset(index);
-      if (utc >= start(index) && utc < start(index + 1)) found.push(utc);
+  if (open.from < end) spans.push(open);
+  return spans;
+}
+
+/** The zone's clock, made once for each zone. Throws on an unknown zone. */
+export function zoneClock(zone: string): ZoneClock {
+  const known = clocks.get(zone);
+  if (known) return known;
+  const ask = offsetAsker(zone);
+  const stretches = new Map<number, Span[]>();
+  let span: Span = { from: 0, to: 0, offset: 0 };
+  const seek = (utc: number): Span => {
+    if (utc >= span.from && utc < span.to) return span;
+    const number = Math.floor(utc / STRETCH);
+    let spans = stretches.get(number);
+    if (spans === undefined) {
+      spans = spansOf(ask, number * STRETCH);
+      stretches.set(number, spans);
     }
-    return found;
+    span = spans.find(({ to }) => utc < to) ?? span;
+    return span;
   };
-  return {
-    offsetAt: (utc) => offset(seek(utc)),
+  const offsetAt = (utc: number) => seek(utc).offset;
+  /** Offsets before and after any change near a wall-clock time; changes are never two within two days. */
+  const around = (local: number): { early: number | null; late: number | null; before: number } => {
+    const before = offsetAt(local - SECONDS_PER_DAY);
+    const after = offsetAt(local + SECONDS_PER_DAY);
+    const early = local - before;
+    const late = local - after;
+    return {
+      early: offsetAt(early) === before ? early : null,
+      late: before !== after && offsetAt(late) === after ? late : null,
+      before,
+    };
+  };
+  const clock: ZoneClock = {
+    offsetAt,
     kindOf: (local) => {
-      const count = readings(local).length;
-      return count === 0 ? 'gap' : count === 1 ? 'once' : 'twice';
+      const { early, late } = around(local);
+      return early !== null && late !== null ? 'twice' : early === null && late === null ? 'gap' : 'once';
     },
     toUtc: (local, second) => {
-      const near = seek(local - offset(segment));
-      const quick = local - offset(near);
-      // Two days from any change there is one answer.
-      if (quick - start(near) > 2 * SECONDS_PER_DAY && start(near + 1) - quick > 2 * SECONDS_PER_DAY) return quick;
-      const found = readings(local);
-      const first = found[0];
-      if (first !== undefined) return second ? (found.at(-1) ?? first) : first;
-      // In a gap the clock still counts by the offset before the change.
-      for (let index = Math.max(0, near - 2); index < Math.min(last, near + 2); index += 1) {
-        const change = start(index + 1);
-        if (local - offset(index) >= change && local - offset(index + 1) < change) return local - offset(index);
-      }
-      return quick;
+      const quick = local - span.offset;
+      if (quick - span.from > 2 * SECONDS_PER_DAY && span.to - quick > 2 * SECONDS_PER_DAY) return quick;
+      const { early, late, before } = around(local);
+      if (second && late !== null) return late;
+      return early ?? late ?? local - before;
     },
   };
+  clocks.set(zone, clock);
+  return clock;
 }
