@@ -79,6 +79,7 @@ export function readDraft(db: Reader, householdId: string): Draft {
     })
     .from(documents)
     .where(eq(documents.householdId, householdId))
+    .orderBy(asc(documents.ordinal))
     .all();
   const names = new Map(held.map((document) => [document.id, document.fileName]));
   const nameOf = (documentId: string) => names.get(documentId) ?? '';

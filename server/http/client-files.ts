@@ -1,8 +1,8 @@
 import path from 'node:path';
 import express, { Router } from 'express';
 
-/** Paths that look like a file are not pages of the application. */
-const LOOKS_LIKE_A_FILE = /\.[a-zA-Z0-9]{1,8}$/;
+/** What an address of the application can be; dots, escapes and the like never belong to one. */
+const APP_PATH = /^\/[\w\-/]*$/;
 
 /**
  * The built client: assets under their hashed names for ever, the page itself fresh each time, and the page for every address that the
@@ -23,7 +23,7 @@ export function clientFiles(distDir: string): Router {
   );
   router.use(express.static(distDir, { index: false, dotfiles: 'ignore', redirect: false, maxAge: 0 }));
   router.get('/{*path}', (req, res, next) => {
-    if (LOOKS_LIKE_A_FILE.test(req.path)) return next();
+    if (!APP_PATH.test(req.path)) return next();
     res.set('Cache-Control', 'no-cache');
     res.sendFile(page, { dotfiles: 'allow' });
   });
