@@ -8,7 +8,7 @@ import { Sentence } from '#src/ui/sentence.tsx';
 import { useChangeStatement, useDiscard, usePost } from './log-queries.ts';
 import { countValues, readValues } from './read-values.ts';
 import { CHANNEL_NAMES } from './readings-sheet.tsx';
-import { countOf } from './statement-file-sheet.tsx';
+import { countOf, numberWord } from './statement-file-sheet.tsx';
 import { StatementForm } from './statement-form.tsx';
 import { StatementSpread } from './statement-spread.tsx';
 
@@ -78,8 +78,6 @@ export function CheckStep({
   );
 }
 
-const NUMBERS = ['none', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine'];
-
 function CheckSentence({ draft }: { draft: LogDraft }) {
   const counts = draft.statements.map((one) => countValues(readValues(one).values));
   const read = counts.reduce((sum, one) => sum + one.read, 0);
@@ -100,7 +98,7 @@ function CheckSentence({ draft }: { draft: LogDraft }) {
       ? 'none needs your eye'
       : doubtful === 1
         ? 'one needs your eye'
-        : `${NUMBERS[doubtful] ?? doubtful} need your eye`;
+        : `${numberWord(doubtful)} need your eye`;
   const lede =
     doubtful === 0
       ? 'Every value agrees with what it could be held against.'

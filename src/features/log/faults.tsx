@@ -14,8 +14,7 @@ export function FaultList({ faults }: { faults: Fault[] }) {
         {shown.map((fault, index) => (
           // biome-ignore lint/suspicious/noArrayIndexKey: the list does not change while it is shown
           <li key={index} className="border-t border-rule py-2">
-            <b className="mr-3 inline!">{placeOf(fault)}</b>
-            {fault.message.replace(/^Row \d+: /, '')}
+            <FaultText fault={fault} />
             {fault.found !== null && fault.found !== '' && !fault.message.includes(fault.found) && (
               <span className="hint block">Found: “{fault.found}”</span>
             )}
@@ -27,6 +26,19 @@ export function FaultList({ faults }: { faults: Fault[] }) {
           Show all {faults.length}
         </button>
       )}
+    </>
+  );
+}
+
+/** The place in front of what is wrong; a message that names its row itself is not made to say it twice. */
+function FaultText({ fault }: { fault: Fault }) {
+  const named = /^Row \d+(?:, [^:“]+)?: (.)/.exec(fault.message);
+  if (!named && /^Row \d/.test(fault.message)) return fault.message;
+  const text = named ? fault.message.slice(named[0].length - 1) : fault.message;
+  return (
+    <>
+      <b className="mr-3 inline!">{placeOf(fault)}</b>
+      {text.charAt(0).toUpperCase() + text.slice(1)}
     </>
   );
 }

@@ -1,5 +1,5 @@
 import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
-import type { StatementBody } from '#shared/api/cycles.ts';
+import { cyclesApi, type StatementBody } from '#shared/api/cycles.ts';
 import { type LogDraft, logApi, type ProductionMapping } from '#shared/api/log.ts';
 import { setupApi } from '#shared/api/setup.ts';
 import type { IntervalChannel } from '#shared/facts/papers.ts';
@@ -17,6 +17,23 @@ export function statedQuery(householdId: string) {
   return queryOptions({
     queryKey: ['household', householdId, 'setup'],
     queryFn: ({ signal }) => call(setupApi.view, { params: { householdId }, signal }),
+  });
+}
+
+/** The statement of the last posted cycle, which the next one follows on from; null before the first. */
+export function lastStatementQuery(householdId: string) {
+  return queryOptions({
+    queryKey: ['household', householdId, 'last-statement'],
+    queryFn: async ({ signal }) => {
+      const { rows } = await call(cyclesApi.list, { params: { householdId }, signal });
+      const last = rows.reduce<string | null>(
+        (latest, row) => (latest === null || row.to > latest ? row.to : latest),
+        null,
+      );
+      if (last === null) return null;
+      const { cycle } = await call(cyclesApi.one, { params: { householdId, to: last }, signal });
+      return cycle.statement;
+    },
   });
 }
 

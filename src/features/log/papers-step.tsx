@@ -13,7 +13,7 @@ import { DropZone } from './drop-zone.tsx';
 import { FaultList } from './faults.tsx';
 import { useAddStatement, useUpload } from './log-queries.ts';
 import { ReadingsSheet } from './readings-sheet.tsx';
-import { StatementFileSheet, TypedStatementSheet } from './statement-file-sheet.tsx';
+import { numberWord, StatementFileSheet, TypedStatementSheet } from './statement-file-sheet.tsx';
 import { StatementForm } from './statement-form.tsx';
 
 type Refused = { fileName: string; text: string; faults: Fault[] };
@@ -101,7 +101,7 @@ export function PapersStep({ draft, onCheck }: { draft: LogDraft; onCheck: () =>
           hint={
             <>
               A CSV in the book’s own layout; several cycles may stand in one file.{' '}
-              <a href={addressOf(logApi.template)} download>
+              <a className="link" href={addressOf(logApi.template)} download>
                 Download the template
               </a>
             </>
@@ -171,8 +171,8 @@ function papersRead(draft: LogDraft): string {
   const cycles = draft.statements.length;
   const files = draft.readings.length;
   const parts = [
-    cycles > 0 ? (cycles === 1 ? 'One statement' : `${cycles} statements`) : null,
-    files > 0 ? (files === 1 ? 'one file of readings' : `${files} files of readings`) : null,
+    cycles > 0 ? `${numberWord(cycles)} statement${cycles === 1 ? '' : 's'}` : null,
+    files > 0 ? `${numberWord(files)} file${files === 1 ? '' : 's'} of readings` : null,
   ].filter((part) => part !== null);
   const text = parts.join(' and ');
   return text.charAt(0).toUpperCase() + text.slice(1);

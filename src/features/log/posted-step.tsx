@@ -1,6 +1,6 @@
 import type { PostedView } from '#shared/api/log.ts';
 import type { Entry } from '#shared/books/book.ts';
-import { intervalChannel } from '#shared/facts/papers.ts';
+import { type IntervalChannel, intervalChannel } from '#shared/facts/papers.ts';
 import { type Cents, cents } from '#shared/units/cents.ts';
 import { cycleRange, dayMonth, money, monthName } from '#src/lib/format.ts';
 import { useHousehold } from '#src/lib/household.ts';
@@ -11,7 +11,6 @@ import { Note } from '#src/ui/note.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { FigureButton } from '#src/ui/working.tsx';
-import { CHANNEL_NAMES } from './readings-sheet.tsx';
 import { countOf } from './statement-file-sheet.tsx';
 
 type PostedCycle = PostedView['cycles'][number];
@@ -20,6 +19,7 @@ type PostedCycle = PostedView['cycles'][number];
 export function PostedStep({ posted }: { posted: PostedView }) {
   const { id } = useHousehold();
   const last = posted.cycles.at(-1);
+  const added = cents(posted.cycles.reduce((sum, cycle) => sum + cycle.addedCents, 0));
   const rise = cents(posted.settledAfterCents - posted.settledBeforeCents);
   return (
     <>
@@ -68,6 +68,12 @@ export function PostedStep({ posted }: { posted: PostedView }) {
             </table>
             <p className="mt-3">
               Settled today {rise < 0 ? 'fell' : 'rose'} by <b>{money(cents(Math.abs(rise)))}</b>.
+              {rise !== added && (
+                <span className="hint block">
+                  Payments and premiums stand in the position from their own day on, with or without a statement; what
+                  the loan still owes and what is owed to you moves with it too.
+                </span>
+              )}
             </p>
           </Sheet>
         </div>
@@ -195,10 +201,17 @@ function billWords(billed: Cents, ours: Cents | null): string {
     : `Billed ${money(billed)}; from your meters it comes to ${money(ours)}.`;
 }
 
+const READINGS: Record<IntervalChannel, string> = {
+  production: 'from the production meter',
+  monitor: 'from the inverter’s monitoring',
+  import: 'of what was bought',
+  export: 'of what was sent out',
+};
+
 function readingsWords(posted: PostedView): string | null {
   const parts = intervalChannel.options.flatMap((channel) => {
     const days = posted.readingsDays[channel] ?? 0;
-    return days > 0 ? [`${countOf(days, 'day')} of ${CHANNEL_NAMES[channel].toLowerCase()}`] : [];
+    return days > 0 ? [`${countOf(days, 'day')} ${READINGS[channel]}`] : [];
   });
-  return parts.length === 0 ? null : `With ${parts.join(', ')}.`;
+  return parts.length === 0 ? null : `With readings for ${parts.join(' and ')}.`;
 }

@@ -121,7 +121,7 @@ export function readValues(drafted: DraftStatement): { values: ReadValue[]; othe
     const component = line.component ?? componentOf(facing);
     const mine = take((check) => check.check === 'linePrice' && check.about === component);
     const made = value(`line${index}`, lineLabel(line), [lineField(statement, index)], mine, line.row);
-    values.push(isNewLine(facing, drafted) && made.tone !== 'no' ? newLine(made) : made);
+    values.push(isNewLine(line, facing, drafted) && made.tone !== 'no' ? newLine(made) : made);
   });
   statement.banks.forEach((bank, index) => {
     const mine = take(
@@ -174,7 +174,8 @@ function value(key: string, label: string, fields: ReadField[], checks: Check[],
     fields,
     tone,
     verdict: worst === null ? '' : verdictWords(worst),
-    notes: differing.map(noteOf),
+    // Two checks that fail for one cause are said once.
+    notes: differing.filter((check, at) => differing.findIndex((one) => one.cause === check.cause) === at).map(noteOf),
     doubtful: differing.length > 0,
     rows: row === null ? [] : [row],
     total: false,
@@ -228,10 +229,12 @@ function componentOf(facing: FacingLine | null): string | null {
   return /^line:([^:]+):/.exec(facing?.key ?? '')?.[1] ?? null;
 }
 
+const CARRIED = new Set(['otherService', 'previousBalance', 'payment']);
+
 /** Electric lines that the plan says nothing of; only where there is a plan to compare with at all. */
-function isNewLine(facing: FacingLine | null, drafted: DraftStatement): boolean {
-  const planned = drafted.facing.some((line) => line.key.startsWith('line:') && line.ours !== null);
-  return planned && facing?.ours === null && facing.key.startsWith('printed:');
+function isNewLine(line: StatementBody['lines'][number], facing: FacingLine | null, drafted: DraftStatement): boolean {
+  const planned = drafted.facing.some((one) => one.key.startsWith('line:') && one.ours !== null);
+  return planned && !CARRIED.has(line.kind) && (facing?.key.startsWith('printed:') ?? false);
 }
 
 function registerLabel(read: RegisterRead, reads: RegisterRead[]): string {

@@ -1,61 +1,23 @@
-import { useEffect, useRef, useState } from 'react';
-import type { StatementBody } from '#shared/api/cycles.ts';
+import { type ReactNode, useEffect, useRef, useState } from 'react';
 import type { SourceTable } from '#shared/api/log.ts';
+import { isDatesColumn, isValueColumn, paperRows } from './source-rows.ts';
 
-/** Columns whose cells are values that were read, by the names the statement layout gives them. */
-const VALUE_COLUMNS = new Set([
-  'service_from',
-  'service_to',
-  'amount',
-  'quantity',
-  'rate',
-  'previous',
-  'current',
-  'statement_date',
-  'due_date',
-  'days',
-]);
-const plainName = (name: string) =>
-  name
-    .trim()
-    .toLowerCase()
-    .replace(/[^a-z0-9]+/g, '_');
-
-/** The rows of a file that belong to one statement: those its values name, and their neighbours with the same service dates. */
-export function rowsOfStatement(table: SourceTable, statement: StatementBody): number[] {
-  const named = [...statement.reads, ...statement.lines, ...statement.banks].flatMap((part) => part.row ?? []);
-  const first = table.rows.find((row) => named.includes(row.row));
-  if (!first) return [];
-  const at = ['service_from', 'service_to'].map((name) => table.header.findIndex((cell) => plainName(cell) === name));
-  const dates = (row: SourceTable['rows'][number]) => at.map((index) => row.cells[index] ?? '').join(' ');
-  const own = dates(first);
-  return table.rows.filter((row) => named.includes(row.row) || dates(row) === own).map((row) => row.row);
-}
-
-/**
- * The file as it came, beside what was read: cells that were read are set off, doubtful ones marked, and the row of the value in hand is
- * outlined. The box scrolls by itself; the page never does sideways.
- */
-export function SourceView({
-  fileName,
-  table,
-  own,
-  marks,
-  active,
-}: {
-  fileName: string;
+type Shown = {
   table: SourceTable;
   own: number[];
   /** Number of the doubt by row. */
   marks: Map<number, number>;
   active: number[];
-}) {
+};
+
+/**
+ * The file as it came, beside what was read: cells that were read are set off, doubtful ones marked, and the row of the value in hand is
+ * outlined. One statement is laid out as a page; the whole file as the table it is. The box scrolls by itself, the page never sideways.
+ */
+export function SourceView({ fileName, ...shown }: Shown & { fileName: string }) {
+  const { table, own, active } = shown;
   const [whole, setWhole] = useState(false);
   const box = useRef<HTMLElement>(null);
-  const rows = whole || own.length === 0 ? table.rows : table.rows.filter((row) => own.includes(row.row));
-  const columns = table.header
-    .map((name, index) => ({ name, index }))
-    .filter(({ index }) => rows.some((row) => (row.cells[index] ?? '').trim() !== ''));
   const first = active[0];
   useEffect(() => {
     const frame = box.current;
@@ -65,6 +27,7 @@ export function SourceView({
     const below = row.offsetTop + row.offsetHeight > frame.scrollTop + frame.clientHeight;
     if (above || below) frame.scrollTop = row.offsetTop - frame.clientHeight / 3;
   }, [first]);
+  const asTable = whole || own.length === 0;
   return (
     <div className="min-w-0">
       <p className="hint flex flex-wrap justify-between gap-x-5">
@@ -72,9 +35,9 @@ export function SourceView({
           {fileName}
           {own.length > 0 && `, rows ${own[0]} to ${own.at(-1)}`}
         </span>
-        {own.length > 0 && own.length < table.rows.length && (
+        {own.length > 0 && (
           <button type="button" className="link text-ink" aria-pressed={whole} onClick={() => setWhole(!whole)}>
-            {whole ? 'this cycle only' : 'whole file'}
+            {whole ? 'this cycle' : 'whole file'}
           </button>
         )}
       </p>
@@ -83,60 +46,112 @@ export function SourceView({
         // biome-ignore lint/a11y/noNoninteractiveTabindex: a box that scrolls must be reachable by keyboard
         tabIndex={0}
         aria-label="Rows of the file"
-        className="relative mt-2 max-h-[70vh] overflow-auto border border-rule bg-field"
+        className="relative mt-2 max-h-[60vh] overflow-auto border border-rule bg-field lg:max-h-[86vh]"
       >
-        <table className="border-collapse text-[14px]">
-          <thead>
-            <tr>
-              <th className="sticky top-0 left-0 z-2 bg-field px-2 py-1.5 text-left font-normal text-soft">row</th>
-              {columns.map(({ name, index }) => (
-                <th
-                  key={index}
-                  className="sticky top-0 bg-field px-2.5 py-1.5 text-left font-normal whitespace-nowrap text-soft"
-                >
-                  {name}
-                </th>
-              ))}
-            </tr>
-          </thead>
-          <tbody>
-            {rows.map((row) => {
-              const mark = marks.get(row.row);
-              const mine = own.length === 0 || own.includes(row.row);
-              return (
-                <tr
-                  key={row.row}
-                  data-row={row.row}
-                  className={`border-t border-rule ${active.includes(row.row) ? 'outline-2 -outline-offset-2 outline-accent' : ''} ${mine ? '' : 'text-soft'}`}
-                >
-                  <td className="sticky left-0 bg-field px-2 py-1 text-soft">
-                    {mark === undefined ? row.row : <Mark number={mark} />}
-                  </td>
-                  {columns.map(({ name, index }) => {
-                    const cell = row.cells[index] ?? '';
-                    const read = mine && cell.trim() !== '' && VALUE_COLUMNS.has(plainName(name));
-                    const look = !read
-                      ? ''
-                      : mark !== undefined && !/^service/.test(plainName(name))
-                        ? 'bg-behind/15 outline outline-behind/60 -outline-offset-1'
-                        : 'bg-doubt';
-                    return (
-                      <td key={index} className={`px-2.5 py-1 whitespace-nowrap ${read ? 'text-right' : ''} ${look}`}>
-                        {cell}
-                      </td>
-                    );
-                  })}
-                </tr>
-              );
-            })}
-          </tbody>
-        </table>
+        {asTable ? <WholeFile {...shown} /> : <Page {...shown} />}
       </section>
       {table.more > 0 && (
         <p className="hint mt-1">{table.more.toLocaleString('en-US')} more rows of the file are not shown.</p>
       )}
     </div>
   );
+}
+
+const ACTIVE = 'outline-2 -outline-offset-2 outline-accent';
+
+function cellLook(doubtful: boolean): string {
+  return doubtful ? 'bg-behind/15 outline outline-behind/60' : 'bg-doubt outline outline-doubt-rule/50';
+}
+
+function Page({ table, own, marks, active }: Shown) {
+  return (
+    <ol className="px-5 py-4 text-[14.5px]">
+      {paperRows(table, own).map(({ row, words, values }) => {
+        const mark = marks.get(row);
+        return (
+          <li
+            key={row}
+            data-row={row}
+            className={`grid grid-cols-[30px_1fr_auto] items-baseline gap-x-2 py-1.5 ${active.includes(row) ? ACTIVE : ''}`}
+          >
+            <RowNumber row={row} mark={mark} />
+            <span>{words.join(' · ')}</span>
+            <span className="flex flex-wrap justify-end gap-x-2.5 gap-y-1">
+              {values.map(({ column, text, dates }) => (
+                <span
+                  key={column}
+                  title={column}
+                  className={`px-1 whitespace-nowrap -outline-offset-1 ${cellLook(mark !== undefined && !dates)}`}
+                >
+                  <span className="visually-hidden">{column} </span>
+                  {text}
+                </span>
+              ))}
+            </span>
+          </li>
+        );
+      })}
+    </ol>
+  );
+}
+
+function WholeFile({ table, own, marks, active }: Shown) {
+  const columns = table.header
+    .map((name, index) => ({ name, index }))
+    .filter(({ index }) => table.rows.some((row) => (row.cells[index] ?? '').trim() !== ''));
+  return (
+    <table className="border-collapse text-[14px]">
+      <thead>
+        <tr>
+          <Head corner>row</Head>
+          {columns.map(({ name, index }) => (
+            <Head key={index}>{name}</Head>
+          ))}
+        </tr>
+      </thead>
+      <tbody>
+        {table.rows.map((row) => {
+          const mark = marks.get(row.row);
+          const mine = own.length === 0 || own.includes(row.row);
+          const lookOf = (name: string, text: string) => {
+            if (!mine || text.trim() === '' || !isValueColumn(name)) return '';
+            return `text-right -outline-offset-1 ${cellLook(mark !== undefined && !isDatesColumn(name))}`;
+          };
+          return (
+            <tr
+              key={row.row}
+              data-row={row.row}
+              className={`border-t border-rule ${active.includes(row.row) ? ACTIVE : ''} ${mine ? '' : 'text-soft'}`}
+            >
+              <td className="sticky left-0 bg-field px-2 py-1">
+                <RowNumber row={row.row} mark={mark} />
+              </td>
+              {columns.map(({ name, index }) => (
+                <td key={index} className={`px-2.5 py-1 whitespace-nowrap ${lookOf(name, row.cells[index] ?? '')}`}>
+                  {row.cells[index] ?? ''}
+                </td>
+              ))}
+            </tr>
+          );
+        })}
+      </tbody>
+    </table>
+  );
+}
+
+function Head({ children, corner = false }: { children: ReactNode; corner?: boolean }) {
+  return (
+    <th
+      scope="col"
+      className={`sticky top-0 bg-field px-2.5 py-1.5 text-left font-normal whitespace-nowrap text-soft ${corner ? 'left-0 z-2' : ''}`}
+    >
+      {children}
+    </th>
+  );
+}
+
+function RowNumber({ row, mark }: { row: number; mark: number | undefined }) {
+  return mark === undefined ? <span className="text-soft">{row}</span> : <Mark number={mark} />;
 }
 
 /** The number that ties a doubtful value to its place in the file. */

@@ -1,11 +1,12 @@
 import * as z from 'zod/mini';
 import type { StatementBody } from '#shared/api/cycles.ts';
 import type { SetupView } from '#shared/api/setup.ts';
+import type { MeterFacts } from '#shared/facts/house.ts';
 import { printedLine, readChannel } from '#shared/facts/papers.ts';
-import type { RateRow } from '#shared/settlement/plan.ts';
+import type { RatePlan, RateRow } from '#shared/settlement/plan.ts';
 import { lineUnit } from '#shared/settlement/settlement.ts';
 import { type Cents, cents, parseDollars } from '#shared/units/cents.ts';
-import { fieldValue, plainDecimal, textOf, typed, typedWhole } from '#src/lib/typed-values.ts';
+import { fieldValue, textOf, typed, typedWhole } from '#src/lib/typed-values.ts';
 
 const text = z.string();
 const channel = readChannel;
@@ -157,10 +158,97 @@ export function statementOfForm(form: StatementFormValues, before: StatementBody
   };
 }
 
-/** A statement to be typed, with the plan's lines and the house's meters laid out so that only figures are left to fill in. */
-export function emptyStatementForm(stated: SetupView | null): StatementFormValues {
+/**
+ * A statement to be typed, laid out so that only figures are left to fill in: reads, banks and balance follow on from the last statement, lines
+ * are the last one's, else the rate plan's; meters are the house's where no statement has named them.
+ */
+export function emptyStatementForm(stated: SetupView | null, last: StatementBody | null): StatementFormValues {
   const plan = stated?.plans.at(-1)?.plan ?? null;
-  const meters = stated?.house.meters ?? [];
+  return {
+    from: last?.to ?? '',
+    to: '',
+    days: '',
+    statementOn: '',
+    dueOn: '',
+    reads: last && last.reads.length > 0 ? nextReads(last) : readsOfMeters(stated?.house.meters ?? []),
+    importKwh: '',
+    exportKwh: '',
+    productionKwh: '',
+    lines: last && last.lines.length > 0 ? nextLines(last, plan) : linesOfPlan(plan),
+    banks:
+      last && last.banks.length > 0
+        ? last.banks.map((bank) => ({
+            bank: bank.bank,
+            label: bankLabel(bank.bank, plan),
+            unit: bank.unit,
+            open: bank.close ?? '',
+            close: '',
+          }))
+        : (plan?.banks ?? []).map((bank) => ({
+            bank: bank.id,
+            label: bank.label,
+            unit: bank.unit,
+            open: '',
+            close: '',
+          })),
+    previousBalance: textOf.cents(last?.amountDueCents ?? null),
+    payments: '',
+    due: '',
+  };
+}
+
+function bankLabel(id: string, plan: RatePlan | null): string {
+  return plan?.banks.find((bank) => bank.id === id)?.label ?? id;
+}
+
+/** The registers as they stood at the end of the last statement; a meter that was taken out in it does not come again. */
+function nextReads(last: StatementBody): StatementFormValues['reads'] {
+  return last.reads
+    .filter((read) => read.to === last.to)
+    .map((read) => ({
+      ...read,
+      from: '',
+      to: '',
+      previous: read.current,
+      current: '',
+      dials: String(read.dials),
+      type: 'actual',
+    }));
+}
+
+function readsOfMeters(meters: MeterFacts[]): StatementFormValues['reads'] {
+  return meters.flatMap((meter) =>
+    meter.channels.map((one) => ({
+      meter: meter.id,
+      channel: one,
+      from: '',
+      to: '',
+      previous: '',
+      current: '',
+      dials: String(meter.dials),
+      multiplier: meter.multiplier,
+      type: 'actual' as const,
+    })),
+  );
+}
+
+/** The last statement's lines without their figures; a line that stood in two parts is laid out once. */
+function nextLines(last: StatementBody, plan: RatePlan | null): LineRow[] {
+  const rateOf = new Map(linesOfPlan(plan).map((line) => [line.component, line.rate]));
+  return last.lines
+    .filter((line, index) => last.lines.findIndex((one) => one.label === line.label) === index)
+    .map((line) => ({
+      ...emptyLine(),
+      component: textOf.text(line.component),
+      kind: line.kind,
+      label: line.label,
+      unit: line.unit ?? '',
+      rate: rateOf.get(textOf.text(line.component)) ?? textOf.text(line.rate),
+      inDue: line.inDue,
+    }));
+}
+
+function linesOfPlan(plan: RatePlan | null): LineRow[] {
   const charges = (plan?.charges ?? []).map(
     (charge): LineRow => ({
       ...emptyLine(),
@@ -187,42 +275,8 @@ export function emptyStatementForm(stated: SetupView | null): StatementFormValue
     );
   const spent = (plan?.banks ?? [])
     .filter((bank) => bank.unit === 'USD' && bank.offsets.length > 0)
-    .map((bank): LineRow => ({ ...emptyLine(), component: bank.id, kind: 'credit', label: `${bank.label}, used` }));
-  const reads = meters.flatMap((meter) =>
-    meter.channels.map((one) => ({
-      meter: meter.label,
-      channel: one,
-      from: '',
-      to: '',
-      previous: '',
-      current: '',
-      dials: String(meter.dials),
-      multiplier: meter.multiplier,
-      type: 'actual' as const,
-    })),
-  );
-  return {
-    from: '',
-    to: '',
-    days: '',
-    statementOn: '',
-    dueOn: '',
-    reads,
-    importKwh: '',
-    exportKwh: '',
-    productionKwh: '',
-    lines: [...charges, ...credits, ...spent],
-    banks: (plan?.banks ?? []).map((bank) => ({
-      bank: bank.id,
-      label: bank.label,
-      unit: bank.unit,
-      open: '',
-      close: '',
-    })),
-    previousBalance: '',
-    payments: '',
-    due: '',
-  };
+    .map((bank): LineRow => ({ ...emptyLine(), component: bank.id, kind: 'credit', label: bank.label }));
+  return [...charges, ...credits, ...spent];
 }
 
 function lastRate(rates: RateRow[]): string {
@@ -250,7 +304,7 @@ export function runningSum(
   return { linesCents: cents(total), dueCents: parseDollars(form.due), unread };
 }
 
-/** True where a quantity reads as plain decimal text; used to leave an empty plan line out. */
+/** True for a line laid out beforehand and left without quantity and amount: this statement does not print it. */
 export function isUntouched(line: LineRow): boolean {
-  return line.component !== '' && line.amount.trim() === '' && plainDecimal(line.quantity) === null;
+  return line.label.trim() !== '' && line.amount.trim() === '' && line.quantity.trim() === '';
 }

@@ -11,7 +11,7 @@ import { useHousehold } from '#src/lib/household.ts';
 import { Button } from '#src/ui/button.tsx';
 import { ErrorSummary, Field, SelectField } from '#src/ui/field.tsx';
 import { PageSkeleton } from '#src/ui/states.tsx';
-import { statedQuery } from './log-queries.ts';
+import { lastStatementQuery, statedQuery } from './log-queries.ts';
 import {
   emptyLine,
   emptyStatementForm,
@@ -37,19 +37,22 @@ type Props = {
 export function StatementForm(props: Props) {
   const { id } = useHousehold();
   const stated = useQuery({ ...statedQuery(id), enabled: props.statement === null });
-  if (props.statement === null && stated.isPending) return <PageSkeleton />;
-  return <Loaded {...props} stated={stated.data ?? null} />;
+  const last = useQuery({ ...lastStatementQuery(id), enabled: props.statement === null });
+  if (props.statement === null && (stated.isPending || last.isPending)) return <PageSkeleton />;
+  return <Loaded {...props} stated={stated.data ?? null} last={last.data ?? null} />;
 }
 
+/** What a new statement is laid out from. */
+type Before = { stated: SetupView | null; last: StatementBody | null };
 type Form = UseFormReturn<StatementFormValues, unknown, StatementFormValues>;
 
-function Loaded({ statement, save, busy, onSave, onCancel, stated }: Props & { stated: SetupView | null }) {
+function Loaded({ statement, save, busy, onSave, onCancel, stated, last }: Props & Before) {
   const [refusals, setRefusals] = useState<string[]>([]);
   const [tries, setTries] = useState(0);
   const form = useForm<StatementFormValues, unknown, StatementFormValues>({
     resolver: zodResolver(statementForm),
     mode: 'onTouched',
-    defaultValues: statement ? formOfStatement(statement) : emptyStatementForm(stated),
+    defaultValues: statement ? formOfStatement(statement) : emptyStatementForm(stated, last),
   });
   const reads = useFieldArray({ control: form.control, name: 'reads' });
   const lines = useFieldArray({ control: form.control, name: 'lines' });

@@ -3,7 +3,8 @@ import type { StatementBody } from '#shared/api/cycles.ts';
 import type { DraftStatement, LogDraft, SourceTable } from '#shared/api/log.ts';
 import { fullDate } from '#src/lib/format.ts';
 import { type ReadValue, readValues } from './read-values.ts';
-import { rowsOfStatement, SourceView } from './source-view.tsx';
+import { rowsOfStatement } from './source-rows.ts';
+import { SourceView } from './source-view.tsx';
 import { ValueRow } from './value-row.tsx';
 
 /** Facing pages of the check: the file on the left, what was read on the right. A typed statement has no left page. */
@@ -34,7 +35,7 @@ export function StatementSpread({
   );
   return (
     <div
-      className={`mt-[26px] grid gap-x-[34px] gap-y-8 ${file ? 'lg:grid-cols-[minmax(0,500px)_minmax(0,1fr)]' : 'max-w-[760px]'}`}
+      className={`mt-[26px] grid grid-cols-[minmax(0,1fr)] gap-x-[34px] gap-y-8 ${file ? 'lg:grid-cols-[minmax(0,470px)_minmax(0,1fr)]' : 'max-w-[760px]'}`}
     >
       {file && <SourceView fileName={file.fileName} table={file.table} own={own} marks={marks} active={active} />}
       <section aria-label="What we read" aria-busy={saving}>

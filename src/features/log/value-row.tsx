@@ -23,11 +23,16 @@ export function ValueRow({
       className={`-mx-3 min-w-0 border-b px-3 ${value.total ? 'border-b-4 border-double border-ink font-bold' : 'border-rule'} ${value.doubtful ? 'bg-doubt' : ''}`}
       onFocus={() => onFocus(value.rows)}
     >
-      <div className="grid grid-cols-[26px_1fr] items-center gap-x-2 py-1.5 sm:grid-cols-[26px_1fr_auto_116px]">
+      <div className="grid grid-cols-[26px_1fr_auto] items-center gap-x-2 py-1.5 sm:grid-cols-[26px_1fr_auto_104px]">
         <span>{mark === null ? null : <Mark number={mark} />}</span>
         <span className={value.doubtful ? 'font-semibold' : ''}>{value.label}</span>
         <span
-          className={`col-start-2 flex items-center gap-1.5 sm:col-start-auto ${pair ? 'sm:w-[292px]' : 'sm:w-[150px]'} sm:justify-self-end`}
+          className={`text-right sm:order-last sm:pl-1.5 sm:text-left ${value.tone ? TONES[value.tone] : ''} whitespace-normal!`}
+        >
+          {value.verdict}
+        </span>
+        <span
+          className={`col-span-2 col-start-2 flex items-center gap-1.5 sm:col-span-1 sm:col-start-auto ${pair ? 'sm:w-[310px]' : 'sm:w-[150px]'} sm:justify-self-end`}
         >
           {value.fields.map((field, index) => (
             <span key={field.name} className="flex min-w-0 flex-1 items-center gap-1.5">
@@ -35,11 +40,6 @@ export function ValueRow({
               <ValueField field={field} strong={value.total} onChange={onChange} />
             </span>
           ))}
-        </span>
-        <span
-          className={`col-start-2 sm:col-start-auto sm:pl-1.5 ${value.tone ? TONES[value.tone] : ''} whitespace-normal!`}
-        >
-          {value.verdict}
         </span>
       </div>
       {value.notes.map((note) => (
@@ -90,7 +90,7 @@ function ValueField({
         aria-label={field.name}
         aria-invalid={fault ? true : undefined}
         aria-describedby={fault ? `${id}-fault` : undefined}
-        className={`input input-number mt-0! px-2! ${strong ? 'font-bold' : ''}`}
+        className={`input input-number mt-0! px-2! ${strong ? 'font-bold' : ''} ${field.type === 'date' ? 'max-sm:px-1! max-sm:text-[15px]!' : ''}`}
         type={field.type === 'date' ? 'date' : 'text'}
         inputMode={field.type === 'number' ? 'decimal' : 'text'}
         value={text}

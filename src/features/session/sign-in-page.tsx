@@ -72,8 +72,11 @@ export function SignInPage() {
         </p>
       </form>
       <p className="hint mt-8">
-        New here? <Link to="/sign-up">Start a book for your house</Link>. If somebody keeps the book already, ask them
-        to add you.
+        New here?{' '}
+        <Link className="link" to="/sign-up">
+          Start a book for your house
+        </Link>
+        . If somebody keeps the book already, ask them to add you.
       </p>
     </PlainPage>
   );

@@ -46,7 +46,9 @@ export function SetupStepPage() {
   return (
     <div className="page page-narrow">
       <p className="mb-4 flex flex-wrap justify-between gap-x-6 text-[15px]">
-        <Link to={`/h/${id}/setup`}>All of set-up</Link>
+        <Link className="link" to={`/h/${id}/setup`}>
+          All of set-up
+        </Link>
         <span className="text-soft">
           Step {SETUP_STEPS.indexOf(step) + 1} of {SETUP_STEPS.length}
         </span>

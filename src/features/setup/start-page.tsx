@@ -78,7 +78,9 @@ export function StartPage() {
           {others.map((one, index) => (
             <span key={one.id}>
               {index > 0 && ', '}
-              <Link to={`/h/${one.id}`}>{one.name}</Link>
+              <Link className="link" to={`/h/${one.id}`}>
+                {one.name}
+              </Link>
             </span>
           ))}
           .

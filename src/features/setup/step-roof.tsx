@@ -44,8 +44,8 @@ const roofForm = z
     months: z.array(z.object({ kwh: typed.kwhOrNone })),
     meters: z.array(
       z.object({
-        key: z.string(),
-        label: z.string().check(z.trim(), z.minLength(1, { error: 'Write the meter’s number.' })),
+        number: z.string().check(z.trim(), z.minLength(1, { error: 'Write the meter’s number.' })),
+        label: z.string().check(z.maxLength(80)),
         kind: z.enum(KINDS),
         dials: typedWhole(3, 9),
         multiplier: typed.rate,
@@ -101,7 +101,7 @@ export function RoofStep({ view }: { view: SetupView }) {
       acKw: house.inverterAcWatts === null ? '' : kilowatts(house.inverterAcWatts).replace(/\.00$/, ''),
       months: MONTHS.map((_, index) => ({ kwh: textOf.wh(house.expectedMonthlyWh?.[index] ?? null) })),
       meters: house.meters.map((meter) => ({
-        key: meter.id,
+        number: meter.id,
         label: meter.label,
         kind: kindOf(meter),
         dials: String(meter.dials),
@@ -130,8 +130,8 @@ export function RoofStep({ view }: { view: SetupView }) {
         expectedMonthlyWh:
           values.months[0]?.kwh.trim() === '' ? null : values.months.map((month) => fieldValue.wh(month.kwh)),
         meters: values.meters.map((meter) => ({
-          id: meter.key,
-          label: meter.label.trim(),
+          id: meter.number.trim(),
+          label: meter.label.trim() || METER_KINDS[meter.kind].words,
           channels: [...METER_KINDS[meter.kind].channels],
           dials: fieldValue.whole(meter.dials),
           multiplier: fieldValue.decimal(meter.multiplier),
@@ -216,7 +216,12 @@ export function RoofStep({ view }: { view: SetupView }) {
             <FormRow key={row.id} title={`Meter ${index + 1}`} onRemove={() => meters.remove(index)}>
               <Columns>
                 <Field
-                  label="Number on its face"
+                  label="Number, as statements print it"
+                  error={at?.number?.message}
+                  {...form.register(`meters.${index}.number`)}
+                />
+                <Field
+                  label="Name, if you like"
                   error={at?.label?.message}
                   {...form.register(`meters.${index}.label`)}
                 />
@@ -247,7 +252,7 @@ export function RoofStep({ view }: { view: SetupView }) {
             </FormRow>
           );
         })}
-        <AddRow onClick={() => meters.append({ key: newId(), label: '', kind: 'net', dials: '5', multiplier: '1' })}>
+        <AddRow onClick={() => meters.append({ number: '', label: '', kind: 'net', dials: '5', multiplier: '1' })}>
           Add a meter
         </AddRow>
       </Part>
