@@ -1,9 +1,10 @@
-import { accountLines, totalToleranceCents } from '../ledger/facing.ts';
+import { accountLines } from '../ledger/facing.ts';
 import { sayDate, sayMoney } from '../ledger/say.ts';
 import { type Cents, cents, sumCents, ZERO_CENTS } from '../units/cents.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
 import { compareCents, nothingToCompare } from './make-check.ts';
+import { totalToleranceCents } from './tolerance.ts';
 
 /** The printed lines in the amount due, the previous balance and the payments add up to it, to half a cent a line. */
 export function linesAddUpCheck({ paper }: CheckContext): Check {

@@ -1,5 +1,4 @@
 import type { PrintedLine } from '../facts/papers.ts';
-import { LINE_TOLERANCE_CENTS } from '../ledger/facing.ts';
 import { sayMoney } from '../ledger/say.ts';
 import type { Charge, RatePlan } from '../settlement/plan.ts';
 import { priceQuantity } from '../settlement/price.ts';
@@ -9,6 +8,7 @@ import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
 import { isCarried } from './electric-lines.ts';
 import { compareCents, nothingToCompare } from './make-check.ts';
+import { LINE_TOLERANCE_CENTS } from './tolerance.ts';
 
 type Priced = { amountCents: Cents; said: string } | { why: string };
 

@@ -1,0 +1,7 @@
+/** Each line may be a cent off, since both sides round it once (ledger.md §4). */
+export const LINE_TOLERANCE_CENTS = 1;
+
+/** Half a cent for each line added (net-metering.md §5), and never less than the cent of a single line. */
+export function totalToleranceCents(lines: number): number {
+  return Math.max(LINE_TOLERANCE_CENTS, Math.floor(lines / 2));
+}
