@@ -1,5 +1,6 @@
 import { type Cents, cents } from '../units/cents.ts';
 import { decimalTextOf, Exact, exact, type MoneyRounding, roundToCents } from '../units/rate.ts';
+import { refuse } from './refused.ts';
 
 /**
  * An exact amount in thousandths of its unit (Wh for kWh, W for kW, tenths of a cent for USD, thousandths of a day or a cycle): a whole number
@@ -14,6 +15,9 @@ export type Ratio = { n: Qty; d: Qty };
 export type Rate = { text: string; int: number | null; scale: number };
 
 export const ONE_UNIT = 1000;
+
+/** Ten billion dollars in cents: beyond it a rate or a read is mistyped, and sums would leave the safe whole numbers. */
+const MOST_CENTS = 10 ** 12;
 
 const POWERS_OF_TEN = Array.from({ length: 16 }, (_, index) => 10 ** index);
 
@@ -121,14 +125,23 @@ export function priced(n: Qty, d: Qty, rate: Rate, rounding: MoneyRounding): Cen
     const power = POWERS_OF_TEN[rate.scale + 1];
     const top = n * rate.int;
     const bottom = power === undefined ? Number.NaN : d * power;
-    if (Number.isSafeInteger(top) && Number.isSafeInteger(bottom)) return cents(roundedQuotient(top, bottom, rounding));
+    if (Number.isSafeInteger(top) && Number.isSafeInteger(bottom)) {
+      return sensible(roundedQuotient(top, bottom, rounding));
+    }
   }
   return pricedExactly(n, d, rate.text, rounding);
 }
 
 /** The same by exact decimals alone. */
 export function pricedExactly(n: Qty, d: Qty, rate: string, rounding: MoneyRounding): Cents {
-  return roundToCents(big(n).times(exact(rate)).div(big(d)).div(ONE_UNIT), rounding);
+  const usd = big(n).times(exact(rate)).div(big(d)).div(ONE_UNIT);
+  return usd.abs().gt(MOST_CENTS) ? sensible(MOST_CENTS + 1) : sensible(roundToCents(usd, rounding));
+}
+
+function sensible(amount: number): Cents {
+  if (Math.abs(amount) > MOST_CENTS)
+    refuse('A line comes to more than any house could owe. Check the rates and the kWh.');
+  return cents(amount);
 }
 
 function roundedQuotient(top: number, bottom: number, rounding: MoneyRounding): number {
