@@ -129,7 +129,7 @@ export function readProductionCsv(file: FileInput, context: ProductionContext): 
   const source = { fileName, grid, column, order: inOrder(at, backwards), at, row: rows.row, value: rows.value };
   const steps = register ? registerSteps(source, resets) : intervalSteps(source);
   const scale = scaleFor(unit, step);
-  const days = daysOf(steps.steps, grid, scale, context.channel, !register && context.channel !== 'import');
+  const days = daysOf(steps.days, grid, scale, context.channel, !register && context.channel !== 'import');
   const faults = capped(fileName, [...rows.faults, ...steps.faults], rows.faultCount + steps.faultCount);
   if (days.days.length === 0)
     return fail('file-unreadable', 'No step of this file could be read with a value.', faults);

@@ -1,7 +1,7 @@
 import type { IntervalChannel, IntervalDay } from '#shared/facts/papers.ts';
 import { dayFromNumber } from '#shared/units/day.ts';
 import { type Wh, wh } from '#shared/units/energy.ts';
-import type { Scale, Step } from './production-energy.ts';
+import type { DaySteps, Scale } from './production-energy.ts';
 import type { Grid } from './production-grid.ts';
 
 export type Days = {
@@ -18,20 +18,6 @@ export type Days = {
 /** Whole Wh of an exact count, half up. */
 function wholeWh(amount: number, scale: Scale): Wh {
   return wh(Math.floor((amount * scale.factor) / scale.divisor + 0.5));
-}
-
-/** Days of steps, in order; NaN where nothing was read. */
-function byDay(steps: readonly Step[], grid: Grid): Map<number, Float64Array> {
-  const days = new Map<number, Float64Array>();
-  for (const step of steps) {
-    let day = days.get(step.day);
-    if (day === undefined) {
-      day = new Float64Array(grid.stepsIn(step.day)).fill(Number.NaN);
-      days.set(step.day, day);
-    }
-    if (step.index < day.length) day[step.index] = step.amount;
-  }
-  return new Map([...days].sort(([a], [b]) => a - b));
 }
 
 /** Hours after local midnight at which the sun is up on any day of the year (common practice, no source). */
@@ -61,13 +47,13 @@ function dropTrailingZeros(days: Map<number, Float64Array>, grid: Grid): number 
  * the true total and no sum from the start is out by more than half a Wh. Negative amounts count as nothing and are summed apart.
  */
 export function daysOf(
-  steps: readonly Step[],
+  steps: ReadonlyMap<number, DaySteps>,
   grid: Grid,
   scale: Scale,
   channel: IntervalChannel,
   zerosMayBeMissing: boolean,
 ): Days {
-  const exact = byDay(steps, grid);
+  const exact = new Map([...steps].sort(([a], [b]) => a - b).map(([day, { amounts }]) => [day, amounts]));
   const trailingZeroDays = zerosMayBeMissing ? dropTrailingZeros(exact, grid) : 0;
   const perStored = grid.storedStep / grid.step;
   const minutes = grid.storedStep / 60;

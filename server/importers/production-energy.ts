@@ -3,14 +3,15 @@ import { fileFault } from './faults.ts';
 import type { Grid } from './production-grid.ts';
 import { MOST_FAULTS, type Rejected } from './production-rows.ts';
 
-/** A step's energy in the file's own exact count (see `Scale`), and the row it was read from. */
-export type Step = { day: number; index: number; amount: number; row: number };
+/** A local day's steps in the file's own exact count (see `Scale`): NaN where nothing was read. `rows` says where each was read, 0 for nowhere. */
+export type DaySteps = { amounts: Float64Array; rows: Int32Array };
 
 /** Energy as whole numbers: `amount × factor ÷ divisor` is Wh, with no float in between. */
 export type Scale = { factor: number; divisor: number };
 
 export type Steps = {
-  steps: Step[];
+  /** By days since 1970. */
+  days: Map<number, DaySteps>;
   rejected: Rejected[];
   faults: Fault[];
   faultCount: number;
@@ -35,7 +36,16 @@ type Source = {
 };
 
 function emptySteps(): Steps {
-  return { steps: [], rejected: [], faults: [], faultCount: 0, unallocated: 0, gaps: 0, resets: [], sameTwice: 0 };
+  return {
+    days: new Map(),
+    rejected: [],
+    faults: [],
+    faultCount: 0,
+    unallocated: 0,
+    gaps: 0,
+    resets: [],
+    sameTwice: 0,
+  };
 }
 
 function reject(out: Steps, source: Source, row: number, code: string, column: string, reason: string) {
@@ -49,27 +59,43 @@ const LARGEST_INTERVAL = 1e12;
 
 const minutesOf = (seconds: number) => Math.round(seconds / 60);
 
+/** Opens days as they are first written to; the day written last is at hand, since rows of a day stand together. */
+function dayOpener(out: Steps, grid: Grid): (day: number) => DaySteps {
+  let last: DaySteps | undefined;
+  let lastDay = Number.NaN;
+  return (day) => {
+    if (last !== undefined && day === lastDay) return last;
+    let found = out.days.get(day);
+    if (found === undefined) {
+      const count = grid.stepsIn(day);
+      found = { amounts: new Float64Array(count).fill(Number.NaN), rows: new Int32Array(count) };
+      out.days.set(day, found);
+    }
+    last = found;
+    lastDay = day;
+    return found;
+  };
+}
+
+/** Stands in `rows` for a step that rows disagree about. */
+const DISPUTED = -1;
+
 /**
  * Energy given step by step. A second row for a step with the same value changes nothing; with another value neither counts, since which is
  * right cannot be known here. A row that falls on no step is a fault.
  */
 export function intervalSteps(source: Source): Steps {
   const out = emptySteps();
-  const taken = new Map<number, Step | 'conflict'>();
+  const open = dayOpener(out, source.grid);
+  const { time, energy } = source.column;
   for (const position of source.order) {
     const row = source.row[position] ?? 0;
     const amount = source.value[position] ?? Number.NaN;
     const place = source.grid.place(source.at[position] ?? 0);
     if (place === null) {
       const step = minutesOf(source.grid.step);
-      reject(
-        out,
-        source,
-        row,
-        'off-step',
-        source.column.time,
-        `Row ${row}, ${source.column.time}: does not fall on the file’s steps of ${step} minutes.`,
-      );
+      const message = `Row ${row}, ${time}: does not fall on the file’s steps of ${step} minutes.`;
+      reject(out, source, row, 'off-step', time, message);
       continue;
     }
     if (Number.isNaN(amount)) continue;
@@ -79,41 +105,29 @@ export function intervalSteps(source: Source): Steps {
         source,
         row,
         'too-large',
-        source.column.energy,
-        `Row ${row}, ${source.column.energy}: larger than any roof can give in one step.`,
+        energy,
+        `Row ${row}, ${energy}: larger than any roof can give in one step.`,
       );
       continue;
     }
-    const key = place.day * 2048 + place.index;
-    const known = taken.get(key);
-    if (known === undefined) {
-      const step = { ...place, amount, row };
-      taken.set(key, step);
-      out.steps.push(step);
-    } else if (known !== 'conflict' && known.amount === amount) {
+    const { amounts, rows } = open(place.day);
+    const known = rows[place.index] ?? DISPUTED;
+    if (known === 0) {
+      amounts[place.index] = amount;
+      rows[place.index] = row;
+    } else if (known !== DISPUTED && amounts[place.index] === amount) {
       out.sameTwice += 1;
-      out.rejected.push({ row, reason: `Row ${row} repeats row ${known.row}: same time, same value.` });
+      out.rejected.push({ row, reason: `Row ${row} repeats row ${known}: same time, same value.` });
     } else {
-      const other = known === 'conflict' ? 'an earlier row' : `row ${known.row}`;
-      reject(
-        out,
-        source,
-        row,
-        'two-values',
-        source.column.energy,
-        `Row ${row}, ${source.column.energy}: another value than ${other} for the same time. Neither is counted; keep one.`,
-      );
-      if (known !== 'conflict') {
-        out.rejected.push({
-          row: known.row,
-          reason: `Row ${known.row}: row ${row} gives another value for the same time.`,
-        });
-        known.amount = Number.NaN;
-        taken.set(key, 'conflict');
-      }
+      const other = known === DISPUTED ? 'an earlier row' : `row ${known}`;
+      const message = `Row ${row}, ${energy}: another value than ${other} for the same time. Neither is counted; keep one.`;
+      reject(out, source, row, 'two-values', energy, message);
+      if (known === DISPUTED) continue;
+      out.rejected.push({ row: known, reason: `Row ${known}: row ${row} gives another value for the same time.` });
+      amounts[place.index] = Number.NaN;
+      rows[place.index] = DISPUTED;
     }
   }
-  out.steps = out.steps.filter((step) => !Number.isNaN(step.amount));
   return out;
 }
 
@@ -128,18 +142,14 @@ const GAP_STEPS = 1.5;
 export function registerSteps(source: Source, resets: boolean): Steps {
   const out = emptySteps();
   const { grid } = source;
-  const sums = new Map<number, Step>();
+  const open = dayOpener(out, grid);
   const add = (at: number, amount: number, row: number) => {
     const place = grid.place(at);
     if (place === null) return false;
-    const key = place.day * 2048 + place.index;
-    const known = sums.get(key);
-    if (known) known.amount += amount;
-    else {
-      const step = { ...place, amount, row };
-      sums.set(key, step);
-      out.steps.push(step);
-    }
+    const { amounts, rows } = open(place.day);
+    const known = amounts[place.index] ?? Number.NaN;
+    amounts[place.index] = Number.isNaN(known) ? amount : known + amount;
+    rows[place.index] = row;
     return true;
   };
   let before: { at: number; value: number; row: number } | null = null;

@@ -51,8 +51,8 @@ export type Instants = {
   gapRows: number[];
   /** Rows of an hour the clocks repeat that stand there once only. */
   onceOfTwo: number;
-  /** Moments that more than one row claims. */
-  clashes: number;
+  /** Counts the rows whose moment another row claims as well. */
+  clashes: () => number;
 };
 
 /**
@@ -84,7 +84,7 @@ export function placeRows(rows: Rows, zone: ZoneClock, backwards: boolean, shift
   }
   let onceOfTwo = 0;
   for (const times of seen.values()) if (times === 1) onceOfTwo += 1;
-  return { utc, gapRows, onceOfTwo, clashes: count - new Set(utc).size };
+  return { utc, gapRows, onceOfTwo, clashes: () => count - new Set(utc).size };
 }
 
 /** Positions of the rows in time order; equal moments keep the order of the file (turned round where the newest stands first). */

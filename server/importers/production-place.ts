@@ -32,7 +32,7 @@ function place(rows: Rows, zone: ZoneClock, how: How) {
   moved.gapRows = moved.gapRows.filter((at) => zone.kindOf((rows.local[at] ?? 0) - how.step) === 'gap');
   // Some loggers add the step to the wall clock instead of to the moment; at a change of the clocks only one of the two leaves no clash.
   const byWall = placeRows(rows, zone, how.backwards, -how.step);
-  return byWall.clashes < moved.clashes ? byWall : moved;
+  return byWall.clashes() < moved.clashes() ? byWall : moved;
 }
 
 /** Where each row's step begins, in UTC seconds (for a running total: when it was read), and what the clock changes left in doubt. */
@@ -48,8 +48,8 @@ export function placeInTime(rows: Rows, how: How, doubts: Doubts): Placed {
     const before = local - (placed.utc[gap] ?? 0) - (how.stamp === 'end' && how.quantity === 'interval' ? how.step : 0);
     const fixed = fixedZone(before);
     const steady =
-      fixed !== null && how.mayChangeZone && placed.clashes > 0 ? place(rows, zoneClock(fixed), how) : null;
-    if (steady !== null && fixed !== null && steady.clashes < placed.clashes) {
+      fixed !== null && how.mayChangeZone && placed.clashes() > 0 ? place(rows, zoneClock(fixed), how) : null;
+    if (steady !== null && fixed !== null && steady.clashes() < placed.clashes()) {
       placed = steady;
       timeZone = fixed;
       const message = `The file has readings in the hour the clocks skipped on ${day} and in the next one, so its clock seems to stay on standard time all year. It is read so.`;
