@@ -2,8 +2,9 @@ import { existsSync, mkdirSync } from 'node:fs';
 import { createServer } from 'node:http';
 import path from 'node:path';
 import { createApp } from './app.ts';
-import { closeDatabase, openDatabase } from './db/client.ts';
+import { closeDatabase, inTransaction, openDatabase } from './db/client.ts';
 import { defaultMigrationsDir, migrateDatabase } from './db/migrate.ts';
+import { households } from './db/schema/households.ts';
 import { users } from './db/schema/people.ts';
 import type { Deps } from './deps.ts';
 import { isLoopback, parseEnv } from './env.ts';
@@ -71,8 +72,26 @@ const deps: Deps = {
 
 const isEmpty = deps.db.select({ id: users.id }).from(users).limit(1).get() === undefined;
 const wantsSample = env.sample === 'always' || (env.sample === 'auto' && isLoopback(env.host));
-// Loaded only when it is wanted: an installation with people in it never needs it.
-const signIns = isEmpty && wantsSample ? await (await import('./sample/lay-sample.ts')).laySample(deps) : [];
+/**
+ * The sample's sign-ins; none where it is not wanted or could not be laid. What was laid of it by then goes again, so that the next start
+ * finds an empty database as this one did. Loaded only when it is wanted: an installation with people in it never needs it.
+ */
+async function laySampleIfWanted(): Promise<{ role: string; email: string; password: string }[]> {
+  if (!isEmpty || !wantsSample) return [];
+  try {
+    const { laySample } = await import('./sample/lay-sample.ts');
+    return await laySample(deps);
+  } catch (error) {
+    log('error', 'sample-failed', { error: error instanceof Error ? error.message : String(error) });
+    inTransaction(deps.db, (tx) => {
+      tx.delete(households).run();
+      tx.delete(users).run();
+      return null;
+    });
+    return [];
+  }
+}
+const signIns = await laySampleIfWanted();
 
 const app = createApp(deps);
 const server = createServer({ requestTimeout: REQUEST_TIMEOUT_MS, headersTimeout: HEADERS_TIMEOUT_MS }, app.express);

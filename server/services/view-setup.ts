@@ -1,25 +1,35 @@
 import type { SetupView } from '#shared/api/setup.ts';
-import { readSteps } from '../db/facts/read-house.ts';
+import {
+  readAssumptions,
+  readHouse,
+  readHouseholdRow,
+  readOpening,
+  readPlans,
+  readSteps,
+  readUsageBefore,
+} from '../db/facts/read-house.ts';
+import { readCosts, readCredit, readIncentive, readLoan, readMortgage } from '../db/facts/read-money.ts';
 import type { Deps } from '../deps.ts';
-import { loadFacts } from './load-facts.ts';
 
-/** The set-up as it stands. Throws when there is no such household. */
+/** The set-up as it stands, read without the papers. Throws when there is no such household. */
 export function viewSetup({ db }: Pick<Deps, 'db'>, householdId: string): SetupView {
-  const loaded = loadFacts(db, householdId);
-  if (loaded === null) throw new Error(`no household ${householdId}`);
-  const { facts } = loaded;
-  return {
-    steps: readSteps(db, householdId),
-    house: facts.house,
-    plans: facts.plans,
-    opening: facts.opening,
-    usageBefore: facts.usageBefore,
-    loan: facts.loan,
-    mortgage: facts.mortgage,
-    credit: facts.credit,
-    incentive: facts.incentive,
-    costs: facts.costs,
-    assumptions: facts.assumptions,
-    dcWatts: facts.house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0),
-  };
+  return db.transaction((tx) => {
+    const row = readHouseholdRow(tx, householdId);
+    if (row === null) throw new Error(`no household ${householdId}`);
+    const house = readHouse(tx, row);
+    return {
+      steps: readSteps(tx, householdId),
+      house,
+      plans: readPlans(tx, householdId),
+      opening: readOpening(row),
+      usageBefore: readUsageBefore(tx, householdId),
+      loan: readLoan(tx, householdId),
+      mortgage: readMortgage(tx, householdId),
+      credit: readCredit(tx, householdId),
+      incentive: readIncentive(tx, householdId),
+      costs: readCosts(tx, householdId),
+      assumptions: readAssumptions(tx, householdId),
+      dcWatts: house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0),
+    };
+  });
 }
