@@ -3,6 +3,7 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { runLedger } from '#server/cli/ledger.ts';
 import { EXPORT_FORMAT, EXPORT_VERSION, type HouseholdFacts } from '#shared/facts/household.ts';
 import { BUILT_TODAY, buildHousehold } from '#tests/support/build-household.ts';
 
@@ -45,47 +46,55 @@ function write(name: string, content: string): string {
 }
 
 describe('the printed ledger', () => {
-  test('adds to one figure by entry, by cycle, by book and as printed', () => {
+  test('adds to one figure by entry, by cycle, by book and as printed; a cent moved in one entry is found', () => {
     const run = ledger(write('household.json', JSON.stringify(exportOf(buildHousehold({ cycles: 16 })))));
     expect(run.stderr).toBe('');
     expect(run.status).toBe(0);
-    const printed = write('ledger.json', run.stdout);
-    const sums = JSON.parse(execFileSync('node', [SCRIPT, printed], { encoding: 'utf8' }));
+    const sums = JSON.parse(execFileSync('node', [SCRIPT, write('ledger.json', run.stdout)], { encoding: 'utf8' }));
     expect(sums.faults).toEqual([]);
     expect(sums.byEntry).not.toBe(0);
     expect([sums.byCycle, sums.byBook, sums.position]).toEqual([sums.byEntry, sums.byEntry, sums.byEntry]);
-  }, 60_000);
 
-  test('a cent moved in one entry is found by the script', () => {
-    const run = ledger(write('again.json', JSON.stringify(exportOf(buildHousehold({ cycles: 3 })))));
-    const value = JSON.parse(run.stdout);
-    value.books.billAvoided[1].amountCents += 1;
-    const check = spawnSync('node', [SCRIPT, write('moved.json', JSON.stringify(value))], { encoding: 'utf8' });
+    const moved = JSON.parse(run.stdout);
+    moved.books.billAvoided[1].amountCents += 1;
+    const check = spawnSync('node', [SCRIPT, write('moved.json', JSON.stringify(moved))], { encoding: 'utf8' });
     expect(check.status).toBe(1);
     expect(JSON.parse(check.stdout).faults.length).toBeGreaterThan(0);
   }, 60_000);
 
+  test('a refusal ends the program with exit code 2, its reason on standard error and nothing printed', () => {
+    const run = ledger(write('text.csv', 'service_from,service_to'));
+    expect([run.status, run.stdout]).toEqual([2, '']);
+    expect(run.stderr).toMatch(/not JSON/);
+  }, 60_000);
+
   test.each([
-    ['no file', 'usage', null, /Usage/],
-    ['not JSON', 'text.json', 'service_from,service_to', /not JSON/],
-    ['another format', 'other.json', '{"format":"other","version":1}', /not a household export/],
-    ['another version', 'v9.json', JSON.stringify({ format: EXPORT_FORMAT, version: 9 }), /version 9/],
+    ['a missing file', null, /cannot be opened/],
+    ['another format', '{"format":"other","version":1}', /not a household export/],
+    ['another version', JSON.stringify({ format: EXPORT_FORMAT, version: 9 }), /version 9/],
     [
       'a field that is wrong',
-      'field.json',
       JSON.stringify({
-        ...exportOf({ ...buildHousehold({ cycles: 1 }), costs: [{ id: 'x' }] } as unknown as HouseholdFacts),
+        ...exportOf(buildHousehold({ cycles: 1 })),
+        facts: { ...buildHousehold(), costs: [{ id: 'x' }] },
       }),
       /facts\.costs\[0\]\.on/,
     ],
-  ])(
-    '%s is refused with exit code 2 and a reason, and nothing is printed',
-    (_, name, content, reason) => {
-      const run = content === null ? ledger('') : ledger(write(name, content));
-      expect(run.status).toBe(2);
-      expect(run.stdout).toBe('');
-      if (content !== null) expect(run.stderr).toMatch(reason);
-    },
-    60_000,
-  );
+  ])('%s is refused with its reason', (_, content, reason) => {
+    const file = content === null ? join(folder, 'none.json') : write('refused.json', content);
+    const said = { out: '', err: '' };
+    const code = runLedger(
+      [file],
+      { write: (text) => void (said.out += text) },
+      { write: (text) => void (said.err += text) },
+    );
+    expect([code, said.out]).toEqual([2, '']);
+    expect(said.err).toMatch(reason);
+  });
+
+  test('without a file it says how it is used', () => {
+    let said = '';
+    expect(runLedger([], { write: () => undefined }, { write: (text) => void (said += text) })).toBe(2);
+    expect(said).toMatch(/^Usage/);
+  });
 });
