@@ -11,8 +11,8 @@ import { ledgerReport } from '#shared/ledger/report.ts';
  */
 export function runLedger(
   args: readonly string[],
-  out: { write(text: string): void },
-  err: { write(text: string): void },
+  out: { write(text: string): unknown },
+  err: { write(text: string): unknown },
 ): number {
   const [path, ...more] = args;
   if (path === undefined || more.length > 0) {
