@@ -1,4 +1,5 @@
 import { describe, expect, test } from 'vitest';
+import { day } from '#shared/units/day.ts';
 import { wh } from '#shared/units/energy.ts';
 import { bank, CUSTOMER, ENERGY, FLAT, opening, plan, refusal, said, settled, usage } from './plans.ts';
 
@@ -145,11 +146,11 @@ describe('a kWh bank by period', () => {
 
 describe('lots', () => {
   const lots = [
-    { earned: '2026-05-15', amount: '30', cyclesLeft: 1 },
-    { earned: '2026-06-16', amount: '30', cyclesLeft: 2 },
+    { earned: day('2026-05-15'), amount: '30', cyclesLeft: 1 },
+    { earned: day('2026-06-16'), amount: '30', cyclesLeft: 2 },
   ];
   const of = plan({ netting: 'cycle', banks: [{ ...KWH, lotLife: { cycles: 2 } }] });
-  const held = opening({ banks: { kwhBank: { lots } } } as object);
+  const held = opening({ banks: { kwhBank: { lots } } });
 
   test('are used oldest first, and die at the close of their last cycle after its use', () => {
     const result = settled(of, usage({ import: 10 }), held);

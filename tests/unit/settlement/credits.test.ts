@@ -1,4 +1,5 @@
 import { describe, expect, test } from 'vitest';
+import { cents } from '#shared/units/cents.ts';
 import { wh } from '#shared/units/energy.ts';
 import { CUSTOMER, ENERGY, FLAT, opening, plan, refusal, said, settled, usage } from './plans.ts';
 
@@ -228,9 +229,9 @@ describe('what a plan asks for', () => {
   });
 
   test('the account is followed only where the opening holds its balance', () => {
-    const payments = [{ on: usage().from, amountCents: 1275 }] as never;
+    const payments = [{ on: usage().from, amountCents: cents(1275) }];
     expect(said(settled(plan(), usage({ import: 100, payments })).settlement.lines)).toHaveLength(1);
-    const followed = settled(plan(), usage({ import: 100, payments }), opening({ balanceCents: 1275 as never }));
+    const followed = settled(plan(), usage({ import: 100, payments }), opening({ balanceCents: cents(1275) }));
     expect(said(followed.settlement.lines).slice(1)).toEqual(['account = 12.75', 'account = -12.75']);
     expect(followed.closing.balanceCents).toBe(1000);
   });
