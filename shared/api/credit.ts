@@ -22,7 +22,8 @@ export const creditView = z.object({
   usedCents: centsSchema,
   receivedCents: centsSchema,
   stillToCarryCents: centsSchema,
-  checks: z.array(z.object({ label: z.string(), agrees: z.boolean(), detail: z.string() })),
+  /** `agrees` is null where something is not known yet. */
+  checks: z.array(z.object({ label: z.string(), agrees: z.nullable(z.boolean()), detail: z.string() })),
   papers: z.array(documentSchema),
 });
 export type CreditView = z.infer<typeof creditView>;

@@ -1,7 +1,7 @@
 import { daysBetween } from '../units/day.ts';
 import type { Need } from './ledger.ts';
 import type { NeedsInput } from './needs.ts';
-import { sayDate, sayMoney } from './say.ts';
+import { sayDate, sayDollars } from './say.ts';
 
 /** A programme is given this long to pay before it is asked after. */
 const INCENTIVE_PATIENCE_DAYS = 60;
@@ -25,7 +25,7 @@ export function owedIncentive({ facts, position, entries, today }: NeedsInput): 
       {
         key: 'incentive-owed',
         tone: 'bad',
-        title: `${sayMoney(owed)} of production incentive is owed`,
+        title: `${sayDollars(owed)} of production incentive is owed`,
         detail: `The oldest of it was earned by ${sayDate(entry.date)}. Record what came, or ask ${payer}.`,
         link: 'money',
       },
@@ -48,7 +48,7 @@ export function carriedCredit({ facts, creditLines, position }: NeedsInput): Nee
       {
         key: 'credit-carried',
         tone: 'note',
-        title: `${sayMoney(carried.line16Cents)} of tax credit is still carried forward`,
+        title: `${sayDollars(carried.line16Cents)} of tax credit is still carried forward`,
         detail: `Planned for tax year ${next}. The summary for your preparer is ready.`,
         link: 'credit',
       },

@@ -23,6 +23,12 @@ export function sayMoney(amount: Cents): string {
   return `${amount < 0 ? '−' : ''}$${grouped(Math.floor(size / 100))}.${String(size % 100).padStart(2, '0')}`;
 }
 
+/** Whole dollars, for sentences: "$1,870". */
+export function sayDollars(amount: Cents): string {
+  const whole = Math.round(Math.abs(amount) / 100);
+  return `${amount < 0 && whole > 0 ? '−' : ''}$${grouped(whole)}`;
+}
+
 /** Whole kWh with thousands commas, "1,284"; with its decimals where it is not whole and below 100. */
 export function sayKwh(amount: Wh): string {
   const size = Math.abs(amount);

@@ -1,4 +1,4 @@
-import { input, ownFigure, paperSourceOf } from '../metering/source.ts';
+import { input, ownFigure } from '../metering/source.ts';
 import { bankWorth } from '../position/bank-worth.ts';
 import type { Figure } from '../position/position.ts';
 import type { RatePlan } from '../settlement/plan.ts';
@@ -9,8 +9,9 @@ import type { CyclePaper } from './cycle-papers.ts';
 import { totalBalance } from './opening-total.ts';
 
 /**
- * What the utility holds for the house after a cycle (ledger.md §5.7): its banks (`bankWorth`), and a credit balance of the account at face. That
- * dollar credits are spent before they expire is taken for granted here; the projection settles it month by month.
+ * What the utility holds for the house after a cycle: its banks (`bankWorth`). A credit balance of the account is not among them: a bill below
+ * zero is counted in full as bill avoided when it is billed, and a payment never is, so that its balance would count twice. That dollar credits
+ * are spent before they expire is taken for granted here; the projection settles it month by month.
  */
 export function utilityBank(paper: CyclePaper, plan: RatePlan | null, closing: Opening): Figure {
   const inputs: WorkingInput[] = [];
@@ -31,8 +32,6 @@ export function utilityBank(paper: CyclePaper, plan: RatePlan | null, closing: O
         : `${bank.label}, ${held} kWh at the price of what they will offset`;
     add(label, worth, ownFigure(`${bank.label} at the close of ${paper.to}`));
   }
-  const { amountDueCents, source } = paper.statement;
-  if (amountDueCents < 0) add('Credit balance of the account', cents(-amountDueCents), paperSourceOf(source, null));
   return {
     amountCents: sumCents(parts),
     working: {

@@ -1,13 +1,13 @@
 import type { CreditView } from '#shared/api/credit.ts';
 import type { CreditLines } from '#shared/books/credit-lines.ts';
+import { CREDIT_CAUTIONS, creditSummary } from '#shared/books/credit-summary.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import type { Deps } from '../../deps.ts';
 import { type Cell, csvText } from '../csv-text.ts';
 import { ledgerOf } from '../ledger-of.ts';
 import { viewCredit } from './view-credit.ts';
 
-const CAUTION =
-  'This page repeats figures the owner entered and does the arithmetic printed on Form 5695. It is not tax advice and does not decide whether a household qualifies. The limit on line 14 comes from the return. Check every figure against the form and instructions of its year. Carryforward shown is unused, not guaranteed.';
+const AGREES: Record<string, string> = { true: 'yes', false: 'no', null: 'not known yet' };
 
 const money = (amount: Cents | null): Cell => (amount === null ? null : { cents: amount });
 
@@ -30,6 +30,7 @@ function numberOf(view: CreditView, key: string): string {
 
 function sheet(view: CreditView, householdName: string, today: string): Cell[][] {
   const years = view.credit?.years ?? [];
+  const summary = view.credit === null ? null : creditSummary(view.credit);
   const yearOf = (taxYear: number) => years.find((year) => year.taxYear === taxYear) ?? null;
   const across = <T extends Cell>(of: (line: CreditLines) => T): T[] => view.lines.map(of);
   return [
@@ -37,6 +38,10 @@ function sheet(view: CreditView, householdName: string, today: string): Cell[][]
     ['Household', householdName],
     ['Made on', today],
     ['Placed in service', view.credit?.placedInServiceOn ?? 'not stated'],
+    ['Origin year', summary?.originYear ?? 'not stated'],
+    ['Rate of the origin year', summary?.originRate ?? ''],
+    ['Cost before reductions', money(summary?.grossCostCents ?? null)],
+    ['Reduction of the home’s basis by filed returns', money(summary?.basisReductionCents ?? null)],
     [],
     ['Form 5695, Part I', 'Line', ...across((line) => line.taxYear)],
     ...ROWS.map(({ key, label, of }): Cell[] => [label, numberOf(view, key), ...across((line) => money(of(line)))]),
@@ -57,12 +62,12 @@ function sheet(view: CreditView, householdName: string, today: string): Cell[][]
     ['Share for the home', '', view.credit?.homeShare ?? ''],
     [],
     ['Checks', 'Agrees', 'Figures'],
-    ...view.checks.map((check): Cell[] => [check.label, check.agrees ? 'yes' : 'no', check.detail]),
+    ...view.checks.map((check): Cell[] => [check.label, AGREES[String(check.agrees)] ?? '', check.detail]),
     [],
     ['Papers', 'Uploaded on'],
     ...view.papers.map((paper): Cell[] => [paper.fileName, paper.uploadedOn]),
     [],
-    [CAUTION],
+    ...CREDIT_CAUTIONS.map((caution): Cell[] => [caution]),
   ];
 }
 

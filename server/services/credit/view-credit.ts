@@ -1,38 +1,13 @@
 import type { CreditView } from '#shared/api/credit.ts';
+import { creditFormOf } from '#shared/books/credit-forms.ts';
 import type { CreditLines } from '#shared/books/credit-lines.ts';
+import { creditChecks } from '#shared/books/credit-summary.ts';
 import type { CreditFacts } from '#shared/facts/finance.ts';
-import { type Cents, dollarsText, subtractCents, sumCents, ZERO_CENTS } from '#shared/units/cents.ts';
+import { type Cents, subtractCents, sumCents, ZERO_CENTS } from '#shared/units/cents.ts';
 import type { Deps } from '../../deps.ts';
 import { ledgerOf } from '../ledger-of.ts';
-import { formYearOf } from './form-years.ts';
 
 const known = (amounts: readonly (Cents | null)[]): Cents[] => amounts.filter((amount) => amount !== null);
-
-/** What the form's own arithmetic must show from year to year. */
-function chainChecks(lines: readonly CreditLines[]): CreditView['checks'] {
-  const checks: CreditView['checks'] = [];
-  for (const [index, line] of lines.entries()) {
-    const before = lines[index - 1];
-    if (before === undefined || before.line16Cents === null || line.line12Cents === null) continue;
-    checks.push({
-      label: `${line.taxYear}, line 12 is line 16 of ${before.taxYear}`,
-      agrees: line.line12Cents === before.line16Cents,
-      detail: `$${dollarsText(line.line12Cents)} and $${dollarsText(before.line16Cents)}`,
-    });
-  }
-  const last = lines.at(-1);
-  const complete = lines.every((line) => line.line15Cents !== null);
-  if (last !== undefined && last.line16Cents !== null && complete) {
-    const earned = sumCents(lines.map((line) => line.line6bCents));
-    const used = sumCents(known(lines.map((line) => line.line15Cents)));
-    checks.push({
-      label: 'All of line 6b is used on line 15 or carried on line 16',
-      agrees: earned === used + last.line16Cents,
-      detail: `$${dollarsText(earned)} = $${dollarsText(used)} + $${dollarsText(last.line16Cents)}`,
-    });
-  }
-  return checks;
-}
 
 function usedCents(credit: CreditFacts, lines: readonly CreditLines[]): Cents {
   const filed = new Set(credit.years.filter((year) => year.status !== 'planned').map((year) => year.taxYear));
@@ -49,7 +24,10 @@ export function viewCredit(deps: Pick<Deps, 'db' | 'clock'>, householdId: string
   return {
     credit,
     lines,
-    forms: lines.map((line) => formYearOf(line.taxYear)),
+    forms: lines.map((line) => {
+      const { taxYear, lines: numbers, schedule3, note } = creditFormOf(line.taxYear);
+      return { taxYear, lines: numbers, schedule3, note };
+    }),
     earnedCents: earned,
     usedCents: used,
     receivedCents: sumCents(
@@ -58,7 +36,7 @@ export function viewCredit(deps: Pick<Deps, 'db' | 'clock'>, householdId: string
         .map((entry) => entry.amountCents),
     ),
     stillToCarryCents: subtractCents(earned, used),
-    checks: chainChecks(lines),
+    checks: creditChecks(lines),
     papers: facts.documents.filter((document) => document.kind === 'credit'),
   };
 }

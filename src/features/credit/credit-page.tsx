@@ -120,7 +120,7 @@ function Checks({ view }: { view: CreditView }) {
           <li key={check.label} className="flex flex-wrap items-baseline gap-x-5 border-b border-rule py-2">
             <span className="grow">{check.label}</span>
             <span className="hint">{check.detail}</span>
-            <span className={check.agrees ? 'mark-ok' : 'mark-no'}>{check.agrees ? 'agrees' : 'differs'}</span>
+            <CheckMark agrees={check.agrees} />
           </li>
         ))}
       </ul>
@@ -151,4 +151,9 @@ function FirstUse({ household }: { household: HouseholdContext }) {
       </EmptyState>
     </div>
   );
+}
+
+function CheckMark({ agrees }: { agrees: boolean | null }) {
+  if (agrees === null) return <span className="mark-wait">nothing to compare</span>;
+  return <span className={agrees ? 'mark-ok' : 'mark-no'}>{agrees ? 'agrees' : 'differs'}</span>;
 }
