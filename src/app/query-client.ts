@@ -1,9 +1,9 @@
 import { MutationCache, QueryCache, QueryClient } from '@tanstack/react-query';
 import { ApiError } from '#src/lib/api.ts';
 
-/** A refusal for want of a session means that it ended: forget everything and let the shell ask for sign-in. */
+/** A refusal for want of a session means that it ended (a wrong password is another matter): forget it and let the shell ask for sign-in. */
 function onError(error: unknown): void {
-  if (error instanceof ApiError && error.status === 401) queryClient.setQueryData(['session'], null);
+  if (error instanceof ApiError && error.problem.code === 'not-signed-in') queryClient.setQueryData(['session'], null);
 }
 
 export const queryClient: QueryClient = new QueryClient({

@@ -63,6 +63,8 @@ function Loaded({ statement, save, busy, onSave, onCancel, stated, last }: Props
     // A line of the plan that this statement does not print is left out rather than asked for.
     const untouched = form.getValues('lines').flatMap((line, index) => (isUntouched(line) ? [index] : []));
     if (untouched.length > 0) lines.remove(untouched);
+    const unread = form.getValues('reads').flatMap((read, index) => (read.current.trim() === '' ? [index] : []));
+    if (unread.length > 0) reads.remove(unread);
     void form.handleSubmit(
       (values) => {
         setRefusals([]);
@@ -107,7 +109,8 @@ function Loaded({ statement, save, busy, onSave, onCancel, stated, last }: Props
       <section className="sheet">
         <h2>Meter reads</h2>
         <p className="hint">
-          With previous and current read the kWh follow from the meter. Without them, type the kWh alone.
+          With previous and current read the kWh follow from the meter. Without them, type the kWh alone; a read without
+          a current figure is not taken in.
         </p>
         {reads.fields.map((row, index) => (
           <ReadFields key={row.id} form={form} index={index} onRemove={() => reads.remove(index)} />

@@ -76,7 +76,7 @@ export function LineRows({
             <div className="mt-1 flex flex-wrap items-center justify-between gap-x-6">
               <label className="flex min-h-11 items-center gap-3">
                 <input type="checkbox" className="size-5 accent-accent" {...form.register(`${at}.inDue`)} />
-                in the amount due
+                part of what is due
               </label>
               <button type="button" className="link hint min-h-11" onClick={() => onRemove(index)}>
                 Take out<span className="visually-hidden"> line {index + 1}</span>

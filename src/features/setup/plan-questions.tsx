@@ -244,8 +244,8 @@ function TaxQuestions({
 }
 
 const PRICE_LABELS: Record<PriceName, { label: string; unit: (answers: PlanForm) => string }> = {
-  energy: { label: 'Bought', unit: () => '$ per kWh' },
-  exported: { label: 'Sent out', unit: () => '$ per kWh' },
+  energy: { label: 'A kWh bought', unit: () => '$ per kWh' },
+  exported: { label: 'A kWh sent out', unit: () => '$ per kWh' },
   customer: { label: 'Customer charge', unit: (answers) => (answers.customerPer === 'day' ? '$ a day' : '$ a bill') },
   gross: { label: 'On every kWh bought', unit: () => '$ per kWh' },
   taxPercent: { label: 'Tax', unit: () => '%' },

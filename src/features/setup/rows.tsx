@@ -24,7 +24,7 @@ export function FormRow({
           )}
         </span>
       </legend>
-      <div className="clear-both">{children}</div>
+      <div className="clear-both pt-px">{children}</div>
     </fieldset>
   );
 }

@@ -52,7 +52,15 @@ export function PlanStep({ view }: { view: SetupView }) {
               type="date"
               className="max-w-[220px]"
               error={errors.plans?.[index]?.from?.message}
-              {...form.register(`plans.${index}.from`)}
+              {...form.register(`plans.${index}.from`, {
+                onChange: (event: { target: { value: string } }) => {
+                  // Prices have to hold from the plan's first day; later ones than that cannot be the first.
+                  const first = form.getValues(`plans.${index}.form.prices.0.from`);
+                  if (first === '' || event.target.value < first) {
+                    form.setValue(`plans.${index}.form.prices.0.from`, event.target.value);
+                  }
+                },
+              })}
             />
             {one.written === 'questions' ? (
               <PlanQuestions form={form} index={index} />
