@@ -1,9 +1,7 @@
-import type { ProductionMapping } from '#shared/api/log.ts';
 import type { IntervalChannel } from '#shared/facts/papers.ts';
 import { isMissingMark } from './amount-text.ts';
 import { looksLikeClock, looksLikeNumber, looksLikeStamp, type SheetRow } from './production-dialect.ts';
-
-export type Unit = ProductionMapping['unit'];
+import { energyScore, NOT_ENERGY, timeScore, type Unit, unitIn } from './production-words.ts';
 
 /** What the words of a file say about its columns. Indexes count from 0; `headerAt` is the index in the sheet's rows, −1 for none. */
 export type Layout = {
@@ -27,34 +25,6 @@ const PROBED_ROWS = 60;
 const LONGEST_PREAMBLE = 120;
 /** A column is one of times when so many of its first rows hold one; the rest are faults of their rows. */
 const LEAST_SHARE = 0.2;
-
-const CHANNEL_WORDS: Record<'made' | 'in' | 'out', RegExp> = {
-  made: /produc|generat|\bpv\b|solar|yield|inverter|\bmade\b/i,
-  in: /import|purchas|bought|from grid|grid supply|consum|delivered|usage/i,
-  out: /export|feed|sold|surplus|to grid|sent|received|return/i,
-};
-const WORDS_FOR: Record<IntervalChannel, 'made' | 'in' | 'out'> = {
-  production: 'made',
-  monitor: 'made',
-  import: 'in',
-  export: 'out',
-};
-const NOT_ENERGY =
-  /%|percent|temp|irradi|volt|current|amp|freq|factor|normal|p\.u|status|quality|flag|serial|\bid\b|latitude|longitude|price|cost|usd|\$|co2|humidity|wind|mwh|\bsoc\b/i;
-const UNIT_WORD = /(?:^|[^a-z])(kwh|kw|wh|w)(?:$|[^a-z])/i;
-const UNITS: Record<string, Unit> = { kwh: 'kWh', kw: 'kW', wh: 'Wh', w: 'W' };
-const UNIT_WORDS_LONG: [RegExp, Unit][] = [
-  [/kilowatt[- ]?hours?/i, 'kWh'],
-  [/watt[- ]?hours?/i, 'Wh'],
-  [/kilowatts?/i, 'kW'],
-  [/watts?/i, 'W'],
-];
-
-export function unitIn(text: string): Unit | null {
-  const match = UNIT_WORD.exec(text.replaceAll('_', ' '));
-  if (match?.[1]) return UNITS[match[1].toLowerCase()] ?? null;
-  return UNIT_WORDS_LONG.find(([words]) => words.test(text))?.[1] ?? null;
-}
 
 const EPOCH = /^(1\d{9}|1\d{12})(\.\d+)?$/;
 const SERIAL = /^[34]\d{4}([.,]\d+)?$|^5\d{4}([.,]\d+)?$/;
@@ -117,29 +87,6 @@ function findHeader(rows: SheetRow[], dataAt: number): { headerAt: number; units
 /** A column's words, with its unit's row below it, as one text. */
 function wordsOf(columns: string[], unitsRow: string[] | null, column: number): string {
   return `${columns[column] ?? ''} ${unitsRow?.[column] ?? ''}`.trim();
-}
-
-function energyScore(words: string, channel: IntervalChannel): number {
-  const want = WORDS_FOR[channel];
-  let score = 0;
-  for (const [kind, pattern] of Object.entries(CHANNEL_WORDS)) {
-    if (pattern.test(words)) score += kind === want ? 10 : -6;
-  }
-  const unit = unitIn(words);
-  if (unit === 'kWh' || unit === 'Wh') score += 4;
-  if (unit === 'kW' || unit === 'W') score += 3;
-  if (/energy|kwh/i.test(words)) score += 2;
-  if (/power/i.test(words)) score += 1;
-  if (/total|lifetime|cumulat|register|reading/i.test(words)) score -= 1;
-  return score;
-}
-
-function timeScore(words: string): number {
-  let score = 0;
-  if (/start|begin|from|local/i.test(words)) score += 2;
-  if (/\bend|\bto\b|until|finish/i.test(words)) score -= 1;
-  if (/utc|gmt/i.test(words)) score -= 1;
-  return score;
 }
 
 export function columnNames(rows: SheetRow[], headerAt: number, width: number): string[] {

@@ -6,11 +6,12 @@ import { fileFault } from './faults.ts';
 import { readFileText } from './file-text.ts';
 import { type Days, daysOf } from './production-days.ts';
 import { readSheet } from './production-dialect.ts';
-import { intervalSteps, registerSteps, type Steps } from './production-energy.ts';
+import { intervalSteps, type Steps } from './production-energy.ts';
 import { dailyGrid, layGrid } from './production-grid.ts';
 import { inOrder } from './production-instants.ts';
 import { type Doubts, planReading } from './production-mapping.ts';
 import { dailyMoments, placeInTime } from './production-place.ts';
+import { registerSteps } from './production-register.ts';
 import { MOST_FAULTS } from './production-rows.ts';
 import { isPower, scaleFor, settleValues } from './production-settle.ts';
 import { sourceTable } from './source-table.ts';
@@ -98,11 +99,12 @@ export function readProductionCsv(file: FileInput, context: ProductionContext): 
   if (!isTimeZone(context.timeZone)) return fail('invalid-fields', 'The household’s time zone is not known.');
   const { fileName } = file;
   const doubts: Doubts = [];
+  const channel = context.mapping?.channel ?? context.channel;
   const planned = planReading(fileName, sheet, context, doubts);
   if (!planned.ok) return planned;
   const plan = planned.value;
   const { layout } = plan;
-  const settled = settleValues(fileName, sheet.rows, plan, context, doubts);
+  const settled = settleValues(fileName, sheet.rows, plan, { ...context, channel }, doubts);
   if (!settled.ok) return settled;
   const { unit, quantity, stamp, rows, resets, step, daily, backwards } = settled.value;
   const register = quantity === 'register';
@@ -129,7 +131,7 @@ export function readProductionCsv(file: FileInput, context: ProductionContext): 
   const source = { fileName, grid, column, order: inOrder(at, backwards), at, row: rows.row, value: rows.value };
   const steps = register ? registerSteps(source, resets) : intervalSteps(source);
   const scale = scaleFor(unit, step);
-  const days = daysOf(steps.days, grid, scale, context.channel, !register && context.channel !== 'import');
+  const days = daysOf(steps.days, grid, scale, channel, !register && channel !== 'import');
   const faults = capped(fileName, [...rows.faults, ...steps.faults], rows.faultCount + steps.faultCount);
   if (days.days.length === 0)
     return fail('file-unreadable', 'No step of this file could be read with a value.', faults);
@@ -145,7 +147,7 @@ export function readProductionCsv(file: FileInput, context: ProductionContext): 
   const differs = statedTotalWh === null ? null : totalFault(fileName, statedTotalWh, days);
   if (differs) faults.push(differs);
   const mapping: ProductionMapping = {
-    channel: context.channel,
+    channel,
     headerRow: sheet.rows[layout.headerAt]?.row ?? 0,
     timeColumn: layout.timeColumn,
     clockColumn: layout.clockColumn,

@@ -23,7 +23,7 @@ export type Steps = {
   sameTwice: number;
 };
 
-type Source = {
+export type Source = {
   fileName: string;
   grid: Grid;
   column: { time: string; energy: string };
@@ -35,7 +35,7 @@ type Source = {
   value: number[];
 };
 
-function emptySteps(): Steps {
+export function emptySteps(): Steps {
   return {
     days: new Map(),
     rejected: [],
@@ -48,19 +48,20 @@ function emptySteps(): Steps {
   };
 }
 
-function reject(out: Steps, source: Source, row: number, code: string, column: string, reason: string) {
+/** Notes a row that does not count, as a fault while there is room to list it. */
+export function reject(out: Steps, source: Source, row: number, code: string, column: string, reason: string) {
   out.rejected.push({ row, reason });
   out.faultCount += 1;
   if (out.faults.length < MOST_FAULTS) out.faults.push(fileFault(source.fileName, code, reason, { row, column }));
 }
 
 /** A step of more than 1 MWh, or 1 MW, is no home's; in millionths of a Wh or W. */
-const LARGEST_INTERVAL = 1e12;
+export const LARGEST_INTERVAL = 1e12;
 
-const minutesOf = (seconds: number) => Math.round(seconds / 60);
+export const minutesOf = (seconds: number) => Math.round(seconds / 60);
 
 /** Opens days as they are first written to; the day written last is at hand, since rows of a day stand together. */
-function dayOpener(out: Steps, grid: Grid): (day: number) => DaySteps {
+export function dayOpener(out: Steps, grid: Grid): (day: number) => DaySteps {
   let last: DaySteps | undefined;
   let lastDay = Number.NaN;
   return (day) => {
@@ -127,84 +128,6 @@ export function intervalSteps(source: Source): Steps {
       amounts[place.index] = Number.NaN;
       rows[place.index] = DISPUTED;
     }
-  }
-  return out;
-}
-
-/** A wait between two readings longer than this many steps is a gap. */
-const GAP_STEPS = 1.5;
-
-/**
- * Energy as differences of a running total. Over a gap the difference is real but belongs to no known step: it is kept apart. A gap without
- * any difference held no energy, so its steps are zero. A fall starts a new segment; under `resets` (a total that starts again at midnight)
- * the first reading of a day counts from zero.
- */
-export function registerSteps(source: Source, resets: boolean): Steps {
-  const out = emptySteps();
-  const { grid } = source;
-  const open = dayOpener(out, grid);
-  const add = (at: number, amount: number, row: number) => {
-    const place = grid.place(at);
-    if (place === null) return false;
-    const { amounts, rows } = open(place.day);
-    const known = amounts[place.index] ?? Number.NaN;
-    amounts[place.index] = Number.isNaN(known) ? amount : known + amount;
-    rows[place.index] = row;
-    return true;
-  };
-  let before: { at: number; value: number; row: number } | null = null;
-  for (const position of source.order) {
-    const now = {
-      at: source.at[position] ?? 0,
-      value: source.value[position] ?? Number.NaN,
-      row: source.row[position] ?? 0,
-    };
-    if (Number.isNaN(now.value)) continue;
-    if (before === null) {
-      before = now;
-      continue;
-    }
-    const wait = now.at - before.at;
-    if (wait === 0) {
-      if (now.value === before.value) {
-        out.sameTwice += 1;
-        out.rejected.push({ row: now.row, reason: `Row ${now.row} repeats row ${before.row}: same time, same value.` });
-      } else {
-        reject(
-          out,
-          source,
-          now.row,
-          'two-values',
-          source.column.energy,
-          `Row ${now.row}, ${source.column.energy}: another reading than row ${before.row} at the same time. Keep one.`,
-        );
-      }
-      continue;
-    }
-    const fell = now.value < before.value;
-    if (fell && !resets) out.resets.push(now.row);
-    else {
-      const amount = fell ? now.value : now.value - before.value;
-      const gap = wait > grid.step * GAP_STEPS;
-      if (!gap) {
-        if (!add(before.at, amount, now.row)) {
-          reject(
-            out,
-            source,
-            now.row,
-            'off-step',
-            source.column.time,
-            `Row ${now.row}, ${source.column.time}: does not fall on the file’s steps of ${minutesOf(grid.step)} minutes.`,
-          );
-        }
-      } else if (amount === 0 && !fell) {
-        for (let at = before.at; at < now.at - grid.step / 2; at += grid.step) add(at, 0, now.row);
-      } else {
-        out.unallocated += amount;
-        out.gaps += 1;
-      }
-    }
-    before = now;
   }
   return out;
 }

@@ -1,6 +1,6 @@
 import type { IntervalChannel } from '#shared/facts/papers.ts';
 import { MICRO_DECIMALS } from './amount-text.ts';
-import type { Unit } from './production-columns.ts';
+import type { Unit } from './production-words.ts';
 
 const SECONDS_PER_DAY = 86_400;
 const RUNNING_WORDS = /lifetime|cumulat|register|reading|counter|running/i;

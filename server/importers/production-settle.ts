@@ -2,13 +2,13 @@ import type { ProductionMapping } from '#shared/api/log.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
 import { MICRO_DECIMALS } from './amount-text.ts';
 import type { ProductionContext } from './contract.ts';
-import type { Unit } from './production-columns.ts';
 import type { SheetRow } from './production-dialect.ts';
 import type { Scale } from './production-energy.ts';
 import { betterUnit, guessQuantity, guessStamp, guessUnit, peakWatts, ratingFor } from './production-guess.ts';
 import { commonStep, inOrder, newestFirst } from './production-instants.ts';
 import type { Doubts, Plan } from './production-mapping.ts';
 import { type Rows, readRows } from './production-rows.ts';
+import type { Unit } from './production-words.ts';
 
 const SECONDS_PER_DAY = 86_400;
 /** A day may be an hour short or long. */

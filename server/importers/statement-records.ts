@@ -1,102 +1,22 @@
-import type { PrintedBank, PrintedLine, ReadChannel, RegisterRead } from '#shared/facts/papers.ts';
+import type { PrintedBank, PrintedLine } from '#shared/facts/papers.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import type { Day } from '#shared/units/day.ts';
-import { parseKwh, type Wh } from '#shared/units/energy.ts';
 import { nearestName } from './faults.ts';
+import { KNOWN_ITEMS, kindOf, OFFERED_ITEMS } from './statement-kinds.ts';
+import { type ReadRecord, readOf } from './statement-reads.ts';
 import type { RowReader } from './statement-row.ts';
-import {
-  type BalanceItem,
-  balanceItemOf,
-  bankIdOf,
-  channelOf,
-  KNOWN_ITEMS,
-  kindOf,
-  OFFERED_ITEMS,
-  plainWords,
-  readTypeOf,
-  recordOf,
-  unitOf,
-  yesOrNo,
-} from './statement-words.ts';
+import { type BalanceItem, balanceItemOf, bankIdOf, plainWords, recordOf, unitOf, yesOrNo } from './statement-words.ts';
 
 /** What one row says about its cycle. `inDue` is null where the row leaves it to the rule in `statement-cycles.ts`. */
 export type RecordOfRow =
   | { record: 'statement' }
-  | { record: 'read'; channel: ReadChannel; read: RegisterRead | null; printedWh: Wh | null }
+  | ReadRecord
   | { record: 'line'; line: Omit<PrintedLine, 'inDue'> & { inDue: boolean | null } }
   | { record: 'bank'; bank: PrintedBank }
   | { record: 'balance'; item: BalanceItem; amountCents: Cents };
 
 const LONGEST_LABEL = 160;
-const SHORTEST_DIALS = 5;
 const KWH_KINDS = new Set<PrintedLine['kind']>(['import', 'export', 'nonbypassable', 'incentive']);
-
-function readOf(cells: RowReader, from: Day, to: Day): RecordOfRow | null {
-  const channel = cells.word('item', channelOf, 'import, export or production');
-  cells.need('item', 'a read needs import, export or production in “item”.');
-  const previous = cells.number('previous');
-  const current = cells.number('current');
-  const printed = cells.number('quantity');
-  const multiplier = cells.number('multiplier') ?? '1';
-  const type = cells.word('read_type', readTypeOf, 'actual or estimated') ?? 'actual';
-  const readFrom = cells.date('read_from') ?? from;
-  const readTo = cells.date('read_to') ?? to;
-  const statedDials = cells.whole('dials', 3, 9);
-  if (cells.faults.length > 0 || channel === null) return null;
-
-  if (readFrom < from || readTo > to) {
-    const column = readFrom < from ? 'read_from' : 'read_to';
-    const day = readFrom < from ? readFrom : readTo;
-    cells.fault(
-      column,
-      'outside-cycle',
-      `Row ${cells.row}: the read of ${day} lies outside its cycle, ${from} to ${to}.`,
-    );
-  }
-  if (readFrom >= readTo) {
-    cells.fault('read_to', 'dates-order', `Row ${cells.row}: the read ends on ${readTo}, not after ${readFrom}.`);
-  }
-  if ((previous === null) !== (current === null)) {
-    const column = previous === null ? 'previous' : 'current';
-    cells.need(column, 'a read has both its previous and its current figure, or neither.');
-  }
-  if (previous === null && current === null)
-    cells.need('quantity', 'a read needs its two figures, or the kWh printed for it.');
-  const digits = Math.max(
-    ...[cells.text('previous'), cells.text('current')].map(
-      (text) => (/\d+/.exec(text.replace(/[,' ]/g, ''))?.[0] ?? '').length,
-    ),
-  );
-  const dials = statedDials ?? Math.max(SHORTEST_DIALS, digits);
-  if (dials > 9 || (statedDials !== null && digits > statedDials)) {
-    cells.fault(
-      'dials',
-      'dials',
-      `Row ${cells.row}: a read of ${digits} digits does not fit a register of ${Math.min(dials, 9)} dials.`,
-    );
-  }
-  for (const column of ['previous', 'current', 'multiplier'] as const) {
-    if (cells.number(column)?.startsWith('-'))
-      cells.fault(column, 'below-zero', `Row ${cells.row}: ${column} cannot be below zero.`);
-  }
-  if (cells.faults.length > 0) return null;
-  const read =
-    previous === null || current === null
-      ? null
-      : {
-          meter: cells.text('meter'),
-          channel,
-          from: readFrom,
-          to: readTo,
-          previous,
-          current,
-          dials,
-          multiplier,
-          type,
-          row: cells.row,
-        };
-  return { record: 'read', channel, read, printedWh: printed === null ? null : parseKwh(printed) };
-}
 
 /** What may stand in `item`, the nearest word first: said only where a word was not understood. */
 function kindOffer(found: string): string {
