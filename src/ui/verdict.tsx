@@ -19,7 +19,8 @@ export function Verdict({ check }: { check: Check }) {
 
 function amountOf(check: Check): string {
   if (check.difference === null) return 'differs';
-  const text = decimal(check.difference.replace('-', ''));
+  const size = check.difference.replace('-', '');
+  const text = decimal(check.unit === 'kWh' ? shortKwh(size) : size);
   switch (check.unit) {
     case 'USD':
       return `$${text}`;
@@ -32,4 +33,9 @@ function amountOf(check: Check): string {
     default:
       return 'differs';
   }
+}
+
+/** Whole kWh from ten on: a verdict names the size, the check itself has the exact figures. */
+function shortKwh(size: string): string {
+  return Number(size) >= 10 ? String(Math.round(Number(size))) : size;
 }

@@ -64,7 +64,13 @@ export function FormTable({ view, change }: { view: CreditView; change: ((taxYea
             </th>
             {lines.map((line) => (
               <td key={line.taxYear} className="hint">
-                {returnWords(yearOf(line.taxYear))}
+                {returnWords(yearOf(line.taxYear))
+                  .split(', ')
+                  .map((part) => (
+                    <span key={part} className="block whitespace-nowrap">
+                      {part}
+                    </span>
+                  ))}
                 {change && (
                   <span className="no-print block">
                     <button

@@ -29,8 +29,8 @@ export function cycleMoney(cycle: Cycle): { lines: MoneyLine[]; earned: Entry[] 
       ...bills.lines,
       ...others.map((entry) => ({
         key: entry.id,
-        label: several && entry.book === 'loan' ? `${entry.label}, ${dayMonth(entry.date)}` : entry.label,
-        title: entry.label,
+        label: labelOf(entry, several),
+        title: labelOf(entry, several),
         cents: entry.amountCents,
         working: entry.working,
         estimated: entry.estimated,
@@ -38,6 +38,12 @@ export function cycleMoney(cycle: Cycle): { lines: MoneyLine[]; earned: Entry[] 
     ],
     earned: cycle.entries.filter((entry) => entry.basis === 'memo'),
   };
+}
+
+/** An entry in words that stand by themselves; a receipt's own label may be only the note on its cheque. */
+function labelOf(entry: Entry, several: boolean): string {
+  if (entry.book === 'incentive' && !/incentive/i.test(entry.label)) return `Production incentive: ${entry.label}`;
+  return several && entry.book === 'loan' ? `${entry.label}, ${dayMonth(entry.date)}` : entry.label;
 }
 
 /** The two bills, where their difference is one of the cycle's entries; that entry then stands for itself no more. */

@@ -56,11 +56,13 @@ function CycleBody({ view, household }: { view: CycleView; household: HouseholdC
         <>
           <EnergySheet cycle={cycle} />
           <FacingSheet cycle={cycle} household={household} onCorrect={() => setSearch({ correct: '' })} />
-          <div className="grid gap-x-[26px] lg:grid-cols-2">
-            <AgainstLoan cycle={cycle} />
+          <div className="grid items-start gap-x-[26px] lg:grid-cols-2">
+            <div className="min-w-0">
+              <AgainstLoan cycle={cycle} />
+              <PapersSheet view={view} />
+            </div>
             <ChecksSheet cycle={cycle} household={household} />
           </div>
-          <PapersSheet view={view} />
         </>
       )}
     </div>

@@ -5,7 +5,7 @@ import { decimal, money } from '#src/lib/format.ts';
 /** A quantity with its unit where it is not kWh: "498", "$81.27", "4.2 kW", "31 days". */
 export function quantityWords(quantity: string | null, unit: string | null): string {
   if (quantity === null) return '';
-  const text = decimal(quantity);
+  const text = decimal(unit === 'USD' ? wholeCents(quantity) : quantity);
   switch (unit) {
     case 'USD':
       return text.startsWith('\u2212') ? `\u2212$${text.slice(1)}` : `$${text}`;
@@ -18,6 +18,12 @@ export function quantityWords(quantity: string | null, unit: string | null): str
     default:
       return text;
   }
+}
+
+/** A sum of dollars always shows its cents: "17.6" → "17.60". */
+function wholeCents(dollars: string): string {
+  const [whole = '0', part = ''] = dollars.split('.');
+  return `${whole}.${part.padEnd(2, '0')}`;
 }
 
 /** A rate as the trade writes it: USD per unit as it stands, a share of dollars in percent. */

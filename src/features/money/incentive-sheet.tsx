@@ -61,7 +61,7 @@ export function IncentiveSheet({
                       change={{ kind: 'removeReceipt', id: receipt.id }}
                     />
                   )}
-                  {money(receipt.amountCents)}
+                  <span className="min-w-20 text-right">{money(receipt.amountCents)}</span>
                 </span>
               </li>
             ))}

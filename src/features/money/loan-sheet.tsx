@@ -81,7 +81,7 @@ export function LoanSheet({
                   change={{ kind: 'removeLoanPayment', id: payment.id }}
                 />
               )}
-              {money(payment.amountCents)}
+              <span className="min-w-20 text-right">{money(payment.amountCents)}</span>
             </span>
           </li>
         ))}

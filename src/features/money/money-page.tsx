@@ -38,6 +38,13 @@ function Money({ view, household }: { view: MoneyView; household: HouseholdConte
               A loan that pays for the roof is not entered. Paid in cash? Then the cash stands under costs.
             </NotEntered>
           )}
+          {view.insurance ? (
+            <InsuranceSheet insurance={view.insurance} />
+          ) : (
+            <NotEntered title="Mortgage insurance" step="mortgage" base={base} canEdit={household.canEdit}>
+              No mortgage is entered, so no insurance is counted.
+            </NotEntered>
+          )}
         </div>
         <div className="min-w-0">
           {view.incentive ? (
@@ -45,13 +52,6 @@ function Money({ view, household }: { view: MoneyView; household: HouseholdConte
           ) : (
             <NotEntered title="Production incentive" step="incentive" base={base} canEdit={household.canEdit}>
               No incentive per kWh is entered.
-            </NotEntered>
-          )}
-          {view.insurance ? (
-            <InsuranceSheet insurance={view.insurance} />
-          ) : (
-            <NotEntered title="Mortgage insurance" step="mortgage" base={base} canEdit={household.canEdit}>
-              No mortgage is entered, so no insurance is counted.
             </NotEntered>
           )}
         </div>

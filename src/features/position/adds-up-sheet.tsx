@@ -94,7 +94,7 @@ function linesOf(columns: Column[]): Line[] {
     line('creditToCome', 'Tax credit still to come', (column) => column.creditToCome),
     line('incentiveOwed', 'Incentive owed', (column) => column.incentiveOwed),
     line('bank', 'Utility bank', (column) => column.bank),
-    line('together', 'Still to come and owed, projected', (column) => column.together),
+    line('together', 'Interest accrued and sums owed', (column) => column.together),
   ].filter((one) => anything(one.of));
   return [
     ...booksShown(columns).map((book) =>

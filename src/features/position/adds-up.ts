@@ -16,7 +16,7 @@ export type Column = {
   creditToCome: Cell;
   incentiveOwed: Cell;
   bank: Cell;
-  /** The three above in one, where the projection gives only their sum. */
+  /** The three above and the loan's accrued interest in one, where the projection gives only their sum. */
   together: Cell;
   settled: Cell;
   withoutCredit: Cell;

@@ -8,10 +8,13 @@ export type RunningPoint = { on: Day; settledCents: Cents; cashCents: Cents; pro
 /** One bar: what a cycle or projected month added, by book, standing over the middle of its days. */
 export type CycleBar = { from: Day; on: Day; books: ByBook; addedCents: Cents; projected: boolean };
 export type Series = {
+  /** The close of every cycle, and today where something was posted since. */
   past: RunningPoint[];
-  /** Starts with the last past point, so that the lines join. */
+  /** Starts with the last closed cycle, from which the projection was made. */
   projected: RunningPoint[];
   bars: CycleBar[];
+  /** What was posted since the last cycle: no bar, since its bill is not here yet. */
+  since: CycleBar | null;
   events: (PositionEvent & { number: number })[];
   first: Day;
   last: Day;
@@ -42,7 +45,8 @@ export function chartSeries(position: Position, whole: boolean): Series | null {
     addMonths(firstPoint.on, SHORTEST_MONTHS),
   ]);
   const last = whole || even === null || needed === null || needed > end ? end : needed;
-  const past = closed.map((point) => ({
+  const sincePoint = position.points.find((point) => point.cycle === 'since' && point.on > lastPoint.on) ?? null;
+  const past = [...closed, ...(sincePoint ? [sincePoint] : [])].map((point) => ({
     on: point.on,
     settledCents: point.settledTodayCents,
     cashCents: point.cashSoFarCents,
@@ -66,11 +70,18 @@ export function chartSeries(position: Position, whole: boolean): Series | null {
     bars.push({ from, on: month.on, books: month.books, addedCents: month.addedCents, projected: true });
     from = month.on;
   }
-  const joint = past.at(-1);
+  const joint = past[closed.length - 1];
   return {
     past,
     projected: joint && ahead.length > 0 ? [joint, ...ahead] : [],
     bars,
+    since: sincePoint && {
+      from: lastPoint.on,
+      on: sincePoint.on,
+      books: sincePoint.books,
+      addedCents: sincePoint.addedCents,
+      projected: false,
+    },
     events: [...position.events]
       .filter((event) => event.on >= firstPoint.on && event.on <= last)
       .sort((a, b) => (a.on < b.on ? -1 : a.on > b.on ? 1 : 0))

@@ -7,7 +7,10 @@ import type { Series } from './chart-series.ts';
 /** The figures the charts draw, cycle by cycle and month by month. */
 export function ChartTable({ series }: { series: Series }) {
   const [start] = series.past;
-  const lines = new Map([...series.past, ...series.projected].map((point) => [point.on, point]));
+  const points = new Map(series.past.map((point) => [point.on, point]));
+  const ahead = new Map(series.projected.map((point) => [point.on, point]));
+  const past = series.bars.filter((bar) => !bar.projected);
+  const rows = [...past, ...(series.since ? [series.since] : []), ...series.bars.filter((bar) => bar.projected)];
   const books = BOOKS.filter((book) => series.bars.some((bar) => bar.books[book] !== 0));
   return (
     <section
@@ -45,13 +48,14 @@ export function ChartTable({ series }: { series: Series }) {
               ))}
             </tr>
           )}
-          {series.bars.map((bar) => {
-            const point = lines.get(bar.on);
+          {rows.map((bar) => {
+            const point = (bar.projected ? ahead : points).get(bar.on);
             return (
-              <tr key={bar.on}>
+              <tr key={`${bar.on} ${bar.projected}`}>
                 <th scope="row">
                   {fullDate(bar.on)}
                   {bar.projected && <span className="text-soft">, projected</span>}
+                  {bar === series.since && <span className="text-soft">, since the last cycle</span>}
                 </th>
                 <td>
                   <Money cents={point?.settledCents ?? null} />

@@ -1,4 +1,5 @@
 import { useCallback } from 'react';
+import type { BookId } from '#shared/books/book.ts';
 import { BOOK_NAMES, BookKey } from '#src/ui/book-key.tsx';
 import { CanvasChart } from '#src/ui/chart/canvas-chart.tsx';
 import type { ChartTokens } from '#src/ui/chart/tokens.ts';
@@ -19,10 +20,10 @@ export default function Charts({ series, summary, phone }: { series: Series; sum
       <CanvasChart label={summary} build={running} className="h-[296px]" />
       <div className="mt-5 flex flex-wrap items-baseline gap-x-5 pl-16">
         <h3 className="text-[15px]!">Each cycle</h3>
-        {stackedBooks(series).map((book) => (
+        {keysOf(stackedBooks(series)).map(({ book, name }) => (
           <span key={book} className="hint text-sm!">
             <BookKey book={book} />
-            {BOOK_NAMES[book]}
+            {name}
           </span>
         ))}
         {series.bars.some((bar) => bar.books.credit > 0) && (
@@ -41,4 +42,12 @@ export default function Charts({ series, summary, phone }: { series: Series; sum
       />
     </>
   );
+}
+
+/** The books' keys; upkeep and other costs share a colour and so a key. */
+function keysOf(books: readonly BookId[]): { book: BookId; name: string }[] {
+  const both = books.includes('upkeep') && books.includes('costs');
+  return books
+    .filter((book) => !(both && book === 'costs'))
+    .map((book) => ({ book, name: both && book === 'upkeep' ? 'Upkeep and other costs' : BOOK_NAMES[book] }));
 }

@@ -96,7 +96,7 @@ function Lede({
         </>
       )}
       {projection && even === null && <>Not even within the {years} years projected. </>}
-      As of the cycle ending {longDayMonth(lastCycleTo)}
+      Bills are counted to {longDayMonth(lastCycleTo)}
       {counts === '' ? '.' : `; ${counts}.`}
       {points.length > 0 && view.position.pace === null && ' The pace shows after two cycles.'}
     </>
