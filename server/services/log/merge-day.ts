@@ -9,7 +9,13 @@ export type DayMerge =
   /** Some value differs; `day` is what it would be with the file's values put in place. */
   | { kind: 'different'; day: IntervalDay };
 
-/** Holds a file's day against the one here. Days in different steps differ. */
+/**
+ * Two files of the same readings may round a step to neighbouring whole Wh, since each carries its remainder from its own first row
+ * (common practice, no source).
+ */
+const ROUNDING_WH = 1;
+
+/** Holds a file's day against the one here; a step within rounding stays as it is here. Days in different steps differ. */
 export function mergeDay(here: IntervalDay | null, file: IntervalDay): DayMerge {
   if (here === null) return { kind: 'new', day: file };
   if (here.minutes !== file.minutes || here.values.length !== file.values.length) {
@@ -20,8 +26,12 @@ export function mergeDay(here: IntervalDay | null, file: IntervalDay): DayMerge 
   const values = file.values.map((value, index) => {
     const known = here.values[index] ?? null;
     if (value === null) return known;
-    if (known === null) adds = true;
-    else if (known !== value) differs = true;
+    if (known === null) {
+      adds = true;
+      return value;
+    }
+    if (Math.abs(known - value) <= ROUNDING_WH) return known;
+    differs = true;
     return value;
   });
   const day = { ...file, values };
