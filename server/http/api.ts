@@ -4,8 +4,8 @@ import type { Result } from '#shared/problem.ts';
 import { type Day, parseDay } from '#shared/units/day.ts';
 import type { Sessions, SignedIn } from '../auth/sessions.ts';
 import type { Actor, Deps } from '../deps.ts';
-import { roleIn } from '../services/role-in.ts';
 import { type Download, sendDownload } from './download.ts';
+import { createGuards } from './guards.ts';
 import { parseBody } from './parse-body.ts';
 import { sendProblem } from './problems.ts';
 import { Refused } from './refused.ts';
@@ -82,32 +82,7 @@ export function createApi(deps: Deps, sessions: Sessions): Api {
     };
   };
 
-  const sessionOf = async (req: Request, res: Response): Promise<SignedIn | null> => {
-    const found = await sessions.read(req.get('cookie') ?? null);
-    if (found === null) return null;
-    if (found.setCookie !== null) res.append('Set-Cookie', found.setCookie);
-    res.locals.userId = found.user.id;
-    return { user: found.user, sessionId: found.sessionId };
-  };
-
-  const signedInOf = async (req: Request, res: Response): Promise<SignedIn> => {
-    const session = await sessionOf(req, res);
-    if (session === null) throw new Refused('not-signed-in');
-    return session;
-  };
-
-  const actorOf = async (req: Request, res: Response, roles: readonly Role[]): Promise<Actor> => {
-    const { user } = await signedInOf(req, res);
-    const householdId = String(req.params.householdId ?? '');
-    const role = roleIn(deps.db, householdId, user.id);
-    // Another household's id is as unknown as one that does not exist.
-    if (role === null) throw new Refused('not-found');
-    if (!roles.includes(role)) {
-      deps.log('warn', 'role-refused', { user: user.id, role, method: req.method, path: req.path });
-      throw new Refused('forbidden', 'Your role in this household does not allow this.');
-    }
-    return { userId: user.id, name: user.name, householdId, role };
-  };
+  const { sessionOf, signedInOf, actorOf } = createGuards(deps, sessions);
 
   const bodyOf = async <B>(endpoint: { body: Schema<B> | null }, req: Request, res: Response): Promise<B> => {
     // An endpoint without a body schema has `undefined` for its body type.

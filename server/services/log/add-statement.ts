@@ -2,15 +2,15 @@ import type { StatementBody } from '#shared/api/cycles.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
 import type { Tx } from '../../db/client.ts';
 import { readDocumentBytes } from '../../db/documents.ts';
+import { readDraft } from '../../db/drafts.ts';
+import { insertDocument } from '../../db/facts/write-papers.ts';
 import {
   changeDraftStatement,
   deleteDraftStatement,
   deleteStatementsOfFile,
   insertDraftStatement,
   putDraftFile,
-  readDraft,
-} from '../../db/drafts.ts';
-import { insertDocument } from '../../db/facts/write-papers.ts';
+} from '../../db/write-drafts.ts';
 import type { Actor, Deps } from '../../deps.ts';
 import { newId } from '../../ids.ts';
 import type { FileInput, StatementReading } from '../../importers/contract.ts';

@@ -1,5 +1,6 @@
 import { fail, type Result, succeed } from '#shared/problem.ts';
-import { clearDraft, deleteDraftFile, keepGoodReadingRows, readDraft } from '../../db/drafts.ts';
+import { readDraft } from '../../db/drafts.ts';
+import { clearDraft, deleteDraftFile, keepGoodReadingRows } from '../../db/write-drafts.ts';
 import type { Actor, Deps } from '../../deps.ts';
 import { writeDraft } from '../write-household.ts';
 import { rereadStatementFile } from './add-statement.ts';
