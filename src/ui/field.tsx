@@ -133,7 +133,7 @@ export function Choices({
         <label key={option.value} className="flex min-h-11 items-start gap-3 py-2">
           <input
             type="radio"
-            className="mt-1 size-5 accent-accent"
+            className="mt-1 size-5 shrink-0 accent-accent"
             name={name}
             value={option.value}
             checked={value === option.value}

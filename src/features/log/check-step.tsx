@@ -105,7 +105,10 @@ function CheckSentence({ draft }: { draft: LogDraft }) {
       : 'Everything else agrees with what it could be held against. If the page really prints it so, post it as printed.';
   return (
     <Sentence title="Check" lede={lede}>
-      <b>{countOf(read, 'value')} read</b>, {eye}.
+      <b>
+        {countOf(read, 'value')} {draft.files.length === 0 ? 'typed' : 'read'}
+      </b>
+      , {eye}.
     </Sentence>
   );
 }

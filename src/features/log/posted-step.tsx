@@ -197,8 +197,8 @@ function EntryRow({ entry, memo = false }: { entry: Entry; memo?: boolean }) {
 function billWords(billed: Cents, ours: Cents | null): string {
   if (ours === null) return `Billed ${money(billed)}. It cannot be worked out again yet; the cycle’s page says why.`;
   return billed === ours
-    ? `Billed ${money(billed)}, and the same worked out from your meters.`
-    : `Billed ${money(billed)}; from your meters it comes to ${money(ours)}.`;
+    ? `Billed ${money(billed)}; worked out again it comes to the same.`
+    : `Billed ${money(billed)}; worked out again it comes to ${money(ours)}.`;
 }
 
 const READINGS: Record<IntervalChannel, string> = {

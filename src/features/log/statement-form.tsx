@@ -1,28 +1,26 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useQuery } from '@tanstack/react-query';
 import { type FormEvent, useState } from 'react';
-import { type UseFormReturn, useFieldArray, useForm } from 'react-hook-form';
+import { useFieldArray, useForm } from 'react-hook-form';
 import type { StatementBody } from '#shared/api/cycles.ts';
 import type { SetupView } from '#shared/api/setup.ts';
-import { subtractCents } from '#shared/units/cents.ts';
 import { showRefusal } from '#src/lib/form-faults.ts';
-import { money } from '#src/lib/format.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { Button } from '#src/ui/button.tsx';
-import { ErrorSummary, Field, SelectField } from '#src/ui/field.tsx';
+import { ErrorSummary, Field } from '#src/ui/field.tsx';
 import { PageSkeleton } from '#src/ui/states.tsx';
 import { lastStatementQuery, statedQuery } from './log-queries.ts';
+import { emptyStatementForm } from './next-statement.ts';
 import {
   emptyLine,
-  emptyStatementForm,
   formOfStatement,
   isUntouched,
-  runningSum,
   type StatementFormValues,
   statementForm,
   statementOfForm,
 } from './statement-form-values.ts';
 import { LineRows } from './statement-lines.tsx';
+import { ReadFields, Sum } from './statement-parts.tsx';
 
 type Props = {
   /** The statement to change; null to type a new one. */
@@ -44,7 +42,6 @@ export function StatementForm(props: Props) {
 
 /** What a new statement is laid out from. */
 type Before = { stated: SetupView | null; last: StatementBody | null };
-type Form = UseFormReturn<StatementFormValues, unknown, StatementFormValues>;
 
 function Loaded({ statement, save, busy, onSave, onCancel, stated, last }: Props & Before) {
   const [refusals, setRefusals] = useState<string[]>([]);
@@ -238,62 +235,5 @@ function Loaded({ statement, save, busy, onSave, onCancel, stated, last }: Props
         </button>
       </p>
     </form>
-  );
-}
-
-function ReadFields({ form, index, onRemove }: { form: Form; index: number; onRemove: () => void }) {
-  const errors = form.formState.errors.reads?.[index];
-  return (
-    <fieldset className="min-w-0 border-t border-rule pt-2">
-      <legend className="visually-hidden">Read {index + 1}</legend>
-      <div className="grid grid-cols-2 items-end gap-x-4 sm:grid-cols-[1.2fr_1fr_1fr_1fr_1fr_auto]">
-        <Field label="Meter" error={errors?.meter?.message} {...form.register(`reads.${index}.meter`)} />
-        <SelectField label="Counts" {...form.register(`reads.${index}.channel`)}>
-          <option value="import">bought</option>
-          <option value="export">sent out</option>
-          <option value="production">made</option>
-        </SelectField>
-        <Field
-          label="Previous"
-          inputMode="decimal"
-          className="input-number"
-          error={errors?.previous?.message}
-          {...form.register(`reads.${index}.previous`)}
-        />
-        <Field
-          label="Current"
-          inputMode="decimal"
-          className="input-number"
-          error={errors?.current?.message}
-          {...form.register(`reads.${index}.current`)}
-        />
-        <SelectField label="Read" {...form.register(`reads.${index}.type`)}>
-          <option value="actual">actual</option>
-          <option value="estimated">estimated</option>
-        </SelectField>
-        <button type="button" className="link hint min-h-11 text-left" onClick={onRemove}>
-          Take out<span className="visually-hidden"> read {index + 1}</span>
-        </button>
-      </div>
-    </fieldset>
-  );
-}
-
-function Sum({ form }: { form: Form }) {
-  const [lines, previousBalance, payments, due] = form.watch(['lines', 'previousBalance', 'payments', 'due']);
-  const sum = runningSum({ lines: lines.filter((line) => !isUntouched(line)), previousBalance, payments, due });
-  return (
-    <p className="mt-4 border-t-4 border-double border-ink pt-2" aria-live="polite">
-      The lines, balance and payments come to <b>{money(sum.linesCents)}</b>
-      {sum.dueCents === null || sum.unread > 0 ? (
-        <span className="hint"> so far.</span>
-      ) : sum.dueCents === sum.linesCents ? (
-        <span className="mark-ok ml-3">they add up to the amount due</span>
-      ) : (
-        <span className="mark-no ml-3">
-          the amount due is {money(subtractCents(sum.dueCents, sum.linesCents))} away
-        </span>
-      )}
-    </p>
   );
 }

@@ -1,6 +1,7 @@
 import { type KeyboardEvent, useEffect, useId, useState } from 'react';
 import type { StatementBody } from '#shared/api/cycles.ts';
-import type { ReadField, ReadValue } from './read-values.ts';
+import type { ReadField } from './read-fields.ts';
+import type { ReadValue } from './read-values.ts';
 import { Mark } from './source-view.tsx';
 
 const TONES = { ok: 'mark-ok', no: 'mark-no', wait: 'mark-wait' } as const;

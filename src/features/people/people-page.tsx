@@ -26,8 +26,7 @@ export function PeoplePage() {
   return (
     <div className="page max-w-[860px]">
       <Sentence title="People" lede="What each may see is kept to on the server, not only on the screen.">
-        <b>{list.length === 1 ? 'You alone' : `${list.length} people`}</b>{' '}
-        {list.length === 1 ? 'can open this book.' : 'can open this book.'}
+        <b>{list.length === 1 ? 'You alone' : `${COUNTS[list.length] ?? list.length} people`}</b> can open this book.
       </Sentence>
       <Sheet title="Who may see what">
         <table className="ruled ruled-stack">
@@ -67,6 +66,8 @@ export function PeoplePage() {
   );
 }
 
+const COUNTS = ['No', 'One', 'Two', 'Three', 'Four', 'Five', 'Six', 'Seven', 'Eight', 'Nine'];
+
 function PersonRow({ person, lastOwner }: { person: PersonView; lastOwner: boolean }) {
   const { id } = useHousehold();
   const remove = useRemovePerson(id);
@@ -90,9 +91,8 @@ function PersonRow({ person, lastOwner }: { person: PersonView; lastOwner: boole
           <span className="hint">the last owner stays</span>
         ) : asking ? (
           <span className="flex flex-wrap items-center justify-end gap-x-4">
-            <span>Take the access away?</span>
             <Button look="plain" busy={remove.isPending} onClick={() => remove.mutate(person.userId)}>
-              Yes, remove
+              Yes, take access away
             </Button>
             <button type="button" className="link min-h-11" onClick={() => setAsking(false)}>
               No

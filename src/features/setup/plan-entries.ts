@@ -4,7 +4,8 @@ import { type RatePlan, ratePlanSchema } from '#shared/settlement/plan.ts';
 import type { Opening } from '#shared/settlement/settlement.ts';
 import type { Day } from '#shared/units/day.ts';
 import { plainDecimal, typed, typedWhole } from '#src/lib/typed-values.ts';
-import { emptyPlanForm, type PlanForm, planFormOf, planOf, pricesAsked } from './plan-form.ts';
+import { emptyPlanForm, type PlanForm, planOf, pricesAsked } from './plan-form.ts';
+import { planFormOf } from './plan-form-read.ts';
 
 const label = z.string().check(z.trim(), z.minLength(1, { error: 'Name it as the statement does.' }), z.maxLength(120));
 const asIs = z.string();

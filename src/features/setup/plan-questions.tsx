@@ -1,9 +1,11 @@
-import type { ReactNode } from 'react';
 import type { FieldPath, UseFormReturn } from 'react-hook-form';
 import { Choices, Field, SelectField } from '#src/ui/field.tsx';
 import type { PlanEntries } from './plan-entries.ts';
-import { type PlanForm, type PriceName, pricesAsked } from './plan-form.ts';
-import { AddRow, Columns, FormRow, Part } from './rows.tsx';
+import { type PlanForm, pricesAsked } from './plan-form.ts';
+import { Prices } from './plan-prices.tsx';
+import { TaxQuestions } from './plan-tax.tsx';
+import { Columns, Part } from './rows.tsx';
+import { Tick, Ticks } from './ticks.tsx';
 
 type Form = UseFormReturn<PlanEntries, unknown, PlanEntries>;
 
@@ -192,144 +194,5 @@ export function PlanQuestions({ form, index }: { form: Form; index: number }) {
         ]}
       />
     </>
-  );
-}
-
-function TaxQuestions({
-  answers,
-  set,
-  error,
-  at,
-}: {
-  answers: PlanForm;
-  set: <N extends keyof PlanForm>(name: N, value: PlanForm[N]) => void;
-  error: string | undefined;
-  at: string;
-}) {
-  return (
-    <>
-      <fieldset className="field">
-        <legend className="field-label">It is on</legend>
-        {error && <span className="field-error">{error}</span>}
-        <Ticks>
-          <Tick label="energy" checked={answers.taxOnEnergy} onChange={(on) => set('taxOnEnergy', on)} />
-          {answers.hasCustomer && (
-            <Tick
-              label="the customer charge"
-              checked={answers.taxOnCustomer}
-              onChange={(on) => set('taxOnCustomer', on)}
-            />
-          )}
-          {answers.hasGross && (
-            <Tick
-              label={answers.labels.gross || 'the charge on every kWh bought'}
-              checked={answers.taxOnGross}
-              onChange={(on) => set('taxOnGross', on)}
-            />
-          )}
-        </Ticks>
-      </fieldset>
-      <Choices
-        legend="The tax is worked out"
-        name={`${at}.taxAfterCredits`}
-        value={answers.taxAfterCredits ? 'after' : 'before'}
-        onChange={(value) => set('taxAfterCredits', value === 'after')}
-        options={[
-          { value: 'after', label: 'on what credits leave to pay' },
-          { value: 'before', label: 'on the charges before credits' },
-        ]}
-      />
-    </>
-  );
-}
-
-const PRICE_LABELS: Record<PriceName, { label: string; unit: (answers: PlanForm) => string }> = {
-  energy: { label: 'A kWh bought', unit: () => '$ per kWh' },
-  exported: { label: 'A kWh sent out', unit: () => '$ per kWh' },
-  customer: { label: 'Customer charge', unit: (answers) => (answers.customerPer === 'day' ? '$ a day' : '$ a bill') },
-  gross: { label: 'On every kWh bought', unit: () => '$ per kWh' },
-  taxPercent: { label: 'Tax', unit: () => '%' },
-};
-
-function Prices({ form, index, asked, answers }: { form: Form; index: number; asked: PriceName[]; answers: PlanForm }) {
-  const at = `plans.${index}.form` as const;
-  const errors = form.formState.errors.plans?.[index]?.form?.prices;
-  const rows = answers.prices;
-  const change = (next: PlanForm['prices']) => form.setValue(`${at}.prices`, next, { shouldDirty: true });
-  return (
-    <Part title="Prices by date" hint="The first row is complete. In a later one fill in only what changed that day.">
-      {rows.map((row, place) => (
-        <FormRow
-          // biome-ignore lint/suspicious/noArrayIndexKey: a price row has no name but its place
-          key={place}
-          title={place === 0 ? 'First prices' : `Change ${place}`}
-          onRemove={place === 0 ? null : () => change(rows.filter((other) => other !== row))}
-        >
-          <div className="grid items-end gap-x-6 sm:grid-cols-3">
-            <Field
-              label="From"
-              type="date"
-              error={errors?.[place]?.from?.message}
-              {...form.register(`${at}.prices.${place}.from`)}
-            />
-            {asked.map((name) => (
-              <Field
-                key={name}
-                label={name === 'gross' || name === 'taxPercent' ? nameOf(name, answers) : PRICE_LABELS[name].label}
-                inputMode="decimal"
-                unit={PRICE_LABELS[name].unit(answers)}
-                placeholder={place === 0 ? undefined : 'as before'}
-                className="input-number"
-                error={errors?.[place]?.[name]?.message}
-                {...form.register(`${at}.prices.${place}.${name}`)}
-              />
-            ))}
-          </div>
-        </FormRow>
-      ))}
-      <AddRow
-        onClick={() =>
-          change([...rows, { from: '', energy: '', exported: '', customer: '', gross: '', taxPercent: '' }])
-        }
-      >
-        Add prices from a later day
-      </AddRow>
-    </Part>
-  );
-}
-
-function nameOf(name: 'gross' | 'taxPercent', answers: PlanForm): string {
-  const label = name === 'gross' ? answers.labels.gross : answers.labels.tax;
-  return label.trim() || PRICE_LABELS[name].label;
-}
-
-function Ticks({ children }: { children: ReactNode }) {
-  return <div className="mt-1">{children}</div>;
-}
-
-function Tick({
-  label,
-  hint,
-  checked,
-  onChange,
-}: {
-  label: string;
-  hint?: string;
-  checked: boolean;
-  onChange: (on: boolean) => void;
-}) {
-  return (
-    <label className="flex min-h-11 items-start gap-3 py-2">
-      <input
-        type="checkbox"
-        className="mt-1 size-5 accent-accent"
-        checked={checked}
-        onChange={(event) => onChange(event.target.checked)}
-      />
-      <span>
-        {label}
-        {hint && <span className="hint block">{hint}</span>}
-      </span>
-    </label>
   );
 }

@@ -1,83 +1,16 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useFieldArray, useForm, useWatch } from 'react-hook-form';
-import * as z from 'zod/mini';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
-import type { MeterFacts } from '#shared/facts/house.ts';
 import { sumWh } from '#shared/units/energy.ts';
-import { decimal, kwh } from '#src/lib/format.ts';
+import { kwh } from '#src/lib/format.ts';
 import { newId } from '#src/lib/new-id.ts';
-import { fieldValue, plainDecimal, textOf, typed, typedWhole } from '#src/lib/typed-values.ts';
+import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
 import { Field, SelectField } from '#src/ui/field.tsx';
+import { KINDS, kilowatts, kindOf, METER_KINDS, type RoofForm, roofForm, wattsOf } from './roof-form.ts';
 import { AddRow, Columns, FormRow, Part } from './rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
-
-/** Which registers a meter has, as people say it. */
-const METER_KINDS = {
-  net: { words: 'Net meter: bought and sent out', channels: ['import', 'export'] },
-  import: { words: 'Bought only', channels: ['import'] },
-  export: { words: 'Sent out only', channels: ['export'] },
-  production: { words: 'Production meter', channels: ['production'] },
-  all: { words: 'All three', channels: ['import', 'export', 'production'] },
-} as const satisfies Record<string, { words: string; channels: readonly MeterFacts['channels'][number][] }>;
-type MeterKind = keyof typeof METER_KINDS;
-const KINDS = Object.keys(METER_KINDS) as MeterKind[];
-
-const roofForm = z
-  .object({
-    arrays: z.array(
-      z.object({
-        key: z.string(),
-        label: z.string().check(z.trim(), z.minLength(1, { error: 'Name the array, such as South.' }), z.maxLength(80)),
-        modules: typedWhole(1, 500),
-        watts: typedWhole(50, 1000),
-        tilt: typedWhole(0, 90, true),
-        facing: typedWhole(0, 359, true),
-      }),
-    ),
-    acKw: z.string().check(
-      z.refine((text) => text.trim() === '' || (wattsOf(text) ?? 0) >= 100, {
-        error: 'Write kilowatts such as 10, or leave it empty.',
-      }),
-    ),
-    months: z.array(z.object({ kwh: typed.kwhOrNone })),
-    meters: z.array(
-      z.object({
-        number: z.string().check(z.trim(), z.minLength(1, { error: 'Write the meter’s number.' })),
-        label: z.string().check(z.maxLength(80)),
-        kind: z.enum(KINDS),
-        dials: typedWhole(3, 9),
-        multiplier: typed.rate,
-      }),
-    ),
-  })
-  .check(
-    z.refine((form) => [0, 12].includes(form.months.filter((month) => month.kwh.trim() !== '').length), {
-      error: 'Fill in all twelve months of the estimate, or none.',
-      path: ['months', 0, 'kwh'],
-    }),
-  );
-
-/** Kilowatts as typed in whole watts, by moving the point; null when finer than a watt or no number. */
-function wattsOf(text: string): number | null {
-  const plain = plainDecimal(text);
-  const match = plain === null ? null : /^(\d{1,6})(?:\.(\d{1,3})0*)?$/.exec(plain);
-  return match ? Number(match[1]) * 1000 + Number((match[2] ?? '').padEnd(3, '0')) : null;
-}
-
-function kilowatts(watts: number): string {
-  const whole = Math.floor(watts / 1000);
-  const rest = String(watts % 1000).padStart(3, '0');
-  return decimal(`${whole}.${rest.endsWith('0') ? rest.slice(0, 2) : rest}`);
-}
-
-function kindOf(meter: MeterFacts): MeterKind {
-  const has = (kind: MeterKind) =>
-    METER_KINDS[kind].channels.length === meter.channels.length &&
-    METER_KINDS[kind].channels.every((channel) => meter.channels.includes(channel));
-  return KINDS.find(has) ?? 'net';
-}
 
 const emptyArray = () => ({ key: newId(), label: '', modules: '', watts: '', tilt: '', facing: '' });
 
@@ -260,7 +193,7 @@ export function RoofStep({ view }: { view: SetupView }) {
   );
 }
 
-type Control = ReturnType<typeof useForm<z.infer<typeof roofForm>>>['control'];
+type Control = ReturnType<typeof useForm<RoofForm>>['control'];
 
 /** "28 × 410 W = 11.48 kW DC", as it is typed. */
 function Rating({ control }: { control: Control }) {

@@ -2,7 +2,8 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type RatePlanInput, ratePlanSchema } from '#shared/settlement/plan.ts';
 import { day } from '#shared/units/day.ts';
-import { emptyPlanForm, type PlanForm, planFormOf, planOf, samePlan } from '#src/features/setup/plan-form.ts';
+import { emptyPlanForm, type PlanForm, planOf } from '#src/features/setup/plan-form.ts';
+import { planFormOf, samePlan } from '#src/features/setup/plan-form-read.ts';
 
 const ZONE = 'America/Denver';
 
