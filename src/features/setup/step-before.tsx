@@ -3,6 +3,7 @@ import { useState } from 'react';
 import { useFieldArray, useForm } from 'react-hook-form';
 import * as z from 'zod/mini';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
+import { useHousehold } from '#src/lib/household.ts';
 import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Field, TextArea } from '#src/ui/field.tsx';
@@ -22,6 +23,7 @@ const beforeForm = z.object({
 });
 
 export function BeforeStep({ view }: { view: SetupView }) {
+  const { canEdit } = useHousehold();
   const form = useForm({
     resolver: zodResolver(beforeForm),
     mode: 'onTouched',
@@ -48,7 +50,7 @@ export function BeforeStep({ view }: { view: SetupView }) {
         })),
       })}
     >
-      <Paste onRows={(pasted) => rows.append(pasted)} />
+      {canEdit && <Paste onRows={(pasted) => rows.append(pasted)} />}
       <Part title="Statements from before" hint="Twelve months or more, so that every month of the year has its own.">
         {rows.fields.length === 0 && <p className="mt-3">None yet. Paste a list above, or add them one by one.</p>}
         {rows.fields.map((row, index) => {

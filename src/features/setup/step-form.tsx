@@ -55,7 +55,7 @@ export function StepForm<T extends FieldValues, B>({
   return (
     <form onSubmit={submit} noValidate>
       <ErrorSummary title="Not saved yet" errors={summary} />
-      <fieldset disabled={!canEdit} className="min-w-0">
+      <fieldset disabled={!canEdit} className="min-w-0 [&:disabled_button]:hidden">
         {children}
       </fieldset>
       {canEdit && (

@@ -1,6 +1,7 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useFieldArray, useForm } from 'react-hook-form';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
+import { useHousehold } from '#src/lib/household.ts';
 import { fieldValue, textOf } from '#src/lib/typed-values.ts';
 import { Field, TextArea } from '#src/ui/field.tsx';
 import { emptyEntry, entryOf, openingWith, type PlanEntries, planEntries, planOfEntry } from './plan-entries.ts';
@@ -10,6 +11,7 @@ import { AddRow, Columns, FormRow, Part } from './rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 export function PlanStep({ view }: { view: SetupView }) {
+  const { canEdit } = useHousehold();
   const { timeZone, switchOn } = view.house;
   const firstBank = view.plans[0]?.plan.banks[0]?.id ?? null;
   const held = firstBank === null ? undefined : view.opening.banks[firstBank];
@@ -128,12 +130,14 @@ export function PlanStep({ view }: { view: SetupView }) {
           />
         </Columns>
       </Part>
-      <Part
-        title="Did the rules themselves change?"
-        hint="New prices are a row above. Another way of crediting what you send out is a plan of its own."
-      >
-        <AddRow onClick={() => plans.append(emptyEntry(''))}>Add a plan that starts later</AddRow>
-      </Part>
+      {canEdit && (
+        <Part
+          title="Did the rules themselves change?"
+          hint="New prices are a row above. Another way of crediting what you send out is a plan of its own."
+        >
+          <AddRow onClick={() => plans.append(emptyEntry(''))}>Add a plan that starts later</AddRow>
+        </Part>
+      )}
     </StepForm>
   );
 }
