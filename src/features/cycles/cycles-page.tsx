@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import type { SortingState } from '@tanstack/react-table';
-import { type ReactNode, useMemo, useState } from 'react';
+import { type ReactNode, useId, useMemo, useState } from 'react';
 import { useSearchParams } from 'react-router-dom';
 import type { CycleRow } from '#shared/api/cycles.ts';
 import { cycleState } from '#shared/ledger/cycle.ts';
@@ -157,13 +157,16 @@ function FilterSelect({
   onChange: (value: string) => void;
   children: ReactNode;
 }) {
+  const id = useId();
   return (
-    <label className="block text-[15px] text-soft">
-      {label}
-      <select className="input text-ink" value={value} onChange={(event) => onChange(event.target.value)}>
+    <div className="text-[15px]">
+      <label htmlFor={id} className="text-soft">
+        {label}
+      </label>
+      <select id={id} className="input" value={value} onChange={(event) => onChange(event.target.value)}>
         {children}
       </select>
-    </label>
+    </div>
   );
 }
 

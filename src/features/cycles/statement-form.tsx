@@ -1,10 +1,10 @@
-import { type ComponentProps, type ReactNode, useState } from 'react';
+import { type ReactNode, useState } from 'react';
 import { type FieldErrors, useFieldArray, useForm } from 'react-hook-form';
 import type { Statement } from '#shared/facts/papers.ts';
 import { lineKind } from '#shared/settlement/settlement.ts';
 import { refusalLines, resolverOf } from '#src/lib/form.ts';
 import { Button } from '#src/ui/button.tsx';
-import { ErrorSummary, Field, TextArea } from '#src/ui/field.tsx';
+import { ErrorSummary, Field, SelectField, TextArea } from '#src/ui/field.tsx';
 import { useCorrect } from './cycles-queries.ts';
 import { readStatementValues, type StatementValues, valuesOf } from './statement-values.ts';
 
@@ -113,11 +113,11 @@ export default function StatementForm({
             <legend className="visually-hidden">Read {index + 1}</legend>
             <Row>
               <Field label="Meter" {...register(`reads.${index}.meter`)} />
-              <Select label="Channel" {...register(`reads.${index}.channel`)}>
+              <SelectField label="Channel" {...register(`reads.${index}.channel`)}>
                 <option value="import">import</option>
                 <option value="export">export</option>
                 <option value="production">production</option>
-              </Select>
+              </SelectField>
               <Field
                 label="Previous"
                 inputMode="decimal"
@@ -130,10 +130,10 @@ export default function StatementForm({
                 error={errors.reads?.[index]?.current?.message}
                 {...register(`reads.${index}.current`)}
               />
-              <Select label="Read type" {...register(`reads.${index}.type`)}>
+              <SelectField label="Read type" {...register(`reads.${index}.type`)}>
                 <option value="actual">actual</option>
                 <option value="estimated">estimated</option>
-              </Select>
+              </SelectField>
               <Field
                 label="From"
                 type="date"
@@ -192,27 +192,27 @@ export default function StatementForm({
                 error={errors.lines?.[index]?.label?.message}
                 {...register(`lines.${index}.label`)}
               />
-              <Select label="Kind" {...register(`lines.${index}.kind`)}>
+              <SelectField label="Kind" {...register(`lines.${index}.kind`)}>
                 {[...lineKind.options, 'otherService'].map((kind) => (
                   <option key={kind} value={kind}>
                     {KIND_WORDS[kind] ?? kind}
                   </option>
                 ))}
-              </Select>
+              </SelectField>
               <Field
                 label="Quantity"
                 inputMode="decimal"
                 error={errors.lines?.[index]?.quantity?.message}
                 {...register(`lines.${index}.quantity`)}
               />
-              <Select label="Unit" {...register(`lines.${index}.unit`)}>
+              <SelectField label="Unit" {...register(`lines.${index}.unit`)}>
                 <option value="">none</option>
                 <option value="kWh">kWh</option>
                 <option value="kW">kW</option>
                 <option value="day">days</option>
                 <option value="cycle">cycle</option>
                 <option value="USD">$</option>
-              </Select>
+              </SelectField>
               <Field
                 label="Rate"
                 inputMode="decimal"
@@ -320,17 +320,6 @@ function Group({ title, children }: { title: string; children: ReactNode }) {
       <h3 className="border-b-2 border-ink pb-1">{title}</h3>
       {children}
     </section>
-  );
-}
-
-function Select({ label, children, ...select }: ComponentProps<'select'> & { label: string }) {
-  return (
-    <label className="field">
-      <span className="field-label">{label}</span>
-      <select {...select} className="input">
-        {children}
-      </select>
-    </label>
   );
 }
 

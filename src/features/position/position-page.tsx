@@ -1,17 +1,22 @@
 import { useQuery } from '@tanstack/react-query';
-import { Fragment } from 'react';
+import { Fragment, lazy, Suspense } from 'react';
 import type { PositionView } from '#shared/api/position.ts';
 import { longDayMonth, monthYear } from '#src/lib/format.ts';
 import { type HouseholdContext, useHousehold } from '#src/lib/household.ts';
-import { ButtonLink } from '#src/ui/button.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
-import { EmptyState, ErrorState, PageSkeleton } from '#src/ui/states.tsx';
+import { ErrorState, PageSkeleton } from '#src/ui/states.tsx';
 import { usePhone } from '#src/ui/use-media.ts';
 import { AddsUpSheet } from './adds-up-sheet.tsx';
 import { NeedNotes, NeedsList } from './needs-list.tsx';
 import { positionQuery } from './position-queries.ts';
 import { countWords, standing } from './position-words.ts';
-import { RunningSheet } from './running-sheet.tsx';
+
+// The sentence and the table come first; the chart's sheet and Chart.js follow, both asked for at once.
+const RunningSheet = lazy(async () => {
+  void import('./charts.tsx');
+  return { default: (await import('./running-sheet.tsx')).RunningSheet };
+});
+const FirstUse = lazy(async () => ({ default: (await import('./first-use.tsx')).FirstUse }));
 
 /** Position: is the roof paying for itself, and can every figure be proved? */
 export function PositionPage() {
@@ -20,7 +25,9 @@ export function PositionPage() {
   if (view.isPending) return <PageSkeleton />;
   if (view.isError) return <ErrorState error={view.error} retry={() => view.refetch()} />;
   return view.data.lastCycle === null ? (
-    <FirstUse view={view.data} household={household} />
+    <Suspense fallback={<PageSkeleton />}>
+      <FirstUse view={view.data} household={household} />
+    </Suspense>
   ) : (
     <Standing view={view.data} household={household} lastCycleTo={view.data.lastCycle.to} />
   );
@@ -62,7 +69,15 @@ function Standing({
           <NeedNotes needs={wrong} base={base} />
         </div>
       )}
-      <RunningSheet position={position} />
+      <Suspense
+        fallback={
+          <section className="sheet" aria-busy="true">
+            <div className={phone ? 'bone h-[300px]' : 'bone h-[640px]'} />
+          </section>
+        }
+      >
+        <RunningSheet position={position} />
+      </Suspense>
       <div className="grid gap-x-[26px] lg:grid-cols-[minmax(0,1fr)_300px]">
         <AddsUpSheet position={position} />
         <div className="mt-8 lg:mt-[48px] lg:pl-1.5">
@@ -100,62 +115,5 @@ function Lede({
       {counts === '' ? '.' : `; ${counts}.`}
       {points.length > 0 && view.position.pace === null && ' The pace shows after two cycles.'}
     </>
-  );
-}
-
-function FirstUse({ view, household }: { view: PositionView; household: HouseholdContext }) {
-  const base = `/h/${household.id}`;
-  if (!household.canEdit) {
-    return (
-      <div className="page">
-        <Sentence title="Position" lede={`${view.householdName} has no billing cycle yet.`}>
-          <b>Nothing is posted yet.</b>
-        </Sentence>
-        <EmptyState title="What will stand here">
-          Whether the roof is paying for itself, as one figure that can be proved line by line. The owner has not posted
-          the first month yet; nothing is asked of you.
-        </EmptyState>
-      </div>
-    );
-  }
-  const unfinished = view.unfinishedSteps;
-  return (
-    <div className="page">
-      <Sentence
-        title="Position"
-        lede="Two things make the first figure: what the roof cost, and one month’s statement."
-      >
-        <b>Is the roof paying for itself?</b> The first month will say.
-      </Sentence>
-      <EmptyState
-        title="What stands here"
-        action={
-          <>
-            {unfinished.length > 0 && (
-              <ButtonLink to={`${base}/setup/${unfinished[0]}`}>
-                {unfinished.length >= 9 ? 'Start the set-up' : 'Go on with the set-up'}
-              </ButtonLink>
-            )}
-            <ButtonLink to={`${base}/log`} look={unfinished.length > 0 ? 'plain' : 'main'}>
-              Log the first month
-            </ButtonLink>
-          </>
-        }
-      >
-        <p>
-          An account book for the roof: what it keeps off the bill, what it earns, what the loan and the upkeep cost,
-          and the day these come even. Every figure opens to the statement and the reading it came from.
-        </p>
-        <p className="mt-3">
-          The set-up asks for the rate plan, the loan and the tax credit; any step can wait. Then log the oldest
-          statement you have, or several at once.
-        </p>
-      </EmptyState>
-      {view.needs.length > 0 && (
-        <div className="mt-8 max-w-xl">
-          <NeedsList view={{ ...view, unfinishedSteps: [] }} base={base} canEdit />
-        </div>
-      )}
-    </div>
   );
 }

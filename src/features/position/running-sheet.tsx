@@ -5,7 +5,7 @@ import { Sheet } from '#src/ui/sheet.tsx';
 import { usePhone } from '#src/ui/use-media.ts';
 import { chartSeries, type Series } from './chart-series.ts';
 import { ChartTable } from './chart-table.tsx';
-import { chartSummary } from './position-words.ts';
+import { chartSummary } from './chart-words.ts';
 
 const Charts = lazy(() => import('./charts.tsx'));
 
