@@ -102,8 +102,8 @@ describe('from nothing to a posted first month', () => {
     await page.getByLabel('A tax or franchise fee in percent').check();
     await page.getByLabel('Name of the tax').fill('City tax');
     await page.getByLabel('From', { exact: true }).first().fill('2026-01-01');
-    await page.getByLabel('Bought', { exact: true }).fill('0.15');
-    await page.getByLabel('Sent out', { exact: true }).fill('0.08');
+    await page.getByLabel('A kWh bought', { exact: true }).fill('0.15');
+    await page.getByLabel('A kWh sent out', { exact: true }).fill('0.08');
     await page.getByLabel('Customer charge', { exact: true }).fill('12.00');
     await page.getByLabel('City tax', { exact: true }).fill('5');
     await shot(page, 'setup-plan');
