@@ -68,22 +68,18 @@ export function carriedCredit({ facts, creditLines, position }: NeedsInput): Nee
   return [];
 }
 
-/** What the set-up still lacks for the position to be whole. */
+/** What the set-up lacks without which no cycle can be assembled or settled. Steps left for later are the screen's to name. */
 export function missingFacts({ facts }: NeedsInput): Need[] {
   const missing: string[] = [];
-  if (facts.house.switchOn === null) missing.push('the switch-on date');
+  if (facts.house.switchOn === null) missing.push('the switch-on day');
   if (facts.plans.length === 0) missing.push('the rate plan');
-  if (facts.loan === null && facts.costs.length === 0) missing.push('how the roof was paid for');
-  if (facts.credit === null) missing.push('the tax credit');
   if (missing.length === 0) return [];
-  const last = missing.pop();
-  const list = missing.length === 0 ? last : `${missing.join(', ')} and ${last}`;
   return [
     {
       key: 'set-up',
       tone: 'note',
-      title: 'The set-up is not finished',
-      detail: `Missing: ${list}. Without them the position is incomplete.`,
+      title: `The set-up lacks ${missing.join(' and ')}`,
+      detail: 'Without it no bill can be worked out again.',
       link: 'setup',
     },
   ];
