@@ -138,7 +138,7 @@ describe('the owner of the sample logs a month', () => {
       .waitFor();
     await shot(page, 'sample-log-posted');
     await page.goto(base);
-    await page.getByText(/cycle ending 13 November/).waitFor();
+    await page.getByText(/counted to 13 November/).waitFor();
     expect(await page.getByRole('heading', { level: 1 }).textContent()).not.toBe(before);
     expect(complaints).toEqual([]);
     await close();
