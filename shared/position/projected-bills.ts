@@ -1,8 +1,8 @@
 import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
-import { settleCycle } from '../settlement/settle.ts';
-import { type CycleUsage, EMPTY_OPENING, type Opening, type Settlement } from '../settlement/settlement.ts';
+import { type SettledAmounts, settleAmounts } from '../settlement/settle.ts';
+import { type CycleUsage, EMPTY_OPENING, type Opening } from '../settlement/settlement.ts';
 import { planWithoutRoof } from '../settlement/without-roof.ts';
 import { type Cents, cents } from '../units/cents.ts';
 import { type Day, daysBetween, monthOf } from '../units/day.ts';
@@ -82,8 +82,8 @@ export function projectBills(
       finalBill: false,
       intervals: null,
     };
-    const roof = settleCycle(plans.withRoof, withRoof, usage);
-    const plain = settleCycle(plans.withoutRoof, without, {
+    const roof = settleAmounts(plans.withRoof, withRoof, usage);
+    const plain = settleAmounts(plans.withoutRoof, without, {
       ...usage,
       importWh: energy.useWh,
       exportWh: ZERO_WH,
@@ -104,7 +104,7 @@ export function projectBills(
 }
 
 /** Current charges in due less what is paid out beside the bill; the incentive apart where it has a book of its own. */
-function electricDue(settlement: Settlement, incentiveApart: boolean): number {
+function electricDue(settlement: SettledAmounts['settlement'], incentiveApart: boolean): number {
   let due = 0;
   for (const line of settlement.lines) {
     if (line.inDue && !(incentiveApart && line.kind === 'incentive')) due += line.amountCents;

@@ -1,7 +1,7 @@
 import type { CyclePaper } from '../ledger/cycle-papers.ts';
 import type { RatePlan } from '../settlement/plan.ts';
+import { plus, type Qty, qtyOfText, sizeOf, whOfQty } from '../settlement/quantity.ts';
 import { type Wh, wh } from '../units/energy.ts';
-import { Exact, exact, roundToWh } from '../units/rate.ts';
 
 /**
  * The kWh the statement charges or credits for a channel: the quantity of the lines of the first component of the plan that takes the register as it is
@@ -15,16 +15,16 @@ export function billedQuantity(
 ): Wh | null {
   if (plan !== null) {
     for (const id of grossComponents(plan, channel)) {
-      let sum = new Exact(0);
+      let sum: Qty = 0;
       let found = false;
       let complete = true;
-      paper.lines.forEach((line, at) => {
-        if (components[at] !== id) return;
+      for (const [at, line] of paper.lines.entries()) {
+        if (components[at] !== id) continue;
         if (line.quantity === null || (line.unit !== null && line.unit !== 'kWh')) complete = false;
-        else sum = sum.plus(exact(line.quantity).abs());
+        else sum = plus(sum, sizeOf(qtyOfText(line.quantity)));
         found = true;
-      });
-      if (found && complete) return roundToWh(sum);
+      }
+      if (found && complete) return whOfQty(sum);
     }
   }
   if (paper.split !== null) return null;
@@ -32,7 +32,16 @@ export function billedQuantity(
   return printed === null ? null : wh(Math.abs(printed));
 }
 
-function grossComponents(plan: RatePlan, channel: 'import' | 'export'): string[] {
+const known = new WeakMap<RatePlan, Record<'import' | 'export', readonly string[]>>();
+
+/** Looked up once per plan object; a plan is never changed in place. */
+function grossComponents(plan: RatePlan, channel: 'import' | 'export'): readonly string[] {
+  const made = known.get(plan) ?? { import: listGross(plan, 'import'), export: listGross(plan, 'export') };
+  known.set(plan, made);
+  return made[channel];
+}
+
+function listGross(plan: RatePlan, channel: 'import' | 'export'): string[] {
   const banked = new Set(plan.banks.filter((bank) => bank.unit === 'kWh').flatMap((bank) => bank.offsets));
   const gross = (item: { id: string; basis: string; netting: string | null }) =>
     item.basis === channel && (item.netting ?? plan.netting) === 'none' && !banked.has(item.id);

@@ -1,16 +1,17 @@
 import type { PrintedLine } from '../facts/papers.ts';
 import { sayMoney } from '../ledger/say.ts';
 import type { Charge, RatePlan } from '../settlement/plan.ts';
-import { priceQuantity } from '../settlement/price.ts';
+import { priceAmount, priceQuantity } from '../settlement/price.ts';
+import { exactText, plus, type Qty, qtyOfText, sizeOf } from '../settlement/quantity.ts';
 import { type Cents, cents, dollarsText, sumCents } from '../units/cents.ts';
-import { Exact, exact } from '../units/rate.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
 import { isCarried } from './electric-lines.ts';
 import { compareCents, nothingToCompare } from './make-check.ts';
 import { LINE_TOLERANCE_CENTS } from './tolerance.ts';
 
-type Priced = { amountCents: Cents; said: string } | { why: string };
+/** `said` words the price, and is asked for only where it differs. */
+type Priced = { amountCents: Cents; said: () => string } | { why: string };
 
 /**
  * Each printed line at the plan's price for its *billed* quantity, kept apart from the quantity's own check (ledger.md §4); taxes on their base of
@@ -47,7 +48,7 @@ function priceCheck(context: CheckContext, plan: RatePlan, component: string, li
   }
   const sides = { stated, found: priced.amountCents, tolerance: cents(LINE_TOLERANCE_CENTS * lines.length) };
   return compareCents('linePrice', component, title, sides, () => ({
-    cause: `${label} is billed at ${sayMoney(stated)}; by the rate plan it is ${priced.said}, ${sayMoney(priced.amountCents)}.`,
+    cause: `${label} is billed at ${sayMoney(stated)}; by the rate plan it is ${priced.said()}, ${sayMoney(priced.amountCents)}.`,
     advice:
       'Compare the rate printed with the plan. If the utility changed it, add the new rate to the plan with its date.',
   }));
@@ -58,8 +59,11 @@ function priceOf(context: CheckContext, plan: RatePlan, component: string, lines
   const quantity = quantityOf(context, charge, lines);
   if (typeof quantity === 'string') {
     const { from, to } = context.paper;
-    const priced = priceQuantity(plan, component, from, to, quantity);
-    if (priced !== null) return { amountCents: priced.amountCents, said: priced.working.words };
+    const amountCents = priceAmount(plan, component, from, to, quantity);
+    if (amountCents !== null) {
+      const said = () => priceQuantity(plan, component, from, to, quantity)?.working.words ?? '';
+      return { amountCents, said };
+    }
   }
   // What the plan prices only in its place among the other lines (a minimum, tiers, a tax after credits) is taken from the bill settled on the
   // billed kWh.
@@ -67,7 +71,7 @@ function priceOf(context: CheckContext, plan: RatePlan, component: string, lines
   if (placed.length > 0 && (quantity !== null || charge?.basis === 'floor' || charge?.afterCredits === true)) {
     return {
       amountCents: sumCents(placed.map((line) => line.amountCents)),
-      said: placed.map((line) => line.working.words).join(', '),
+      said: () => placed.map((line) => line.working.words).join(', '),
     };
   }
   return quantity === null
@@ -80,12 +84,12 @@ function quantityOf(context: CheckContext, charge: Charge | null, lines: readonl
   if (charge?.basis === 'cycle') return '1';
   if (charge?.basis === 'day') return String(context.paper.days);
   if (charge?.basis === 'percent') return charge.afterCredits ? null : billedBase(context, charge.on);
-  let sum = new Exact(0);
+  let sum: Qty = 0;
   for (const line of lines) {
     if (line.quantity === null) return null;
-    sum = sum.plus(exact(line.quantity).abs());
+    sum = plus(sum, sizeOf(qtyOfText(line.quantity)));
   }
-  return sum.toString();
+  return exactText(sum);
 }
 
 /** USD of the billed lines of these components; null where one of them is not printed. */

@@ -1,7 +1,7 @@
+import { compare, exactText, minus, qtyOfText, sizeOf } from '../settlement/quantity.ts';
 import type { Cents } from '../units/cents.ts';
 import { dollarsText, subtractCents } from '../units/cents.ts';
 import { kwhText, type Wh, wh } from '../units/energy.ts';
-import { type Exact, exact } from '../units/rate.ts';
 import type { Check, CheckId } from './check.ts';
 
 /** What to say of a difference: its likely cause and what to do. Asked for only where there is one. */
@@ -86,12 +86,12 @@ export function compareDecimals(
   differs: () => Difference,
 ): Check {
   const { stated, found, tolerance, unit } = sides;
-  const difference: Exact = exact(stated).minus(exact(found));
-  const agrees = difference.abs().lte(exact(tolerance));
+  const difference = minus(qtyOfText(stated), qtyOfText(found));
+  const agrees = compare(sizeOf(difference), qtyOfText(tolerance)) <= 0;
   return made(check, about, title, unit, agrees, differs, {
     stated,
     found,
-    difference: difference.toString(),
+    difference: exactText(difference),
     tolerance,
   });
 }

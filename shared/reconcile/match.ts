@@ -16,10 +16,10 @@ const OUTSIDE_PLAN: ReadonlySet<string> = new Set(['otherService', 'previousBala
  */
 export function matchLines(lines: readonly PrintedLine[], plan: RatePlan): (string | null)[] {
   const components = componentsOf(plan);
-  const known = new Set(components.map((component) => component.id));
-  const matched: (string | null)[] = lines.map((line) =>
-    line.component !== null && known.has(line.component) ? line.component : null,
+  const matched: (string | null)[] = lines.map(({ component: named }) =>
+    named !== null && components.some((component) => component.id === named) ? named : null,
   );
+  if (!matched.includes(null)) return matched;
   lines.forEach((line, at) => {
     if (matched[at] !== null || OUTSIDE_PLAN.has(line.kind)) return;
     const words = wordsOf(line.label);
@@ -41,7 +41,16 @@ export function matchLines(lines: readonly PrintedLine[], plan: RatePlan): (stri
   return matched;
 }
 
-function componentsOf(plan: RatePlan): Component[] {
+const known = new WeakMap<RatePlan, readonly Component[]>();
+
+/** The plan's components, looked up once per plan object; a plan is never changed in place. */
+function componentsOf(plan: RatePlan): readonly Component[] {
+  const made = known.get(plan) ?? listComponents(plan);
+  known.set(plan, made);
+  return made;
+}
+
+function listComponents(plan: RatePlan): Component[] {
   const components: Component[] = [];
   for (const charge of plan.charges) components.push(component(charge.id, charge.kind, charge.label));
   for (const credit of plan.credits) components.push(component(credit.id, credit.kind, credit.label));

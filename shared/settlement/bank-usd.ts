@@ -1,7 +1,10 @@
 import { type Cents, cents, dollarsText } from '../units/cents.ts';
+import type { Working } from '../working.ts';
 import { type BankState, centsOfQty, enter, take } from './bank-state.ts';
 import type { Cycle } from './cycle-flows.ts';
 import { floorCents } from './floors.ts';
+import { UNSAID } from './piece.ts';
+import type { PreparedBank } from './prepare.ts';
 import type { SettledLine } from './settlement.ts';
 
 /** The cents of each charge's lines, and what USD banks have paid of them. */
@@ -23,22 +26,19 @@ export function moveUsdBank(cycle: Cycle, state: BankState, earned: Cents, ledge
   let room = floor
     ? Math.max(owedOn(floor.charge.on, ledgered) - floorCents(cycle, floor), 0)
     : Number.POSITIVE_INFINITY;
-  const counted = new Set(floor?.charge.on ?? []);
   let used = 0;
   let owed = 0;
   for (const id of bank.offsets) {
+    const counted = floor?.charge.on.includes(id) === true;
     const owes = (ledgered.amounts.get(id) ?? 0) - (ledgered.paid.get(id) ?? 0);
-    const payable = Math.min(
-      bank.belowZero ? owes : Math.max(owes, 0),
-      counted.has(id) ? room : Number.POSITIVE_INFINITY,
-    );
+    const payable = Math.min(bank.belowZero ? owes : Math.max(owes, 0), counted ? room : Number.POSITIVE_INFINITY);
     const pays = Math.min(payable, left);
     owed += payable;
     if (pays === 0) continue;
     ledgered.paid.set(id, (ledgered.paid.get(id) ?? 0) + pays);
     used += pays;
     left -= pays;
-    if (counted.has(id)) room -= pays;
+    if (counted) room -= pays;
   }
   take(pocket, used * 10, 'used');
   if (bank.offsets.length === 0 || bank.belowZero) return null;
@@ -55,28 +55,32 @@ export function moveUsdBank(cycle: Cycle, state: BankState, earned: Cents, ledge
     rate: null,
     amountCents: cents(-used),
     inDue: true,
-    working: {
-      words: `the smaller of the bank, $${dollarsText(balance)}, and what it may pay, $${dollarsText(cents(owed))}`,
-      formula: '-max(min(balance, owed), 0)',
-      inputs: [
-        {
-          name: 'balance',
-          label: `${bank.label}, at hand`,
-          value: dollarsText(balance),
-          unit: 'USD',
-          source: { kind: 'figure', name: bank.id },
-        },
-        {
-          name: 'owed',
-          label: floor ? `Owed down to ${floor.charge.label}` : 'Owed by the lines it may pay',
-          value: dollarsText(cents(owed)),
-          unit: 'USD',
-          source: { kind: 'figure', name: bank.offsets.join(', ') },
-        },
-      ],
-      unit: 'USD',
-      basis: 'computed',
-    },
+    working: cycle.says ? paidWorking(state.prepared, balance, cents(owed)) : UNSAID,
+  };
+}
+
+function paidWorking({ bank, floor }: PreparedBank, balance: Cents, owed: Cents): Working {
+  return {
+    words: `the smaller of the bank, $${dollarsText(balance)}, and what it may pay, $${dollarsText(owed)}`,
+    formula: '-max(min(balance, owed), 0)',
+    inputs: [
+      {
+        name: 'balance',
+        label: `${bank.label}, at hand`,
+        value: dollarsText(balance),
+        unit: 'USD',
+        source: { kind: 'figure', name: bank.id },
+      },
+      {
+        name: 'owed',
+        label: floor ? `Owed down to ${floor.charge.label}` : 'Owed by the lines it may pay',
+        value: dollarsText(owed),
+        unit: 'USD',
+        source: { kind: 'figure', name: bank.offsets.join(', ') },
+      },
+    ],
+    unit: 'USD',
+    basis: 'computed',
   };
 }
 

@@ -5,7 +5,7 @@ import type { LessBank } from './energy-figures.ts';
 import { energyPieces } from './energy-pieces.ts';
 import { dayInputs, mustPrice } from './energy-share.ts';
 import { splitCycle } from './parts.ts';
-import { type Piece, pieceCents, pieceQuantity, pieceWorking } from './piece.ts';
+import { NO_INPUTS, type Piece, pieceCents, pieceQuantity, pieceWorking } from './piece.ts';
 import type { PreparedCharge } from './prepare.ts';
 import { ONE_UNIT, type Qty, qtyOfText, times } from './quantity.ts';
 import { refuse } from './refused.ts';
@@ -51,7 +51,7 @@ function chargePieces(cycle: Cycle, item: PreparedCharge, lessBank: LessBank | n
 /** Pieces of a percent of a base in cents, shared by days where the cycle is split. */
 export function percentOf(cycle: Cycle, item: PreparedCharge, base: Owed): Piece[] {
   const due = sumCents(base.amounts) - base.paid;
-  const inputs = owedInputs(base);
+  const inputs = cycle.says ? owedInputs(base) : NO_INPUTS;
   return dayShared(cycle, item, due * 10, base.paid === 0 ? 'sum(lines) * ' : '(sum(lines) - paid) * ', inputs);
 }
 
@@ -91,7 +91,7 @@ export function dayShared(
       unit: item.unit,
       price,
       formula: whole ? before + price.formula : `${before}${price.formula} * days / allDays`,
-      inputs: whole ? [...inputs, ...price.inputs] : [...inputs, ...price.inputs, ...dayInputs(part.days, cycle.days)],
+      inputs: cycle.says ? inputs.concat(price.inputs, whole ? [] : dayInputs(part.days, cycle.days)) : NO_INPUTS,
     };
   });
 }

@@ -20,14 +20,16 @@ export type Cycle = {
   from: Day;
   to: Day;
   days: number;
-  flows: Map<Netting, NettedFlow>;
+  flows: Partial<Record<Netting, NettedFlow>>;
   intervals: IntervalView | null;
+  /** Whether lines say how they came about. A projection settles hundreds of bills for their amounts alone. */
+  says: boolean;
 };
 
-export function openCycle(prepared: PreparedPlan, usage: CycleUsage): Cycle {
+export function openCycle(prepared: PreparedPlan, usage: CycleUsage, says: boolean): Cycle {
   const days = daysBetween(usage.from, usage.to);
   if (!(days > 0)) refuse('A cycle must end after it begins.');
-  return { prepared, usage, from: usage.from, to: usage.to, days, flows: new Map(), intervals: null };
+  return { prepared, usage, from: usage.from, to: usage.to, days, flows: {}, intervals: null, says };
 }
 
 /** The interval data of the cycle with each step's local day and period; refused when there are none. */
@@ -42,10 +44,10 @@ export function viewOf(cycle: Cycle): IntervalView {
 
 /** Import and export of the cycle under a netting; refused when the inputs do not hold what it needs. */
 export function flowOf(cycle: Cycle, netting: Netting): NettedFlow {
-  const known = cycle.flows.get(netting);
+  const known = cycle.flows[netting];
   if (known) return known;
   const made = netted(cycle, netting);
-  cycle.flows.set(netting, made);
+  cycle.flows[netting] = made;
   return made;
 }
 

@@ -2,6 +2,7 @@ import type { Source, WorkingInput } from '../working.ts';
 import { type Cycle, flowOf, type NettedFlow, viewOf } from './cycle-flows.ts';
 import { nettedOver, producedOver } from './interval-flows.ts';
 import type { Group } from './parts.ts';
+import { NO_INPUTS } from './piece.ts';
 import type { Netting } from './plan.ts';
 import { compare, exactText, minus, type Qty, times } from './quantity.ts';
 import type { Pricing } from './rates-in-force.ts';
@@ -34,8 +35,7 @@ const SOURCES: Record<Basis | 'fromBank', Source> = {
   fromBank: { kind: 'figure', name: 'kWh bank' },
 };
 const NAMES: Record<Basis, string> = { import: 'Import', export: 'Export', production: 'Production', load: 'Use' };
-const NETTED: Record<Netting, string> = {
-  none: '',
+const NETTED: Record<Exclude<Netting, 'none'>, string> = {
   '15min': ', netted in each quarter-hour',
   hour: ', netted in each hour',
   period: ', netted in each period',
@@ -59,11 +59,14 @@ export function canUseIntervals(cycle: Cycle, item: Asked): boolean {
 /** The kWh of an item over a group of days: one figure, or one per time-of-use period in the calendar's order. */
 export function figuresOf(cycle: Cycle, item: Asked, group: Group): Figure[] {
   const { basis, pricing, lessBank } = item;
-  const label = basis === 'import' || basis === 'export' ? NAMES[basis] + NETTED[item.netting] : NAMES[basis];
+  const label =
+    (basis === 'import' || basis === 'export') && item.netting !== 'none'
+      ? NAMES[basis] + NETTED[item.netting]
+      : NAMES[basis];
   const flow = group.whole ? wholeFlow(cycle, item) : groupFlow(cycle, item, group);
   if (!pricing.byPeriod) {
     const all = group.whole || !lessBank ? null : amounts(wholeFlow(cycle, item), null);
-    return [figure(basis, label, null, flow.total, lessBank?.all ?? 0, all)];
+    return [figure(cycle, basis, label, null, flow.total, lessBank?.all ?? 0, all)];
   }
   const { byPeriod } = flow;
   if (!byPeriod) return refuse(`${item.label} is priced by period: ${NAMES[basis].toLowerCase()} by period is needed.`);
@@ -73,12 +76,13 @@ export function figuresOf(cycle: Cycle, item: Asked, group: Group): Figure[] {
     if (amount === undefined) continue;
     const all = group.whole || !lessBank ? null : amounts(wholeFlow(cycle, item), period.id);
     const name = `${label}, ${period.label || period.id}`;
-    figures.push(figure(basis, name, period.id, amount, lessBank?.byPeriod[period.id] ?? 0, all));
+    figures.push(figure(cycle, basis, name, period.id, amount, lessBank?.byPeriod[period.id] ?? 0, all));
   }
   return figures;
 }
 
 function figure(
+  cycle: Cycle,
   basis: Basis,
   label: string,
   period: string | null,
@@ -86,8 +90,8 @@ function figure(
   used: Qty,
   all: number | null,
 ): Figure {
-  const kWh = basisInput('kWh', label, amount, basis);
-  if (compare(used, 0) === 0) return { basis, label, period, n: amount, d: 1, top: 'kWh', bottom: '', inputs: [kWh] };
+  const inputs = cycle.says ? [basisInput('kWh', label, amount, basis)] : NO_INPUTS;
+  if (compare(used, 0) === 0) return { basis, label, period, n: amount, d: 1, top: 'kWh', bottom: '', inputs };
   const fromBank = basisInput('fromBank', 'Taken from the kWh bank', used, 'fromBank');
   if (all === null || all === 0) {
     return {
@@ -98,7 +102,7 @@ function figure(
       d: 1,
       top: '(kWh - fromBank)',
       bottom: '',
-      inputs: [kWh, fromBank],
+      inputs: [...inputs, fromBank],
     };
   }
   // A bank pays over the cycle as a whole: each stretch of it is lowered in the same proportion.
@@ -112,7 +116,7 @@ function figure(
     d: all,
     top: 'kWh * (all - fromBank)',
     bottom: 'all',
-    inputs: [kWh, whole, fromBank],
+    inputs: [...inputs, whole, fromBank],
   };
 }
 

@@ -3,7 +3,7 @@ import type { Cycle } from './cycle-flows.ts';
 import { basisInput, canUseIntervals, type Figure, figuresOf } from './energy-figures.ts';
 import { dayInputs, type EnergyItem, mustPrice, type Share } from './energy-share.ts';
 import { type Part, splitCycle } from './parts.ts';
-import type { Piece } from './piece.ts';
+import { NO_INPUTS, type Piece } from './piece.ts';
 import { plus, type Qty, roundToWhole, times } from './quantity.ts';
 import { limitsAt, type Price } from './rates-in-force.ts';
 import { tierPieces } from './tier-pieces.ts';
@@ -11,36 +11,35 @@ import { tierPieces } from './tier-pieces.ts';
 /** Kilowatt-hours as a statement prints them, to be priced in place of the cycle's own; `tier`: all of them at that tier's rate. */
 export type BilledEnergy = { figure: Figure; tier: number | null };
 
+/** What whole kWh have been given to the parts before, by group and period, so that the parts add up. */
+type Given = Map<string, { days: number; whole: Qty }>;
+
 /** What an item priced by the kWh comes to in a cycle: a piece for each part, period and tier, also at zero. */
 export function energyPieces(cycle: Cycle, item: EnergyItem, billed: BilledEnergy | null = null): Piece[] {
   const parts = splitCycle(cycle, item.pricing, billed === null && canUseIntervals(cycle, item));
+  const split = parts.length > 1;
+  const given: Given | null = split ? new Map() : null;
+  const tier = billed?.tier ?? null;
   const pieces: Piece[] = [];
-  const given = new Map<string, { days: number; whole: Qty }>();
   for (const part of parts) {
-    const shares: Share[] = [];
-    for (const figure of billed ? [billed.figure] : figuresOf(cycle, item, part.group)) {
-      const share = shareOf(cycle, figure, part, parts, given);
-      if (share) shares.push(share);
-    }
-    const tier = billed?.tier ?? null;
+    const figures = billed ? [billed.figure] : figuresOf(cycle, item, part.group);
+    const shares = given ? sharesOf(cycle, figures, part, parts, given) : figures;
     const tiered = item.pricing.tiers.length > 0 && tier === null;
     const limits = tiered ? limitsAt(item.pricing, part.rateDay, part.season) : null;
-    const split = parts.length > 1;
     if (limits) {
       pieces.push(...tierPieces(cycle, item, part, split, shares, limits));
       continue;
     }
     for (const share of shares) {
       const price = mustPrice(item, item.label, part, share.period, tier);
-      pieces.push(energyPiece(part, split, share, price));
+      pieces.push(energyPiece(cycle, part, split, share, price));
     }
   }
   return pieces;
 }
 
-function energyPiece(part: Part, split: boolean, share: Share, price: Price): Piece {
+function energyPiece(cycle: Cycle, part: Part, split: boolean, share: Share, price: Price): Piece {
   const { period, n, d, top, bottom } = share;
-  const formula = bottom === '' ? `${top} * ${price.formula}` : `${top} * ${price.formula} / ${bottom}`;
   return {
     part,
     split,
@@ -50,27 +49,35 @@ function energyPiece(part: Part, split: boolean, share: Share, price: Price): Pi
     d,
     unit: 'kWh',
     price,
-    formula,
-    inputs: [...share.inputs, ...price.inputs],
+    formula: bottom === '' ? `${top} * ${price.formula}` : `${top} * ${price.formula} / ${bottom}`,
+    inputs: cycle.says ? share.inputs.concat(price.inputs) : NO_INPUTS,
   };
+}
+
+function sharesOf(
+  cycle: Cycle,
+  figures: readonly Figure[],
+  part: Part,
+  parts: readonly Part[],
+  given: Given,
+): readonly Share[] {
+  const shares: Share[] = [];
+  for (const figure of figures) {
+    const share = shareOf(cycle, figure, part, parts, given);
+    if (share) shares.push(share);
+  }
+  return shares;
 }
 
 /**
  * The part's share of a figure by days: multiplied first, divided last. A period that has no hours in the season of some parts is shared among
  * the others. Whole kWh are rounded on the running sum, so that the parts add up to what is shared.
  */
-function shareOf(
-  cycle: Cycle,
-  figure: Figure,
-  part: Part,
-  parts: readonly Part[],
-  given: Map<string, { days: number; whole: Qty }>,
-): Share | null {
+function shareOf(cycle: Cycle, figure: Figure, part: Part, parts: readonly Part[], given: Given): Share | null {
   const { period } = figure;
-  const days = parts.length === 1 ? part.days : daysHeld(cycle, period, part, parts);
+  const days = daysHeld(cycle, period, part, parts);
   if (days === null) return null;
-  if (days === part.days)
-    return { period, n: figure.n, d: figure.d, top: figure.top, bottom: figure.bottom, inputs: figure.inputs };
+  if (days === part.days) return figure;
 
   const n = times(figure.n, part.days);
   const d = times(figure.d, days);

@@ -18,8 +18,9 @@ export type Group = { from: Day; to: Day; days: number; whole: boolean };
 export function splitCycle(cycle: Cycle, pricing: Pricing, byIntervals: boolean): Part[] {
   const { from, to } = cycle;
   const { plan } = cycle.prepared;
-  const rateDays = plan.rateChangeBy === 'readDate' ? [] : rateChanges(cycle, pricing);
-  const seasonDays = !pricing.bySeason || plan.seasonBy === 'readDate' ? [] : seasonChanges(plan.calendar, from, to);
+  const rateDays = plan.rateChangeBy === 'readDate' ? NO_DAYS : rateChanges(cycle, pricing);
+  const seasonDays =
+    !pricing.bySeason || plan.seasonBy === 'readDate' ? NO_DAYS : seasonChanges(plan.calendar, from, to);
   const whole: Group = { from, to, days: cycle.days, whole: true };
   if (rateDays.length === 0 && seasonDays.length === 0) return [partOf(cycle, pricing, whole, from, to)];
 
@@ -36,15 +37,18 @@ export function splitCycle(cycle: Cycle, pricing: Pricing, byIntervals: boolean)
   );
 }
 
+const NO_DAYS: readonly Day[] = [];
+
 /** The days inside the cycle on which a row comes into force that holds for the season there. */
-function rateChanges(cycle: Cycle, pricing: Pricing): Day[] {
-  const days: Day[] = [];
+function rateChanges(cycle: Cycle, pricing: Pricing): readonly Day[] {
+  let days: Day[] | null = null;
   for (const change of pricing.changes) {
     if (change.from <= cycle.from || change.from >= cycle.to) continue;
     if (change.season !== null && change.season !== seasonFor(cycle, change.from)) continue;
+    days ??= [];
     days.push(change.from);
   }
-  return days;
+  return days ?? NO_DAYS;
 }
 
 function seasonFor(cycle: Cycle, date: Day): string | null {

@@ -47,8 +47,15 @@ export function pieceWords(piece: Piece, quantity: string): string {
   }
 }
 
+/** Stands for a working where none is asked for (`Cycle.says`); never handed out. */
+export const UNSAID: Working = { words: '', formula: '0', inputs: [], unit: 'USD', basis: 'computed' };
+
+/** The inputs of what says nothing. */
+export const NO_INPUTS: WorkingInput[] = [];
+
 /** The working of a piece that is rounded to the cent and signed: credits negative. */
 export function pieceWorking(cycle: Cycle, piece: Piece, quantity: string, negative: boolean): Working {
+  if (!cycle.says) return UNSAID;
   const { round } = cycle.prepared;
   return {
     words: `${pieceWords(piece, quantity)}, rounded to the cent`,

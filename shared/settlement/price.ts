@@ -6,7 +6,7 @@ import { seasonOf } from './calendar.ts';
 import { dayShared, percentOf, perDay } from './charges.ts';
 import { type Cycle, openCycle } from './cycle-flows.ts';
 import { energyPieces } from './energy-pieces.ts';
-import { type Piece, pieceCents, pieceQuantity, pieceWorking } from './piece.ts';
+import { type Piece, pieceCents, pieceQuantity, pieceWorking, UNSAID } from './piece.ts';
 import type { RatePlan } from './plan.ts';
 import { type PreparedBank, type PreparedCharge, type PreparedCredit, preparePlan } from './prepare.ts';
 import { ONE_UNIT, priced, qtyOfText } from './quantity.ts';
@@ -18,7 +18,7 @@ export type PricedQuantity = { amountCents: Cents; rate: string | null; working:
 /** Which of a charge's prices a billed line is at, where the statement says it. */
 export type PriceOf = { period: string | null; tier: number | null };
 
-const UNSAID: PriceOf = { period: null, tier: null };
+const ANY_PRICE: PriceOf = { period: null, tier: null };
 
 /**
  * What a charge, a credit or a kWh bank's true-up of the plan comes to for a *billed* quantity over `[from, to)`, signed as a line is (credits
@@ -32,11 +32,34 @@ export function priceQuantity(
   from: Day,
   to: Day,
   quantity: string | null,
-  of: PriceOf = UNSAID,
+  of: PriceOf = ANY_PRICE,
+): PricedQuantity | null {
+  return priceSaid(plan, component, from, to, quantity, of, true);
+}
+
+/** The same amount by the same arithmetic, without its working: for a check, which words only what differs. */
+export function priceAmount(
+  plan: RatePlan,
+  component: string,
+  from: Day,
+  to: Day,
+  quantity: string | null,
+): Cents | null {
+  return priceSaid(plan, component, from, to, quantity, ANY_PRICE, false)?.amountCents ?? null;
+}
+
+function priceSaid(
+  plan: RatePlan,
+  component: string,
+  from: Day,
+  to: Day,
+  quantity: string | null,
+  of: PriceOf,
+  says: boolean,
 ): PricedQuantity | null {
   const made = orRefusal(() => {
     const prepared = preparePlan(plan);
-    const cycle = openCycle(prepared, usageOf(from, to));
+    const cycle = openCycle(prepared, usageOf(from, to), says);
     const charge = prepared.charge.get(component);
     if (charge) return sumOf(cycle, chargePieces(cycle, charge, quantity, of), false);
     const credit = prepared.credits.find((item) => item.credit.id === component);
@@ -135,9 +158,11 @@ function sumOf(cycle: Cycle, pieces: readonly Piece[] | null, negative: boolean)
   const [first] = pieces ?? [];
   if (!pieces || !first) return null;
   const amount = pieces.reduce((sum, piece) => sum + pieceCents(cycle, piece), 0);
-  const workings = pieces.map((piece) => pieceWorking(cycle, piece, pieceQuantity(piece), negative));
   const rate = pieces.every((piece) => piece.price.rate.text === first.price.rate.text) ? first.price.rate.text : null;
-  return { amountCents: cents(negative ? -amount : amount), rate, working: addUp(workings) };
+  const amountCents = cents(negative ? -amount : amount);
+  if (!cycle.says) return { amountCents, rate, working: UNSAID };
+  const workings = pieces.map((piece) => pieceWorking(cycle, piece, pieceQuantity(piece), negative));
+  return { amountCents, rate, working: addUp(workings) };
 }
 
 function addUp(workings: readonly Working[]): Working {

@@ -1,5 +1,6 @@
 import { type Cents, cents } from '../units/cents.ts';
-import { decimalTextOf, Exact, exact, type MoneyRounding, roundToCents } from '../units/rate.ts';
+import { type Wh, wh } from '../units/energy.ts';
+import { decimalTextOf, Exact, exact, type MoneyRounding, roundToCents, roundToWh } from '../units/rate.ts';
 import { refuse } from './refused.ts';
 
 /**
@@ -74,6 +75,10 @@ export function compare(a: Qty, b: Qty): number {
   return big(a).cmp(big(b));
 }
 
+export function sizeOf(value: Qty): Qty {
+  return typeof value === 'number' ? Math.abs(value) : value.abs();
+}
+
 export function lesser(a: Qty, b: Qty): Qty {
   return compare(a, b) <= 0 ? a : b;
 }
@@ -109,6 +114,11 @@ export function qtyText(value: Qty): string {
 /** A quantity as text with all its digits, for the inputs of a working. */
 export function exactText(value: Qty): string {
   return typeof value === 'number' ? qtyText(value) : value.div(ONE_UNIT).toString();
+}
+
+/** Thousandths of a kWh to the nearest Wh, half away from zero. */
+export function whOfQty(value: Qty): Wh {
+  return typeof value === 'number' ? wh(value) : roundToWh(value.div(ONE_UNIT));
 }
 
 export function ratioText(ratio: Ratio): string {

@@ -17,13 +17,27 @@ import { countUsage, trueUpBank } from './true-up.ts';
 
 export type SettledCycle = { settlement: Settlement; closing: Opening };
 
+/** A settlement without the workings of its lines. */
+export type SettledAmounts = {
+  settlement: Omit<Settlement, 'lines' | 'payouts'> & {
+    lines: readonly Omit<SettledLine, 'working'>[];
+    payouts: readonly Omit<Payout, 'working'>[];
+  };
+  closing: Opening;
+};
+
 /**
  * Settles one billing cycle: lines, banks, payouts and the amount due, and what the next cycle opens with. A pure function of the plan (see
  * the rate plan's own page, “Order in a cycle”), the opening and the usage. Refused (`plan-invalid`, a sentence in `detail`) where the plan
  * cannot hold or the usage lacks what it asks for. A plan object is looked up once and must not be changed in place.
  */
 export function settleCycle(plan: RatePlan, opening: Opening, usage: CycleUsage): Result<SettledCycle> {
-  return orRefusal(() => settleOpen(openCycle(preparePlan(plan), usage), opening));
+  return orRefusal(() => settleOpen(openCycle(preparePlan(plan), usage, true), opening));
+}
+
+/** The same by the same arithmetic, without saying how each line came about: for bills nobody reads line by line, as in a projection. */
+export function settleAmounts(plan: RatePlan, opening: Opening, usage: CycleUsage): Result<SettledAmounts> {
+  return orRefusal(() => settleOpen(openCycle(preparePlan(plan), usage, false), opening));
 }
 
 /** Settles cycles one after another, each opening with what the one before closed with. */
@@ -53,9 +67,8 @@ function settleOpen(cycle: Cycle, opening: Opening): SettledCycle {
   for (const state of states) if (state.prepared.bank.unit === 'kWh') moveKwhBank(cycle, state, taken);
 
   const ledgered: Ledgered = { amounts: new Map(), paid: new Map() };
-  const beforeBanks = new Map<string, Cents>();
   for (const item of prepared.early) {
-    const base = item.charge.basis === 'percent' ? baseBefore(cycle, item, ledgered, taken, beforeBanks) : null;
+    const base = item.charge.basis === 'percent' ? baseBefore(cycle, item, ledgered, taken) : null;
     const made = chargeLines(cycle, item, lessBank(taken, item.charge.id), base);
     enterLines(item, made, ledgered, lines);
   }
@@ -128,20 +141,12 @@ function enterLines(
 }
 
 /** What a percent before credits goes by: its lines as they would be had no kWh bank paid. */
-function baseBefore(
-  cycle: Cycle,
-  item: PreparedCharge,
-  ledgered: Ledgered,
-  taken: TakenByCharge,
-  before: Map<string, Cents>,
-): Owed {
+function baseBefore(cycle: Cycle, item: PreparedCharge, ledgered: Ledgered, taken: TakenByCharge): Owed {
   const ids = item.charge.on;
   const amounts = ids.map((id) => {
     const of = cycle.prepared.charge.get(id);
     if (!of || !taken.has(id)) return cents(ledgered.amounts.get(id) ?? 0);
-    const known = before.get(id) ?? sumCents(chargeLines(cycle, of, null, null).map((line) => line.amountCents));
-    before.set(id, known);
-    return known;
+    return sumCents(chargeLines(cycle, of, null, null).map((line) => line.amountCents));
   });
   return { ids, amounts, paid: cents(0) };
 }
