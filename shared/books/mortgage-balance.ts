@@ -1,7 +1,7 @@
 import type { MortgageFacts } from '../facts/finance.ts';
 import { type Cents, ZERO_CENTS } from '../units/cents.ts';
 import { addDays, addMonths, type Day, dayOf, monthOf, yearOf } from '../units/day.ts';
-import { exact, usdOf } from '../units/rate.ts';
+import { exact } from '../units/rate.ts';
 import { type AmortizedRow, amortize } from './amortize.ts';
 
 /** The mortgage by its initial schedule and as actually paid (with the extra principal of each month). */
@@ -33,15 +33,16 @@ export function mortgagePaymentDay(mortgage: MortgageFacts, number: number): Day
   return addMonths(mortgage.firstPaymentOn, number - 1);
 }
 
-/** A share of the original value, exactly; compared to balances without rounding. */
-export function reaches(balanceCents: Cents, mortgage: MortgageFacts, share: string): boolean {
-  return usdOf(balanceCents).lte(usdOf(mortgage.originalValueCents).times(exact(share)));
+/** The most a balance may be to lie at or below a share of the original value: whole cents, since a balance has no others. */
+function mostCents(mortgage: MortgageFacts, share: string): number {
+  return exact(share).times(mortgage.originalValueCents).floor().toNumber();
 }
 
 /** The first payment after which the balance is at or below the share; 0 when it begins there, null when it never is. */
 export function paymentReaching(mortgage: MortgageFacts, rows: readonly AmortizedRow[], share: string): number | null {
-  if (reaches(mortgage.principalCents, mortgage, share)) return 0;
-  return rows.find((row) => reaches(row.balanceCents, mortgage, share))?.number ?? null;
+  const most = mostCents(mortgage, share);
+  if (mortgage.principalCents <= most) return 0;
+  return rows.find((row) => row.balanceCents <= most)?.number ?? null;
 }
 
 /** The last payment due on or before a day; 0 when none is. */

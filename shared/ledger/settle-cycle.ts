@@ -7,9 +7,9 @@ import { billedQuantity } from '../reconcile/billed-quantities.ts';
 import { matchLines } from '../reconcile/match.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
+import { compare, qtyOfText, qtyText } from '../settlement/quantity.ts';
 import { settleCycle } from '../settlement/settle.ts';
 import type { CycleUsage, Opening, Settlement } from '../settlement/settlement.ts';
-import { Exact } from '../units/rate.ts';
 import type { CyclePaper } from './cycle-papers.ts';
 
 /** A settlement and what the utility's books should hold after it. */
@@ -99,7 +99,7 @@ function withPrintedBanks(opening: Opening, statement: Statement, plan: RatePlan
     if (value === null || id === null) continue;
     const held = opening.banks[id];
     if (held !== undefined && typeof held !== 'string') continue;
-    if (held !== undefined && new Exact(held).eq(value)) continue;
+    if (held !== undefined && (held === value || compare(qtyOfText(held), qtyOfText(value)) === 0)) continue;
     banks ??= { ...opening.banks };
     banks[id] = value;
   }
@@ -122,8 +122,8 @@ function usageOf(
   const intervals = asksForIntervals(plan) ? cycleIntervals(index, paper.from, paper.to, facts.house.timeZone) : null;
   const dcWatts = facts.house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0);
   const kW: CycleUsage['kW'] = {};
-  if (dcWatts > 0) kW.dc = new Exact(dcWatts).div(1000).toString();
-  if (facts.house.inverterAcWatts !== null) kW.ac = new Exact(facts.house.inverterAcWatts).div(1000).toString();
+  if (dcWatts > 0) kW.dc = qtyText(dcWatts);
+  if (facts.house.inverterAcWatts !== null) kW.ac = qtyText(facts.house.inverterAcWatts);
   return {
     from: paper.from,
     to: paper.to,

@@ -1,22 +1,33 @@
 import type { PaperSource, ReadChannel, RegisterRead } from '../facts/papers.ts';
 import type { EnergyFigure } from '../ledger/cycle.ts';
-import { Exact, exact, roundToWh } from '../units/rate.ts';
+import {
+  compare,
+  exactText,
+  minus,
+  ONE_UNIT,
+  plus,
+  type Qty,
+  qtyOfText,
+  scaled,
+  times,
+  whOfQty,
+} from '../settlement/quantity.ts';
 import type { WorkingInput } from '../working.ts';
 import { input, paperSourceOf } from './source.ts';
 
-const NONE = new Exact(0);
-
-/** What a dial adds when it passes all nines: 10^dials where the current read is below the previous, else 0. */
-export function rollOver(read: RegisterRead): Exact {
-  return exact(read.current).lt(exact(read.previous)) ? new Exact(10).pow(read.dials) : NONE;
+/** What a dial adds, in thousandths of a kWh, when it passes all nines: 10^dials where the current read is below the previous, else 0. */
+export function rollOver(read: RegisterRead): Qty {
+  const passed = compare(qtyOfText(read.current), qtyOfText(read.previous)) < 0;
+  return passed ? times(10 ** read.dials, ONE_UNIT) : 0;
 }
 
 /**
- * kWh of one register read: ((current − previous) mod 10^dials) × multiplier
+ * One register read in thousandths of a kWh: ((current − previous) mod 10^dials) × multiplier
  * (net-metering.md §4 "dial rollover", "multiplier").
  */
-export function registerKwh(read: RegisterRead): Exact {
-  return exact(read.current).minus(exact(read.previous)).plus(rollOver(read)).times(exact(read.multiplier));
+export function registerKwh(read: RegisterRead): Qty {
+  const turned = plus(minus(qtyOfText(read.current), qtyOfText(read.previous)), rollOver(read));
+  return scaled(turned, qtyOfText(read.multiplier));
 }
 
 /**
@@ -30,7 +41,7 @@ export function registerEnergy(
 ): EnergyFigure | null {
   const own = reads.filter((read) => read.channel === channel);
   if (own.length === 0) return null;
-  let kwh = new Exact(0);
+  let kwh: Qty = 0;
   const inputs: WorkingInput[] = [];
   const terms: string[] = [];
   const words: string[] = [];
@@ -38,17 +49,17 @@ export function registerEnergy(
     const n = at + 1;
     const source = paperSourceOf(paper, read.row);
     const over = rollOver(read);
-    kwh = kwh.plus(registerKwh(read));
+    kwh = plus(kwh, registerKwh(read));
     inputs.push(
       input(`current${n}`, `Meter ${read.meter}, read of ${read.to}`, read.current, 'kWh', source),
       input(`previous${n}`, `Meter ${read.meter}, read of ${read.from}`, read.previous, 'kWh', source),
     );
     let term = `current${n} - previous${n}`;
     let said = `${read.current} − ${read.previous}`;
-    if (!over.isZero()) {
-      inputs.push(input(`over${n}`, `Dial roll-over, ${read.dials} dials`, over, 'kWh', source));
+    if (over !== 0) {
+      inputs.push(input(`over${n}`, `Dial roll-over, ${read.dials} dials`, exactText(over), 'kWh', source));
       term += ` + over${n}`;
-      said += ` + ${over.toString()} (the dials passed all nines)`;
+      said += ` + ${exactText(over)} (the dials passed all nines)`;
     }
     if (read.multiplier !== '1') {
       inputs.push(input(`multiplier${n}`, `Multiplier of meter ${read.meter}`, read.multiplier, 'factor', source));
@@ -58,11 +69,10 @@ export function registerEnergy(
     terms.push(own.length > 1 ? `(${term})` : term);
     words.push(own.length > 1 ? `(${said})` : said);
   });
-  const wh = roundToWh(kwh);
-  const whole = kwh.times(1000).isInteger();
+  const whole = typeof kwh === 'number';
   const formula = terms.join(' + ');
   return {
-    wh,
+    wh: whOfQty(kwh),
     from: 'register',
     coverage: 1,
     working: {

@@ -1,8 +1,8 @@
 import type { PlanBank, RatePlan } from '../settlement/plan.ts';
-import { priceQuantity } from '../settlement/price.ts';
+import { priceAmount } from '../settlement/price.ts';
+import { compare, exactText, plus, priced, type Qty, qtyOfText, rateOf, roundedCents } from '../settlement/quantity.ts';
 import type { Opening, OpeningBalance } from '../settlement/settlement.ts';
 import type { Day } from '../units/day.ts';
-import { Exact, exact, roundToCents } from '../units/rate.ts';
 
 /**
  * What the utility's banks are worth after a month to come: dollar credits at face, kWh at the price of the charges they will offset, else at what a
@@ -14,27 +14,27 @@ export function bankWorth(plan: RatePlan, closing: Opening, from: Day, to: Day):
     const balance = closing.banks[bank.id];
     if (balance === undefined || isIncentiveOnly(bank, plan)) continue;
     const held = wholeBalance(balance);
-    if (held.isZero()) continue;
+    if (compare(held, 0) === 0) continue;
     total += bank.unit === 'USD' ? worthOfDollars(bank, held) : worthOfKwh(bank, plan, held, from, to);
   }
   return total;
 }
 
-function worthOfDollars(bank: PlanBank, held: Exact): number {
+function worthOfDollars(bank: PlanBank, held: Qty): number {
   const isSpendable = bank.offsets.length > 0 || bank.trueUps.some((trueUp) => trueUp.action === 'pay');
-  return isSpendable ? roundToCents(held) : 0;
+  return isSpendable ? roundedCents(held) : 0;
 }
 
-function worthOfKwh(bank: PlanBank, plan: RatePlan, held: Exact, from: Day, to: Day): number {
+function worthOfKwh(bank: PlanBank, plan: RatePlan, held: Qty, from: Day, to: Day): number {
   let worth: number | null = null;
   for (const charge of bank.offsets) {
-    const priced = priceQuantity(plan, charge, from, to, held.toString());
-    if (priced) worth = (worth ?? 0) + priced.amountCents;
+    const amountCents = priceAmount(plan, charge, from, to, exactText(held));
+    if (amountCents !== null) worth = (worth ?? 0) + amountCents;
   }
   if (worth !== null) return worth;
   const payout = bank.trueUps.find((trueUp) => trueUp.action === 'pay' && trueUp.rates !== null);
   const rate = payout?.rates?.filter((row) => row.from <= to).at(-1)?.rate;
-  return rate === undefined ? 0 : roundToCents(held.times(exact(rate)));
+  return rate === undefined ? 0 : priced(held, 1, rateOf(rate), 'halfUp');
 }
 
 function isIncentiveOnly(bank: PlanBank, plan: RatePlan): boolean {
@@ -42,11 +42,11 @@ function isIncentiveOnly(bank: PlanBank, plan: RatePlan): boolean {
   return bank.unit === 'USD' && fed.length > 0 && fed.every((credit) => credit.kind === 'incentive');
 }
 
-function wholeBalance(balance: OpeningBalance): Exact {
-  if (typeof balance === 'string') return exact(balance);
+function wholeBalance(balance: OpeningBalance): Qty {
+  if (typeof balance === 'string') return qtyOfText(balance);
   const parts =
     'lots' in balance && Array.isArray(balance.lots)
       ? balance.lots.map((lot) => lot.amount)
       : Object.values(balance).map(String);
-  return parts.reduce((sum, part) => sum.plus(exact(part)), new Exact(0));
+  return parts.reduce<Qty>((sum, part) => plus(sum, qtyOfText(part)), 0);
 }

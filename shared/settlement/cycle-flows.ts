@@ -26,7 +26,7 @@ export type Cycle = {
   says: boolean;
 };
 
-export function openCycle(prepared: PreparedPlan, usage: CycleUsage, says: boolean): Cycle {
+export function openCycle(prepared: PreparedPlan, usage: CycleUsage, says = true): Cycle {
   const days = daysBetween(usage.from, usage.to);
   if (!(days > 0)) refuse('A cycle must end after it begins.');
   return { prepared, usage, from: usage.from, to: usage.to, days, flows: {}, intervals: null, says };

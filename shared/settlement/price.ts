@@ -1,12 +1,13 @@
 import { type Cents, cents, parseDollars } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
-import { wh } from '../units/energy.ts';
+import { ZERO_WH } from '../units/energy.ts';
 import type { Working, WorkingInput } from '../working.ts';
 import { seasonOf } from './calendar.ts';
 import { dayShared, percentOf, perDay } from './charges.ts';
 import { type Cycle, openCycle } from './cycle-flows.ts';
 import { energyPieces } from './energy-pieces.ts';
-import { type Piece, pieceCents, pieceQuantity, pieceWorking, UNSAID } from './piece.ts';
+import type { EnergyItem } from './energy-share.ts';
+import { NO_INPUTS, type Piece, pieceCents, pieceQuantity, pieceWorking, UNSAID } from './piece.ts';
 import type { RatePlan } from './plan.ts';
 import { type PreparedBank, type PreparedCharge, type PreparedCredit, preparePlan } from './prepare.ts';
 import { ONE_UNIT, priced, qtyOfText } from './quantity.ts';
@@ -71,7 +72,11 @@ function priceSaid(
 }
 
 function usageOf(from: Day, to: Day): Cycle['usage'] {
-  const none = {
+  return {
+    from,
+    to,
+    importWh: ZERO_WH,
+    exportWh: ZERO_WH,
     productionWh: null,
     loadWh: null,
     byPeriod: null,
@@ -81,7 +86,6 @@ function usageOf(from: Day, to: Day): Cycle['usage'] {
     finalBill: false,
     intervals: null,
   };
-  return { from, to, importWh: wh(0), exportWh: wh(0), ...none };
 }
 
 function chargePieces(cycle: Cycle, item: PreparedCharge, quantity: string | null, of: PriceOf): Piece[] | null {
@@ -104,20 +108,24 @@ function chargePieces(cycle: Cycle, item: PreparedCharge, quantity: string | nul
       return dayShared(cycle, item, qtyOfText(quantity), 'kW * ', [billedInput('kW', quantity, 'kW')]);
     default:
       if (quantity === null) return null;
-      return energyOf(cycle, { label, basis, netting: item.netting, pricing: item.pricing }, quantity, of);
+      return energyOf(
+        cycle,
+        { label, basis, netting: item.netting, pricing: item.pricing, lessBank: null },
+        quantity,
+        of,
+      );
   }
 }
 
 function creditPieces(cycle: Cycle, item: PreparedCredit, quantity: string, of: PriceOf): Piece[] | null {
   const { label, basis } = item.credit;
-  return energyOf(cycle, { label, basis, netting: item.netting, pricing: item.pricing }, quantity, of);
+  const energy = { label, basis, netting: item.netting, pricing: item.pricing, lessBank: null };
+  return energyOf(cycle, energy, quantity, of);
 }
 
-type Energy = Omit<Parameters<typeof energyPieces>[1], 'lessBank'>;
-
-function energyOf(cycle: Cycle, item: Energy, quantity: string, of: PriceOf): Piece[] | null {
+function energyOf(cycle: Cycle, item: EnergyItem, quantity: string, of: PriceOf): Piece[] | null {
   if (item.pricing.byPeriod !== (of.period !== null)) return null;
-  const inputs = [billedInput('kWh', quantity, 'kWh')];
+  const inputs = cycle.says ? [billedInput('kWh', quantity, 'kWh')] : NO_INPUTS;
   const figure = {
     basis: item.basis,
     label: 'Billed',
@@ -128,7 +136,7 @@ function energyOf(cycle: Cycle, item: Energy, quantity: string, of: PriceOf): Pi
     bottom: '',
     inputs,
   };
-  return energyPieces(cycle, { ...item, lessBank: null }, { figure, tier: of.tier });
+  return energyPieces(cycle, item, { figure, tier: of.tier });
 }
 
 function billedInput(name: string, value: string, unit: string): WorkingInput {

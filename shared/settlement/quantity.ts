@@ -116,6 +116,11 @@ export function exactText(value: Qty): string {
   return typeof value === 'number' ? qtyText(value) : value.div(ONE_UNIT).toString();
 }
 
+/** USD to the nearest cent, half away from zero. */
+export function roundedCents(value: Qty): Cents {
+  return typeof value === 'number' && value % 10 === 0 ? cents(value / 10) : roundToCents(big(value).div(ONE_UNIT));
+}
+
 /** Thousandths of a kWh to the nearest Wh, half away from zero. */
 export function whOfQty(value: Qty): Wh {
   return typeof value === 'number' ? wh(value) : roundToWh(value.div(ONE_UNIT));

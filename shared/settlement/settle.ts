@@ -32,7 +32,7 @@ export type SettledAmounts = {
  * cannot hold or the usage lacks what it asks for. A plan object is looked up once and must not be changed in place.
  */
 export function settleCycle(plan: RatePlan, opening: Opening, usage: CycleUsage): Result<SettledCycle> {
-  return orRefusal(() => settleOpen(openCycle(preparePlan(plan), usage, true), opening));
+  return orRefusal(() => settleOpen(openCycle(preparePlan(plan), usage), opening));
 }
 
 /** The same by the same arithmetic, without saying how each line came about: for bills nobody reads line by line, as in a projection. */
