@@ -1,8 +1,8 @@
 import type { UseFormReturn } from 'react-hook-form';
 import { Field } from '#src/ui/field.tsx';
+import { AddRow, FormRow, Part } from '#src/ui/rows.tsx';
 import type { PlanEntries } from './plan-entries.ts';
 import type { PlanForm, PriceName } from './plan-form.ts';
-import { AddRow, FormRow, Part } from './rows.tsx';
 
 type Form = UseFormReturn<PlanEntries, unknown, PlanEntries>;
 

@@ -1,11 +1,11 @@
 import type { FieldPath, UseFormReturn } from 'react-hook-form';
 import { Choices, Field, SelectField } from '#src/ui/field.tsx';
+import { Columns, Part } from '#src/ui/rows.tsx';
+import { Tick, Ticks } from '#src/ui/ticks.tsx';
 import type { PlanEntries } from './plan-entries.ts';
 import { type PlanForm, pricesAsked } from './plan-form.ts';
 import { Prices } from './plan-prices.tsx';
 import { TaxQuestions } from './plan-tax.tsx';
-import { Columns, Part } from './rows.tsx';
-import { Tick, Ticks } from './ticks.tsx';
 
 type Form = UseFormReturn<PlanEntries, unknown, PlanEntries>;
 

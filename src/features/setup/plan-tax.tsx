@@ -1,6 +1,6 @@
 import { Choices } from '#src/ui/field.tsx';
+import { Tick, Ticks } from '#src/ui/ticks.tsx';
 import type { PlanForm } from './plan-form.ts';
-import { Tick, Ticks } from './ticks.tsx';
 
 /** What a percent tax is on, and whether before or after credits. */
 export function TaxQuestions({

@@ -7,8 +7,8 @@ import { useHousehold } from '#src/lib/household.ts';
 import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Field, TextArea } from '#src/ui/field.tsx';
+import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
 import { readPastedUse } from './pasted-use.ts';
-import { AddRow, Columns, FormRow, Part } from './rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 const beforeForm = z.object({

@@ -6,7 +6,7 @@ import { ZERO_CENTS } from '#shared/units/cents.ts';
 import { newId } from '#src/lib/new-id.ts';
 import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
 import { Field, SelectField } from '#src/ui/field.tsx';
-import { AddRow, Columns, FormRow, Part } from './rows.tsx';
+import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 const kind = z.enum(['signing', 'permit']);

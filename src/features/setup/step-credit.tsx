@@ -7,7 +7,7 @@ import { money } from '#src/lib/format.ts';
 import { newId } from '#src/lib/new-id.ts';
 import { fieldValue, fractionOfPercent, percentOfFraction, textOf, typed } from '#src/lib/typed-values.ts';
 import { Choices, Field, SelectField } from '#src/ui/field.tsx';
-import { AddRow, Columns, FormRow, Part } from './rows.tsx';
+import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 const treatment = z.enum(['qualified', 'reduction', 'leftOut']);

@@ -4,7 +4,7 @@ import * as z from 'zod/mini';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
 import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
 import { Field } from '#src/ui/field.tsx';
-import { Columns, Part } from './rows.tsx';
+import { Columns, Part } from '#src/ui/rows.tsx';
 import { StepForm } from './step-form.tsx';
 import { TimeZoneField } from './time-zone-field.tsx';
 

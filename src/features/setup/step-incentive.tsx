@@ -4,7 +4,7 @@ import * as z from 'zod/mini';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
 import { fieldValue, typed } from '#src/lib/typed-values.ts';
 import { Choices, Field } from '#src/ui/field.tsx';
-import { Columns } from './rows.tsx';
+import { Columns } from '#src/ui/rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 const paidAs = z.enum(['separate', 'billCredit']);

@@ -6,7 +6,7 @@ import { parseDollars, subtractCents, ZERO_CENTS } from '#shared/units/cents.ts'
 import { money } from '#src/lib/format.ts';
 import { fieldValue, percentOfFraction, textOf, typed, typedWhole } from '#src/lib/typed-values.ts';
 import { Choices, Field, SelectField } from '#src/ui/field.tsx';
-import { Columns } from './rows.tsx';
+import { Columns } from '#src/ui/rows.tsx';
 import { StepForm } from './step-form.tsx';
 import { monthsOf, termText } from './term.ts';
 

@@ -2,8 +2,8 @@ import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
 import { Choices, Field, SelectField } from '#src/ui/field.tsx';
+import { Columns, Part } from '#src/ui/rows.tsx';
 import { type MortgageForm, mortgageForm, mortgageFormOf, mortgageOf } from './mortgage-form.ts';
-import { Columns, Part } from './rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 export function MortgageStep({ view }: { view: SetupView }) {

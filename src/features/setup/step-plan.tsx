@@ -4,10 +4,10 @@ import { type SetupView, setupApi } from '#shared/api/setup.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { fieldValue, textOf } from '#src/lib/typed-values.ts';
 import { Field, TextArea } from '#src/ui/field.tsx';
+import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
 import { emptyEntry, entryOf, openingWith, type PlanEntries, planEntries, planOfEntry } from './plan-entries.ts';
 import { planOf } from './plan-form.ts';
 import { PlanQuestions } from './plan-questions.tsx';
-import { AddRow, Columns, FormRow, Part } from './rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 export function PlanStep({ view }: { view: SetupView }) {

@@ -6,8 +6,8 @@ import { kwh } from '#src/lib/format.ts';
 import { newId } from '#src/lib/new-id.ts';
 import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
 import { Field, SelectField } from '#src/ui/field.tsx';
+import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
 import { KINDS, kilowatts, kindOf, METER_KINDS, type RoofForm, roofForm, wattsOf } from './roof-form.ts';
-import { AddRow, Columns, FormRow, Part } from './rows.tsx';
 import { StepForm } from './step-form.tsx';
 
 const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];

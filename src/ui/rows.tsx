@@ -1,5 +1,5 @@
 import type { ReactNode } from 'react';
-import { Button } from '#src/ui/button.tsx';
+import { Button } from './button.tsx';
 
 /** One row of a repeating part of a form, with its number and a way to take it out. */
 export function FormRow({
