@@ -16,33 +16,46 @@ export type Pair = { component: string | null; billed: PrintedLine[]; ours: Sett
  */
 export function pairUp(printed: readonly PrintedLine[], settled: SettledCycle): Pair[] {
   const ours = settled.ours?.settlement.lines ?? [];
+  const sides = new Map<string, Pair>();
+  printed.forEach((line, at) => {
+    const component = settled.components[at] ?? null;
+    if (component !== null) sideOf(sides, component, line.kind).billed.push(line);
+  });
+  for (const line of ours) sideOf(sides, line.component, line.kind).ours.push(line);
+
   const pairs: Pair[] = [];
-  const done = new Set<string>();
-  const keyOf = (component: string, kind: string) => (kind === 'trueup' ? `${component} trueup` : component);
   printed.forEach((line, at) => {
     const component = settled.components[at] ?? null;
     if (component === null) {
       pairs.push({ component, billed: [line], ours: [] });
       return;
     }
-    const key = keyOf(component, line.kind);
-    const same = printed.filter(
-      (other, i) => settled.components[i] === component && keyOf(component, other.kind) === key,
-    );
-    const facing = ours.filter((one) => keyOf(one.component, one.kind) === key);
-    if (same.length === facing.length) {
-      const part = facing[same.indexOf(line)];
+    const all = sideOf(sides, component, line.kind);
+    if (all.billed.length !== all.ours.length) {
+      if (all.billed[0] === line) pairs.push(all);
+    } else if (all.billed.length === 1) {
+      pairs.push(all);
+    } else {
+      const part = all.ours[all.billed.indexOf(line)];
       pairs.push({ component, billed: [line], ours: part ? [part] : [] });
-    } else if (!done.has(key)) {
-      pairs.push({ component, billed: same, ours: facing });
     }
-    done.add(key);
   });
   for (const line of ours) {
-    if (done.has(keyOf(line.component, line.kind)) || line.amountCents === 0) continue;
+    if (line.amountCents === 0 || sideOf(sides, line.component, line.kind).billed.length > 0) continue;
     pairs.push({ component: line.component, billed: [], ours: [line] });
   }
   return pairs;
+}
+
+/** Both sides of a component so far; its true-up stands apart from it. */
+function sideOf(sides: Map<string, Pair>, component: string, kind: string): Pair {
+  const key = kind === 'trueup' ? `${component} trueup` : component;
+  let found = sides.get(key);
+  if (!found) {
+    found = { component, billed: [], ours: [] };
+    sides.set(key, found);
+  }
+  return found;
 }
 
 /** One line of the facing pages; null for a pair with neither side. `judged` is false where nothing may be said of a difference. */

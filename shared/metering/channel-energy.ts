@@ -27,7 +27,8 @@ export function channelWitnesses(paper: CyclePaper, index: IntervalIndex, channe
     channel
   ];
   let register = registerEnergy(paper.reads, channel, statement.source);
-  let printed = printedWh === null ? null : printedEnergy(paper, channel, printedWh);
+  // Printed kWh are asked only where no register speaks.
+  let printed = printedWh === null || register !== null ? null : printedEnergy(paper, channel, printedWh);
   if (split !== null) {
     if (register !== null && !paper.readsFit) register = shareByDays(register, split);
     if (printed !== null) printed = shareByDays(printed, split);

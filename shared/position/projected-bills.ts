@@ -16,6 +16,8 @@ export type Period = { index: number; from: Day; to: Day };
 
 export type PeriodEnergy = { productionWh: Wh; exportWh: Wh; importWh: Wh; useWh: Wh };
 
+const NONE = new Exact(0);
+
 /**
  * Energy of a month to come. The record stands at the age of its last year, so the first twelve months are one year older. What the house uses
  * from its own roof never exceeds its use; the rest is sent out.
@@ -28,13 +30,17 @@ export function energyOfPeriods(
   const kept = new Exact(1).minus(exact(degradation));
   const one = new Exact(1);
   let factor = one;
+  // The use of a month is the same every year: worked out once for each length of it.
+  const uses = new Map<number, Wh>();
   return periods.map((period) => {
     if (period.index % 12 === 0) factor = factor.times(kept);
     const month = monthOf(period.from) - 1;
     const days = daysBetween(period.from, period.to);
-    const productionWh = energyOf(energy.productionPerDay[month] ?? new Exact(0), days, factor);
-    const useWh = energyOf(energy.usePerDay[month] ?? new Exact(0), days, one);
-    const share = energy.exportShare[month] ?? new Exact(0);
+    const productionWh = energyOf(energy.productionPerDay[month] ?? NONE, days, factor);
+    const useKey = month * 31 + days;
+    const useWh = uses.get(useKey) ?? energyOf(energy.usePerDay[month] ?? NONE, days, one);
+    uses.set(useKey, useWh);
+    const share = energy.exportShare[month] ?? NONE;
     const sent = share.times(productionWh).toDecimalPlaces(0, Exact.ROUND_HALF_UP).toNumber();
     const selfUse = Math.min(productionWh - sent, useWh);
     return { productionWh, exportWh: wh(productionWh - selfUse), importWh: wh(useWh - selfUse), useWh };

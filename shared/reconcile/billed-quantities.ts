@@ -18,8 +18,9 @@ export function billedQuantity(
       let sum: Qty = 0;
       let found = false;
       let complete = true;
-      for (const [at, line] of paper.lines.entries()) {
-        if (components[at] !== id) continue;
+      for (let at = 0; at < paper.lines.length; at += 1) {
+        const line = paper.lines[at];
+        if (!line || components[at] !== id) continue;
         if (line.quantity === null || (line.unit !== null && line.unit !== 'kWh')) complete = false;
         else sum = plus(sum, sizeOf(qtyOfText(line.quantity)));
         found = true;

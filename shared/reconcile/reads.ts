@@ -1,4 +1,4 @@
-import type { RegisterRead } from '../facts/papers.ts';
+import type { RegisterRead, Statement } from '../facts/papers.ts';
 import { sayDate, sayDay } from '../ledger/say.ts';
 import { closesEstimated, runKey } from '../metering/estimated-reads.ts';
 import type { Check } from './check.ts';
@@ -15,11 +15,12 @@ const CHANNEL_WORDS = { import: 'Import', export: 'Export', production: 'Product
 export function registersFollowChecks({ paper }: CheckContext): Check[] {
   const checks: Check[] = [];
   for (const channel of CHANNELS) {
-    const reads = paper.statement.reads.filter((read) => read.channel === channel);
-    const before = paper.previous?.reads.filter((read) => read.channel === channel) ?? [];
-    for (const meter of new Set(reads.map((read) => read.meter))) {
-      checks.push(...followCheck(channel, meter, byDate(reads), byDate(before)));
-    }
+    const reads = readsOf(paper.statement, channel);
+    const before = readsOf(paper.previous, channel);
+    reads.forEach((read, at) => {
+      const seen = reads.findIndex((other) => other.meter === read.meter) < at;
+      if (!seen) checks.push(...followCheck(channel, read.meter, byDate(reads), byDate(before)));
+    });
   }
   return checks;
 }
@@ -129,6 +130,11 @@ export function isProvisional({ paper, runs }: Pick<CheckContext, 'paper' | 'run
   return CHANNELS.some((channel) => runs.get(runKey(paper.index, channel))?.pending === true);
 }
 
-function byDate(reads: readonly RegisterRead[]): RegisterRead[] {
+function readsOf(statement: Statement | null, channel: RegisterRead['channel']): RegisterRead[] {
+  return statement?.reads.filter((read) => read.channel === channel) ?? [];
+}
+
+function byDate(reads: RegisterRead[]): RegisterRead[] {
+  if (reads.length < 2) return reads;
   return [...reads].sort((a, b) => (a.from < b.from ? -1 : a.from > b.from ? 1 : 0));
 }

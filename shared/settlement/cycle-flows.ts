@@ -1,6 +1,7 @@
 import type { Day } from '../units/day.ts';
 import { daysBetween } from '../units/day.ts';
 import { type IntervalView, intervalView, mustCover, nettedOver } from './interval-flows.ts';
+import type { Part } from './parts.ts';
 import type { Netting } from './plan.ts';
 import type { PreparedPlan } from './prepare.ts';
 import { refuse } from './refused.ts';
@@ -22,6 +23,8 @@ export type Cycle = {
   days: number;
   flows: Partial<Record<Netting, NettedFlow>>;
   intervals: IntervalView | null;
+  /** The cycle as one part (`splitCycle`), once an item has asked for it. */
+  unsplit: readonly Part[] | null;
   /** Whether lines say how they came about. A projection settles hundreds of bills for their amounts alone. */
   says: boolean;
 };
@@ -29,7 +32,7 @@ export type Cycle = {
 export function openCycle(prepared: PreparedPlan, usage: CycleUsage, says = true): Cycle {
   const days = daysBetween(usage.from, usage.to);
   if (!(days > 0)) refuse('A cycle must end after it begins.');
-  return { prepared, usage, from: usage.from, to: usage.to, days, flows: {}, intervals: null, says };
+  return { prepared, usage, from: usage.from, to: usage.to, days, flows: {}, intervals: null, unsplit: null, says };
 }
 
 /** The interval data of the cycle with each step's local day and period; refused when there are none. */

@@ -15,14 +15,14 @@ export type Group = { from: Day; to: Day; days: number; whole: boolean };
  * Splits a cycle where a price or a season of the item changes inside it, as `rateChangeBy` and `seasonBy` say. `byIntervals`: the item's
  * kWh can be told interval by interval; otherwise a change by intervals is a change by days.
  */
-export function splitCycle(cycle: Cycle, pricing: Pricing, byIntervals: boolean): Part[] {
+export function splitCycle(cycle: Cycle, pricing: Pricing, byIntervals: boolean): readonly Part[] {
   const { from, to } = cycle;
   const { plan } = cycle.prepared;
   const rateDays = plan.rateChangeBy === 'readDate' ? NO_DAYS : rateChanges(cycle, pricing);
   const seasonDays =
     !pricing.bySeason || plan.seasonBy === 'readDate' ? NO_DAYS : seasonChanges(plan.calendar, from, to);
+  if (rateDays.length === 0 && seasonDays.length === 0) return unsplit(cycle, pricing);
   const whole: Group = { from, to, days: cycle.days, whole: true };
-  if (rateDays.length === 0 && seasonDays.length === 0) return [partOf(cycle, pricing, whole, from, to)];
 
   const cutBy = (change: ChangeBy) => byIntervals && change === 'intervals';
   const groupDays = [...(cutBy(plan.rateChangeBy) ? rateDays : []), ...(cutBy(plan.seasonBy) ? seasonDays : [])];
@@ -35,6 +35,15 @@ export function splitCycle(cycle: Cycle, pricing: Pricing, byIntervals: boolean)
       partOf(cycle, pricing, group, start, end),
     ),
   );
+}
+
+/** The whole cycle as one part: the same for all its items that do not go by season. */
+function unsplit(cycle: Cycle, pricing: Pricing): readonly Part[] {
+  if (!pricing.bySeason && cycle.unsplit) return cycle.unsplit;
+  const { from, to, days } = cycle;
+  const parts = [partOf(cycle, pricing, { from, to, days, whole: true }, from, to)];
+  if (!pricing.bySeason) cycle.unsplit = parts;
+  return parts;
 }
 
 const NO_DAYS: readonly Day[] = [];

@@ -71,6 +71,9 @@ function priceSaid(
   return made.ok ? made.value : null;
 }
 
+const NOTHING = {};
+const NO_PAYMENTS: Cycle['usage']['payments'] = [];
+
 function usageOf(from: Day, to: Day): Cycle['usage'] {
   return {
     from,
@@ -80,9 +83,9 @@ function usageOf(from: Day, to: Day): Cycle['usage'] {
     productionWh: null,
     loadWh: null,
     byPeriod: null,
-    netted: {},
-    kW: {},
-    payments: [],
+    netted: NOTHING,
+    kW: NOTHING,
+    payments: NO_PAYMENTS,
     finalBill: false,
     intervals: null,
   };
