@@ -107,7 +107,7 @@ function withPrintedBanks(opening: Opening, statement: Statement, plan: RatePlan
 }
 
 /** The usage to settle on, or a sentence that says what is missing and what to do. */
-function usageOf(
+export function usageOf(
   facts: HouseholdFacts,
   paper: CyclePaper,
   metered: MeteredCycle,
