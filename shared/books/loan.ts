@@ -48,7 +48,7 @@ export function loanStateOn(loan: LoanFacts, on: Day, payments: PaymentsOfTheDay
   const unpaidInterestCents = last?.unpaidInterestCents ?? zero;
   const paidThrough = last && last.number > 0 ? last.dueOn : addMonths(loan.firstPaymentOn, -1);
   const days = balanceCents > 0 ? Math.max(0, days360(paidThrough, on)) : 0;
-  const accruedCents = interestRule(loan.annualRate).days(balanceCents, days);
+  const accruedCents = days === 0 ? zero : interestRule(loan.annualRate).days(balanceCents, days);
   const payoffCents = cents(balanceCents + unpaidInterestCents + accruedCents);
   return { balanceCents, unpaidInterestCents, days, accruedCents, payoffCents, paid };
 }

@@ -61,7 +61,7 @@ export function monthlyEnergy(input: MonthlyEnergyInput): MonthlyEnergy | null {
   const before: Heaps = new Map();
   for (const bill of input.usageBefore) gather(before, 0, segmentsOf(bill.from, bill.to), bill.importWh);
 
-  const aged = MONTHS.map((month) => agedMean(production, month, input.degradation));
+  const aged = agedMeans(production, input.degradation);
   const made = fillProduction(aged, input.expectedMonthlyWh);
   const used = fillUse(use, before);
   if (made === null || used === null) return null;
@@ -77,17 +77,21 @@ export function monthlyEnergy(input: MonthlyEnergyInput): MonthlyEnergy | null {
   };
 }
 
-function agedMean(heaps: Heaps, month: number, degradation: DecimalText): Exact | null {
+/** Mean Wh per day of each calendar month, every year brought to the last one's age; null for a month without a record. */
+function agedMeans(heaps: Heaps, degradation: DecimalText): (Exact | null)[] {
   const kept = new Exact(1).minus(exact(degradation));
-  let energy = new Exact(0);
-  let days = 0;
-  for (const [age, months] of heaps) {
-    const heap = months[month];
-    if (!heap || heap.days === 0) continue;
-    energy = energy.plus(age === 0 ? heap.energy : kept.pow(age).times(heap.energy));
-    days += heap.days;
-  }
-  return days === 0 ? null : energy.div(days);
+  const byAge = [...heaps].map(([age, months]) => ({ months, factor: kept.pow(age) }));
+  return MONTHS.map((month) => {
+    let energy = new Exact(0);
+    let days = 0;
+    for (const { months, factor } of byAge) {
+      const heap = months[month];
+      if (!heap || heap.days === 0) continue;
+      energy = energy.plus(factor.times(heap.energy));
+      days += heap.days;
+    }
+    return days === 0 ? null : energy.div(days);
+  });
 }
 
 type Filled = { perDay: Exact[]; basis: MonthBasis[] };

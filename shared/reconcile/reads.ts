@@ -33,10 +33,10 @@ function followCheck(
 ): Check[] {
   const about = `${channel}:${meter}`;
   const title = `Register reads follow on, ${CHANNEL_WORDS[channel].toLowerCase()}`;
-  const own = reads.filter((read) => read.meter === meter);
+  const own = ofMeter(reads, meter);
   const first = own[0];
   if (!first) return [];
-  const last = before.filter((read) => read.meter === meter).at(-1) ?? null;
+  const last = ofMeter(before, meter).at(-1) ?? null;
   if (last === null) {
     if (before.length === 0) {
       return [
@@ -128,6 +128,11 @@ export function readTypeCheck(context: CheckContext): Check {
 /** Whether an estimated read of the cycle still awaits the actual one after it. */
 export function isProvisional({ paper, runs }: Pick<CheckContext, 'paper' | 'runs'>): boolean {
   return CHANNELS.some((channel) => runs.get(runKey(paper.index, channel))?.pending === true);
+}
+
+/** One meter's reads; mostly the channel has no other meter. */
+function ofMeter(reads: RegisterRead[], meter: string): RegisterRead[] {
+  return reads.every((read) => read.meter === meter) ? reads : reads.filter((read) => read.meter === meter);
 }
 
 function readsOf(statement: Statement | null, channel: RegisterRead['channel']): RegisterRead[] {

@@ -30,10 +30,12 @@ export function energyPieces(cycle: Cycle, item: EnergyItem, billed: BilledEnerg
       pieces.push(...tierPieces(cycle, item, part, split, shares, limits));
       continue;
     }
-    for (const share of shares) {
+    const priced = shares.map((share) => {
       const price = mustPrice(item, item.label, part, share.period, tier);
-      pieces.push(energyPiece(cycle, part, split, share, price));
-    }
+      return energyPiece(cycle, part, split, share, price);
+    });
+    if (!split) return priced;
+    pieces.push(...priced);
   }
   return pieces;
 }
