@@ -10,7 +10,9 @@ import { normalEmail } from './sign-in.ts';
 import { emailIsTaken } from './sign-up.ts';
 import { writeHousehold } from './write-household.ts';
 
-/** Who may see this household, longest first. */
+const ROLE_ORDER = { owner: 0, member: 1, preparer: 2 } as const;
+
+/** Who may see this household: owners, members, preparers; within a role the longest first, then by name. */
 export function listPeople({ db }: Pick<Deps, 'db'>, actor: Actor): PersonView[] {
   return db
     .select({
@@ -23,8 +25,9 @@ export function listPeople({ db }: Pick<Deps, 'db'>, actor: Actor): PersonView[]
     .from(memberships)
     .innerJoin(users, eq(users.id, memberships.userId))
     .where(eq(memberships.householdId, actor.householdId))
-    .orderBy(asc(memberships.since), asc(users.id))
+    .orderBy(asc(memberships.since), asc(users.name), asc(users.id))
     .all()
+    .sort((a, b) => ROLE_ORDER[a.role] - ROLE_ORDER[b.role])
     .map((person) => ({ ...person, you: person.userId === actor.userId }));
 }
 
