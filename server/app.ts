@@ -18,6 +18,7 @@ import { cyclesRoutes } from './routes/cycles-routes.ts';
 import { logRoutes } from './routes/log-routes.ts';
 import { moneyRoutes } from './routes/money-routes.ts';
 import { peopleRoutes } from './routes/people-routes.ts';
+import { planRoutes } from './routes/plan-routes.ts';
 import { positionRoutes } from './routes/position-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
 import { setupRoutes } from './routes/setup-routes.ts';
@@ -55,6 +56,7 @@ export function createApp(deps: Deps): App {
   const api = createApi(deps, sessions);
   sessionRoutes(api, deps, sessions, limits);
   setupRoutes(api, deps);
+  planRoutes(api, deps);
   cyclesRoutes(api, deps);
   positionRoutes(api, deps);
   logRoutes(api, deps);
