@@ -45,12 +45,12 @@ function typedText(reads: (text: string) => boolean, error: string, optional: bo
 
 const positive = (text: string) => (parseDollars(text) ?? 0) > 0;
 const notNegative = (text: string) => (parseDollars(text) ?? -1) >= 0;
-const MONEY = 'Write an amount in dollars such as 1,204.50.';
+export const MONEY_FAULT = 'Write an amount in dollars such as 1,204.50.';
 
 /** Form fields as text. Each says what to write when it does not read. */
 export const typed = {
-  money: typedText((text) => parseDollars(text) !== null, MONEY, false),
-  moneyOrNone: typedText((text) => parseDollars(text) !== null, MONEY, true),
+  money: typedText((text) => parseDollars(text) !== null, MONEY_FAULT, false),
+  moneyOrNone: typedText((text) => parseDollars(text) !== null, MONEY_FAULT, true),
   moneyAboveZero: typedText(positive, 'Write an amount above zero, such as 1,204.50.', false),
   moneyFromZero: typedText(notNegative, 'Write an amount of zero or more, such as 1,204.50.', true),
   kwh: typedText((text) => parseKwh(text) !== null, 'Write kWh as a number such as 498.', false),

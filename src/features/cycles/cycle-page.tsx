@@ -16,7 +16,7 @@ import { EnergySheet } from './energy-sheet.tsx';
 import { FacingSheet } from './facing-sheet.tsx';
 import { PapersSheet } from './papers-sheet.tsx';
 
-const StatementForm = lazy(() => import('./statement-form.tsx'));
+const CorrectStatement = lazy(() => import('./correct-statement.tsx'));
 
 /** A cycle: where the energy went, the bill beside the meters, what it added, and whether it agrees. */
 export function CyclePage() {
@@ -44,7 +44,7 @@ function CycleBody({ view, household }: { view: CycleView; household: HouseholdC
       <Standing cycle={cycle} />
       {correcting ? (
         <Suspense fallback={<div className="sheet bone h-96" aria-busy="true" />}>
-          <StatementForm
+          <CorrectStatement
             statement={cycle.statement}
             householdId={household.id}
             cycleTo={cycle.to}

@@ -5,11 +5,12 @@ import { useHousehold } from '#src/lib/household.ts';
 import { errorWords } from '#src/lib/problem-words.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
+import { StatementForm } from '#src/ui/statement-form/statement-form.tsx';
+import { formOfStatement } from '#src/ui/statement-form/statement-of-form.ts';
 import { useChangeStatement, useDiscard, usePost } from './log-queries.ts';
 import { countValues, readValues } from './read-values.ts';
 import { CHANNEL_NAMES } from './readings-sheet.tsx';
 import { countOf, numberWord } from './statement-file-sheet.tsx';
-import { StatementForm } from './statement-form.tsx';
 import { StatementSpread } from './statement-spread.tsx';
 
 export function CheckStep({
@@ -33,13 +34,12 @@ export function CheckStep({
           <b>{cycleRange(shown.statement.from, shown.statement.to)}</b>, line by line.
         </Sentence>
         <StatementForm
-          statement={shown.statement}
+          defaults={formOfStatement(shown.statement)}
           busy={change.isPending}
+          refusal={change.error}
           save="Take the changes in"
           onCancel={() => setEditing(false)}
-          onSave={(statement, refuse) =>
-            change.mutate({ key: shown.key, statement }, { onSuccess: () => setEditing(false), onError: refuse })
-          }
+          onSave={(statement) => change.mutate({ key: shown.key, statement }, { onSuccess: () => setEditing(false) })}
         />
       </>
     );
@@ -56,7 +56,10 @@ export function CheckStep({
           saving={change.isPending}
           fault={change.isError ? errorWords(change.error) : null}
           onChange={(statement) => change.mutate({ key: shown.key, statement })}
-          onEdit={() => setEditing(true)}
+          onEdit={() => {
+            change.reset();
+            setEditing(true);
+          }}
         />
       )}
       {draft.readings.length > 0 && (

@@ -3,7 +3,12 @@ import type { SetupView } from '#shared/api/setup.ts';
 import type { MeterFacts } from '#shared/facts/house.ts';
 import type { RatePlan, RateRow } from '#shared/settlement/plan.ts';
 import { textOf } from '#src/lib/typed-values.ts';
-import { emptyLine, type LineRow, type StatementFormValues } from './statement-form-values.ts';
+import {
+  emptyLine,
+  emptyRead,
+  type LineRow,
+  type StatementFormValues,
+} from '#src/ui/statement-form/statement-values.ts';
 
 /**
  * A statement to be typed, laid out so that only figures are left to fill in: reads, banks and balance follow on from the last statement, lines
@@ -30,6 +35,7 @@ export function emptyStatementForm(stated: SetupView | null, last: StatementBody
             unit: bank.unit,
             open: bank.close ?? '',
             close: '',
+            row: null,
           }))
         : (plan?.banks ?? []).map((bank) => ({
             bank: bank.id,
@@ -37,10 +43,12 @@ export function emptyStatementForm(stated: SetupView | null, last: StatementBody
             unit: bank.unit,
             open: '',
             close: '',
+            row: null,
           })),
     previousBalance: textOf.cents(last?.amountDueCents ?? null),
     payments: '',
     due: '',
+    reason: '',
   };
 }
 
@@ -60,21 +68,15 @@ function nextReads(last: StatementBody): StatementFormValues['reads'] {
       current: '',
       dials: String(read.dials),
       type: 'actual',
+      row: null,
     }));
 }
 
 function readsOfMeters(meters: MeterFacts[]): StatementFormValues['reads'] {
   return meters.flatMap((meter) =>
     meter.channels.map((one) => ({
-      meter: meter.id,
+      ...emptyRead({ meter: meter.id, dials: String(meter.dials), multiplier: meter.multiplier }),
       channel: one,
-      from: '',
-      to: '',
-      previous: '',
-      current: '',
-      dials: String(meter.dials),
-      multiplier: meter.multiplier,
-      type: 'actual' as const,
     })),
   );
 }
@@ -86,11 +88,11 @@ function nextLines(last: StatementBody, plan: RatePlan | null): LineRow[] {
     .filter((line, index) => last.lines.findIndex((one) => one.label === line.label) === index)
     .map((line) => ({
       ...emptyLine(),
-      component: textOf.text(line.component),
+      component: line.component,
       kind: line.kind,
       label: line.label,
       unit: line.unit ?? '',
-      rate: rateOf.get(textOf.text(line.component)) ?? textOf.text(line.rate),
+      rate: rateOf.get(line.component) ?? textOf.text(line.rate),
       inDue: line.inDue,
     }));
 }

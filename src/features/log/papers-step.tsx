@@ -11,10 +11,10 @@ import { SelectField } from '#src/ui/field.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
 import { DropZone } from './drop-zone.tsx';
 import { FaultList } from './faults.tsx';
-import { useAddStatement, useUpload } from './log-queries.ts';
+import { useUpload } from './log-queries.ts';
 import { ReadingsSheet } from './readings-sheet.tsx';
 import { numberWord, StatementFileSheet, TypedStatementSheet } from './statement-file-sheet.tsx';
-import { StatementForm } from './statement-form.tsx';
+import { TypeStatement } from './type-statement.tsx';
 
 type Refused = { fileName: string; text: string; faults: Fault[] };
 
@@ -28,7 +28,6 @@ const CHANNELS: { value: IntervalChannel; label: string }[] = [
 export function PapersStep({ draft, onCheck }: { draft: LogDraft; onCheck: () => void }) {
   const { id } = useHousehold();
   const upload = useUpload(id);
-  const add = useAddStatement(id);
   const [channel, setChannel] = useState<IntervalChannel>('production');
   const [refused, setRefused] = useState<Refused[]>([]);
   const [typing, setTyping] = useState(false);
@@ -54,20 +53,12 @@ export function PapersStep({ draft, onCheck }: { draft: LogDraft; onCheck: () =>
         >
           <b>Type the statement</b> from paper.
         </Sentence>
-        <StatementForm
-          statement={null}
-          busy={add.isPending}
-          save="Take it in"
+        <TypeStatement
           onCancel={() => setTyping(false)}
-          onSave={(statement, refuse) =>
-            add.mutate(statement, {
-              onSuccess: () => {
-                setTyping(false);
-                onCheck();
-              },
-              onError: refuse,
-            })
-          }
+          onDone={() => {
+            setTyping(false);
+            onCheck();
+          }}
         />
       </>
     );

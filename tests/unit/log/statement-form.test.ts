@@ -5,14 +5,9 @@ import { type Cents, cents, dollarsText } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
 import { wh } from '#shared/units/energy.ts';
 import { emptyStatementForm } from '#src/features/log/next-statement.ts';
-import {
-  emptyLine,
-  formOfStatement,
-  isUntouched,
-  runningSum,
-  statementForm,
-  statementOfForm,
-} from '#src/features/log/statement-form-values.ts';
+import { runningSum } from '#src/ui/statement-form/running-sum.ts';
+import { formOfStatement, statementOfForm } from '#src/ui/statement-form/statement-of-form.ts';
+import { emptyLine, emptyRead, isUntouched, statementForm } from '#src/ui/statement-form/statement-values.ts';
 
 const FROM = day('2026-08-14');
 const TO = day('2026-09-14');
@@ -86,11 +81,48 @@ describe('a statement as a form', () => {
   it('comes back from the form as it went in, a meter exchange and the file’s rows with it', () => {
     const form = formOfStatement(BODY);
     expect(statementForm.safeParse(form).success).toBe(true);
-    const back = statementOfForm(form, BODY);
+    const back = statementOfForm(form);
     expect({ ...back, reads: [] }).toEqual({ ...BODY, reads: [] });
     expect(back.reads.map((read) => [read.from, read.to, read.type, read.row])).toEqual(
       BODY.reads.map((read) => [read.from, read.to, read.type, read.row]),
     );
+  });
+
+  it('keeps each value with its row of the file when another is taken out, and a component it was matched to', () => {
+    const form = formOfStatement(BODY);
+    const back = statementOfForm({ ...form, lines: form.lines.slice(1), reads: form.reads.slice(1) });
+    expect(back.lines.map((line) => [line.label, line.component, line.row])).toEqual([['Export credit', null, 6]]);
+    expect(back.reads.map((read) => [read.meter, read.row])).toEqual([['B2', 4]]);
+  });
+
+  it('moves the reads with the dates of the statement, but not the day a meter was exchanged', () => {
+    const back = statementOfForm({ ...formOfStatement(BODY), to: '2026-09-15' });
+    expect(back.reads.map((read) => [read.from, read.to])).toEqual([
+      [FROM, '2026-09-01'],
+      ['2026-09-01', '2026-09-15'],
+    ]);
+  });
+
+  it('neither asks for nor takes in a line or read that was laid out and left empty', () => {
+    const form = formOfStatement(BODY);
+    const laidOut = {
+      ...form,
+      lines: [...form.lines, { ...emptyLine(), label: 'City tax' }],
+      reads: [...form.reads, emptyRead()],
+    };
+    expect(statementForm.safeParse(laidOut).success).toBe(true);
+    expect(statementOfForm(laidOut)).toEqual(statementOfForm(form));
+    const begun = {
+      ...laidOut,
+      reads: [{ ...emptyRead(), current: '12' }],
+      lines: [{ ...emptyLine(), quantity: '1' }],
+    };
+    expect(statementForm.safeParse(begun).error?.issues.map((issue) => issue.path.join('.'))).toEqual([
+      'reads.0.meter',
+      'reads.0.previous',
+      'lines.0.label',
+      'lines.0.amount',
+    ]);
   });
 
   it('lays the next statement out from the last: reads, balance and bank follow on, a meter taken out does not', () => {

@@ -2,7 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { statementBody } from '#shared/api/cycles.ts';
 import { type Statement, statementSchema } from '#shared/facts/papers.ts';
 import { statementChanges } from '#src/features/cycles/statement-changes.ts';
-import { readStatementValues, valuesOf } from '#src/features/cycles/statement-values.ts';
+import { formOfStatement, statementOfForm } from '#src/ui/statement-form/statement-of-form.ts';
+import { correctionForm } from '#src/ui/statement-form/statement-values.ts';
 
 function statement(): Statement {
   return statementSchema.parse({
@@ -56,27 +57,27 @@ function statement(): Statement {
 
 describe('correcting a statement', () => {
   it('gives back exactly the posted statement when nothing but a reason is typed', () => {
-    const read = readStatementValues({ ...valuesOf(statement()), reason: 'looked again' });
-    if (!read.ok) throw new Error(JSON.stringify(read.faults));
+    const typed = correctionForm.parse({ ...formOfStatement(statement()), reason: 'looked again' });
+    const corrected = statementOfForm(typed);
     const { id, revision, source, reason, enteredBy, enteredAt, ...body } = statement();
-    expect(read.body.statement).toEqual(body);
-    expect(statementBody.safeParse(read.body.statement).success).toBe(true);
+    expect(corrected).toEqual(body);
+    expect(statementBody.safeParse(corrected).success).toBe(true);
   });
 
   it('names every value it cannot read, each at its own place', () => {
-    const values = valuesOf(statement());
+    const values = formOfStatement(statement());
     const [line] = values.lines;
     if (!line) throw new Error('no line');
-    const read = readStatementValues({
+    const read = correctionForm.safeParse({
       ...values,
       from: '2026-02-30',
-      importWh: 'many',
-      lines: [{ ...line, amountCents: '' }],
+      importKwh: 'many',
+      lines: [{ ...line, amount: '' }],
     });
-    expect(read.ok ? [] : read.faults.map((fault) => fault.path)).toEqual([
+    expect(read.error?.issues.map((issue) => issue.path.join('.'))).toEqual([
       'from',
-      'importWh',
-      'lines.0.amountCents',
+      'importKwh',
+      'lines.0.amount',
       'reason',
     ]);
   });
