@@ -74,6 +74,13 @@ export const cyclesApi = {
     response: z.object({ rows: z.array(cycleRow), books: z.array(bookId) }),
   }),
   one: endpoint({ method: 'GET', path: `${at}/:to`, access: HOUSEHOLD, response: cycleView }),
+  /** A paper a cycle rests on, as it came. */
+  paper: endpoint({
+    method: 'GET',
+    path: '/api/households/:householdId/documents/:documentId',
+    access: HOUSEHOLD,
+    kind: 'download',
+  }),
   /** Lets a differing check stand, with a note. `check` is the check's key. */
   accept: endpoint({
     method: 'POST',

@@ -1,13 +1,16 @@
-import type { CycleView } from '#shared/api/cycles.ts';
+import { type CycleView, cyclesApi } from '#shared/api/cycles.ts';
 import type { Statement } from '#shared/facts/papers.ts';
 import { parseDay } from '#shared/units/day.ts';
+import { addressOf } from '#src/lib/api.ts';
 import { fullDate } from '#src/lib/format.ts';
+import { useHousehold } from '#src/lib/household.ts';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { placeWords } from './paper-words.ts';
 import { statementChanges } from './statement-changes.ts';
 
 /** The papers a cycle rests on, and how its statement was corrected. */
 export function PapersSheet({ view }: { view: CycleView }) {
+  const { id } = useHousehold();
   const { statement } = view.cycle;
   return (
     <Sheet title="Papers and corrections">
@@ -21,8 +24,14 @@ export function PapersSheet({ view }: { view: CycleView }) {
         </li>
         {view.documents.map((document) => (
           <li key={document.id} className="flex flex-wrap justify-between gap-x-5 border-b border-rule py-2">
-            <span className="min-w-0 break-words">{document.fileName}</span>
-            <span className="hint">file kept as it came</span>
+            <a
+              className="link inline-flex min-h-11 min-w-0 items-center break-words sm:min-h-6"
+              href={addressOf(cyclesApi.paper, { householdId: id, documentId: document.id })}
+              download={document.fileName}
+            >
+              {document.fileName}
+            </a>
+            <span className="hint">kept as it came</span>
           </li>
         ))}
       </ul>
