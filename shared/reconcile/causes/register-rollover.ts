@@ -1,0 +1,28 @@
+import { sayKwh } from '../../ledger/say.ts';
+import { type Edit, edit, hypothesis, type Place } from './edit.ts';
+import { channelsOf, energyOf, plainDifference, readKwh, withTotals } from './meter-reads.ts';
+import { eachAndAll, sayList } from './plan-edit.ts';
+
+/** The dials passed all nines, and the difference was taken as it stands (net-metering.md §4, "dial rollover"). */
+export const registerRollover = hypothesis('registerRollover', editsOf);
+
+function editsOf({ cycle: { reads, usage } }: Place): Edit[] {
+  const turned = channelsOf(reads).filter((channel) =>
+    reads.some((read) => read.channel === channel && plainDifference(read).lt(0)),
+  );
+  return eachAndAll(turned).map((channels) => {
+    const billed = channels.map((channel) => ({
+      channel,
+      trueWh: energyOf(reads, channel, readKwh),
+      billedWh: energyOf(reads, channel, (read) => plainDifference(read).times(read.multiplier)),
+    }));
+    const totals = Object.fromEntries(billed.map(({ channel, billedWh }) => [channel, billedWh]));
+    const said = billed.map((one) => `${sayKwh(one.billedWh)} kWh of ${one.channel} instead of ${sayKwh(one.trueWh)}`);
+    return edit(
+      channels.join(),
+      { usage: withTotals(usage, totals) },
+      `The register passed all nines and the difference was taken as it stands: ${sayList(said)}.`,
+      { channels: channels.join(', ') },
+    );
+  });
+}
