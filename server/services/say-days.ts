@@ -1,14 +1,8 @@
-import { type Day, dayOfMonth, monthOf, yearOf } from '#shared/units/day.ts';
-
-const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
-
-/** "14 Aug 2026" */
-export function sayDay(date: Day): string {
-  return `${dayOfMonth(date)} ${MONTHS[monthOf(date) - 1]} ${yearOf(date)}`;
-}
+import type { Day } from '#shared/units/day.ts';
+import { yearOf } from '#shared/units/day.ts';
+import { dateWords, dayWords } from '#shared/units/words.ts';
 
 /** "14 Aug – 14 Sep 2026", with both years where they differ. */
-export function sayCycle(span: { from: Day; to: Day }): string {
-  const from = `${dayOfMonth(span.from)} ${MONTHS[monthOf(span.from) - 1]}`;
-  return `${from}${yearOf(span.from) === yearOf(span.to) ? '' : ` ${yearOf(span.from)}`} – ${sayDay(span.to)}`;
+export function sayCycle({ from, to }: { from: Day; to: Day }): string {
+  return `${yearOf(from) === yearOf(to) ? dayWords(from) : dateWords(from)} – ${dateWords(to)}`;
 }

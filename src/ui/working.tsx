@@ -1,6 +1,6 @@
 import { createContext, type ReactNode, useContext, useEffect, useRef, useState } from 'react';
 import type { Source, Working } from '#shared/working.ts';
-import { decimal } from '#src/lib/format.ts';
+import { decimal, decimalDollars } from '#src/lib/format.ts';
 
 type Shown = { title: string; figure: string; working: Working };
 const ShowWorking = createContext<(shown: Shown) => void>(() => {});
@@ -117,9 +117,9 @@ function InputRows({ input }: { input: Working['inputs'][number] }) {
 }
 
 function withUnit(value: string, unit: string): string {
+  if (unit === 'USD') return decimalDollars(value);
+  if (unit === 'USD/kWh') return `${decimalDollars(value)} per kWh`;
   const text = decimal(value);
-  if (unit === 'USD') return text.startsWith('\u2212') ? `\u2212$${text.slice(1)}` : `$${text}`;
-  if (unit === 'USD/kWh') return `$${text} per kWh`;
   return unit === '' || unit === 'fraction' ? text : `${text} ${unit}`;
 }
 

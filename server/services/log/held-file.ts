@@ -1,12 +1,12 @@
 import type { DocumentFacts } from '#shared/facts/papers.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
 import type { Day } from '#shared/units/day.ts';
+import { dateWords } from '#shared/units/words.ts';
 import { documentTotals, findDocumentByHash } from '../../db/documents.ts';
 import { sha256Of } from '../../db/facts/write-papers.ts';
 import type { Actor, Deps } from '../../deps.ts';
 import { newId } from '../../ids.ts';
 import type { FileInput } from '../../importers/contract.ts';
-import { sayDay } from '../say-days.ts';
 
 /** Files in one log, and bytes in one household: far beyond a lifetime of months, and a bound on what one account can fill. */
 const MOST_HELD = 60;
@@ -51,7 +51,7 @@ export function alreadyHere(deps: Pick<Deps, 'db'>, actor: Actor, document: NewD
       'file-already-here',
       twin.state === 'held'
         ? `${name} is in this log already. Nothing was changed.`
-        : `${name} was posted already; it was uploaded on ${sayDay(twin.uploadedOn)}. Nothing was changed.`,
+        : `${name} was posted already; it was uploaded on ${dateWords(twin.uploadedOn)}. Nothing was changed.`,
     ),
   };
 }

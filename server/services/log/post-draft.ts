@@ -1,5 +1,6 @@
 import type { PostedView } from '#shared/api/log.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
+import { dateWords } from '#shared/units/words.ts';
 import type { Tx } from '../../db/client.ts';
 import type { Draft } from '../../db/drafts.ts';
 import { readDraft } from '../../db/drafts.ts';
@@ -9,7 +10,6 @@ import { clearDraft } from '../../db/write-drafts.ts';
 import type { Actor, Deps } from '../../deps.ts';
 import { type HouseholdLedger, ledgerOf } from '../ledger-of.ts';
 import { differingChecks } from '../list-cycles.ts';
-import { sayDay } from '../say-days.ts';
 import { writeHousehold } from '../write-household.ts';
 import { type PostingPlan, planPosting } from './plan-posting.ts';
 
@@ -84,7 +84,7 @@ export function postDraft(
     const count = plan.readings.reduce((sum, reading) => sum + reading.differentDays.length, 0);
     return fail(
       'readings-conflict',
-      `${different.drafted.fileName} has other values than are here for ${count} ${count === 1 ? 'day' : 'days'}${first === undefined ? '' : `, the first ${sayDay(first)}`}. Say whether they shall be replaced.`,
+      `${different.drafted.fileName} has other values than are here for ${count} ${count === 1 ? 'day' : 'days'}${first === undefined ? '' : `, the first ${dateWords(first)}`}. Say whether they shall be replaced.`,
     );
   }
   const about = [

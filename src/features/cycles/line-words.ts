@@ -1,14 +1,14 @@
 import type { FacingLine } from '#shared/ledger/cycle.ts';
 import type { Cents } from '#shared/units/cents.ts';
-import { decimal, money } from '#src/lib/format.ts';
+import { decimal, decimalDollars, money } from '#src/lib/format.ts';
 
 /** A quantity with its unit where it is not kWh: "498", "$81.27", "4.2 kW", "31 days". */
 export function quantityWords(quantity: string | null, unit: string | null): string {
   if (quantity === null) return '';
-  const text = decimal(unit === 'USD' ? wholeCents(quantity) : quantity);
+  const text = decimal(quantity);
   switch (unit) {
     case 'USD':
-      return text.startsWith('\u2212') ? `\u2212$${text.slice(1)}` : `$${text}`;
+      return decimalDollars(wholeCents(quantity));
     case 'kW':
       return `${text} kW`;
     case 'day':

@@ -2,6 +2,7 @@ import { zodResolver } from '@hookform/resolvers/zod';
 import { useFieldArray, useForm, useWatch } from 'react-hook-form';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
 import { sumWh } from '#shared/units/energy.ts';
+import { MONTH_NAMES } from '#shared/units/words.ts';
 import { kwh } from '#src/lib/format.ts';
 import { newId } from '#src/lib/new-id.ts';
 import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
@@ -10,7 +11,7 @@ import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
 import { KINDS, kilowatts, kindOf, METER_KINDS, type RoofForm, roofForm, wattsOf } from './roof-form.ts';
 import { StepForm } from './step-form.tsx';
 
-const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
+const MONTHS = MONTH_NAMES.map((name) => name.slice(0, 3));
 
 const emptyArray = () => ({ key: newId(), label: '', modules: '', watts: '', tilt: '', facing: '' });
 
