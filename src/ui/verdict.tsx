@@ -1,5 +1,5 @@
 import type { Check } from '#shared/reconcile/check.ts';
-import { decimal } from '#src/lib/format.ts';
+import { checkValue } from '#src/lib/check-words.ts';
 
 /** A check's outcome in words: "agrees", the difference with its unit, "accepted", or "nothing to compare". */
 export function Verdict({ check }: { check: Check }) {
@@ -17,25 +17,8 @@ export function Verdict({ check }: { check: Check }) {
   }
 }
 
-function amountOf(check: Check): string {
-  if (check.difference === null) return 'differs';
-  const size = check.difference.replace('-', '');
-  const text = decimal(check.unit === 'kWh' ? shortKwh(size) : size);
-  switch (check.unit) {
-    case 'USD':
-      return `$${text}`;
-    case 'kWh':
-      return `${text} kWh`;
-    case 'days':
-      return `${text} days`;
-    case 'percent':
-      return `${text}%`;
-    default:
-      return 'differs';
-  }
-}
-
-/** Whole kWh from ten on: a verdict names the size, the check itself has the exact figures. */
-function shortKwh(size: string): string {
-  return Number(size) >= 10 ? String(Math.round(Number(size))) : size;
+/** The size of the difference; the check itself has the exact figures. */
+function amountOf({ difference, unit }: Check): string {
+  if (difference === null || unit === 'date' || unit === 'text') return 'differs';
+  return checkValue(difference.replace('-', ''), unit);
 }

@@ -2,6 +2,7 @@ import { useState } from 'react';
 import type { Cycle } from '#shared/ledger/cycle.ts';
 import type { Check } from '#shared/reconcile/check.ts';
 import { parseDay } from '#shared/units/day.ts';
+import { statedAndFound } from '#src/lib/check-words.ts';
 import { fullDate } from '#src/lib/format.ts';
 import type { HouseholdContext } from '#src/lib/household.ts';
 import { errorWords } from '#src/lib/problem-words.ts';
@@ -10,7 +11,6 @@ import { Prose } from '#src/ui/prose.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { Verdict } from '#src/ui/verdict.tsx';
 import { AcceptDialog } from './accept-dialog.tsx';
-import { checkValue } from './check-value.ts';
 import { useAccept } from './cycles-queries.ts';
 
 /** Every check of the cycle with its outcome; those that differ say why, and what to do. */
@@ -54,9 +54,7 @@ function Explained({ check }: { check: Check }) {
   return (
     <div className="hint max-w-[60ch]">
       {check.verdict === 'differs' && stated !== null && found !== null && (
-        <p>
-          Stated {checkValue(stated, check.unit)}, found {checkValue(found, check.unit)}.
-        </p>
+        <p>{statedAndFound(stated, found, check.unit)}</p>
       )}
       {check.cause && (
         <p>
