@@ -1,11 +1,35 @@
 import { type ComponentProps, type ReactNode, useEffect, useId, useRef } from 'react';
 
 type Shell = { label: ReactNode; hint?: ReactNode; error?: string | undefined };
+/** What ties a control to its label, hint and error. */
+type Tie = { id: string; 'aria-describedby': string | undefined; 'aria-invalid': true | undefined };
 
-function useShell(error: string | undefined, hint: ReactNode) {
+/** Label, hint and error around a control. */
+function Labelled({ label, hint, error, children }: Shell & { children: (tie: Tie) => ReactNode }) {
   const id = useId();
   const described = [hint ? `${id}-hint` : null, error ? `${id}-error` : null].filter(Boolean).join(' ');
-  return { id, describedBy: described === '' ? undefined : described };
+  return (
+    <div className="field">
+      <label htmlFor={id} className="field-label">
+        {label}
+      </label>
+      {hint && (
+        <span id={`${id}-hint`} className="field-hint">
+          {hint}
+        </span>
+      )}
+      {error && (
+        <span id={`${id}-error`} className="field-error">
+          {error}
+        </span>
+      )}
+      {children({
+        id,
+        'aria-describedby': described === '' ? undefined : described,
+        'aria-invalid': error ? true : undefined,
+      })}
+    </div>
+  );
 }
 
 /** A labelled text input with hint and error; spread react-hook-form's `register(…)` into it. A unit stands after the input, `$` before. */
@@ -17,92 +41,36 @@ export function Field({
   className,
   ...input
 }: ComponentProps<'input'> & Shell & { unit?: string }) {
-  const { id, describedBy } = useShell(error, hint);
   return (
-    <div className="field">
-      <label htmlFor={id} className="field-label">
-        {label}
-      </label>
-      {hint && (
-        <span id={`${id}-hint`} className="field-hint">
-          {hint}
+    <Labelled label={label} hint={hint} error={error}>
+      {(tie) => (
+        <span className="flex items-center gap-2">
+          {unit === '$' && <span className="hint">$</span>}
+          <input {...input} {...tie} className={`input ${className ?? ''}`} />
+          {unit && unit !== '$' && <span className="hint whitespace-nowrap">{unit}</span>}
         </span>
       )}
-      {error && (
-        <span id={`${id}-error`} className="field-error">
-          {error}
-        </span>
-      )}
-      <span className="flex items-center gap-2">
-        {unit === '$' && <span className="hint">$</span>}
-        <input
-          {...input}
-          id={id}
-          aria-describedby={describedBy}
-          aria-invalid={error ? true : undefined}
-          className={`input ${className ?? ''}`}
-        />
-        {unit && unit !== '$' && <span className="hint whitespace-nowrap">{unit}</span>}
-      </span>
-    </div>
+    </Labelled>
   );
 }
 
 export function SelectField({ label, hint, error, children, ...select }: ComponentProps<'select'> & Shell) {
-  const { id, describedBy } = useShell(error, hint);
   return (
-    <div className="field">
-      <label htmlFor={id} className="field-label">
-        {label}
-      </label>
-      {hint && (
-        <span id={`${id}-hint`} className="field-hint">
-          {hint}
-        </span>
+    <Labelled label={label} hint={hint} error={error}>
+      {(tie) => (
+        <select {...select} {...tie} className="input">
+          {children}
+        </select>
       )}
-      {error && (
-        <span id={`${id}-error`} className="field-error">
-          {error}
-        </span>
-      )}
-      <select
-        {...select}
-        id={id}
-        aria-describedby={describedBy}
-        aria-invalid={error ? true : undefined}
-        className="input"
-      >
-        {children}
-      </select>
-    </div>
+    </Labelled>
   );
 }
 
 export function TextArea({ label, hint, error, ...area }: ComponentProps<'textarea'> & Shell) {
-  const { id, describedBy } = useShell(error, hint);
   return (
-    <div className="field">
-      <label htmlFor={id} className="field-label">
-        {label}
-      </label>
-      {hint && (
-        <span id={`${id}-hint`} className="field-hint">
-          {hint}
-        </span>
-      )}
-      {error && (
-        <span id={`${id}-error`} className="field-error">
-          {error}
-        </span>
-      )}
-      <textarea
-        {...area}
-        id={id}
-        aria-describedby={describedBy}
-        aria-invalid={error ? true : undefined}
-        className="input"
-      />
-    </div>
+    <Labelled label={label} hint={hint} error={error}>
+      {(tie) => <textarea {...area} {...tie} className="input" />}
+    </Labelled>
   );
 }
 
