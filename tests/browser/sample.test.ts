@@ -1,3 +1,4 @@
+import { execFileSync } from 'node:child_process';
 import { readFileSync } from 'node:fs';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import {
@@ -202,6 +203,64 @@ describe('a bad file', () => {
     expect(await page.getByText('bad-amount.csv').count()).toBeGreaterThan(0);
     await page.reload();
     await page.getByText('bad-amount.csv').first().waitFor();
+    await close();
+  });
+});
+
+describe('a production file that says too little', () => {
+  it('is read again the way the owner says', async () => {
+    const { page, base, close } = await enter('owner');
+    await page.goto(`${base}/log`);
+    // One day of hourly figures without a unit: 2 in each of ten hours.
+    const rows = Array.from(
+      { length: 24 },
+      (_, hour) => `2026-11-20 ${String(hour).padStart(2, '0')}:00,${hour >= 7 && hour < 17 ? 2 : 0}`,
+    );
+    const buffer = Buffer.from(['time,roof', ...rows].join('\n'));
+    await page.getByLabel('What the file measures').selectOption('monitor');
+    await page.locator('input[type=file]').nth(1).setInputFiles({ name: 'roof.csv', mimeType: 'text/csv', buffer });
+    const sheet = page.locator('section').filter({ hasText: 'roof.csv' }).last();
+    await sheet.getByRole('button', { name: /how it is read/ }).click();
+    for (const [unit, total] of [
+      ['kWh', /^20 kWh$/],
+      ['Wh', /^0 kWh$/],
+      ['kW', /^20 kWh$/],
+    ] as const) {
+      const open = sheet.getByRole('button', { name: 'Close' });
+      if ((await open.count()) === 0) await sheet.getByRole('button', { name: /how it is read/ }).click();
+      await sheet.getByLabel('Unit').selectOption(unit);
+      await sheet.getByRole('button', { name: 'Read it again this way' }).click();
+      await sheet.locator('b', { hasText: total }).waitFor();
+    }
+    await shot(page, 'mapping');
+    await sheet.getByRole('button', { name: 'Take the file out' }).click();
+    await expect.poll(() => page.getByText('roof.csv').count(), { timeout: 15_000 }).toBe(0);
+    await close();
+  });
+});
+
+describe('the full export', () => {
+  it('is downloaded on the Account screen, and the command line comes to the position on the screen', async () => {
+    const { page, base, close } = await enter('owner');
+    await page.goto(`${base}/account`);
+    const [download] = await Promise.all([
+      page.waitForEvent('download'),
+      page
+        .getByRole('link', { name: /export/i })
+        .first()
+        .click(),
+    ]);
+    const printed = execFileSync(process.execPath, ['--import', 'tsx', 'server/cli/ledger.ts', await download.path()], {
+      encoding: 'utf8',
+      maxBuffer: 64 * 1024 * 1024,
+    });
+    const view = await page.evaluate(
+      async (at) => (await fetch(`/api/households/${at.slice(3)}/position`)).json(),
+      base,
+    );
+    const ledger = JSON.parse(printed);
+    expect(ledger.position.settledToday.amountCents).toBe(view.position.settledToday.amountCents);
+    expect(ledger.position.cashSoFar.amountCents).toBe(view.position.cashSoFar.amountCents);
     await close();
   });
 });
