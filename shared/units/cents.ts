@@ -18,9 +18,7 @@ export function cents(amount: number): Cents {
 
 /** The sum of amounts in cents; zero for none. */
 export function sumCents(amounts: readonly Cents[]): Cents {
-  let total = 0;
-  for (const amount of amounts) total += amount;
-  return cents(total);
+  return cents(amounts.reduce((total: number, amount) => total + amount, 0));
 }
 
 export function addCents(a: Cents, b: Cents): Cents {
