@@ -28,10 +28,12 @@ function loanView({ facts, ledger, today }: HouseholdLedger): MoneyView['loan'] 
     recorded: row.recorded,
     past: row.on <= today,
   }));
+  const payoff = loanPayoff(loan, today);
   return {
     facts: loan,
     paymentCents: levelPayment(loan.principalCents, loan.annualRate, loan.termMonths),
-    payoffCents: loanPayoff(loan, today).amountCents,
+    payoffCents: payoff.amountCents,
+    payoff,
     payoffOn: today,
     paidCents: negateCents(sumOf(ledger.entries, 'loan', true)),
     interestPaidCents: sumCents(schedule.filter((row) => row.past).map((row) => row.interestCents)),

@@ -9,6 +9,7 @@ import {
   mortgageSchema,
 } from '../facts/finance.ts';
 import { costSchema } from '../facts/house.ts';
+import { figureSchema } from '../position/position.ts';
 import { centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
 import { endpoint, HOUSEHOLD, OWNER } from './endpoint.ts';
@@ -32,6 +33,8 @@ export const moneyView = z.object({
       facts: loanSchema,
       paymentCents: centsSchema,
       payoffCents: centsSchema,
+      /** The same with its working. */
+      payoff: figureSchema,
       payoffOn: daySchema,
       paidCents: centsSchema,
       interestPaidCents: centsSchema,

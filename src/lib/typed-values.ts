@@ -2,6 +2,7 @@ import * as z from 'zod/mini';
 import { type Cents, dollarsText, parseDollars } from '#shared/units/cents.ts';
 import { type Day, parseDay } from '#shared/units/day.ts';
 import { kwhText, parseKwh, type Wh } from '#shared/units/energy.ts';
+import { decimal } from './format.ts';
 
 /** Reads what people type for an exact decimal ("$0.1684", ".1684", "1,284.5", "−3") as plain decimal text; null when it is none. */
 export function plainDecimal(typed: string): string | null {
@@ -36,6 +37,11 @@ export function fractionOfPercent(typed: string): string | null {
 /** A fraction ("0.0549") as the percent people write ("5.49"). */
 export function percentOfFraction(fraction: string): string {
   return shifted(fraction, 2);
+}
+
+/** "0.0549" → "5.49%" */
+export function percentWords(fraction: string): string {
+  return `${decimal(percentOfFraction(fraction))}%`;
 }
 
 /** A schema over typed text: what does not read is said in `error`. Empty text passes where `optional`. */

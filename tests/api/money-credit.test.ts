@@ -9,6 +9,7 @@ import { setupApi } from '#shared/api/setup.ts';
 import { cents } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
 import { buildHousehold } from '#tests/support/build-household.ts';
+import { everyWorking } from '#tests/support/every-working.ts';
 import { statementFile } from '#tests/support/paper-files.ts';
 import { setUpFrom } from '#tests/support/set-up.ts';
 import {
@@ -48,6 +49,10 @@ describe('money', () => {
       money.incentive?.earned.reduce((sum, entry) => sum + entry.amountCents, 0),
     );
     expect(money.costsCents).toBe(540_000);
+    expect(money.loan?.payoff.amountCents).toBe(money.loan?.payoffCents);
+    const worked = everyWorking(money);
+    expect(worked.map((one) => one.path)).toContain('loan.payoff');
+    expect(worked.filter((one) => !one.agrees)).toEqual([]);
   });
 
   it('a recorded payment stands in for the scheduled one, and goes again when it is removed', async () => {

@@ -1,6 +1,7 @@
 import type { FacingLine } from '#shared/ledger/cycle.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import { decimal, decimalDollars, money } from '#src/lib/format.ts';
+import { percentWords } from '#src/lib/typed-values.ts';
 
 /** A quantity with its unit where it is not kWh: "498", "$81.27", "4.2 kW", "31 days". */
 export function quantityWords(quantity: string | null, unit: string | null): string {
@@ -30,11 +31,6 @@ function wholeCents(dollars: string): string {
 export function rateWords(rate: string | null, unit: string | null): string {
   if (rate === null || unit === 'cycle') return '';
   return unit === 'USD' ? percentWords(rate) : decimal(rate);
-}
-
-/** "0.031" → "3.1%". */
-export function percentWords(fraction: string): string {
-  return `${decimal(String(Number((Number(fraction) * 100).toFixed(6))))}%`;
 }
 
 /** The verdict between the pages, short enough for its column. */

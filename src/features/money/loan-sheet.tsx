@@ -3,13 +3,14 @@ import type { MoneyView } from '#shared/api/money.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import { dollarsText } from '#shared/units/cents.ts';
 import { fullDate, money } from '#src/lib/format.ts';
+import { percentWords } from '#src/lib/typed-values.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Field } from '#src/ui/field.tsx';
+import { MoneyFigure } from '#src/ui/figure.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { FactsList } from './facts-list.tsx';
 import { LoanSchedule } from './loan-schedule.tsx';
 import { type LoanPaymentValues, readLoanPayment } from './money-values.ts';
-import { percent } from './money-words.ts';
 import { RecordDialog } from './record-dialog.tsx';
 import { RemoveButton } from './remove-button.tsx';
 
@@ -33,14 +34,20 @@ export function LoanSheet({
   return (
     <Sheet
       title="The loan"
-      hint={`${facts.lender === '' ? 'The lender' : facts.lender}, ${money(facts.principalCents)} at ${percent(facts.annualRate)} over ${facts.termMonths} months.`}
+      hint={`${facts.lender === '' ? 'The lender' : facts.lender}, ${money(facts.principalCents)} at ${percentWords(facts.annualRate)} over ${facts.termMonths} months.`}
     >
       <FactsList
         rows={[
           { label: 'Level payment', value: money(loan.paymentCents), hint: 'each month' },
           {
             label: `Payoff on ${fullDate(loan.payoffOn)}`,
-            value: money(loan.payoffCents),
+            value: (
+              <MoneyFigure
+                title={`Payoff on ${fullDate(loan.payoffOn)}`}
+                cents={loan.payoffCents}
+                working={loan.payoff.working}
+              />
+            ),
             hint: 'Principal and accrued interest as computed. The servicer’s own quote counts.',
           },
           { label: 'Paid so far', value: money(loan.paidCents) },

@@ -1,12 +1,7 @@
 import type { MoneyView } from '#shared/api/money.ts';
 import type { InsuranceEndRule } from '#shared/facts/finance.ts';
 import type { CostKind } from '#shared/facts/house.ts';
-import { decimal, fullDate } from '#src/lib/format.ts';
-
-/** "0.0549" → "5.49%" */
-export function percent(fraction: string): string {
-  return `${decimal(String(Number((Number(fraction) * 100).toFixed(6))))}%`;
-}
+import { fullDate } from '#src/lib/format.ts';
 
 export const COST_KINDS: Record<CostKind, string> = {
   signing: 'cash at signing',
