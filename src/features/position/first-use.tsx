@@ -56,7 +56,7 @@ export function FirstUse({ view, household }: { view: PositionView; household: H
       </EmptyState>
       {view.needs.length > 0 && (
         <div className="mt-8 max-w-xl">
-          <NeedsList view={{ ...view, unfinishedSteps: [] }} base={base} canEdit />
+          <NeedsList needs={view.needs} unfinished={[]} base={base} />
         </div>
       )}
     </div>

@@ -14,23 +14,29 @@ const STEP_NAMES: Record<string, string> = {
 };
 
 /** "Needs you": what is wrong first, then what is next, then what would make the figures more complete. */
-export function NeedsList({ view, base, canEdit }: { view: PositionView; base: string; canEdit: boolean }) {
-  const unfinished = canEdit ? view.unfinishedSteps : [];
+export function NeedsList({
+  needs,
+  unfinished,
+  base,
+}: {
+  needs: PositionView['needs'];
+  /** Steps of the set-up left for later; named only where no need speaks of the set-up already. */
+  unfinished: PositionView['unfinishedSteps'];
+  base: string;
+}) {
+  const steps = needs.some((need) => need.key === 'set-up') ? [] : unfinished;
   return (
     <section aria-labelledby="needs-you">
       <h2 id="needs-you" className="mb-3.5">
         Needs you
       </h2>
-      <NeedNotes
-        needs={[...view.needs].sort((a, b) => Number(b.tone === 'bad') - Number(a.tone === 'bad'))}
-        base={base}
-      />
-      {unfinished.length > 0 && (
-        <Note title="Set-up is not finished" to={`${base}/setup/${unfinished[0]}`}>
-          Left out of the figures so far: {listed(unfinished.map((step) => STEP_NAMES[step] ?? step))}.
+      <NeedNotes needs={[...needs].sort((a, b) => Number(b.tone === 'bad') - Number(a.tone === 'bad'))} base={base} />
+      {steps.length > 0 && (
+        <Note title="Set-up is not finished" to={`${base}/setup/${steps[0]}`}>
+          Left out of the figures so far: {listed(steps.map((step) => STEP_NAMES[step] ?? step))}.
         </Note>
       )}
-      {view.needs.length === 0 && unfinished.length === 0 && <p className="hint">Nothing needs you now.</p>}
+      {needs.length === 0 && steps.length === 0 && <p className="hint">Nothing needs you now.</p>}
     </section>
   );
 }

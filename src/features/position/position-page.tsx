@@ -49,7 +49,9 @@ function Standing({
   const phone = usePhone();
   // On a phone what is wrong stands under the sentence, as the list would come after two screens.
   const wrong = view.needs.filter((need) => need.tone === 'bad');
-  const listed = phone ? { ...view, needs: view.needs.filter((need) => need.tone !== 'bad') } : view;
+  const listed = phone ? view.needs.filter((need) => need.tone !== 'bad') : view.needs;
+  const unfinished = household.canEdit ? view.unfinishedSteps : [];
+  const nothingLeft = wrong.length > 0 && listed.length === 0 && unfinished.length === 0;
   return (
     <div className="page">
       <Sentence title="Position" lede={<Lede view={view} lastCycleTo={lastCycleTo} />}>
@@ -81,7 +83,7 @@ function Standing({
       <div className="grid gap-x-[26px] lg:grid-cols-[minmax(0,1fr)_300px]">
         <AddsUpSheet position={position} />
         <div className="mt-8 lg:mt-[48px] lg:pl-1.5">
-          <NeedsList view={listed} base={base} canEdit={household.canEdit} />
+          {!nothingLeft && <NeedsList needs={listed} unfinished={unfinished} base={base} />}
         </div>
       </div>
       <p className="foot">
