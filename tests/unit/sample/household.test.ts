@@ -71,6 +71,10 @@ describe('what the sample’s owner typed', () => {
     const closed = earned.filter(({ to }) => to <= '2026-09-14').reduce((sum, { cents }) => sum + cents, 0);
     expect(sample.money.receipts.reduce((sum, { amountCents }) => sum + amountCents, 0)).toBe(closed);
     expect(sample.money.receipts.length).toBe(9);
-    for (const { on, note } of sample.money.receipts) expect(on > (note?.slice(-10) ?? '9999')).toBe(true);
+    for (const { on, note } of sample.money.receipts) {
+      // "Reads of 14 Aug to 13 Sep 2024": the cheque comes after the last of its reads.
+      const lastRead = /^Reads of \d+ \w{3}(?: \d{4})? to (\d+ \w{3} \d{4})$/.exec(note ?? '')?.[1] ?? '';
+      expect(Date.parse(`${on} UTC`)).toBeGreaterThan(Date.parse(`${lastRead} UTC`));
+    }
   });
 });
