@@ -1,5 +1,5 @@
 import * as z from 'zod/mini';
-import { needSchema } from '../ledger/ledger.ts';
+import { needSchema } from '../ledger/need.ts';
 import { positionSchema } from '../position/position.ts';
 import { daySchema } from '../units/day.ts';
 import { endpoint, HOUSEHOLD } from './endpoint.ts';

@@ -1,5 +1,5 @@
 import { daysBetween } from '../units/day.ts';
-import type { Need } from './ledger.ts';
+import type { Need } from './need.ts';
 import type { NeedsInput } from './needs.ts';
 import { sayDate, sayDollars } from './say.ts';
 

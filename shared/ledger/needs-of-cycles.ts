@@ -2,7 +2,7 @@ import type { Check } from '../reconcile/check.ts';
 import { cents, subtractCents } from '../units/cents.ts';
 import { parseKwh, ZERO_WH } from '../units/energy.ts';
 import type { Cycle } from './cycle.ts';
-import type { Need } from './ledger.ts';
+import type { Need } from './need.ts';
 import type { NeedsInput } from './needs.ts';
 import { sayCount, sayDay, sayGap, sayKwh, sayMoney, sayMonth } from './say.ts';
 

@@ -4,7 +4,7 @@ import type { HouseholdFacts } from '../facts/household.ts';
 import type { Position } from '../position/position.ts';
 import type { Day } from '../units/day.ts';
 import type { AssembledCycle } from './cycles.ts';
-import type { Need } from './ledger.ts';
+import type { Need } from './need.ts';
 import { carriedCredit, missingFacts, owedIncentive } from './needs-of-books.ts';
 import { differingCycles, openCycles, productionGaps } from './needs-of-cycles.ts';
 import { nextStatement } from './next-statement.ts';

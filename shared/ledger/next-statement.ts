@@ -1,5 +1,5 @@
 import { addDays, daysBetween } from '../units/day.ts';
-import type { Need } from './ledger.ts';
+import type { Need } from './need.ts';
 import type { NeedsInput } from './needs.ts';
 import { sayDate, sayDay, sayMonth } from './say.ts';
 
