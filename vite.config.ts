@@ -11,12 +11,22 @@ export default defineConfig({
     // The content security policy allows no data: addresses, so nothing may be inlined.
     assetsInlineLimit: 0,
     manifest: true,
+    // A browser that does not preload modules asks for them a little later; a polyfill would cost every other one.
+    modulePreload: { polyfill: false },
   },
   server: {
     host: '127.0.0.1',
     proxy: { '/api': `http://127.0.0.1:${apiPort}` },
   },
   test: {
+    // `npm run coverage`: the two folders that decide what a bill should have been are to have every branch tried.
+    coverage: {
+      provider: 'v8',
+      include: ['shared/settlement/**/*.ts', 'shared/reconcile/**/*.ts'],
+      reporter: ['text', 'json'],
+      reportOnFailure: true,
+      thresholds: { 'shared/settlement/**': { branches: 100 }, 'shared/reconcile/**': { branches: 100 } },
+    },
     projects: [
       { extends: true, test: { name: 'unit', include: ['tests/unit/**/*.test.{ts,tsx}'] } },
       { extends: true, test: { name: 'standards', include: ['tests/standards/**/*.test.ts'] } },

@@ -1,14 +1,19 @@
-import { createContext, type ReactNode, useContext, useEffect, useRef, useState } from 'react';
-import type { Source, Working } from '#shared/working.ts';
-import { decimal, decimalDollars } from '#src/lib/format.ts';
+import { createContext, lazy, type ReactNode, Suspense, useContext, useEffect, useRef, useState } from 'react';
+import type { Working } from '#shared/working.ts';
+import type { ShownWorking } from './working-body.tsx';
 
-type Shown = { title: string; figure: string; working: Working };
-const ShowWorking = createContext<(shown: Shown) => void>(() => {});
+const loadBody = () => import('./working-body.tsx');
+const WorkingBody = lazy(async () => ({ default: (await loadBody()).WorkingBody }));
+const ShowWorking = createContext<(shown: ShownWorking) => void>(() => {});
 
 /** Holds the one panel in which any figure shows its working: a dialog on a desk, a sheet on a phone. */
 export function WorkingProvider({ children }: { children: ReactNode }) {
-  const [shown, setShown] = useState<Shown | null>(null);
+  const [shown, setShown] = useState<ShownWorking | null>(null);
   const dialog = useRef<HTMLDialogElement>(null);
+  // The first page needs no working; it is here by the time a figure is pressed.
+  useEffect(() => {
+    void loadBody().catch(() => {});
+  }, []);
   useEffect(() => {
     if (shown) dialog.current?.showModal();
   }, [shown]);
@@ -25,7 +30,11 @@ export function WorkingProvider({ children }: { children: ReactNode }) {
           if (event.target === dialog.current) dialog.current?.close();
         }}
       >
-        {shown && <WorkingBody shown={shown} close={() => dialog.current?.close()} />}
+        {shown && (
+          <Suspense fallback={<div className="bone h-40" aria-busy="true" />}>
+            <WorkingBody shown={shown} close={() => dialog.current?.close()} />
+          </Suspense>
+        )}
       </dialog>
     </ShowWorking>
   );
@@ -55,84 +64,4 @@ export function FigureButton({
       {text}
     </button>
   );
-}
-
-const BASIS: Record<Working['basis'], string> = {
-  billed: 'As billed.',
-  metered: 'Measured by a meter.',
-  computed: 'Computed.',
-  estimated: 'An estimate.',
-  entered: 'Entered by a person.',
-};
-
-function WorkingBody({ shown, close }: { shown: Shown; close: () => void }) {
-  const { working } = shown;
-  return (
-    <>
-      <div className="flex items-baseline justify-between gap-6">
-        <h2 id="working-title">{shown.title}</h2>
-        <button type="button" className="link min-h-11" onClick={close}>
-          Close
-        </button>
-      </div>
-      <p className="mt-1 text-2xl font-semibold">{shown.figure}</p>
-      <p className="mt-2">{working.words}</p>
-      <p className="hint">{BASIS[working.basis]}</p>
-      {working.inputs.map((input) => (
-        <InputRows key={input.name} input={input} />
-      ))}
-    </>
-  );
-}
-
-/** How many figures of a long list are shown at first. */
-const SHORT_LIST = 40;
-
-function InputRows({ input }: { input: Working['inputs'][number] }) {
-  const [all, setAll] = useState(false);
-  const values = Array.isArray(input.value) ? input.value : [input.value];
-  const shownValues = all ? values : values.slice(0, SHORT_LIST);
-  return (
-    <div className="mt-3 border-t border-rule pt-2">
-      <div className="flex justify-between gap-5">
-        <span>{input.label}</span>
-        {values.length === 1 && <span className="whitespace-nowrap">{withUnit(values[0] ?? '', input.unit)}</span>}
-      </div>
-      {values.length !== 1 && (
-        <ul className="mt-1 grid grid-cols-2 gap-x-6 text-right sm:grid-cols-3">
-          {shownValues.map((value, index) => (
-            // biome-ignore lint/suspicious/noArrayIndexKey: the list never changes while it is shown
-            <li key={index}>{withUnit(value, input.unit)}</li>
-          ))}
-        </ul>
-      )}
-      {!all && values.length > SHORT_LIST && (
-        <button type="button" className="link" onClick={() => setAll(true)}>
-          Show all {values.length}
-        </button>
-      )}
-      <p className="hint">{sourceWords(input.source)}</p>
-    </div>
-  );
-}
-
-function withUnit(value: string, unit: string): string {
-  if (unit === 'USD') return decimalDollars(value);
-  if (unit === 'USD/kWh') return `${decimalDollars(value)} per kWh`;
-  const text = decimal(value);
-  return unit === '' || unit === 'fraction' ? text : `${text} ${unit}`;
-}
-
-/** Where an input comes from, in words. */
-export function sourceWords(source: Source): string {
-  switch (source.kind) {
-    case 'document':
-      return `${source.fileName}, ${source.place}`;
-    case 'typed':
-      return `Typed by ${source.by} on ${source.on}`;
-    case 'rule':
-      return source.version === '' ? source.name : `${source.name}, ${source.version}`;
-    case 'figure':
-      return `From ${source.name}`;
-  }
 }
