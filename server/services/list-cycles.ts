@@ -1,6 +1,8 @@
 import type { CycleRow } from '#shared/api/cycles.ts';
 import { BOOKS, type BookId, type Entry } from '#shared/books/book.ts';
 import type { Cycle } from '#shared/ledger/cycle.ts';
+import { owedOf } from '#shared/ledger/owed.ts';
+import type { OwedList } from '#shared/ledger/owed-list.ts';
 import { type Cents, parseDollars, sumCents } from '#shared/units/cents.ts';
 import { parseKwh, sumWh, type Wh } from '#shared/units/energy.ts';
 import type { Deps } from '../deps.ts';
@@ -64,12 +66,16 @@ export function cycleRowOf(cycle: Cycle): CycleRow {
   };
 }
 
-/** Every cycle as a row, oldest first, and the books that hold anything. */
+/** Every cycle as a row, oldest first, the books that hold anything, and what stands between the house and the utility. */
 export function listCycles(
   deps: Pick<Deps, 'db' | 'clock'>,
   householdId: string,
-): { rows: CycleRow[]; books: BookId[] } {
+): { rows: CycleRow[]; books: BookId[]; owed: OwedList } {
   const { ledger } = ledgerOf(deps, householdId);
   const used = new Set(ledger.entries.map((entry) => entry.book));
-  return { rows: ledger.cycles.map(cycleRowOf), books: BOOKS.filter((book) => used.has(book)) };
+  return {
+    rows: ledger.cycles.map(cycleRowOf),
+    books: BOOKS.filter((book) => used.has(book)),
+    owed: owedOf(ledger.cycles),
+  };
 }

@@ -2,6 +2,7 @@ import * as z from 'zod/mini';
 import { bookId } from '../books/book.ts';
 import { acceptedDifference, statementSchema } from '../facts/papers.ts';
 import { cycleSchema, cycleState } from '../ledger/cycle.ts';
+import { owedList } from '../ledger/owed-list.ts';
 import { centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
 import { whSchema } from '../units/energy.ts';
@@ -71,7 +72,8 @@ export const cyclesApi = {
     method: 'GET',
     path: at,
     access: HOUSEHOLD,
-    response: z.object({ rows: z.array(cycleRow), books: z.array(bookId) }),
+    /** `owed`: what the utility owes or is owed, with its causes. */
+    response: z.object({ rows: z.array(cycleRow), books: z.array(bookId), owed: owedList }),
   }),
   one: endpoint({ method: 'GET', path: `${at}/:to`, access: HOUSEHOLD, response: cycleView }),
   /** A paper a cycle rests on, as it came. */

@@ -4,6 +4,7 @@ import { type ReactNode, useId, useMemo, useState } from 'react';
 import { useSearchParams } from 'react-router-dom';
 import type { CycleRow } from '#shared/api/cycles.ts';
 import { cycleState } from '#shared/ledger/cycle.ts';
+import type { OwedList } from '#shared/ledger/owed-list.ts';
 import { saveText, toCsv } from '#src/lib/csv.ts';
 import { type HouseholdContext, useHousehold } from '#src/lib/household.ts';
 import { Button, ButtonLink } from '#src/ui/button.tsx';
@@ -15,6 +16,7 @@ import { CYCLE_COLUMNS, FIRST_COLUMNS, FIRST_COLUMNS_PHONE } from './cycle-colum
 import { type CycleFilter, countByState, filterCycles, yearsOf } from './cycle-rows.ts';
 import { cyclesQuery } from './cycles-queries.ts';
 import { CyclesTable, useCyclesTable } from './cycles-table.tsx';
+import { OwedSheet } from './owed-sheet.tsx';
 
 /** Cycles: every billing cycle in one ruled table. */
 export function CyclesPage() {
@@ -23,10 +25,10 @@ export function CyclesPage() {
   if (list.isPending) return <PageSkeleton />;
   if (list.isError) return <ErrorState error={list.error} retry={() => list.refetch()} />;
   if (list.data.rows.length === 0) return <FirstUse household={household} />;
-  return <Cycles rows={list.data.rows} household={household} />;
+  return <Cycles rows={list.data.rows} owed={list.data.owed} household={household} />;
 }
 
-function Cycles({ rows, household }: { rows: CycleRow[]; household: HouseholdContext }) {
+function Cycles({ rows, owed, household }: { rows: CycleRow[]; owed: OwedList; household: HouseholdContext }) {
   const base = `/h/${household.id}`;
   const phone = usePhone();
   const [search, setSearch] = useSearchParams();
@@ -132,6 +134,7 @@ function Cycles({ rows, household }: { rows: CycleRow[]; household: HouseholdCon
           leaves out cycles without one.
         </p>
       </section>
+      <OwedSheet owed={owed} base={base} />
     </div>
   );
 }
