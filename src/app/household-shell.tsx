@@ -20,6 +20,7 @@ function placesFor(role: HouseholdContext['role']): Place[] {
     { to: 'cycles', label: 'Cycles' },
     { to: 'money', label: 'Money' },
     credit,
+    { to: 'plan', label: 'Rate plan' },
     { to: 'setup', label: 'Set-up' },
   ];
   return role === 'owner' ? [...shared, { to: 'people', label: 'People' }] : shared;

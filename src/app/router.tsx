@@ -24,6 +24,7 @@ const householdRoutes: RouteObject[] = [
     path: 'credit',
     lazy: async () => ({ Component: (await import('#src/features/credit/credit-page.tsx')).CreditPage }),
   },
+  { path: 'plan', lazy: async () => ({ Component: (await import('#src/features/plan/plan-page.tsx')).PlanPage }) },
   { path: 'setup', lazy: async () => ({ Component: (await import('#src/features/setup/setup-page.tsx')).SetupPage }) },
   {
     path: 'setup/:step',

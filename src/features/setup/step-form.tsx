@@ -50,7 +50,7 @@ export function StepForm<T extends FieldValues, B>({
   );
   const summary = [
     ...refusals.map((text) => ({ text })),
-    ...wrong.map(({ path, text }) => ({ text, pick: () => form.setFocus(path as Path<T>) })),
+    ...wrong.map(({ path, text }) => ({ text, pick: () => focusOn(path, () => form.setFocus(path as Path<T>)) })),
   ];
   return (
     <form onSubmit={submit} noValidate>
@@ -70,6 +70,13 @@ export function StepForm<T extends FieldValues, B>({
       )}
     </form>
   );
+}
+
+/** Fields the form library does not hold are found by their name. */
+function focusOn(path: string, otherwise: () => void): void {
+  const field = document.getElementsByName(path)[0];
+  if (field) field.focus();
+  else otherwise();
 }
 
 function nextOf(householdId: string, step: SetupStep): string {

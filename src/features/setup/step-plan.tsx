@@ -3,11 +3,11 @@ import { useFieldArray, useForm } from 'react-hook-form';
 import { type SetupView, setupApi } from '#shared/api/setup.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { fieldValue, textOf } from '#src/lib/typed-values.ts';
-import { Field, TextArea } from '#src/ui/field.tsx';
+import { Field } from '#src/ui/field.tsx';
+import { emptyEntry, entryOf, planOfEntry } from '#src/ui/plan-form/plan-entry.ts';
+import { PlanEntryFields } from '#src/ui/plan-form/plan-entry-fields.tsx';
 import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
-import { emptyEntry, entryOf, openingWith, type PlanEntries, planEntries, planOfEntry } from './plan-entries.ts';
-import { planOf } from './plan-form.ts';
-import { PlanQuestions } from './plan-questions.tsx';
+import { openingWith, type PlanEntries, planEntries } from './plan-entries.ts';
 import { StepForm } from './step-form.tsx';
 
 export function PlanStep({ view }: { view: SetupView }) {
@@ -31,7 +31,7 @@ export function PlanStep({ view }: { view: SetupView }) {
   const watched = form.watch('plans');
   const several = plans.fields.length > 1;
   const first = watched[0];
-  const unit = first?.written === 'questions' ? (first.form.exportRule === 'carried' ? 'kWh' : '$') : '';
+  const unit = first?.written === 'questions' ? (first.form.banks[0]?.unit === 'kWh' ? 'kWh' : '$') : '';
   return (
     <StepForm
       step="plan"
@@ -47,56 +47,15 @@ export function PlanStep({ view }: { view: SetupView }) {
       {plans.fields.map((row, index) => {
         const one = watched[index];
         const body = one && (
-          <>
-            <Field
-              label="Holds from"
-              hint="It starts with the first cycle that begins on or after this day; cycles before the first plan use the first."
-              type="date"
-              className="max-w-[220px]"
-              error={errors.plans?.[index]?.from?.message}
-              {...form.register(`plans.${index}.from`, {
-                onChange: (event: { target: { value: string } }) => {
-                  // Prices have to hold from the plan's first day; later ones than that cannot be the first.
-                  const first = form.getValues(`plans.${index}.form.prices.0.from`);
-                  if (first === '' || event.target.value < first) {
-                    form.setValue(`plans.${index}.form.prices.0.from`, event.target.value);
-                  }
-                },
-              })}
-            />
-            {one.written === 'questions' ? (
-              <PlanQuestions form={form} index={index} />
-            ) : (
-              <TextArea
-                label="The plan, written as JSON"
-                hint="This plan says more than the questions can. It is kept as it is; change or paste it here."
-                rows={16}
-                spellCheck={false}
-                style={{ fontFamily: 'ui-monospace, monospace', fontSize: '14px' }}
-                error={errors.plans?.[index]?.json?.message}
-                {...form.register(`plans.${index}.json`)}
-              />
-            )}
-            <p className="mt-4">
-              <button
-                type="button"
-                className="link hint min-h-11"
-                onClick={() => {
-                  if (one.written === 'questions') {
-                    form.setValue(`plans.${index}.json`, JSON.stringify(planOf(one.form, timeZone), null, 2));
-                    form.setValue(`plans.${index}.written`, 'json', { shouldDirty: true });
-                  } else {
-                    form.setValue(`plans.${index}.written`, 'questions', { shouldDirty: true });
-                  }
-                }}
-              >
-                {one.written === 'questions' ? 'Write this plan as JSON instead' : 'Answer questions instead'}
-              </button>
-            </p>
-            {one.withoutRoof !== '' && (
-              <p className="hint">The plan this house would have without a roof is stated too, and kept.</p>
-            )}
-          </>
+          <PlanEntryFields
+            entry={one}
+            onChange={(entry) =>
+              form.setValue(`plans.${index}`, entry, { shouldDirty: true, shouldValidate: form.formState.isSubmitted })
+            }
+            timeZone={timeZone}
+            showAll={form.formState.submitCount > 0}
+            prefix={`plans.${index}`}
+          />
         );
         return several ? (
           <FormRow key={row.id} title={`Plan ${index + 1}`} onRemove={() => plans.remove(index)}>

@@ -1,0 +1,238 @@
+import { Choices, Field } from '../field.tsx';
+import { Columns } from '../rows.tsx';
+import { Tick, Ticks } from '../ticks.tsx';
+import { withoutCharge } from './change-charges.ts';
+import { changed, toggled, usePlanEdit, without } from './edit.ts';
+import type { ChargeForm } from './plan-form.ts';
+import { TickList, WordSelect } from './small-fields.tsx';
+import { BASIS_WORDS, KIND_WORDS, NETTING_WORDS } from './words.ts';
+
+const ENERGY: readonly ChargeForm['basis'][] = ['import', 'export', 'production', 'load'];
+
+function wordsOf<T extends string>(words: Record<T, string>): (readonly [T, string])[] {
+  return (Object.entries(words) as [T, string][]).map(([value, text]) => [value, text] as const);
+}
+
+/** The questions of one charge. Its prices stand further down, by date. */
+export function ChargeFields({ charge, at }: { charge: ChargeForm; at: number }) {
+  const { form, set, text, error, name } = usePlanEdit();
+  const path = `charges.${at}`;
+  const put = (changes: Partial<ChargeForm>) => set({ charges: changed(form.charges, at, changes) });
+  const byKwh = ENERGY.includes(charge.basis);
+  const before = form.charges.slice(0, at).map(({ id, label }) => ({ value: id, label }));
+  return (
+    <>
+      <Columns>
+        <Field
+          label="Name, as the bill prints it"
+          {...text(`${path}.label`, charge.label, (label) => put({ label }))}
+        />
+        <WordSelect label="It is" value={charge.kind} words={wordsOf(KIND_WORDS)} onChange={(kind) => put({ kind })} />
+        <WordSelect
+          label="It is charged on"
+          value={charge.basis}
+          words={wordsOf(BASIS_WORDS)}
+          onChange={(basis) =>
+            put({
+              basis,
+              per: basis === 'floor' ? charge.per || 'cycle' : '',
+              kWOf: basis === 'kW' ? charge.kWOf || 'dc' : '',
+              ...(ENERGY.includes(basis) ? {} : { byPeriod: false, tiers: [] }),
+            })
+          }
+        />
+        {(charge.basis === 'import' || charge.basis === 'export') && (
+          <WordSelect
+            label="What you send out reduces it"
+            value={charge.netting}
+            words={[['', 'as the plan says below'], ...wordsOf(NETTING_WORDS)]}
+            onChange={(netting) => put({ netting })}
+          />
+        )}
+        {charge.basis === 'kW' && (
+          <WordSelect
+            label="Which kW"
+            error={error(`${path}.kWOf`)}
+            value={charge.kWOf}
+            words={[
+              ['dc', 'of the modules (DC)'],
+              ['ac', 'of the inverter (AC)'],
+              ['demand', 'the house’s highest demand'],
+            ]}
+            onChange={(kWOf) => put({ kWOf })}
+          />
+        )}
+        {charge.basis === 'floor' && (
+          <WordSelect
+            label="The least amount is"
+            value={charge.per}
+            words={[
+              ['cycle', 'for each bill'],
+              ['day', 'for each day'],
+            ]}
+            onChange={(per) => put({ per })}
+          />
+        )}
+      </Columns>
+      {charge.kind === 'fixed' && (charge.basis === 'cycle' || charge.basis === 'day') && (
+        <Choices
+          legend={`${charge.label || 'It'} is`}
+          name={name(`${path}.per`)}
+          value={charge.basis}
+          onChange={(basis) => put({ basis: basis === 'day' ? 'day' : 'cycle' })}
+          options={[
+            { value: 'cycle', label: 'the same on every bill' },
+            { value: 'day', label: 'by the day' },
+          ]}
+        />
+      )}
+      {(charge.basis === 'percent' || charge.basis === 'floor') && (
+        <TickList
+          legend={charge.basis === 'percent' ? 'It is on' : 'It tops up'}
+          hint={before.length === 0 ? 'There is no charge above it yet.' : undefined}
+          error={error(`${path}.on`)}
+          options={before}
+          ticked={charge.on}
+          onChange={(id, on) => put({ on: inOrder(toggled(charge.on, id, on), before) })}
+        />
+      )}
+      {charge.basis === 'percent' && (
+        <Choices
+          legend="It is worked out"
+          name={name(`${path}.afterCredits`)}
+          value={charge.afterCredits ? 'after' : 'before'}
+          onChange={(value) => put({ afterCredits: value === 'after' })}
+          options={[
+            { value: 'after', label: 'on what credits leave to pay' },
+            { value: 'before', label: 'on the charges before credits' },
+          ]}
+        />
+      )}
+      {(byKwh || form.seasons.length > 0) && (
+        <Ticks>
+          {form.seasons.length > 0 && (
+            <Tick
+              label="Its price differs by season"
+              checked={charge.bySeason}
+              onChange={(bySeason) => put({ bySeason })}
+            />
+          )}
+          {byKwh && form.periods.length > 0 && (
+            <Tick
+              label="Its price differs by time of day"
+              checked={charge.byPeriod}
+              onChange={(byPeriod) => put({ byPeriod })}
+            />
+          )}
+          {byKwh && (
+            <Tick
+              label="Its price rises or falls with the kWh used (tiers)"
+              checked={charge.tiers.length > 0}
+              onChange={(on) =>
+                put({ tiers: on ? [{ from: form.prices[0]?.from ?? '', season: '', per: 'cycle', limits: '' }] : [] })
+              }
+            />
+          )}
+          <Tick
+            label="It is charged only because of the roof"
+            checked={charge.solarOnly}
+            onChange={(solarOnly) => put({ solarOnly })}
+          />
+        </Ticks>
+      )}
+      {charge.tiers.length > 0 && <Tiers charge={charge} path={path} put={put} />}
+      <p className="mt-3 flex flex-wrap gap-x-5">
+        {at > 0 && (
+          <button
+            type="button"
+            className="link hint min-h-11"
+            onClick={() => {
+              const charges = without(form.charges, at);
+              charges.splice(at - 1, 0, charge);
+              set({ charges });
+            }}
+          >
+            Move {charge.label || 'this charge'} up
+          </button>
+        )}
+        <button type="button" className="link hint min-h-11" onClick={() => set(withoutCharge(form, charge.id))}>
+          Take out {charge.label || 'this charge'}
+        </button>
+      </p>
+    </>
+  );
+}
+
+function inOrder(ids: string[], options: readonly { value: string }[]): string[] {
+  return options.map(({ value }) => value).filter((id) => ids.includes(id));
+}
+
+function Tiers({
+  charge,
+  path,
+  put,
+}: {
+  charge: ChargeForm;
+  path: string;
+  put: (changes: Partial<ChargeForm>) => void;
+}) {
+  const { form, text } = usePlanEdit();
+  return (
+    <>
+      {charge.tiers.map((row, index) => {
+        const change = (changes: Partial<typeof row>) => put({ tiers: changed(charge.tiers, index, changes) });
+        return (
+          // biome-ignore lint/suspicious/noArrayIndexKey: a row of limits has no name but its place
+          <div key={index} className="grid items-end gap-x-4 sm:grid-cols-[repeat(auto-fit,minmax(150px,1fr))]">
+            <Field
+              label="Tiers end at"
+              unit="kWh"
+              hint={index === 0 ? 'Every tier but the last, as 500; 1000' : undefined}
+              {...text(`${path}.tiers.${index}.limits`, row.limits, (limits) => change({ limits }))}
+            />
+            <WordSelect
+              label="Counted"
+              value={row.per}
+              words={[
+                ['cycle', 'for each bill'],
+                ['day', 'for each day of it'],
+              ]}
+              onChange={(per) => change({ per })}
+            />
+            {form.seasons.length > 0 && (
+              <WordSelect
+                label="In"
+                value={row.season}
+                words={[['', 'every season'], ...form.seasons.map(({ id, name }) => [id, name] as const)]}
+                onChange={(season) => change({ season })}
+              />
+            )}
+            <Field
+              label="From the day"
+              type="date"
+              {...text(`${path}.tiers.${index}.from`, row.from, (from) => change({ from }))}
+            />
+          </div>
+        );
+      })}
+      <p className="flex flex-wrap gap-x-5">
+        <button
+          type="button"
+          className="link hint mt-2 min-h-11"
+          onClick={() => put({ tiers: [...charge.tiers, { from: '', season: '', per: 'cycle', limits: '' }] })}
+        >
+          Add other tiers
+        </button>
+        {charge.tiers.length > 1 && (
+          <button
+            type="button"
+            className="link hint mt-2 min-h-11"
+            onClick={() => put({ tiers: without(charge.tiers, charge.tiers.length - 1) })}
+          >
+            Take out the last ones
+          </button>
+        )}
+      </p>
+    </>
+  );
+}
