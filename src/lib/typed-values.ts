@@ -51,6 +51,7 @@ function typedText(reads: (text: string) => boolean, error: string, optional: bo
 
 const positive = (text: string) => (parseDollars(text) ?? 0) > 0;
 const notNegative = (text: string) => (parseDollars(text) ?? -1) >= 0;
+export const NUMBER_FAULT = 'Write a number such as 498 or 0.5.';
 export const MONEY_FAULT = 'Write an amount in dollars such as 1,204.50.';
 
 /** Form fields as text. Each says what to write when it does not read. */
@@ -65,6 +66,8 @@ export const typed = {
   dayOrNone: typedText((text) => parseDay(text) !== null, 'Choose a date, or leave it empty.', true),
   rate: typedText((text) => plainDecimal(text) !== null, 'Write a price in dollars such as 0.1684.', false),
   rateOrNone: typedText((text) => plainDecimal(text) !== null, 'Write a price in dollars such as 0.1684.', true),
+  number: typedText((text) => plainDecimal(text) !== null, NUMBER_FAULT, false),
+  numberOrNone: typedText((text) => plainDecimal(text) !== null, NUMBER_FAULT, true),
   percent: typedText((text) => fractionOfPercent(text) !== null, 'Write a percent such as 5.49.', false),
   percentOrNone: typedText((text) => fractionOfPercent(text) !== null, 'Write a percent such as 5.49.', true),
 };

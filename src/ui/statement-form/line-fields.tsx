@@ -56,7 +56,7 @@ function LineRow({ form, index, onRemove }: { form: Form; index: number; onRemov
   return (
     <fieldset className="min-w-0 border-t border-rule pt-1 pb-3">
       <legend className="visually-hidden">Line {index + 1}</legend>
-      <div className="grid grid-cols-2 items-end gap-x-4 sm:grid-cols-3 lg:grid-cols-[2fr_1.3fr_1fr_0.9fr_1fr_1fr]">
+      <div className="grid grid-cols-2 items-end gap-x-4 sm:grid-cols-3 lg:grid-cols-[1.6fr_1.85fr_0.9fr_0.8fr_0.9fr_0.95fr]">
         <Field label="Label" error={errors?.label?.message} {...form.register(`${at}.label`)} />
         <SelectField label="Kind" {...form.register(`${at}.kind`)}>
           {(KINDS.includes(kind) ? KINDS : [...KINDS, kind]).map((one) => (

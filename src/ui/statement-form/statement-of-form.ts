@@ -32,7 +32,7 @@ export function formOfStatement(body: StatementBody): StatementFormValues {
     })),
     banks: body.banks.map((bank) => ({
       bank: bank.bank,
-      label: bank.bank,
+      label: bankLabel(body, bank.bank),
       unit: bank.unit,
       open: textOf.text(bank.open),
       close: textOf.text(bank.close),
@@ -43,6 +43,13 @@ export function formOfStatement(body: StatementBody): StatementFormValues {
     due: textOf.cents(body.amountDueCents),
     reason: '',
   };
+}
+
+/** A bank by the name its own line has on the statement, or, where it is the only one, by that of the credit used; else its id. */
+function bankLabel(body: StatementBody, id: string): string {
+  const own = body.lines.find((line) => line.component === id);
+  const used = body.banks.length === 1 ? body.lines.find((line) => line.kind === 'credit') : undefined;
+  return (own ?? used)?.label ?? id;
 }
 
 /** The statement of a form that has passed its schema. Lines and reads left empty are not of it. */

@@ -1,7 +1,7 @@
 import * as z from 'zod/mini';
 import { printedLine, readChannel } from '#shared/facts/papers.ts';
 import { lineUnit } from '#shared/settlement/settlement.ts';
-import { MONEY_FAULT, typed, typedWhole } from '#src/lib/typed-values.ts';
+import { MONEY_FAULT, NUMBER_FAULT, typed, typedWhole } from '#src/lib/typed-values.ts';
 
 const text = z.string();
 /** The row of the file a value was read from; null when typed. It goes with its value, whatever is taken out around it. */
@@ -14,10 +14,10 @@ const readRow = z
     /** Empty where the read has the dates of the cycle. */
     from: typed.dayOrNone,
     to: typed.dayOrNone,
-    previous: typed.kwhOrNone,
-    current: typed.kwhOrNone,
+    previous: typed.numberOrNone,
+    current: typed.numberOrNone,
     dials: typedWhole(3, 9),
-    multiplier: typed.rate,
+    multiplier: typed.number,
     type: z.enum(['actual', 'estimated']),
     row,
   })
@@ -28,7 +28,7 @@ const readRow = z
       path: ['meter'],
     }),
     z.refine((read) => isUnread(read) || read.previous.trim() !== '', {
-      error: 'Write kWh as a number such as 498.',
+      error: NUMBER_FAULT,
       path: ['previous'],
     }),
     z.refine((read) => read.from === '' || read.to === '' || read.from < read.to, {
@@ -42,7 +42,7 @@ const lineRow = z
     component: z.nullable(text),
     kind: printedLine.shape.kind,
     label: text.check(z.trim(), z.minLength(1, { error: 'Name the line as printed.' }), z.maxLength(160)),
-    quantity: typed.rateOrNone,
+    quantity: typed.numberOrNone,
     unit: z.union([lineUnit, z.literal('')]),
     rate: typed.rateOrNone,
     amount: typed.moneyOrNone,
@@ -55,8 +55,8 @@ const bankRow = z.object({
   bank: text,
   label: text,
   unit: z.enum(['kWh', 'USD']),
-  open: typed.rateOrNone,
-  close: typed.rateOrNone,
+  open: typed.numberOrNone,
+  close: typed.numberOrNone,
   row,
 });
 
