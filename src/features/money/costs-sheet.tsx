@@ -88,7 +88,7 @@ export function CostsSheet({
             <th scope="row">Paid</th>
             <td />
             <td />
-            <td data-label="Paid">
+            <td data-label="In all">
               <Money cents={negateCents(view.costsCents)} />
             </td>
             {canEdit && <td className="no-print" />}
@@ -97,7 +97,7 @@ export function CostsSheet({
             <th scope="row">Received</th>
             <td />
             <td />
-            <td data-label="Received">
+            <td data-label="In all">
               <Money cents={view.incomeCents} />
             </td>
             {canEdit && <td className="no-print" />}
