@@ -47,7 +47,7 @@ function attemptOver(run: readonly Place[]): Attempt[] {
     run.map((place) => {
       const totals: Totals = {};
       for (const channel of estimated) totals[channel] = billedWh(place, channel);
-      const words = `The ${sayList(estimated)} read of ${first} was estimated and made up for by the read of ${until.join()}; priced on the actual reads, these cycles come to something else.`;
+      const words = `The ${sayList(estimated)} read of ${first} was estimated; the read of ${until.join()} made up for it.`;
       const usage = withTotals(place.cycle.usage, totals);
       return { place, edit: edit('estimated', { usage }, words, { channels: estimated.join(', ') }) };
     }),

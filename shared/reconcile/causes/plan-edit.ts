@@ -28,6 +28,13 @@ export function eachAndAll<Item>(items: readonly Item[]): Item[][] {
   return [...items.map((item) => [item]), ...(items.length > 1 ? [[...items]] : [])];
 }
 
+/** Every choice of one or more of a few items, the smaller first. */
+export function subsets<Item>(items: readonly Item[]): Item[][] {
+  let made: Item[][] = [[]];
+  for (const item of items) made = [...made, ...made.map((chosen) => [...chosen, item])];
+  return made.filter((chosen) => chosen.length > 0).sort((a, b) => a.length - b.length);
+}
+
 /** "Energy", "Energy and Delivery", "Energy, Delivery and Supply". */
 export function sayList(names: readonly string[]): string {
   const last = names.slice(-1).join('');

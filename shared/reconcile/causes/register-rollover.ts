@@ -1,16 +1,19 @@
 import { sayKwh } from '../../ledger/say.ts';
+import { isSeen } from './channels-seen.ts';
 import { type Edit, edit, hypothesis, type Place } from './edit.ts';
 import { channelsOf, energyOf, plainDifference, readKwh, withTotals } from './meter-reads.ts';
-import { eachAndAll, sayList } from './plan-edit.ts';
+import { sayList, subsets } from './plan-edit.ts';
 
 /** The dials passed all nines, and the difference was taken as it stands (net-metering.md §4, "dial rollover"). */
 export const registerRollover = hypothesis('registerRollover', editsOf);
 
-function editsOf({ cycle: { reads, usage } }: Place): Edit[] {
-  const turned = channelsOf(reads).filter((channel) =>
-    reads.some((read) => read.channel === channel && plainDifference(read).lt(0)),
+function editsOf({ cycle }: Place): Edit[] {
+  const { reads, usage } = cycle;
+  const turned = channelsOf(reads).filter(
+    (channel) =>
+      isSeen(cycle, channel) && reads.some((read) => read.channel === channel && plainDifference(read).lt(0)),
   );
-  return eachAndAll(turned).map((channels) => {
+  return subsets(turned).map((channels) => {
     const billed = channels.map((channel) => ({
       channel,
       trueWh: energyOf(reads, channel, readKwh),

@@ -1,9 +1,10 @@
 import type { CycleUsage } from '../../settlement/settlement.ts';
 import { Exact, roundToWh } from '../../units/rate.ts';
 import type { MeterChannel } from './cause.ts';
+import { isSeen } from './channels-seen.ts';
 import { type Edit, edit, hypothesis, type Place } from './edit.ts';
 import { channelsOf, dialDifference, scaledWh, type Totals, totalOf, withFlows, withTotals } from './meter-reads.ts';
-import { eachAndAll, sayList } from './plan-edit.ts';
+import { sayList, subsets } from './plan-edit.ts';
 
 /** Ratios of the transformers in front of a meter: the multipliers of net-metering.md §3, "difference × 10, 20, 40 …". */
 const RATIOS = ['10', '20', '40', '80', '0.1', '0.05', '0.025', '0.0125'];
@@ -16,7 +17,8 @@ export const wrongMultiplier = hypothesis('wrongMultiplier', editsOf);
 
 function editsOf(place: Place): Edit[] {
   const { reads, usage } = place.cycle;
-  return eachAndAll(reads.length > 0 ? turnedByReads(place) : turnedByTotals(usage)).flatMap((turned) => {
+  const known = reads.length > 0 ? turnedByReads(place) : turnedByTotals(usage);
+  return subsets(known.filter(({ channel }) => isSeen(place.cycle, channel))).flatMap((turned) => {
     const meters = [...new Set(turned.flatMap((one) => one.meters))];
     return takenFor(meters)
       .filter((taken) => turned.every((one) => mayBeBilled(place, one, taken)))
