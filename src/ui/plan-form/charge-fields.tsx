@@ -108,38 +108,43 @@ export function ChargeFields({ charge, at }: { charge: ChargeForm; at: number })
           ]}
         />
       )}
-      {(byKwh || form.seasons.length > 0) && (
-        <Ticks>
-          {form.seasons.length > 0 && (
-            <Tick
-              label="Its price differs by season"
-              checked={charge.bySeason}
-              onChange={(bySeason) => put({ bySeason })}
-            />
-          )}
-          {byKwh && form.periods.length > 0 && (
-            <Tick
-              label="Its price differs by time of day"
-              checked={charge.byPeriod}
-              onChange={(byPeriod) => put({ byPeriod })}
-            />
-          )}
-          {byKwh && (
-            <Tick
-              label="Its price rises or falls with the kWh used (tiers)"
-              checked={charge.tiers.length > 0}
-              onChange={(on) =>
-                put({ tiers: on ? [{ from: form.prices[0]?.from ?? '', season: '', per: 'cycle', limits: '' }] : [] })
-              }
-            />
-          )}
+      <Ticks>
+        {form.seasons.length > 0 && (
           <Tick
-            label="It is charged only because of the roof"
-            checked={charge.solarOnly}
-            onChange={(solarOnly) => put({ solarOnly })}
+            label="Its price differs by season"
+            checked={charge.bySeason}
+            onChange={(bySeason) => put({ bySeason })}
           />
-        </Ticks>
-      )}
+        )}
+        {byKwh && form.periods.length > 0 && (
+          <Tick
+            label="Its price differs by time of day"
+            checked={charge.byPeriod}
+            onChange={(byPeriod) => put({ byPeriod })}
+          />
+        )}
+        {byKwh && (
+          <Tick
+            label="Its price rises or falls with the kWh used (tiers)"
+            checked={charge.tiers.length > 0}
+            onChange={(on) =>
+              put({ tiers: on ? [{ from: form.prices[0]?.from ?? '', season: '', per: 'cycle', limits: '' }] : [] })
+            }
+          />
+        )}
+        <Tick
+          label="It is charged only because of the roof"
+          checked={charge.solarOnly}
+          onChange={(solarOnly) => put({ solarOnly })}
+        />
+        {byKwh && (
+          <Tick
+            label="Its price changes with every bill and is read from it (fuel, purchased power)"
+            checked={charge.learned}
+            onChange={(learned) => put({ learned })}
+          />
+        )}
+      </Ticks>
       {charge.tiers.length > 0 && <Tiers charge={charge} path={path} put={put} />}
       <p className="mt-3 flex flex-wrap gap-x-5">
         {at > 0 && (

@@ -23,6 +23,7 @@ export type ChargeForm = PricedBy & {
   per: 'cycle' | 'day' | '';
   afterCredits: boolean;
   solarOnly: boolean;
+  learned: boolean;
   tiers: TierForm[];
 };
 
@@ -119,6 +120,7 @@ export function newCharge(
     per: '',
     afterCredits: false,
     solarOnly: false,
+    learned: false,
     tiers: [],
     ...more,
   };

@@ -48,6 +48,7 @@ export function planInput(form: PlanForm, timeZone: string): RatePlanInput {
       per: charge.per === '' ? null : charge.per,
       afterCredits: charge.afterCredits,
       solarOnly: charge.solarOnly,
+      learned: charge.learned,
     })),
     credits: form.credits.map((credit: CreditForm) => ({
       id: credit.id,

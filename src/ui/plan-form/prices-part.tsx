@@ -45,7 +45,9 @@ export function PricesPart() {
             {several.map((item) => (
               <fieldset key={item.key} className="mt-5 min-w-0">
                 <legend className="font-semibold">{item.label}</legend>
-                <div className="grid items-end gap-x-6 sm:grid-cols-[repeat(auto-fit,minmax(190px,1fr))]">
+                <div
+                  className={`grid items-end gap-x-6 ${item.cells.length % 3 === 0 ? 'sm:grid-cols-3' : 'sm:grid-cols-2'}`}
+                >
                   {item.cells.map((cell) => price(item, cell.key, cell.label))}
                 </div>
               </fieldset>

@@ -38,6 +38,7 @@ function readForm(plan: RatePlan): PlanForm {
       per: charge.per ?? ('' as const),
       afterCredits: charge.afterCredits,
       solarOnly: charge.solarOnly,
+      learned: charge.learned,
       tiers: charge.tiers.map((row) => ({
         from: row.from,
         season: row.season ?? '',
