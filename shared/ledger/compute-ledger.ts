@@ -27,12 +27,16 @@ export function computeLedger(facts: HouseholdFacts, { today }: { today: Day }):
 }
 
 /** From assembled cycles to the ledger: the entries of every book, placed; the position over them; what needs the owner. */
-export function postLedger(facts: HouseholdFacts, { cycles: assembled, closing }: Assembled, today: Day): Ledger {
+export function postLedger(
+  facts: HouseholdFacts,
+  { cycles: assembled, closing, plans }: Assembled,
+  today: Day,
+): Ledger {
   const dates = assembled.map((one) => one.cycle);
   const entries = placeEntries(unplacedEntries(facts, assembled, today), dates);
   const creditLines = facts.credit === null ? [] : creditLinesOf(facts.credit);
   const position = computePosition({
-    facts,
+    facts: plans.every((plan, at) => plan === facts.plans[at]) ? facts : { ...facts, plans },
     today,
     entries,
     cycles: assembled.map(({ cycle, utilityBank }) => ({

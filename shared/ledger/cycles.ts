@@ -1,4 +1,4 @@
-import type { HouseholdFacts } from '../facts/household.ts';
+import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
 import { meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
 import { estimatedRuns } from '../metering/estimated-reads.ts';
 import { indexIntervals } from '../metering/interval-index.ts';
@@ -12,6 +12,7 @@ import { billAsItWas } from './as-it-was.ts';
 import type { Cycle, CycleState } from './cycle.ts';
 import { type CyclePaper, cyclePapers, statementsInForce } from './cycle-papers.ts';
 import { facingLines } from './facing.ts';
+import { type LearnedRates, NOTHING_LEARNED, withLearnedRates } from './learned-rates.ts';
 import { firstOpening, nextOpening, type SettledCycle, settleOne } from './settle-cycle.ts';
 import { usageBeforeRoof } from './use-before.ts';
 import { utilityBank } from './utility-bank.ts';
@@ -32,6 +33,8 @@ export type Assembled = {
   cycles: AssembledCycle[];
   /** What the utility's books hold after the last cycle. */
   closing: Opening;
+  /** The plans with their riders at the price last read from a bill, for what comes after the last cycle. */
+  plans: PlanInForce[];
 };
 
 /**
@@ -51,7 +54,7 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
   for (const paper of papers) {
     opening ??= firstOpening(facts, paper);
     const metered = meterCycle(paper, witnessed, runs);
-    const settled = settleOne(facts, paper, metered, index, opening);
+    const settled: SettledCycle = settleOne(facts, paper, metered, index, opening, before?.learned ?? NOTHING_LEARNED);
     const facing = facingLines(paper, settled);
     const { balanceCents: openingBalanceCents } = facts.opening;
     const checks = runChecks(
@@ -91,7 +94,10 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
       },
     });
   }
-  return { cycles, closing: opening ?? facts.opening };
+  const learned: LearnedRates = before?.learned ?? NOTHING_LEARNED;
+  const end = papers.at(-1)?.to;
+  const plans = end === undefined ? facts.plans : facts.plans.map((plan) => withLearnedRates(plan, learned, end));
+  return { cycles, closing: opening ?? facts.opening, plans };
 }
 
 /** Open while it cannot be settled or an estimate awaits its read; else by what differs and whether all of it is accepted. */

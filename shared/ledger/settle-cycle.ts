@@ -11,6 +11,7 @@ import { compare, qtyOfText, qtyText } from '../settlement/quantity.ts';
 import { settleCycle } from '../settlement/settle.ts';
 import type { CycleUsage, Opening, Settlement } from '../settlement/settlement.ts';
 import type { CyclePaper } from './cycle-papers.ts';
+import { type LearnedRates, learnRates, withLearnedRates } from './learned-rates.ts';
 
 /** A settlement and what the utility's books should hold after it. */
 export type Settled = { settlement: Settlement; closing: Opening };
@@ -26,6 +27,8 @@ export type SettledCycle = {
   why: string | null;
   /** The same on the billed kWh and the opening as this statement prints it; null where it cannot be settled. */
   asBilled: Settled | null;
+  /** The riders' prices as this bill and those before it print them. */
+  learned: LearnedRates;
 };
 
 export function settleOne(
@@ -34,9 +37,10 @@ export function settleOne(
   metered: MeteredCycle,
   index: IntervalIndex,
   opening: Opening,
+  before: LearnedRates,
 ): SettledCycle {
-  const inForce = planFor(facts.plans, paper.from);
-  if (inForce === null) {
+  const stated = planFor(facts.plans, paper.from);
+  if (stated === null) {
     return {
       plan: null,
       components: paper.lines.map(() => null),
@@ -44,11 +48,14 @@ export function settleOne(
       ours: null,
       why: 'There is no rate plan yet. Enter the plan on your statement to compare this bill.',
       asBilled: null,
+      learned: before,
     };
   }
+  const components = matchLines(paper.lines, stated.plan);
+  const learned = learnRates(stated.plan, paper.lines, components, before);
+  const inForce = withLearnedRates(stated, learned, paper.from);
   const { plan } = inForce;
-  const components = matchLines(paper.lines, plan);
-  const base = { plan: inForce, components, opening };
+  const base = { plan: inForce, components, opening, learned };
   const usage = usageOf(facts, paper, metered, index, plan);
   if (typeof usage === 'string') return { ...base, ours: null, why: usage, asBilled: null };
   const ours = settleCycle(plan, opening, usage);

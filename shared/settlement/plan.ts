@@ -93,6 +93,11 @@ export const chargeSchema = z.object({
   afterCredits: z._default(z.boolean(), false),
   /** Our addition: charged only because of the roof, so dropped from the bill without it (default: kept). */
   solarOnly: z._default(z.boolean(), false),
+  /**
+   * Our addition: a rider whose price changes with every bill (fuel, purchased power) and is read from it (ledger.md §3): its arithmetic is checked,
+   * its rate is not. The rows hold until the first bill that prints it; the last one read holds after it.
+   */
+  learned: z._default(z.boolean(), false),
 });
 export type Charge = z.infer<typeof chargeSchema>;
 
