@@ -148,7 +148,7 @@ const rows = (count: number) => (count === 1 ? '1 row' : `${count} rows`);
 function fileBlockers(draft: Draft): Blocker[] {
   const faulty = (fileName: string, count: number): Blocker => ({
     code: 'conflict',
-    message: `${fileName}: ${rows(count)} cannot be read as they stand. Correct the file and upload it again, or say that the good rows shall be kept.`,
+    message: `${fileName}: ${rows(count)} cannot be read. Correct the file and upload it again, or say that the good rows shall be kept.`,
   });
   const statementFiles = draft.files.flatMap((file) => {
     if (file.faults.length > 0 && !file.keepGoodRows) {

@@ -7,10 +7,10 @@ import { Button } from '#src/ui/button.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
 import { StatementForm } from '#src/ui/statement-form/statement-form.tsx';
 import { formOfStatement } from '#src/ui/statement-form/statement-of-form.ts';
+import { countOf, numberWord } from './counts.ts';
 import { useChangeStatement, useDiscard, usePost } from './log-queries.ts';
 import { countValues, readValues } from './read-values.ts';
 import { CHANNEL_NAMES } from './readings-sheet.tsx';
-import { countOf, numberWord } from './statement-file-sheet.tsx';
 import { StatementSpread } from './statement-spread.tsx';
 
 export function CheckStep({

@@ -9,11 +9,12 @@ import { errorWords } from '#src/lib/problem-words.ts';
 import { Button } from '#src/ui/button.tsx';
 import { SelectField } from '#src/ui/field.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
+import { numberWord } from './counts.ts';
 import { DropZone } from './drop-zone.tsx';
 import { FaultList } from './faults.tsx';
 import { useUpload } from './log-queries.ts';
 import { ReadingsSheet } from './readings-sheet.tsx';
-import { numberWord, StatementFileSheet, TypedStatementSheet } from './statement-file-sheet.tsx';
+import { StatementFileSheet, TypedStatementSheet } from './statement-file-sheet.tsx';
 import { TypeStatement } from './type-statement.tsx';
 
 type Refused = { fileName: string; text: string; faults: Fault[] };

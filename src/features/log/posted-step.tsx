@@ -11,7 +11,7 @@ import { Note } from '#src/ui/note.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { FigureButton } from '#src/ui/working.tsx';
-import { countOf } from './statement-file-sheet.tsx';
+import { countOf } from './counts.ts';
 
 type PostedCycle = PostedView['cycles'][number];
 

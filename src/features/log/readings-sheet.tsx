@@ -6,10 +6,10 @@ import { useHousehold } from '#src/lib/household.ts';
 import { errorWords } from '#src/lib/problem-words.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
-import { FaultList } from './faults.tsx';
-import { useKeepGoodRows, useRemoveFile } from './log-queries.ts';
+import { countOf } from './counts.ts';
+import { useRemoveFile } from './log-queries.ts';
 import { MappingForm } from './mapping-form.tsx';
-import { countOf } from './statement-file-sheet.tsx';
+import { UnreadRows } from './unread-rows.tsx';
 
 export const CHANNEL_NAMES: Record<IntervalChannel, string> = {
   production: 'Production meter',
@@ -92,37 +92,14 @@ function Summary({ readings }: { readings: DraftReadings }) {
 }
 
 function Rejected({ readings }: { readings: DraftReadings }) {
-  const { id } = useHousehold();
-  const keep = useKeepGoodRows(id);
-  const bad = Math.max(readings.rejectedRows, new Set(readings.faults.map((fault) => fault.row)).size);
-  const say = (kept: boolean) => keep.mutate({ documentId: readings.documentId, keep: kept });
   return (
-    <div className={`margin-note mt-3 ${readings.keepGoodRows ? '' : 'bad'}`} role="status">
-      <b>
-        {readings.keepGoodRows
-          ? `${countOf(bad, 'row')} left out, as you said`
-          : `${countOf(bad, 'row')} of ${readings.fileName} cannot be read`}
-      </b>
-      <span>
-        {readings.keepGoodRows
-          ? 'They are kept with their reasons and count for nothing.'
-          : 'Say below how the file is read, correct the file and choose it again, or go on with the rows that can be read.'}
-      </span>
-      {readings.faults.length > 0 && <FaultList faults={readings.faults} />}
-      <p className="mt-3">
-        {readings.keepGoodRows ? (
-          <Button look="plain" busy={keep.isPending} onClick={() => say(false)}>
-            Wait for a corrected file
-          </Button>
-        ) : (
-          readings.acceptedRows > 0 && (
-            <Button look="plain" busy={keep.isPending} onClick={() => say(true)}>
-              Keep the {countOf(readings.acceptedRows, 'good row')}
-            </Button>
-          )
-        )}
-      </p>
-    </div>
+    <UnreadRows
+      file={readings}
+      faults={readings.faults}
+      bad={Math.max(readings.rejectedRows, new Set(readings.faults.map((fault) => fault.row)).size)}
+      good={readings.acceptedRows}
+      advice="Say below how the file is read, correct the file and choose it again, or go on with the rows that can be read."
+    />
   );
 }
 

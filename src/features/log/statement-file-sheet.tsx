@@ -3,8 +3,9 @@ import { cycleRange, fullDate, money } from '#src/lib/format.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
-import { FaultList } from './faults.tsx';
-import { useKeepGoodRows, useRemoveFile, useRemoveStatement } from './log-queries.ts';
+import { countOf } from './counts.ts';
+import { useRemoveFile, useRemoveStatement } from './log-queries.ts';
+import { UnreadRows } from './unread-rows.tsx';
 
 type DraftFile = LogDraft['files'][number];
 
@@ -76,55 +77,14 @@ function StatementRow({ drafted }: { drafted: DraftStatement }) {
 }
 
 function FileFaults({ file }: { file: DraftFile }) {
-  const { id } = useHousehold();
-  const keep = useKeepGoodRows(id);
   const bad = new Set(file.faults.map((fault) => fault.row)).size;
-  const good = file.table.rows.length + file.table.more - bad;
   return (
-    <div className={`margin-note mt-3 ${file.keepGoodRows ? '' : 'bad'}`} role="status">
-      <b>
-        {file.keepGoodRows
-          ? `${countOf(bad, 'row')} left out, as you said`
-          : `${countOf(bad, 'row')} of ${file.fileName} cannot be read`}
-      </b>
-      <span>
-        {file.keepGoodRows
-          ? 'They are kept with the file and its reasons, and count for nothing.'
-          : 'Correct the file and choose it again, or go on with the rows that can be read.'}
-      </span>
-      <FaultList faults={file.faults} />
-      <p className="mt-3 flex flex-wrap gap-4">
-        {file.keepGoodRows ? (
-          <Button
-            look="plain"
-            busy={keep.isPending}
-            onClick={() => keep.mutate({ documentId: file.documentId, keep: false })}
-          >
-            Wait for a corrected file
-          </Button>
-        ) : (
-          good > 0 && (
-            <Button
-              look="plain"
-              busy={keep.isPending}
-              onClick={() => keep.mutate({ documentId: file.documentId, keep: true })}
-            >
-              Keep the {countOf(good, 'good row')}
-            </Button>
-          )
-        )}
-      </p>
-    </div>
+    <UnreadRows
+      file={file}
+      faults={file.faults}
+      bad={bad}
+      good={file.table.rows.length + file.table.more - bad}
+      advice="Correct the file and choose it again, or go on with the rows that can be read."
+    />
   );
-}
-
-export function countOf(count: number, thing: string): string {
-  return `${count.toLocaleString('en-US')} ${thing}${count === 1 ? '' : 's'}`;
-}
-
-const NUMBERS = ['none', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine'];
-
-/** A small number in words, as a sentence has it. */
-export function numberWord(count: number): string {
-  return NUMBERS[count] ?? count.toLocaleString('en-US');
 }
