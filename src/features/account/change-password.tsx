@@ -4,20 +4,19 @@ import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { changePasswordBody, peopleApi } from '#shared/api/people.ts';
 import { PASSWORD_MIN } from '#shared/api/session.ts';
-import { ApiError, call } from '#src/lib/api.ts';
+import { call } from '#src/lib/api.ts';
 import { showRefusal } from '#src/lib/form-faults.ts';
-import { problemWords } from '#src/lib/problem-words.ts';
 import { Button } from '#src/ui/button.tsx';
 import { ErrorSummary } from '#src/ui/field.tsx';
 import { PasswordField } from '#src/ui/password-field.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 
 const EMPTY = { current: '', next: '' };
-const FIELD_OF: Partial<Record<string, 'current' | 'next'>> = {
-  'wrong-sign-in': 'current',
-  'password-too-short': 'next',
-  'password-too-common': 'next',
-};
+const FIELD_OF = {
+  'wrong-sign-in': { field: 'current', words: 'This is not your present password.' },
+  'password-too-short': { field: 'next' },
+  'password-too-common': { field: 'next' },
+} as const;
 
 /** Changes the signed-in person's password; every other session of theirs ends. `email` is for the browser's password keeper. */
 export function ChangePassword({ email }: { email: string }) {
@@ -34,14 +33,7 @@ export function ChangePassword({ email }: { email: string }) {
     setRefusals([]);
     change.mutate(body, {
       onSuccess: () => reset(EMPTY),
-      onError: (error) => {
-        const code = error instanceof ApiError ? error.problem.code : null;
-        const field = code === null ? undefined : FIELD_OF[code];
-        if (field && error instanceof ApiError) {
-          const text = field === 'current' ? 'This is not your present password.' : problemWords(error.problem);
-          setError(field, { type: 'server', message: text }, { shouldFocus: true });
-        } else setRefusals(showRefusal(error, setError, (name) => name in EMPTY));
-      },
+      onError: (error) => setRefusals(showRefusal(error, setError, (name) => name in EMPTY, FIELD_OF)),
     });
   });
   return (

@@ -3,10 +3,8 @@ import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { addPersonBody } from '#shared/api/people.ts';
 import { PASSWORD_MIN, roleSchema } from '#shared/api/session.ts';
-import { ApiError } from '#src/lib/api.ts';
-import { showRefusal } from '#src/lib/form-faults.ts';
+import { ACCOUNT_FIELDS, showRefusal } from '#src/lib/form-faults.ts';
 import { useHousehold } from '#src/lib/household.ts';
-import { problemWords } from '#src/lib/problem-words.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Choices, ErrorSummary, Field } from '#src/ui/field.tsx';
 import { PasswordField } from '#src/ui/password-field.tsx';
@@ -15,11 +13,6 @@ import { useAddPerson } from './people-queries.ts';
 import { ROLES } from './roles.ts';
 
 const EMPTY = { name: '', email: '', role: 'member' as const, password: '' };
-const FIELD_OF: Partial<Record<string, 'email' | 'password'>> = {
-  'email-taken': 'email',
-  'password-too-short': 'password',
-  'password-too-common': 'password',
-};
 
 /** Adds a person directly, with a first password that the owner tells them in person. */
 export function AddPerson() {
@@ -40,12 +33,7 @@ export function AddPerson() {
         setAdded(person.name);
         reset(EMPTY);
       },
-      onError: (error) => {
-        const field = error instanceof ApiError ? FIELD_OF[error.problem.code] : undefined;
-        if (field && error instanceof ApiError) {
-          setError(field, { type: 'server', message: problemWords(error.problem) }, { shouldFocus: true });
-        } else setRefusals(showRefusal(error, setError, (name) => name in EMPTY));
-      },
+      onError: (error) => setRefusals(showRefusal(error, setError, (name) => name in EMPTY, ACCOUNT_FIELDS)),
     });
   });
   return (

@@ -4,9 +4,7 @@ import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { Link, Navigate, useNavigate } from 'react-router-dom';
 import { PASSWORD_MIN, signUpBody } from '#shared/api/session.ts';
-import { ApiError } from '#src/lib/api.ts';
-import { showRefusal } from '#src/lib/form-faults.ts';
-import { problemWords } from '#src/lib/problem-words.ts';
+import { ACCOUNT_FIELDS, showRefusal } from '#src/lib/form-faults.ts';
 import { sessionQuery } from '#src/lib/session.ts';
 import { Button } from '#src/ui/button.tsx';
 import { ErrorSummary, Field } from '#src/ui/field.tsx';
@@ -30,14 +28,7 @@ export function SignUpPage() {
     setRefusals([]);
     signUp.mutate(typed, {
       onSuccess: () => navigate('/start', { replace: true }),
-      onError: (error) => {
-        const field = error instanceof ApiError ? FIELD_OF[error.problem.code] : undefined;
-        if (field && error instanceof ApiError) {
-          setError(field, { type: 'server', message: problemWords(error.problem) }, { shouldFocus: true });
-        } else {
-          setRefusals(showRefusal(error, setError, (name) => name in formFields));
-        }
-      },
+      onError: (error) => setRefusals(showRefusal(error, setError, (name) => name in formFields, ACCOUNT_FIELDS)),
     });
   });
   return (
@@ -79,8 +70,3 @@ export function SignUpPage() {
 }
 
 const formFields = { name: true, email: true, password: true };
-const FIELD_OF: Partial<Record<string, 'email' | 'password'>> = {
-  'email-taken': 'email',
-  'password-too-short': 'password',
-  'password-too-common': 'password',
-};
