@@ -27,7 +27,8 @@ export function moveKwhBank(cycle: Cycle, state: BankState, taken: TakenByCharge
     const open = stillImported(bank.offsets, taken, pocket.period, sideOf(flow, pocket, 'import', bank.label));
     use(pocket, bank.belowZero ? open : lesser(pocket.balance, open), bank.offsets, taken, pocket.period);
   }
-  if (bank.byPeriod && bank.ifPeriodAbsent === 'otherPeriods' && !bank.belowZero) payOtherPeriods(state, flow, taken);
+  if (bank.byPeriod && flow.byPeriod && bank.ifPeriodAbsent === 'otherPeriods' && !bank.belowZero)
+    payOtherPeriods(state, flow.byPeriod, taken);
 }
 
 function earnedKwh(cycle: Cycle, state: BankState, exported: Qty): Qty {
@@ -75,13 +76,12 @@ function use(
 }
 
 /** What is kept for a period that this bill lacks pays the others, in the calendar's order. */
-function payOtherPeriods(state: BankState, flow: NettedFlow, taken: TakenByCharge): void {
+function payOtherPeriods(state: BankState, present: NonNullable<NettedFlow['byPeriod']>, taken: TakenByCharge): void {
   const { offsets } = state.prepared.bank;
-  const present = flow.byPeriod ?? {};
   for (const pocket of state.pockets) {
     if (pocket.period === null || present[pocket.period]) continue;
     for (const other of state.pockets) {
-      const imported = other.period === null ? undefined : present[other.period]?.import;
+      const imported = present[String(other.period)]?.import;
       if (imported === undefined) continue;
       use(
         pocket,

@@ -31,15 +31,14 @@ export function openBank(prepared: PreparedBank, plan: PreparedPlan, opening: Op
   const open = (period: string | null, amount: Held) => pocketOf(period, amount, bank.unit, life, from);
   if (!bank.byPeriod) {
     if (typeof held === 'string') return { prepared, pockets: [open(null, held)] };
-    const whole = wholeLots(held);
-    return { prepared, pockets: [open(null, whole && life !== null ? whole : qtyText(sumOf(held)))] };
+    return { prepared, pockets: [open(null, inLots(held) && life !== null ? held.lots : qtyText(sumOf(held)))] };
   }
-  if (typeof held === 'string' || wholeLots(held)) {
+  if (typeof held === 'string' || inLots(held)) {
     if (compare(sumOf(held), 0) !== 0)
       refuse(`${bank.label} keeps a balance for each period: say how much of its opening belongs to each.`);
     return { prepared, pockets: [...plan.period.keys()].map((period) => open(period, '0')) };
   }
-  const byPeriod = new Map<string, string | { lots: Lot[] } | Lot[]>(Object.entries(held));
+  const byPeriod = new Map<string, string | { lots: Lot[] }>(Object.entries(held));
   for (const period of byPeriod.keys())
     if (!plan.period.has(period))
       refuse(`${bank.label} opens with the period ${period}, which the plan does not have.`);
@@ -48,29 +47,24 @@ export function openBank(prepared: PreparedBank, plan: PreparedPlan, opening: Op
     pockets: [...plan.period.keys()].map((period) => {
       const amount = byPeriod.get(period) ?? '0';
       if (typeof amount === 'string') return open(period, amount);
-      const lots = Array.isArray(amount) ? amount : amount.lots;
-      return open(period, life === null ? qtyText(sumLots(lots)) : lots);
+      return open(period, life === null ? qtyText(sumLots(amount.lots)) : amount.lots);
     }),
   };
 }
 
 type Held = string | readonly Lot[];
 
-function wholeLots(held: Exclude<OpeningBalance, string>): Lot[] | null {
-  return Array.isArray(held.lots) ? held.lots : null;
+function inLots(held: Exclude<OpeningBalance, string>): held is { lots: Lot[] } {
+  return Array.isArray(held.lots);
 }
 
 /** A balance as one sum: what a bank takes over that was kept by period or in lots under an earlier plan. */
 function sumOf(held: OpeningBalance): Qty {
   if (typeof held === 'string') return qtyOfText(held);
-  const whole = wholeLots(held);
-  if (whole) return sumLots(whole);
+  if (inLots(held)) return sumLots(held.lots);
   let sum: Qty = 0;
   for (const amount of Object.values(held)) {
-    sum = plus(
-      sum,
-      typeof amount === 'string' ? qtyOfText(amount) : sumLots(Array.isArray(amount) ? amount : amount.lots),
-    );
+    sum = plus(sum, typeof amount === 'string' ? qtyOfText(amount) : sumLots(amount.lots));
   }
   return sum;
 }
@@ -80,24 +74,21 @@ function sumLots(lots: readonly Lot[]): Qty {
 }
 
 function pocketOf(period: string | null, held: Held, unit: 'kWh' | 'USD', life: number | null, from: Day): Pocket {
-  let lots: HeldLot[] | null = null;
-  if (typeof held !== 'string') {
-    lots = held.map((lot) => ({
-      earned: lot.earned,
-      amount: qtyOfText(lot.amount),
-      cyclesLeft: lot.cyclesLeft,
-      fresh: false,
-    }));
-  } else if (life !== null) {
-    // A balance without its lots' ages is taken as one lot that has its whole life before it.
-    const amount = qtyOfText(held);
-    lots = compare(amount, 0) === 0 ? [] : [{ earned: from, amount, cyclesLeft: life, fresh: false }];
-  }
-  const open = lots
-    ? lots.reduce<Qty>((sum, lot) => plus(sum, lot.amount), 0)
-    : qtyOfText(typeof held === 'string' ? held : '0');
+  const lots = typeof held === 'string' ? lotsOfBalance(held, life, from) : held.map(heldLot);
+  const open = typeof held === 'string' ? qtyOfText(held) : sumLots(held);
   if (unit === 'USD' && (typeof open !== 'number' || open % 10 !== 0)) refuse('A bank in USD opens with whole cents.');
   return { period, open, balance: open, earned: 0, used: 0, expired: 0, paid: 0, lots, waiting: 0 };
+}
+
+function heldLot({ earned, amount, cyclesLeft }: Lot): HeldLot {
+  return { earned, amount: qtyOfText(amount), cyclesLeft, fresh: false };
+}
+
+/** A balance without its lots' ages is taken as one lot that has its whole life before it; null where the bank keeps no lots. */
+function lotsOfBalance(held: string, life: number | null, from: Day): HeldLot[] | null {
+  if (life === null) return null;
+  const amount = qtyOfText(held);
+  return compare(amount, 0) === 0 ? [] : [{ earned: from, amount, cyclesLeft: life, fresh: false }];
 }
 
 /** Adds what a cycle earned to the balance, as a lot of its own where the bank keeps lots. */
@@ -105,7 +96,7 @@ export function enter(pocket: Pocket, amount: Qty, life: number | null, to: Day)
   if (compare(amount, 0) === 0) return;
   pocket.earned = plus(pocket.earned, amount);
   pocket.balance = plus(pocket.balance, amount);
-  pocket.lots?.push({ earned: to, amount, cyclesLeft: life ?? 0, fresh: true });
+  if (life !== null) pocket.lots?.push({ earned: to, amount, cyclesLeft: life, fresh: true });
 }
 
 /** Takes an amount out of the balance, oldest lots first. */
@@ -169,12 +160,12 @@ export function settledBanks(state: BankState): SettledBank[] {
 
 /** What the next cycle opens with, from what this one says. */
 export function closingBalance(banks: readonly SettledBank[]): OpeningBalance {
-  const [first] = banks;
-  if (!first) return '0';
-  if (first.period === null) return first.lots ? { lots: first.lots } : first.move.close;
-  const periods = banks.flatMap(({ period, move, lots }) =>
-    period === null ? [] : [{ period, close: move.close, lots }],
-  );
-  if (first.lots) return Object.fromEntries(periods.map(({ period, lots }) => [period, { lots: lots ?? [] }]));
-  return Object.fromEntries(periods.map(({ period, close }) => [period, close]));
+  const balances: Record<string, string> = {};
+  const inLots: Record<string, { lots: Lot[] }> = {};
+  for (const { period, move, lots } of banks) {
+    if (period === null) return lots ? { lots } : move.close;
+    if (lots) inLots[period] = { lots };
+    else balances[period] = move.close;
+  }
+  return Object.keys(inLots).length > 0 ? inLots : balances;
 }

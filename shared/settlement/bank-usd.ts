@@ -1,6 +1,6 @@
 import { type Cents, cents, dollarsText } from '../units/cents.ts';
 import type { Working } from '../working.ts';
-import { type BankState, centsOfQty, enter, take } from './bank-state.ts';
+import { centsOfQty, enter, type Pocket, take } from './bank-state.ts';
 import type { Cycle } from './cycle-flows.ts';
 import { floorCents } from './floors.ts';
 import { UNSAID } from './piece.ts';
@@ -14,10 +14,14 @@ export type Ledgered = { amounts: Map<string, number>; paid: Map<string, number>
  * A USD bank in a cycle: it earns the credits sent to it and pays what its `offsets` lines still owe, in their order; credit stops where the
  * floor of `keepMinimum` would be undercut. Under `belowZero` it takes the lines whole. Gives its `credit` line, if it has one.
  */
-export function moveUsdBank(cycle: Cycle, state: BankState, earned: Cents, ledgered: Ledgered): SettledLine | null {
-  const { bank, floor } = state.prepared;
-  const [pocket] = state.pockets;
-  if (!pocket) return null;
+export function moveUsdBank(
+  cycle: Cycle,
+  prepared: PreparedBank,
+  pocket: Pocket,
+  earned: Cents,
+  ledgered: Ledgered,
+): SettledLine | null {
+  const { bank, floor } = prepared;
   if (bank.sameCycle) enter(pocket, earned * 10, bank.lotLife?.cycles ?? null, cycle.to);
   else pocket.waiting = earned * 10;
 
@@ -30,7 +34,7 @@ export function moveUsdBank(cycle: Cycle, state: BankState, earned: Cents, ledge
   let owed = 0;
   for (const id of bank.offsets) {
     const counted = floor?.charge.on.includes(id) === true;
-    const owes = (ledgered.amounts.get(id) ?? 0) - (ledgered.paid.get(id) ?? 0);
+    const owes = owedOn([id], ledgered);
     const payable = Math.min(bank.belowZero ? owes : Math.max(owes, 0), counted ? room : Number.POSITIVE_INFINITY);
     const pays = Math.min(payable, left);
     owed += payable;
@@ -55,7 +59,7 @@ export function moveUsdBank(cycle: Cycle, state: BankState, earned: Cents, ledge
     rate: null,
     amountCents: cents(-used),
     inDue: true,
-    working: cycle.says ? paidWorking(state.prepared, balance, cents(owed)) : UNSAID,
+    working: cycle.says ? paidWorking(prepared, balance, cents(owed)) : UNSAID,
   };
 }
 
@@ -84,8 +88,13 @@ function paidWorking({ bank, floor }: PreparedBank, balance: Cents, owed: Cents)
   };
 }
 
+/** What a charge's lines come to; nothing for one that is worked out only later. */
+export function amountOf(ledgered: Ledgered, id: string): number {
+  return ledgered.amounts.get(id) ?? 0;
+}
+
 function owedOn(ids: readonly string[], ledgered: Ledgered): number {
   let owed = 0;
-  for (const id of ids) owed += (ledgered.amounts.get(id) ?? 0) - (ledgered.paid.get(id) ?? 0);
+  for (const id of ids) owed += amountOf(ledgered, id) - (ledgered.paid.get(id) ?? 0);
   return owed;
 }

@@ -1,4 +1,4 @@
-import { type Cents, dollarsText, sumCents } from '../units/cents.ts';
+import { type Cents, cents, dollarsText, sumCents } from '../units/cents.ts';
 import type { WorkingInput } from '../working.ts';
 import type { Cycle } from './cycle-flows.ts';
 import type { LessBank } from './energy-figures.ts';
@@ -14,8 +14,11 @@ import type { SettledLine } from './settlement.ts';
 /** What other lines come to, for a percent or a floor: USD by charge, and what credits have paid of it. */
 export type Owed = { ids: readonly string[]; amounts: readonly Cents[]; paid: Cents };
 
+/** For a charge that goes by no other lines. */
+export const NOTHING_OWED: Owed = { ids: [], amounts: [], paid: cents(0) };
+
 /** The pieces of a charge that is a quantity × a rate: kWh, cycle, day, kW, or a percent of other lines. */
-function chargePieces(cycle: Cycle, item: PreparedCharge, lessBank: LessBank | null, base: Owed | null): Piece[] {
+function chargePieces(cycle: Cycle, item: PreparedCharge, lessBank: LessBank | null, base: Owed): Piece[] {
   const { charge, pricing, netting } = item;
   const { label } = charge;
   switch (charge.basis) {
@@ -30,8 +33,8 @@ function chargePieces(cycle: Cycle, item: PreparedCharge, lessBank: LessBank | n
       return perDay(cycle, item);
     case 'kW': {
       const kW =
-        cycle.usage.kW[charge.kWOf ?? 'dc'] ??
-        refuse(`${label} goes by kW: the ${charge.kWOf ?? 'dc'} rating is needed.`);
+        (charge.kWOf && cycle.usage.kW[charge.kWOf]) ||
+        refuse(`${label} goes by kW: the ${charge.kWOf} rating is needed.`);
       const input: WorkingInput = {
         name: 'kW',
         label: `kW (${charge.kWOf})`,
@@ -41,10 +44,9 @@ function chargePieces(cycle: Cycle, item: PreparedCharge, lessBank: LessBank | n
       };
       return dayShared(cycle, item, qtyOfText(kW), 'kW * ', [input]);
     }
-    case 'percent':
-      return base ? percentOf(cycle, item, base) : refuse(`${label} has nothing to be a share of.`);
-    case 'floor':
-      return refuse(`${label} is a floor, not a quantity.`);
+    // A floor's lines are not a quantity × a rate (`floorLines`), so only a percent is left.
+    default:
+      return percentOf(cycle, item, base);
   }
 }
 
@@ -124,12 +126,7 @@ export function perDay(cycle: Cycle, item: PreparedCharge): Piece[] {
 }
 
 /** The lines of a charge, in order of part, period and tier. */
-export function chargeLines(
-  cycle: Cycle,
-  item: PreparedCharge,
-  lessBank: LessBank | null,
-  base: Owed | null,
-): SettledLine[] {
+export function chargeLines(cycle: Cycle, item: PreparedCharge, lessBank: LessBank | null, base: Owed): SettledLine[] {
   const { charge } = item;
   const inDue = !cycle.prepared.taken.has(charge.id);
   return chargePieces(cycle, item, lessBank, base).map((piece): SettledLine => {

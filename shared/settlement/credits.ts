@@ -26,7 +26,7 @@ export function creditPieces(cycle: Cycle, item: PreparedCredit): Piece[] {
 export function settleCredit(cycle: Cycle, item: PreparedCredit, capUsed: CapUsed): CreditResult {
   const { credit } = item;
   const result: CreditResult = { lines: [], payouts: [], earned: cents(0) };
-  const cap = credit.cap ? capOf(cycle, item, capUsed) : null;
+  const cap = credit.cap ? capOf(cycle, credit, credit.cap, capUsed) : null;
   for (const piece of creditPieces(cycle, item)) {
     const quantity = pieceQuantity(piece);
     const full = pieceCents(cycle, piece);
@@ -77,11 +77,10 @@ function payoutOf(credit: Credit, quantity: string, rate: string, amountCents: C
 
 type Cap = { key: string; amount: Cents; used: Cents; left: number };
 
-function capOf(cycle: Cycle, item: PreparedCredit, capUsed: CapUsed): Cap {
-  const { cap, id, label } = item.credit;
-  const key = cap?.per === 'year' ? String(yearOf(cycle.to)) : 'term';
-  const amount =
-    parseDollars(cap?.amount ?? '') ?? refuse(`The cap of ${label} is not an amount in dollars and cents.`);
+function capOf(cycle: Cycle, credit: Credit, cap: NonNullable<Credit['cap']>, capUsed: CapUsed): Cap {
+  const { id, label } = credit;
+  const key = cap.per === 'year' ? String(yearOf(cycle.to)) : 'term';
+  const amount = parseDollars(cap.amount) ?? refuse(`The cap of ${label} is not an amount in dollars and cents.`);
   const used =
     parseDollars(capUsed[id]?.[key] ?? '0') ?? refuse(`What ${label} has earned under its cap is not an amount.`);
   return { key, amount, used, left: amount - used };

@@ -1,6 +1,6 @@
 import type { Source, WorkingInput } from '../working.ts';
 import { type Cycle, flowOf, type NettedFlow, viewOf } from './cycle-flows.ts';
-import { nettedOver, producedOver } from './interval-flows.ts';
+import { addTo, nettedOver, producedOver } from './interval-flows.ts';
 import type { Group } from './parts.ts';
 import { NO_INPUTS } from './piece.ts';
 import type { Netting } from './plan.ts';
@@ -171,11 +171,12 @@ function intervalFlow(cycle: Cycle, basis: Basis, netting: Netting, from: Group[
   const flow = nettedOver(view, basis === 'load' ? 'none' : plainNetting, from, to);
   if (basis !== 'load') return side(flow, basis, true);
   const made = producedOver(view, from, to);
-  const byPeriod: Record<string, number> = {};
-  for (const [period, { import: bought, export: sent }] of Object.entries(flow.byPeriod ?? {})) {
-    byPeriod[period] = bought + (made.byPeriod[period] ?? 0) - sent;
-  }
-  return { total: flow.import + made.total - flow.export, byPeriod: flow.byPeriod ? byPeriod : null };
+  const total = flow.import + made.total - flow.export;
+  if (!flow.byPeriod) return { total, byPeriod: null };
+  const byPeriod = { ...made.byPeriod };
+  for (const [period, { import: bought, export: sent }] of Object.entries(flow.byPeriod))
+    addTo(byPeriod, period, bought - sent);
+  return { total, byPeriod };
 }
 
 function side(flow: NettedFlow, basis: 'import' | 'export', withPeriods: boolean): Flow {

@@ -61,7 +61,7 @@ export function floorLines(cycle: Cycle, item: PreparedCharge, base: Owed): Sett
       amountCents: roundToCents(missing, plan.rounding.money),
       inDue: !cycle.prepared.taken.has(charge.id),
       working: {
-        words: `what is missing to $${price.rate.text} a ${charge.per ?? 'cycle'}`,
+        words: `what is missing to $${price.rate.text} a ${charge.per}`,
         formula: `${round}(max(${leastFormula} - ${dueFormula} * days, 0) / allDays)`,
         inputs: [...owedInputs(base), ...price.inputs, ...dayInputs(part.days, cycle.days)],
         unit: 'USD',

@@ -57,7 +57,7 @@ function offsetOf(timeZone: string): (instant: number) => number {
     if (found === quarter) return offset;
     quarter = found;
     const parts = new Map(clock.formatToParts(instant).map((part) => [part.type, Number(part.value)]));
-    const part = (name: Intl.DateTimeFormatPartTypes) => parts.get(name) ?? 0;
+    const part = (name: Intl.DateTimeFormatPartTypes) => Number(parts.get(name));
     const shown = Date.UTC(part('year'), part('month') - 1, part('day'), part('hour'), part('minute'), part('second'));
     offset = shown - Math.floor(instant / 1000) * 1000;
     return offset;
@@ -130,9 +130,13 @@ export function producedOver(
     const value = data.productionWh[at] ?? 0;
     made.total += value;
     const period = view.periods[at];
-    if (period) made.byPeriod[period] = (made.byPeriod[period] ?? 0) + value;
+    if (period) addTo(made.byPeriod, period, value);
   }
   return made;
+}
+
+export function addTo(sums: Record<string, number>, name: string, value: number): void {
+  sums[name] = (sums[name] ?? 0) + value;
 }
 
 /** Refused unless the steps reach from the cycle's first day through its last: a gap would be taken for no use. */

@@ -13,10 +13,16 @@ export function parsePlan(input: unknown): Result<RatePlan> {
     const faults = read.error.issues.map((issue) =>
       planFault(issue.path, `${placeOf(issue.path, input)}: ${sayIssue(issue)}`),
     );
-    return fail('plan-invalid', faults[0]?.message ?? null, faults);
+    return refusedFor(faults);
   }
   const faults = planFaults(read.data).map(({ path, message }) => planFault(path, message));
-  return faults.length > 0 ? fail('plan-invalid', faults[0]?.message ?? null, faults) : succeed(read.data);
+  return faults.length > 0 ? refusedFor(faults) : succeed(read.data);
+}
+
+/** Refused for several things wrong, in the words of the first. */
+function refusedFor(faults: Fault[]): Result<RatePlan> {
+  const said = faults.map(({ message }) => message);
+  return fail('plan-invalid', said.slice(0, 1).join(' '), faults);
 }
 
 function planFault(path: readonly PropertyKey[], message: string): Fault {
@@ -36,8 +42,8 @@ function placeOf(path: readonly PropertyKey[], input: unknown): string {
   const words: string[] = [];
   let at: unknown = input;
   for (const step of path) {
-    at = typeof at === 'object' && at !== null ? Reflect.get(at, step) : undefined;
-    const id = typeof at === 'object' && at !== null ? Reflect.get(at, 'id') : undefined;
+    at = Reflect.get(Object(at), step);
+    const id: unknown = Reflect.get(Object(at), 'id');
     words.push(typeof step === 'number' ? (typeof id === 'string' ? id : String(step + 1)) : String(step));
   }
   return words.length === 0 ? 'The plan' : words.join(' ');

@@ -7,7 +7,7 @@ import { refuse } from './refused.ts';
 
 export type PreparedCharge = { charge: Charge; pricing: Pricing; netting: Netting; unit: ChargeUnit };
 export type PreparedCredit = { credit: Credit; pricing: Pricing; netting: Netting };
-export type PreparedTrueUp = { trueUp: TrueUp; pricing: Pricing | null; atLeast: Qty; fee: Qty; keep: Qty };
+export type PreparedTrueUp = { trueUp: TrueUp; pricing: Pricing; atLeast: Qty; fee: Qty; keep: Qty };
 export type PreparedBank = {
   bank: PlanBank;
   netting: Netting;
@@ -71,23 +71,20 @@ function prepare(plan: RatePlan): PreparedPlan {
   const name = plan.name || 'Rate plan';
   const charges = plan.charges.map((charge): PreparedCharge => {
     const unit = chargeUnit(charge);
-    const rateUnit =
-      charge.basis === 'percent' ? 'fraction' : unit === 'USD' ? `USD/${charge.per ?? 'cycle'}` : `USD/${unit}`;
+    const rateUnit = charge.basis === 'percent' ? 'fraction' : unit === 'USD' ? `USD/${charge.per}` : `USD/${unit}`;
     const pricing = ownPricing(charge.rates, charge.tiers, name, rateUnit);
     return { charge, unit, pricing, netting: charge.netting ?? plan.netting };
   });
   const charge = new Map(charges.map((item) => [item.charge.id, item]));
-  const pricingOf = (item: { rates: Credit['rates']; ratesOf: Credit['ratesOf'] }): Pricing | null => {
+  const pricingOf = (item: { rates: Credit['rates']; ratesOf: Credit['ratesOf'] }): Pricing => {
     if (item.ratesOf) {
-      const parts = item.ratesOf.charges.map(
-        (id) => charge.get(id) ?? refuse(`No charge of the plan has the id ${id}.`),
-      );
+      const parts = item.ratesOf.charges.flatMap((id) => charges.filter((part) => part.charge.id === id));
       return derivedPricing(
         item.ratesOf,
         parts.map((part) => ({ label: part.charge.label, pricing: part.pricing })),
       );
     }
-    return item.rates ? ownPricing(item.rates, [], name, 'USD/kWh') : null;
+    return ownPricing(item.rates ?? [], [], name, 'USD/kWh');
   };
   const banks = plan.banks.map((bank): PreparedBank => {
     const trueUps = bank.trueUps.map(
@@ -105,7 +102,7 @@ function prepare(plan: RatePlan): PreparedPlan {
       ratio: qtyOfText(bank.ratio),
       trueUps,
       pays: new Set(bank.offsets),
-      floor: bank.keepMinimum === null ? null : (charge.get(bank.keepMinimum) ?? null),
+      floor: charges.find((item) => item.charge.id === bank.keepMinimum) ?? null,
       averages: trueUps.map(({ trueUp }) => trueUp.keep).find((keep) => keep && 'averageCycles' in keep) ?? null,
     };
   });
@@ -118,7 +115,7 @@ function prepare(plan: RatePlan): PreparedPlan {
     credits: plan.credits.map((credit) => ({
       credit,
       netting: credit.netting ?? plan.netting,
-      pricing: pricingOf(credit) ?? refuse(`The credit ${credit.label} has no rates.`),
+      pricing: pricingOf(credit),
     })),
     banks,
     charge,

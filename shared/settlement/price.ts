@@ -11,7 +11,7 @@ import { NO_INPUTS, type Piece, pieceCents, pieceQuantity, pieceWorking, UNSAID 
 import type { RatePlan } from './plan.ts';
 import { type PreparedBank, type PreparedCharge, type PreparedCredit, preparePlan } from './prepare.ts';
 import { ONE_UNIT, priced, qtyOfText } from './quantity.ts';
-import { type Pricing, priceAt } from './rates-in-force.ts';
+import { priceAt } from './rates-in-force.ts';
 import { orRefusal } from './refused.ts';
 
 export type PricedQuantity = { amountCents: Cents; rate: string | null; working: Working };
@@ -147,9 +147,9 @@ function billedInput(name: string, value: string, unit: string): WorkingInput {
 }
 
 function trueUpPrice(cycle: Cycle, item: PreparedBank, quantity: string, of: PriceOf): PricedQuantity | null {
-  const pricing: Pricing | null = item.trueUps.find((trueUp) => trueUp.pricing !== null)?.pricing ?? null;
+  const paying = item.trueUps.find(({ trueUp }) => trueUp.rates !== null || trueUp.ratesOf !== null);
   const { plan, round } = cycle.prepared;
-  const price = pricing && priceAt(pricing, cycle.to, seasonOf(plan.calendar, cycle.to), of.period, null);
+  const price = paying && priceAt(paying.pricing, cycle.to, seasonOf(plan.calendar, cycle.to), of.period, null);
   if (!price) return null;
   return {
     amountCents: cents(-priced(qtyOfText(quantity), 1, price.rate, plan.rounding.money)),

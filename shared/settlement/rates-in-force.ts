@@ -21,6 +21,8 @@ export type Limits = { from: Day; season: string | null; per: 'cycle' | 'day'; l
 
 /** How an item is priced, worked out once per plan. */
 export type Pricing = {
+  /** Rows of its own, and those of the charges its price is derived from. */
+  own: readonly PricedRow[];
   tables: readonly (readonly PricedRow[])[];
   derived: { fraction: string; tier: number; words: string } | null;
   byPeriod: boolean;
@@ -79,6 +81,7 @@ export function ownPricing(
       a.from < b.from ? 1 : a.from > b.from ? -1 : Number(b.season !== null) - Number(a.season !== null),
     );
   return {
+    own: table,
     tables: [table],
     derived: null,
     byPeriod: table.some((row) => row.period !== null),
@@ -94,6 +97,7 @@ export function derivedPricing(ratesOf: RatesOf, charges: readonly { label: stri
   const tables = charges.flatMap((charge) => charge.pricing.tables);
   const rows = tables.flat().filter((row) => row.tier === null || row.tier === ratesOf.tier);
   return {
+    own: [],
     tables,
     derived: {
       fraction: ratesOf.fraction,
@@ -134,7 +138,7 @@ export function priceAt(
   tier: number | null,
 ): Price | null {
   const { derived, tables } = pricing;
-  if (derived === null) return rowInForce(tables[0] ?? [], date, season, period, tier)?.price ?? null;
+  if (derived === null) return rowInForce(pricing.own, date, season, period, tier)?.price ?? null;
   const rows: PricedRow[] = [];
   for (const table of tables) {
     const row = rowInForce(table, date, season, period, derived.tier);

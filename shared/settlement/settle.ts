@@ -3,8 +3,8 @@ import { type Cents, cents, dollarsText, sumCents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import { lessBank, moveKwhBank, type TakenByCharge } from './bank-kwh.ts';
 import { closeLots, closingBalance, openBank, settledBanks } from './bank-state.ts';
-import { type Ledgered, moveUsdBank } from './bank-usd.ts';
-import { chargeLines, type Owed } from './charges.ts';
+import { amountOf, type Ledgered, moveUsdBank } from './bank-usd.ts';
+import { chargeLines, NOTHING_OWED, type Owed } from './charges.ts';
 import { type CapUsed, settleCredit } from './credits.ts';
 import { type Cycle, openCycle } from './cycle-flows.ts';
 import { floorLines } from './floors.ts';
@@ -68,7 +68,7 @@ function settleOpen(cycle: Cycle, opening: Opening): SettledCycle {
 
   const ledgered: Ledgered = { amounts: new Map(), paid: new Map() };
   for (const item of prepared.early) {
-    const base = item.charge.basis === 'percent' ? baseBefore(cycle, item, ledgered, taken) : null;
+    const base = item.charge.basis === 'percent' ? baseBefore(cycle, item, ledgered, taken) : NOTHING_OWED;
     const made = chargeLines(cycle, item, lessBank(taken, item.charge.id), base);
     enterLines(item, made, ledgered, lines);
   }
@@ -85,8 +85,10 @@ function settleOpen(cycle: Cycle, opening: Opening): SettledCycle {
   for (const state of states) {
     const { bank } = state.prepared;
     if (bank.unit !== 'USD') continue;
-    const line = moveUsdBank(cycle, state, cents(earned.get(bank.id) ?? 0), ledgered);
-    if (line) lines.push(line);
+    for (const pocket of state.pockets) {
+      const line = moveUsdBank(cycle, state.prepared, pocket, cents(earned.get(bank.id) ?? 0), ledgered);
+      if (line) lines.push(line);
+    }
   }
 
   for (const item of prepared.late) {
@@ -145,8 +147,8 @@ function baseBefore(cycle: Cycle, item: PreparedCharge, ledgered: Ledgered, take
   const ids = item.charge.on;
   const amounts = ids.map((id) => {
     const of = cycle.prepared.charge.get(id);
-    if (!of || !taken.has(id)) return cents(ledgered.amounts.get(id) ?? 0);
-    return sumCents(chargeLines(cycle, of, null, null).map((line) => line.amountCents));
+    if (!of || !taken.has(id)) return cents(amountOf(ledgered, id));
+    return sumCents(chargeLines(cycle, of, null, NOTHING_OWED).map((line) => line.amountCents));
   });
   return { ids, amounts, paid: cents(0) };
 }
@@ -156,7 +158,7 @@ function baseAfter(item: PreparedCharge, ledgered: Ledgered): Owed {
   const ids = item.charge.on;
   let paid = 0;
   for (const id of ids) paid += ledgered.paid.get(id) ?? 0;
-  return { ids, amounts: ids.map((id) => cents(ledgered.amounts.get(id) ?? 0)), paid: cents(paid) };
+  return { ids, amounts: ids.map((id) => cents(amountOf(ledgered, id))), paid: cents(paid) };
 }
 
 /** The account's previous balance and the payments received. */

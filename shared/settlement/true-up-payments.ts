@@ -98,8 +98,7 @@ function paymentOf(
     return { label, period: pocket.period, quantity: null, rate: null, amount, working };
   }
   const { plan, round } = cycle.prepared;
-  const { pricing } = item;
-  const price = pricing && priceAt(pricing, cycle.to, seasonOf(plan.calendar, cycle.to), pocket.period, null);
+  const price = priceAt(item.pricing, cycle.to, seasonOf(plan.calendar, cycle.to), pocket.period, null);
   if (!price) return refuse(`${bank.label} has no true-up rate in force on ${cycle.to}.`);
   const quantity = qtyText(part);
   const kWh: WorkingInput = {

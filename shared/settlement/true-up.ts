@@ -67,8 +67,7 @@ export function trueUpBank(cycle: Cycle, state: BankState, usage: Usage | null):
 function keptOf(cycle: Cycle, item: PreparedTrueUp, usage: Usage | null): Qty {
   const { keep } = item.trueUp;
   if (!keep) return 0;
-  if ('amount' in keep) return item.keep;
-  if (!usage) return 0;
+  if ('amount' in keep || !usage) return item.keep;
   const n = big(usage.kWh).times(keep.averageCycles);
   const kept = cycle.prepared.plan.rounding.limits === 'whole' ? roundToWhole(n, usage.cycles) : n.div(usage.cycles);
   return greater(kept, 0);
