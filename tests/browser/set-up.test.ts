@@ -100,12 +100,14 @@ describe('from nothing to a posted first month', () => {
     await page.getByLabel(/Every kWh sent out earns a price in dollars/).check();
     await page.getByLabel('A customer charge, whatever is used').check();
     await page.getByLabel('A tax or franchise fee in percent').check();
-    await page.getByLabel('Name of the tax').fill('City tax');
+    const tax = page.locator('details').filter({ has: page.locator('summary', { hasText: 'Tax' }) });
+    await tax.locator('summary').click();
+    await tax.getByLabel('Name, as the bill prints it').fill('City tax');
     await page.getByLabel('From', { exact: true }).first().fill('2026-01-01');
     await page.getByLabel('A kWh bought', { exact: true }).fill('0.15');
     await page.getByLabel('A kWh sent out', { exact: true }).fill('0.08');
-    await page.getByLabel('Customer charge', { exact: true }).fill('12.00');
-    await page.getByLabel('City tax', { exact: true }).fill('5');
+    await page.getByRole('textbox', { name: 'Customer charge', exact: true }).fill('12.00');
+    await page.getByRole('textbox', { name: 'City tax', exact: true }).fill('5');
     await shot(page, 'setup-plan');
     await page.getByRole('button', { name: 'Save and go on' }).click();
     await page.waitForURL('**/setup/before');

@@ -3,6 +3,7 @@ import type { Cents } from '#shared/units/cents.ts';
 import { cycleRange, decimal, dollarsSize, money } from '#src/lib/format.ts';
 import { MoneyFigure } from '#src/ui/figure.tsx';
 import { Missing, Money } from '#src/ui/money.tsx';
+import { FigureButton } from '#src/ui/working.tsx';
 
 /** The trial's sentence and its cycles side by side. */
 export function TrialResult({ view }: { view: TrialView }) {
@@ -68,10 +69,11 @@ export function TrialResult({ view }: { view: TrialView }) {
                 />
               </td>
               <td data-label="Difference">
-                <MoneyFigure
+                <FigureButton
                   title="Difference"
-                  cents={totals.difference.amountCents}
+                  text={money(totals.difference.amountCents)}
                   working={totals.difference.working}
+                  className={toneOf(totals.difference.amountCents)}
                 />
               </td>
             </tr>
@@ -80,6 +82,11 @@ export function TrialResult({ view }: { view: TrialView }) {
       </table>
     </div>
   );
+}
+
+/** A lower bill is good news, whatever its sign. */
+function toneOf(difference: Cents): string | undefined {
+  return difference < 0 ? 'pos' : difference > 0 ? 'neg' : undefined;
 }
 
 function Row({ row }: { row: TrialRow }) {
@@ -106,7 +113,11 @@ function Row({ row }: { row: TrialRow }) {
         )}
       </td>
       <td data-label="Difference">
-        <Money cents={difference} missing="One of the two is not known" />
+        {difference === null ? (
+          <Missing reason="One of the two is not known" />
+        ) : (
+          <span className={toneOf(difference)}>{money(difference)}</span>
+        )}
       </td>
     </tr>
   );
