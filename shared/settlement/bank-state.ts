@@ -1,7 +1,7 @@
 import { type Cents, cents, dollarsText } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { PreparedBank, PreparedPlan } from './prepare.ts';
-import { big, compare, lesser, minus, plus, type Qty, qtyOfText, qtyText } from './quantity.ts';
+import { compare, lesser, minus, plus, type Qty, qtyOfText, qtyText } from './quantity.ts';
 import { refuse } from './refused.ts';
 import type { Lot, Opening, OpeningBalance, SettledBank } from './settlement.ts';
 
@@ -133,7 +133,7 @@ export function closeLots(state: BankState, to: Day): void {
 
 /** USD of a pocket in cents; a bank in USD holds whole cents. */
 export function centsOfQty(value: Qty): Cents {
-  return cents(typeof value === 'number' ? value / 10 : big(value).div(10).toNumber());
+  return cents(Number(value) / 10);
 }
 
 export function settledBanks(state: BankState): SettledBank[] {

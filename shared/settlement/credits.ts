@@ -1,11 +1,13 @@
 import { type Cents, cents, dollarsText, parseDollars } from '../units/cents.ts';
 import { yearOf } from '../units/day.ts';
 import type { Working, WorkingInput } from '../working.ts';
+import { centsOfQty } from './bank-state.ts';
 import type { Cycle } from './cycle-flows.ts';
 import { energyPieces } from './energy-pieces.ts';
 import { type Piece, pieceCents, pieceQuantity, pieceWords, pieceWorking } from './piece.ts';
 import type { Credit } from './plan.ts';
 import type { PreparedCredit } from './prepare.ts';
+import { qtyOfText } from './quantity.ts';
 import { refuse } from './refused.ts';
 import type { Payout, SettledLine } from './settlement.ts';
 import { termPieces } from './term-pieces.ts';
@@ -80,7 +82,7 @@ type Cap = { key: string; amount: Cents; used: Cents; left: number };
 function capOf(cycle: Cycle, credit: Credit, cap: NonNullable<Credit['cap']>, capUsed: CapUsed): Cap {
   const { id, label } = credit;
   const key = cap.per === 'year' ? String(yearOf(cycle.to)) : 'term';
-  const amount = parseDollars(cap.amount) ?? refuse(`The cap of ${label} is not an amount in dollars and cents.`);
+  const amount = centsOfQty(qtyOfText(cap.amount));
   const used =
     parseDollars(capUsed[id]?.[key] ?? '0') ?? refuse(`What ${label} has earned under its cap is not an amount.`);
   return { key, amount, used, left: amount - used };
