@@ -60,6 +60,10 @@ const SCREENS: [name: string, path: string][] = [
   ['money', '/money'],
   ['credit', '/credit'],
   ['setup', '/setup'],
+  ['setup-roof', '/setup/roof'],
+  ['setup-plan', '/setup/plan'],
+  ['setup-mortgage', '/setup/mortgage'],
+  ['plan', '/plan'],
   ['people', '/people'],
   ['account', '/account'],
   ['log', '/log'],
@@ -171,6 +175,26 @@ describe('the owner of the sample logs a month', () => {
     await page.getByRole('dialog').locator('button[type=submit]').click();
     await page.getByText('The utility said it will credit 44 kWh next month.').first().waitFor();
     await shot(page, 'cycle-accepted');
+    await close();
+  });
+});
+
+describe('a correction of a posted statement', () => {
+  it('is a new revision with a reason; the earlier one stays readable', async () => {
+    const { page, base, close } = await enter('owner');
+    await page.goto(`${base}/cycles/2026-05-14`);
+    await page.getByRole('button', { name: 'Correct the statement' }).click();
+    await page.getByLabel('Statement date').fill('2026-05-20');
+    await page.getByLabel('Reason').fill('The date was read from the envelope.');
+    await shot(page, 'cycle-correct');
+    await page.locator('form button[type=submit]').click();
+    await page
+      .getByText(/revision 2/)
+      .first()
+      .waitFor();
+    await page.getByText('One earlier revision').click();
+    await page.getByText(/The date was read from the envelope/).waitFor();
+    await shot(page, 'cycle-corrected');
     await close();
   });
 });
