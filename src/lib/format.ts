@@ -53,3 +53,9 @@ export function cycleRange(from: Day, to: Day): string {
     ? `${dayWords(from)} \u2013 ${dayWords(to)}`
     : `${dateWords(from)} \u2013 ${dateWords(to)}`;
 }
+
+/** "14 Aug – 14 Sep 2026", for a list that spans years. */
+export function cycleRangeWithYear(from: Day, to: Day): string {
+  const range = cycleRange(from, to);
+  return from.slice(0, 4) === to.slice(0, 4) ? `${range} ${to.slice(0, 4)}` : range;
+}

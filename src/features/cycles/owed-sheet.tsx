@@ -1,7 +1,7 @@
 import { Link } from 'react-router-dom';
 import type { OwedList, OwedRow } from '#shared/ledger/owed-list.ts';
 import { type Cents, cents } from '#shared/units/cents.ts';
-import { cycleRange, decimal, money } from '#src/lib/format.ts';
+import { cycleRangeWithYear, decimal, money } from '#src/lib/format.ts';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { FigureButton } from '#src/ui/working.tsx';
 
@@ -48,7 +48,7 @@ function OwedLine({ row, base }: { row: OwedRow; base: string }) {
   return (
     <tr>
       <th scope="row">
-        <Link to={`${base}/cycles/${row.to}`}>{cycleRange(row.from, row.to)}</Link>
+        <Link to={`${base}/cycles/${row.to}`}>{cycleRangeWithYear(row.from, row.to)}</Link>
       </th>
       <td className="text" data-label="Why">
         <span>
@@ -59,7 +59,7 @@ function OwedLine({ row, base }: { row: OwedRow; base: string }) {
       </td>
       <td data-label="Owed to you">
         <FigureButton
-          title={`Owed, ${cycleRange(row.from, row.to)}`}
+          title={`Owed, ${cycleRangeWithYear(row.from, row.to)}`}
           text={money(row.amountCents)}
           working={row.working}
           className={row.amountCents < 0 ? 'neg' : undefined}
