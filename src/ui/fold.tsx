@@ -16,10 +16,12 @@ export function Fold({
   return (
     <details className="mt-4 border-t border-rule" open={open} onToggle={(event) => setOpen(event.currentTarget.open)}>
       <summary className="flex min-h-11 cursor-pointer flex-wrap items-baseline gap-x-3 py-2">
-        <span aria-hidden="true" className="inline-block w-3 text-soft">
-          {open ? '−' : '+'}
+        <span className="font-semibold">
+          <span aria-hidden="true" className="inline-block w-5 font-normal text-soft">
+            {open ? '−' : '+'}
+          </span>
+          {title}
         </span>
-        <span className="font-semibold">{title}</span>
         {summary && <span className="hint">{summary}</span>}
       </summary>
       <div className="pb-3">{children}</div>

@@ -63,8 +63,8 @@ function Seasons() {
             title={`Season ${at + 1}`}
             onRemove={() => set({ seasons: without(seasons, at), ...unusedSeasons(form, seasons.length - 1) })}
           >
-            <Columns three>
-              <Field label="Name of the season" {...text(`seasons.${at}.name`, season.name, (name) => put({ name }))} />
+            <Field label="Name of the season" {...text(`seasons.${at}.name`, season.name, (name) => put({ name }))} />
+            <Columns>
               <YearlyDay label="First day" value={season.from} onChange={(from) => put({ from })} />
               <YearlyDay label="Last day" value={season.to} onChange={(to) => put({ to })} />
             </Columns>

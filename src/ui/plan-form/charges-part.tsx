@@ -5,6 +5,7 @@ import { Tick, Ticks } from '../ticks.tsx';
 import { COMMON, commonCharge, likeEnergy, withCharge, withoutCharge } from './change-charges.ts';
 import { ChargeFields } from './charge-fields.tsx';
 import { usePlanEdit } from './edit.ts';
+import { Faults } from './faults.tsx';
 import { type ChargeForm, freeId, newCharge, partIds } from './plan-form.ts';
 import { chargeWords } from './words.ts';
 
@@ -39,14 +40,12 @@ export function ChargesPart({ faultsOf }: { faultsOf: (path: string) => string[]
       </Ticks>
       <div className="mt-4">
         {form.charges.map((charge, at) => (
-          <Fold key={charge.id} title={charge.label || 'Unnamed charge'} summary={chargeWords(charge)}>
-            {faultsOf(`charges.${at}`).map((message) => (
-              <p key={message} className="field-error">
-                {message}
-              </p>
-            ))}
-            <ChargeFields charge={charge} at={at} />
-          </Fold>
+          <div key={charge.id}>
+            <Fold title={charge.label || 'Unnamed charge'} summary={chargeWords(charge)}>
+              <ChargeFields charge={charge} at={at} />
+            </Fold>
+            <Faults messages={faultsOf(`charges.${at}`)} />
+          </div>
         ))}
       </div>
       <p className="mt-4 flex flex-wrap gap-3">

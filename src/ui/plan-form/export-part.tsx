@@ -6,6 +6,7 @@ import { BankFields } from './bank-fields.tsx';
 import { CreditFields } from './credit-fields.tsx';
 import { usePlanEdit, without } from './edit.ts';
 import { EXPORT_RULES, exportRuleOf, withExportRule } from './export-rule.ts';
+import { Faults } from './faults.tsx';
 import { freeId, newBank, newCredit, partIds } from './plan-form.ts';
 import { WordSelect } from './small-fields.tsx';
 import { NETTING_WORDS } from './words.ts';
@@ -50,23 +51,24 @@ export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] 
           />
         )}
         {form.credits.map((credit, at) => (
-          <Fold
-            key={credit.id}
-            title={credit.label || 'Unnamed credit'}
-            summary={credit.kind === 'incentive' ? 'an incentive on the bill' : 'its price and where it goes'}
-          >
+          <div key={credit.id}>
+            <Fold
+              title={credit.label || 'Unnamed credit'}
+              summary={credit.kind === 'incentive' ? 'an incentive on the bill' : 'its price and where it goes'}
+            >
+              <CreditFields credit={credit} at={at} />
+              <p className="mt-3">
+                <button
+                  type="button"
+                  className="link hint min-h-11"
+                  onClick={() => set({ credits: without(form.credits, at) })}
+                >
+                  Take out {credit.label || 'this credit'}
+                </button>
+              </p>
+            </Fold>
             <Faults messages={faultsOf(`credits.${at}`)} />
-            <CreditFields credit={credit} at={at} />
-            <p className="mt-3">
-              <button
-                type="button"
-                className="link hint min-h-11"
-                onClick={() => set({ credits: without(form.credits, at) })}
-              >
-                Take out {credit.label || 'this credit'}
-              </button>
-            </p>
-          </Fold>
+          </div>
         ))}
         <p className="mt-4 flex flex-wrap gap-3">
           {rule !== 'nothing' && rule !== 'carried' && (
@@ -138,12 +140,4 @@ export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] 
       )}
     </>
   );
-}
-
-function Faults({ messages }: { messages: string[] }) {
-  return messages.map((message) => (
-    <p key={message} className="field-error">
-      {message}
-    </p>
-  ));
 }
