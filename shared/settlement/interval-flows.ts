@@ -88,8 +88,8 @@ export function nettedOver(
     let bought = 0;
     let sent = 0;
     do {
-      bought += data.importWh[at] ?? 0;
-      sent += data.exportWh[at] ?? 0;
+      bought += Number(data.importWh[at]);
+      sent += Number(data.exportWh[at]);
       at += 1;
     } while (netting !== 'none' && at < data.importWh.length && blockAt(view, at, blockMs) === block);
     const date = view.days[first];
@@ -111,7 +111,7 @@ export function nettedOver(
 /** The clock block of a step, counted from 1970 in the zone's own minutes past the hour. */
 function blockAt(view: IntervalView, at: number, blockMs: number): number {
   const instant = view.startMs + at * view.data.minutes * MS_PER_MINUTE;
-  const shift = (view.offsetsMs[at] ?? 0) % blockMs;
+  const shift = Number(view.offsetsMs[at]) % blockMs;
   return Math.floor((instant + shift) / blockMs);
 }
 
@@ -127,7 +127,7 @@ export function producedOver(
   const made = { total: 0, byPeriod: {} as Record<string, number> };
   for (const [at, date] of view.days.entries()) {
     if (date < from || date >= to) continue;
-    const value = data.productionWh[at] ?? 0;
+    const value = Number(data.productionWh[at]);
     made.total += value;
     const period = view.periods[at];
     if (period) addTo(made.byPeriod, period, value);

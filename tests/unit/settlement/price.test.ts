@@ -1,7 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import type { RatePlan } from '#shared/settlement/plan.ts';
 import { planFor } from '#shared/settlement/plan-in-force.ts';
-import { type PriceOf, priceQuantity } from '#shared/settlement/price.ts';
+import { type PriceOf, priceAmount, priceQuantity } from '#shared/settlement/price.ts';
 import { planWithoutRoof } from '#shared/settlement/without-roof.ts';
 import { day } from '#shared/units/day.ts';
 import { usdOf } from '#shared/units/rate.ts';
@@ -104,6 +104,31 @@ describe('the price of a billed quantity', () => {
     expect([price(of, 'least', '1'), price(of, 'energy', null), price(of, 'water', '1')]).toEqual([null, null, null]);
     expect(priceQuantity(of, 'energy', day('2024-01-16'), day('2024-02-16'), '100')).toBeNull();
   });
+
+  test('of a credit or a bank is null without kWh, and of a bank without a price in force at its read date', () => {
+    const bank = { label: 'kWh bank', unit: 'kWh', offsets: [] };
+    const pays = (from: string) => ({ at: 'everyCycle', action: 'pay', to: 'bill', rates: [{ from, rate: '0.03' }] });
+    const of = plan({
+      credits: [SENT],
+      banks: [
+        { ...bank, id: 'loses', trueUps: [{ at: 'everyCycle', action: 'expire' }] },
+        { ...bank, id: 'later', trueUps: [pays('2026-07-17')] },
+        { ...bank, id: 'pays', trueUps: [{ at: 'everyCycle', action: 'expire' }, pays('2026-07-16')] },
+      ],
+    });
+    expect([price(of, 'sent', null), price(of, 'pays', null)]).toEqual([null, null]);
+    expect([price(of, 'loses', '100'), price(of, 'later', '100')]).toEqual([null, null]);
+    expect(price(of, 'pays', '100')).toEqual([-300, '0.03']);
+  });
+
+  test('is the same amount where nobody asks for its working', () => {
+    const of = plan({ charges: [{ ...ENERGY, rates: CHANGING }], credits: [SENT] });
+    const amount = (component: string, quantity: string | null) =>
+      priceAmount(of, component, day('2026-06-16'), day('2026-07-16'), quantity);
+    for (const component of ['energy', 'sent'])
+      expect(amount(component, '498.5')).toBe(price(of, component, '498.5')?.[0]);
+    expect([amount('energy', null), amount('water', '1')]).toEqual([null, null]);
+  });
 });
 
 describe('the plan in force', () => {
@@ -121,6 +146,8 @@ describe('the plan in force', () => {
 
   test('is the first for cycles before it, and none where there is none', () => {
     expect(planFor(plans, day('2024-01-01'))?.plan.name).toBe('2025-01-01');
+    expect(planFor(plans.toReversed(), day('2024-01-01'))?.plan.name).toBe('2025-01-01');
+    expect(planFor(plans.toReversed(), day('2026-06-16'))?.plan.name).toBe('2026-06-01');
     expect(planFor([], day('2026-01-01'))).toBeNull();
   });
 });

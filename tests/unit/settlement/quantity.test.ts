@@ -11,9 +11,12 @@ import {
   qtyOfText,
   qtyText,
   rateOf,
+  roundedCents,
   roundToWhole,
   scaled,
+  sizeOf,
   times,
+  whOfQty,
 } from '#shared/settlement/quantity.ts';
 import { Exact } from '#shared/units/rate.ts';
 
@@ -127,5 +130,21 @@ describe('quantities', () => {
       roundToWhole(499, 1),
       roundToWhole(new Exact('2500.5'), 1),
     ]).toEqual([1000, -1000, 0, 3000]);
+  });
+
+  test('have a size without a sign, and cents and Wh rounded half away from zero', () => {
+    expect([sizeOf(-500), sizeOf(500), String(sizeOf(new Exact('-0.5')))]).toEqual([500, 500, '0.5']);
+    expect([roundedCents(1230), roundedCents(1235), roundedCents(-1235), roundedCents(1234)]).toEqual([
+      123, 124, -124, 123,
+    ]);
+    expect(roundedCents(new Exact('1234.999'))).toBe(123);
+    expect([whOfQty(1234), whOfQty(new Exact('1234.5')), whOfQty(new Exact('-1234.5'))]).toEqual([1234, 1235, -1235]);
+  });
+
+  test('at a rate of more decimals than whole numbers hold are priced exactly', () => {
+    // 1,000 kWh × $0.1234500000000001 is a little more than $123.45 and rounds to it; half a cent and a trace more rounds up.
+    expect(priced(1_000_000, 1, rateOf('0.1234500000000001'), 'halfUp')).toBe(12_345);
+    expect(priced(1000, 1, rateOf('0.0050000000000000001'), 'halfEven')).toBe(1);
+    expect(priced(1000, 1, rateOf('0.005'), 'halfEven')).toBe(0);
   });
 });
