@@ -237,4 +237,43 @@ describe('a time-of-use plan from a printed rate sheet', () => {
     await shot(page, 'rate-plan-trial-phone');
     expect(visitor.complaints).toEqual([]);
   });
+
+  it('takes a later plan in from a file, says why a broken one is refused, and removes it again', async () => {
+    const { page } = visitor;
+    await page.setViewportSize({ width: 1280, height: 900 });
+    const file = page.getByLabel('A plan as a JSON file');
+    const give = (name: string, text: string) =>
+      file.setInputFiles({ name, mimeType: 'application/json', buffer: Buffer.from(text) });
+    await give('torn.json', '{"name": "Torn');
+    await page.getByLabel('Holds from').fill('2026-10-01');
+    await page.getByRole('button', { name: 'Save this plan' }).click();
+    await page
+      .getByRole('alert')
+      .getByText(/This is not JSON/)
+      .waitFor();
+    await page.getByRole('button', { name: 'Leave it as it was' }).click();
+
+    const broken = { ...PLAN, banks: PLAN.banks.map((bank) => ({ ...bank, offsets: ['heat'] })) };
+    await give('broken.json', JSON.stringify(broken));
+    await page.getByLabel('Holds from').fill('2026-10-01');
+    await page.getByRole('complementary').getByText(/heat/).first().waitFor();
+    await page.getByRole('button', { name: 'Save this plan' }).click();
+    await page.getByRole('alert').getByText(/heat/).first().waitFor();
+    await shot(page, 'rate-plan-refused');
+    await page.getByRole('button', { name: 'Leave it as it was' }).click();
+
+    await give('later.json', JSON.stringify({ ...PLAN, name: 'R-7 as of autumn' }));
+    await page.getByLabel('Holds from').fill('2026-10-01');
+    await page.getByRole('button', { name: 'Save this plan' }).click();
+    await page.getByRole('heading', { level: 1 }).filter({ hasText: 'R-7 as of autumn' }).waitFor();
+    const [download] = await Promise.all([
+      page.waitForEvent('download'),
+      page.getByRole('button', { name: /Save as JSON.*autumn/ }).click(),
+    ]);
+    expect(download.suggestedFilename()).toBe('r-7-as-of-autumn-2026-10-01.json');
+    await page.getByRole('button', { name: /Remove.*autumn/ }).click();
+    await page.getByRole('dialog').getByRole('button', { name: 'Remove it' }).click();
+    await page.getByRole('heading', { level: 1 }).filter({ hasText: 'R-7 Residential time of day' }).waitFor();
+    expect(visitor.complaints).toEqual([]);
+  });
 });

@@ -3,14 +3,9 @@ import { Fold } from '../fold.tsx';
 import { AddRow, Columns, FormRow } from '../rows.tsx';
 import { Tick } from '../ticks.tsx';
 import { changed, usePlanEdit, without } from './edit.ts';
-import { freeId, type HoursForm, type PeriodForm, type PlanForm } from './plan-form.ts';
-import { ClockSelect, WordSelect, YearlyDay } from './small-fields.tsx';
-
-const DAY_WORDS = [
-  ['weekday', 'Monday to Friday'],
-  ['weekend', 'Saturday and Sunday'],
-  ['all', 'every day'],
-] as const;
+import { Hours, hoursLike } from './hours-fields.tsx';
+import { freeId, type PeriodForm, type PlanForm } from './plan-form.ts';
+import { WordSelect, YearlyDay } from './small-fields.tsx';
 
 /** Seasons, times of day and holidays, as the sheet sets them out before its prices. */
 export function CalendarPart() {
@@ -167,67 +162,6 @@ function Periods() {
           />
         </Columns>
       )}
-    </>
-  );
-}
-
-function hoursLike(): HoursForm {
-  return { season: '', days: 'weekday', from: '16:00', to: '21:00' };
-}
-
-function Hours({
-  period,
-  at,
-  put,
-  error,
-}: {
-  period: PeriodForm;
-  at: number;
-  put: (changes: Partial<PeriodForm>) => void;
-  error: (path: string) => string | undefined;
-}) {
-  const { form } = usePlanEdit();
-  return (
-    <>
-      {period.hours.map((hours, row) => {
-        const change = (changes: Partial<HoursForm>) => put({ hours: changed(period.hours, row, changes) });
-        return (
-          // biome-ignore lint/suspicious/noArrayIndexKey: a span of hours has no name but its place
-          <div key={row} className="grid items-end gap-x-4 sm:grid-cols-[repeat(auto-fit,minmax(130px,1fr))]">
-            <WordSelect label="On" value={hours.days} words={DAY_WORDS} onChange={(days) => change({ days })} />
-            <ClockSelect label="From" value={hours.from} onChange={(from) => change({ from })} />
-            <ClockSelect end label="Until" value={hours.to} onChange={(to) => change({ to })} />
-            {form.seasons.length > 0 && (
-              <WordSelect
-                label="In"
-                value={hours.season}
-                words={[['', 'every season'], ...form.seasons.map(({ id, name }) => [id, name] as const)]}
-                onChange={(season) => change({ season })}
-              />
-            )}
-            {period.hours.length > 1 && (
-              <button
-                type="button"
-                className="link hint min-h-11 text-left"
-                onClick={() => put({ hours: without(period.hours, row) })}
-              >
-                Take out these hours
-              </button>
-            )}
-            {error(`periods.${at}.hours.${row}`) && (
-              <span className="field-error">{error(`periods.${at}.hours.${row}`)}</span>
-            )}
-          </div>
-        );
-      })}
-      {error(`periods.${at}.hours`) && <span className="field-error">{error(`periods.${at}.hours`)}</span>}
-      <button
-        type="button"
-        className="link hint mt-2 min-h-11"
-        onClick={() => put({ hours: [...period.hours, hoursLike()] })}
-      >
-        Add hours to {period.label || 'this period'}
-      </button>
     </>
   );
 }
