@@ -100,6 +100,8 @@ export const cycleSchema = z.object({
   /** Current electric charges after bank credits, without previous balance, payments, deposits and other services. */
   asItWas: z.object({ amountCents: centsSchema, working: workingSchema }),
   checks: z.array(checkSchema),
+  /** Mistakes that, made alone, give exactly what was billed; found by settling again. Empty where none does or nothing differs. */
+  causes: z.array(z.object({ cause: z.string(), words: z.string() })),
   /** All entries that fall in this cycle. */
   entries: z.array(entrySchema),
   /** Sum of this cycle's entries (cash and avoided). */

@@ -1,5 +1,5 @@
 import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
-import { meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
+import { type MeteredCycle, meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
 import { estimatedRuns } from '../metering/estimated-reads.ts';
 import { indexIntervals } from '../metering/interval-index.ts';
 import type { Figure } from '../position/position.ts';
@@ -13,7 +13,8 @@ import type { Cycle, CycleState } from './cycle.ts';
 import { type CyclePaper, cyclePapers, statementsInForce } from './cycle-papers.ts';
 import { facingLines } from './facing.ts';
 import { type LearnedRates, NOTHING_LEARNED, withLearnedRates } from './learned-rates.ts';
-import { firstOpening, nextOpening, type SettledCycle, settleOne } from './settle-cycle.ts';
+import { nameCauses } from './name-causes.ts';
+import { firstOpening, nextOpening, type SettledCycle, settleOne, usageOf } from './settle-cycle.ts';
 import { usageBeforeRoof } from './use-before.ts';
 import { utilityBank } from './utility-bank.ts';
 import { billWithoutRoof } from './without-roof.ts';
@@ -49,11 +50,13 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
   const witnessed: WitnessedCycle[] = papers.map((paper) => witnessCycle(paper, index));
   const usage = usageBeforeRoof(facts.usageBefore, inForce, facts.house.switchOn);
   const cycles: AssembledCycle[] = [];
+  const meters: MeteredCycle[] = [];
   let opening: Opening | null = null;
   let before: SettledCycle | null = null;
   for (const paper of papers) {
     opening ??= firstOpening(facts, paper);
     const metered = meterCycle(paper, witnessed, runs);
+    meters.push(metered);
     const settled: SettledCycle = settleOne(facts, paper, metered, index, opening, before?.learned ?? NOTHING_LEARNED);
     const facing = facingLines(paper, settled);
     const { balanceCents: openingBalanceCents } = facts.opening;
@@ -88,16 +91,23 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
         withoutRoof: billWithoutRoof(paper, metered.energy, settled.plan, usage),
         asItWas: billAsItWas(paper, facts.incentive),
         checks,
+        causes: [],
         entries: [],
         addedCents: ZERO_CENTS,
         loanPayments: 0,
       },
     });
   }
+  const named = nameCauses(cycles, (at) => {
+    const [one, metered] = [cycles[at], meters[at]];
+    if (!one || !metered || one.settled.plan === null) return null;
+    const usage = usageOf(facts, one.paper, metered, index, one.settled.plan.plan);
+    return { paper: one.paper, settled: one.settled, metered, usage: typeof usage === 'string' ? null : usage };
+  });
   const learned: LearnedRates = before?.learned ?? NOTHING_LEARNED;
   const end = papers.at(-1)?.to;
   const plans = end === undefined ? facts.plans : facts.plans.map((plan) => withLearnedRates(plan, learned, end));
-  return { cycles, closing: opening ?? facts.opening, plans };
+  return { cycles: named, closing: opening ?? facts.opening, plans };
 }
 
 /** Open while it cannot be settled or an estimate awaits its read; else by what differs and whether all of it is accepted. */

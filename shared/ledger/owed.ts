@@ -67,6 +67,7 @@ function bankShort(cycle: Cycle): { cents: Cents; kwh: string | null } {
 }
 
 function causesOf(cycle: Cycle): string[] {
+  if (cycle.causes.length > 0) return cycle.causes.map((cause) => cause.words);
   const said = cycle.checks.flatMap((check) =>
     check.verdict === 'differs' && check.cause !== null ? [check.cause] : [],
   );
