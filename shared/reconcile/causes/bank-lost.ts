@@ -37,7 +37,9 @@ function sayLost(banks: readonly SettledBank[]): string {
 
 /** At what the balance went lost, where the inputs show it. */
 function whenOf({ planBefore, cycle: { plan, usage }, truth }: Place): string {
-  if (planBefore !== null && planBefore !== plan) return ' The rate plan changed with this cycle.';
+  // A plan with a rider's price put in is still the same plan.
+  const same = planBefore === null || (planBefore.name === plan.name && planBefore.banks === plan.banks);
+  if (!same) return ' The rate plan changed with this cycle.';
   const change = truth.settlement.lines.some((line) => line.from !== null && line.from > usage.from);
   return change ? ' A price changed in this cycle.' : '';
 }

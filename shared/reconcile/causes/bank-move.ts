@@ -1,6 +1,6 @@
 import { closingBalance } from '../../settlement/bank-state.ts';
 import type { PlanBank } from '../../settlement/plan.ts';
-import type { SettledCycle } from '../../settlement/settle.ts';
+import type { SettledAmounts } from '../../settlement/settle.ts';
 import type { Lot, SettledBank } from '../../settlement/settlement.ts';
 import { dollarsText } from '../../units/cents.ts';
 import type { Day } from '../../units/day.ts';
@@ -11,11 +11,11 @@ import { decimalTextOf, Exact, roundToCents } from '../../units/rate.ts';
  * shown as earned. Null where the bank was trued up at this close, for then what would have become of the rest is not known.
  */
 export function withClose(
-  settled: SettledCycle,
+  settled: SettledAmounts,
   bank: PlanBank,
   more: (pocket: SettledBank) => Exact,
   asEarned: boolean,
-): SettledCycle | null {
+): SettledAmounts | null {
   const { settlement, closing } = settled;
   const own = settlement.banks.filter((pocket) => pocket.bank === bank.id);
   if (own.some(isTruedUp)) return null;

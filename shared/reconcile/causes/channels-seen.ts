@@ -26,7 +26,5 @@ function keepsByUse({ banks }: RatePlan): boolean {
 }
 
 function nets(plan: RatePlan): boolean {
-  return (
-    plan.netting !== 'none' || [...plan.charges, ...plan.credits].some((item) => (item.netting ?? 'none') !== 'none')
-  );
+  return [plan, ...plan.charges, ...plan.credits].some(({ netting }) => netting !== null && netting !== 'none');
 }

@@ -1,5 +1,5 @@
 import type { Credit, PlanBank } from '../../settlement/plan.ts';
-import type { SettledCycle } from '../../settlement/settle.ts';
+import type { SettledAmounts } from '../../settlement/settle.ts';
 import type { CycleUsage, SettledBank } from '../../settlement/settlement.ts';
 import { ZERO_WH } from '../../units/energy.ts';
 import { Exact, kwhOf } from '../../units/rate.ts';
@@ -87,7 +87,7 @@ function givenTwice({ cycle: { plan }, mayDiffer }: Place): Edit[] {
 /** Marks the second of a pair inside one trial; a plan's own ids are never this long. */
 const AGAIN = 'GivenAgain';
 
-function nameAgain(settled: SettledCycle): SettledCycle {
+function nameAgain(settled: SettledAmounts): SettledAmounts {
   const plain = <Line extends { component: string }>(line: Line): Line => ({
     ...line,
     component: line.component.endsWith(AGAIN) ? line.component.slice(0, -AGAIN.length) : line.component,

@@ -1,5 +1,5 @@
 import type { RatePlan } from '../../settlement/plan.ts';
-import type { SettledCycle } from '../../settlement/settle.ts';
+import type { SettledAmounts } from '../../settlement/settle.ts';
 import type { CycleUsage, Opening } from '../../settlement/settlement.ts';
 import type { CauseCycle, CauseId } from './cause.ts';
 import type { BilledSums } from './reproduces.ts';
@@ -13,9 +13,9 @@ export type Edit = {
   usage: CycleUsage | null;
   opening: ((opening: Opening) => Opening) | null;
   /** Changes the settled cycle where no plan can say the mistake; null when it cannot be made there. */
-  after: ((settled: SettledCycle) => SettledCycle | null) | null;
+  after: ((settled: SettledAmounts) => SettledAmounts | null) | null;
   /** The sentence to the owner, from the cycle as it comes out under the mistake. */
-  words: (settled: SettledCycle) => string;
+  words: (settled: SettledAmounts) => string;
   found: Record<string, string>;
 };
 
@@ -34,8 +34,10 @@ export type Place = {
   index: number;
   cycle: CauseCycle;
   opening: Opening;
-  truth: SettledCycle;
+  truth: SettledAmounts;
   sums: BilledSums;
+  /** Components and banks surely billed otherwise; not told after the first cycle billed otherwise. */
+  differs: ReadonlySet<string>;
   /**
    * Whether a component or bank may be what a mistake in this cycle touched: it is billed otherwise, or the bill does not speak of it. Always after the
    * first cycle billed otherwise, since what that left behind may hide a difference.

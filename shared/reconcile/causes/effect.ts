@@ -1,15 +1,15 @@
-import type { SettledCycle } from '../../settlement/settle.ts';
+import type { SettledAmounts } from '../../settlement/settle.ts';
 import type { SettledBank } from '../../settlement/settlement.ts';
 import { type Cents, cents, dollarsText } from '../../units/cents.ts';
 import { decimalTextOf, Exact, roundToCents } from '../../units/rate.ts';
 import type { BankShort } from './cause.ts';
 
 /** What was asked for or withheld too much, over all cycles: current charges billed − due, and payouts due − paid. */
-export function overbilled(truth: readonly SettledCycle[], made: readonly SettledCycle[]): Cents {
+export function overbilled(truth: readonly SettledAmounts[], made: readonly SettledAmounts[]): Cents {
   return cents(taken(made) - taken(truth));
 }
 
-function taken(cycles: readonly SettledCycle[]): number {
+function taken(cycles: readonly SettledAmounts[]): number {
   let sum = 0;
   for (const { settlement } of cycles) {
     for (const line of settlement.lines) {
@@ -21,7 +21,7 @@ function taken(cycles: readonly SettledCycle[]): number {
 }
 
 /** What each bank of the last cycle lacks at its close. */
-export function bankShort(truth: readonly SettledCycle[], made: readonly SettledCycle[]): BankShort[] {
+export function bankShort(truth: readonly SettledAmounts[], made: readonly SettledAmounts[]): BankShort[] {
   const held = made.slice(-1).flatMap(({ settlement }) => settlement.banks);
   return truth.slice(-1).flatMap(({ settlement }) =>
     settlement.banks.map((bank) => {

@@ -1,4 +1,4 @@
-import type { SettledCycle } from '../../settlement/settle.ts';
+import type { SettledAmounts } from '../../settlement/settle.ts';
 import type { Cause, CauseInput } from './cause.ts';
 import type { Attempt, Hypothesis } from './edit.ts';
 import { bankShort, overbilled } from './effect.ts';
@@ -21,7 +21,7 @@ export function findCauses(input: CauseInput): Cause[] {
 function causesAmong(scene: Scene, hypotheses: readonly Hypothesis[]): Cause[] {
   const causes: Cause[] = [];
   for (const { cause, attempts, overlooks } of hypotheses) {
-    const ways: { attempt: Attempt; settled: SettledCycle[] }[] = [];
+    const ways: { attempt: Attempt; settled: SettledAmounts[] }[] = [];
     for (const attempt of attempts(scene)) {
       const settled = tryAttempt(scene, attempt, overlooks);
       if (settled) ways.push({ attempt, settled });
@@ -44,7 +44,7 @@ function causesAmong(scene: Scene, hypotheses: readonly Hypothesis[]): Cause[] {
   return causes;
 }
 
-function sayAttempt(attempt: Attempt, settled: readonly SettledCycle[]): string {
+function sayAttempt(attempt: Attempt, settled: readonly SettledAmounts[]): string {
   const said = attempt.flatMap(({ place, edit }) =>
     settled.slice(place.index, place.index + 1).map((cycle) => edit.words(cycle)),
   );

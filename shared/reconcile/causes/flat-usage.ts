@@ -1,7 +1,7 @@
 import { flowOf, type NettedFlow, openCycle } from '../../settlement/cycle-flows.ts';
 import type { RatePlan } from '../../settlement/plan.ts';
 import { preparePlan } from '../../settlement/prepare.ts';
-import { type SettledCycle, settleCycle } from '../../settlement/settle.ts';
+import { type SettledAmounts, settleAmounts } from '../../settlement/settle.ts';
 import type { CycleUsage, Flow, Opening } from '../../settlement/settlement.ts';
 import { wh } from '../../units/energy.ts';
 
@@ -9,7 +9,7 @@ import { wh } from '../../units/energy.ts';
  * The usage with its interval data folded into what the plan asks of them (kWh by period, kWh after netting), so that many trials need not go over
  * thousands of steps; as given where the cycle does not come out the same without the steps.
  */
-export function flatUsage(plan: RatePlan, opening: Opening, usage: CycleUsage, truth: SettledCycle): CycleUsage {
+export function flatUsage(plan: RatePlan, opening: Opening, usage: CycleUsage, truth: SettledAmounts): CycleUsage {
   if (usage.intervals === null) return usage;
   const cycle = openCycle(preparePlan(plan), usage);
   const netted: CycleUsage['netted'] = { ...usage.netted };
@@ -20,7 +20,7 @@ export function flatUsage(plan: RatePlan, opening: Opening, usage: CycleUsage, t
   }
   const byPeriod = plan.calendar.periods.length === 0 ? usage.byPeriod : periodsWh(flowOf(cycle, 'none'));
   const flat = { ...usage, netted, byPeriod, intervals: null };
-  const settled = settleCycle(plan, opening, flat);
+  const settled = settleAmounts(plan, opening, flat);
   return settled.ok && sameOutcome(settled.value, truth) ? flat : usage;
 }
 
@@ -37,11 +37,11 @@ function periodsWh({ byPeriod }: NettedFlow): Record<string, Flow> | null {
   return Object.fromEntries(Object.entries(byPeriod).map(([period, flow]) => [period, flowWh(flow)]));
 }
 
-function sameOutcome(a: SettledCycle, b: SettledCycle): boolean {
+function sameOutcome(a: SettledAmounts, b: SettledAmounts): boolean {
   return outcome(a) === outcome(b);
 }
 
-function outcome({ settlement: { lines, payouts, banks } }: SettledCycle): string {
+function outcome({ settlement: { lines, payouts, banks } }: SettledAmounts): string {
   const amounts = (made: readonly { component: string; quantity: string | null; amountCents: number }[]) =>
     made.map(({ component, quantity, amountCents }) => [component, quantity, amountCents]);
   return JSON.stringify([amounts(lines), amounts(payouts), banks.map((bank) => bank.move)]);

@@ -9,11 +9,10 @@ function editsOf({ cycle: { plan, usage }, mayDiffer }: Place): Edit[] {
   const credits = plan.credits.filter((credit) => credit.basis === 'production' && mayDiffer(credit.id));
   return eachAndAll(credits).map((some) => {
     const ids = some.map((credit) => credit.id);
-    const produced = usage.productionWh === null ? '' : ` of the ${sayKwh(usage.productionWh)} kWh produced`;
     return edit(
       ids.join(),
       { plan: withCredits(plan, ids, (credit) => ({ ...credit, basis: 'export', netting: 'none' })) },
-      `${sayList(some.map((credit) => credit.label))} was paid on the ${sayKwh(usage.exportWh)} kWh exported instead${produced}.`,
+      `${sayList(some.map((credit) => credit.label))} was paid on the ${sayKwh(usage.exportWh)} kWh exported instead of on production.`,
       { credits: ids.join(', ') },
     );
   });

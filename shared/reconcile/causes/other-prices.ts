@@ -23,8 +23,8 @@ const VERSIONS_AROUND = 2;
 export function otherPrices(plan: RatePlan, item: PricedItem, usage: CycleUsage): OtherPrices[] {
   const { rates, tiers, derived, ratesOf } = item;
   if (derived !== null && ratesOf !== null) return ofOtherCharges(plan, derived, ratesOf, usage);
-  const own = { rates: rates ?? [], tiers };
-  const rows = [...own.rates, ...tiers];
+  const own = { rates, tiers };
+  const rows = [...rates, ...tiers];
   const seasonal = rows.some((row) => row.season !== undefined);
   return [
     ...(seasonal ? otherSeasons(plan, usage).map((id) => priced(inSeason(own, id), seasonSaid(id))) : []),
@@ -33,9 +33,9 @@ export function otherPrices(plan: RatePlan, item: PricedItem, usage: CycleUsage)
       usage,
     ).map((version) => priced(asOf(own, version.from), version.said)),
     ...swapped(own, 'period', periodNames(plan)),
-    ...swapped(own, 'tier', tierNames(own.rates)),
-    ...(item.credits ? [priced({ ...own, rates: own.rates.map(halved) }, HALF)] : []),
-  ].filter((prices) => prices.rates !== null && prices.rates.length > 0);
+    ...swapped(own, 'tier', tierNames(rates)),
+    ...(item.credits ? [priced({ ...own, rates: rates.map(halved) }, HALF)] : []),
+  ].filter((prices) => prices.rates.length > 0);
 }
 
 const HALF: Said = { key: 'half', said: 'half the rate', found: { price: 'half' } };
@@ -143,7 +143,7 @@ function ofOtherCharges(plan: RatePlan, pricing: Pricing, ratesOf: RatesOf, usag
   const season = seasonOf(calendar, usage.to);
   const at = (date: Day, inIt: string | null): Rows => ({ rates: pinned(plan, pricing, date, inIt), tiers: [] });
   const share = (change: Partial<RatesOf>, said: Said): OtherPrices => ({
-    rates: null,
+    rates: [],
     ratesOf: { ...ratesOf, ...change },
     tiers: [],
     ...said,
@@ -165,7 +165,7 @@ function ofOtherCharges(plan: RatePlan, pricing: Pricing, ratesOf: RatesOf, usag
         { key: `tier ${tier}`, said: `the tier ${tier} rate`, found: { price: 'tier', taken: `tier ${tier}` } },
       ),
     ),
-  ].filter((prices) => prices.rates === null || prices.rates.length > 0);
+  ].filter((prices) => prices.ratesOf !== null || prices.rates.length > 0);
 }
 
 function pinned(plan: RatePlan, pricing: Pricing, date: Day, season: string | null): RateRow[] {

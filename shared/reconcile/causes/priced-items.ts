@@ -1,10 +1,10 @@
-import type { Charge, RatePlan, RateRow, RatesOf, TierRow } from '../../settlement/plan.ts';
+import type { Charge, RatePlan, RateRow, RatesOf, TierRow, TrueUp } from '../../settlement/plan.ts';
 import { type PreparedPlan, preparePlan } from '../../settlement/prepare.ts';
 import type { Pricing } from '../../settlement/rates-in-force.ts';
 import { withBank, withCharges, withCredits } from './plan-edit.ts';
 
-/** Prices to put in place of an item's own. */
-export type Prices = { rates: RateRow[] | null; ratesOf: RatesOf | null; tiers: TierRow[] };
+/** Prices of an item, or to put in place of its own: rows, or a share of other charges' rates and no rows. */
+export type Prices = { rates: RateRow[]; ratesOf: RatesOf | null; tiers: TierRow[] };
 
 /** Something a plan puts a price on: a charge, a credit, or what a bank pays at its true-up. */
 export type PricedItem = Prices & {
@@ -18,9 +18,14 @@ export type PricedItem = Prices & {
   put: (plan: RatePlan, prices: Prices) => RatePlan;
 };
 
+/** What a rider charges is read from the bill itself, and so is no price to be wrong (ledger.md §3). */
 export function pricedItems(plan: RatePlan): PricedItem[] {
   const prepared = preparePlan(plan);
-  return [...plan.charges.map(chargeItem), ...creditItems(prepared), ...trueUpItems(prepared)];
+  return [
+    ...plan.charges.filter((charge) => !charge.learned).map(chargeItem),
+    ...creditItems(prepared),
+    ...trueUpItems(prepared),
+  ];
 }
 
 function chargeItem({ id, label, rates, tiers }: Charge): PricedItem {
@@ -33,7 +38,7 @@ function chargeItem({ id, label, rates, tiers }: Charge): PricedItem {
     tiers,
     derived: null,
     put: (plan, prices) =>
-      withCharges(plan, [id], (charge) => ({ ...charge, rates: prices.rates ?? rates, tiers: prices.tiers })),
+      withCharges(plan, [id], (charge) => ({ ...charge, rates: prices.rates, tiers: prices.tiers })),
   };
 }
 
@@ -42,28 +47,29 @@ function creditItems({ credits }: PreparedPlan): PricedItem[] {
     id,
     label,
     credits: true,
-    rates,
+    rates: rates ?? [],
     ratesOf,
     tiers: [],
     derived: ratesOf === null ? null : pricing,
-    put: (plan, prices) =>
-      withCredits(plan, [id], (credit) => ({ ...credit, rates: prices.rates, ratesOf: prices.ratesOf })),
+    put: (plan, prices) => withCredits(plan, [id], (credit) => ({ ...credit, ...pricesOf(prices) })),
   }));
+}
+
+function pricesOf({ rates, ratesOf }: Prices): Pick<TrueUp, 'rates' | 'ratesOf'> {
+  return ratesOf === null ? { rates, ratesOf } : { rates: null, ratesOf };
 }
 
 function trueUpItems({ banks }: PreparedPlan): PricedItem[] {
   return banks.flatMap(({ bank: { id, label }, trueUps }) =>
     trueUps.flatMap(({ trueUp: { rates, ratesOf }, pricing }, index): PricedItem[] => {
-      if (pricing === null) return [];
+      if (rates === null && ratesOf === null) return [];
       const derived = ratesOf === null ? null : pricing;
       const put: PricedItem['put'] = (plan, prices) =>
         withBank(plan, id, (bank) => ({
           ...bank,
-          trueUps: bank.trueUps.map((one, at) =>
-            at === index ? { ...one, rates: prices.rates, ratesOf: prices.ratesOf } : one,
-          ),
+          trueUps: bank.trueUps.map((one, at) => (at === index ? { ...one, ...pricesOf(prices) } : one)),
         }));
-      return [{ id, label, credits: true, rates, ratesOf, tiers: [], derived, put }];
+      return [{ id, label, credits: true, rates: rates ?? [], ratesOf, tiers: [], derived, put }];
     }),
   );
 }

@@ -1,5 +1,5 @@
-import type { SettledCycle } from '../../settlement/settle.ts';
-import type { CycleUsage, SettledBank, Settlement } from '../../settlement/settlement.ts';
+import type { SettledAmounts } from '../../settlement/settle.ts';
+import type { CycleUsage, SettledBank } from '../../settlement/settlement.ts';
 import { Exact } from '../../units/rate.ts';
 import type { BilledBank, BilledCycle, BilledLine } from './cause.ts';
 
@@ -30,16 +30,20 @@ export function billedSums(billed: BilledCycle): BilledSums {
  * Whether a settled cycle is what was billed: the amount due, each component's lines to the cent and their kWh, each bank and each payout. What is
  * not known of the bill is not compared.
  */
-export function reproducesMoney(sums: BilledSums, { settlement }: Pick<SettledCycle, 'settlement'>): boolean {
+export function reproducesMoney(sums: BilledSums, { settlement }: Pick<SettledAmounts, 'settlement'>): boolean {
   return differing(sums, settlement, true).size === 0;
 }
 
-/** The components and banks of a settled cycle that were billed otherwise, and those the bill does not speak of. */
-export function billedOtherwise(sums: BilledSums, { settlement }: Pick<SettledCycle, 'settlement'>): Set<string> {
-  const found = differing(sums, settlement, false);
-  for (const line of settlement.lines) if (isUnsaid(sums, line.component, settlement)) found.add(line.component);
-  for (const { bank } of settlement.banks) if (sums.billed.banks.every((one) => one.bank !== bank)) found.add(bank);
-  return found;
+/** The components and banks of a settled cycle that were billed otherwise. */
+export function billedOtherwise(sums: BilledSums, { settlement }: Pick<SettledAmounts, 'settlement'>): Set<string> {
+  return differing(sums, settlement, false);
+}
+
+/** The components and banks of a settled cycle that the bill does not speak of. */
+export function leftUnsaid(sums: BilledSums, { settlement }: Pick<SettledAmounts, 'settlement'>): Set<string> {
+  const lines = settlement.lines.map((line) => line.component).filter((id) => isUnsaid(sums, id, settlement));
+  const banks = settlement.banks.map(({ bank }) => bank);
+  return new Set([...lines, ...banks.filter((id) => sums.billed.banks.every((one) => one.bank !== id))]);
 }
 
 /** Whether the kWh printed beside the registers are those of a usage; what is not printed is not compared. */
@@ -52,7 +56,7 @@ export function reproducesKwh(billed: BilledCycle, usage: CycleUsage): boolean {
   );
 }
 
-function differing(sums: BilledSums, settlement: Settlement, onlyFirst: boolean): Set<string> {
+function differing(sums: BilledSums, settlement: SettledAmounts['settlement'], onlyFirst: boolean): Set<string> {
   const { billed } = sums;
   const found = new Set<string>();
   if (billed.amountDueCents !== null && billed.amountDueCents !== settlement.amountDueCents) {
@@ -99,7 +103,7 @@ function sumPayouts(payouts: readonly { component: string; amountCents: number }
 }
 
 /** A component that is in no amount due (a credit put into a bank) may be left out of a statement: its bank says the same. */
-function isUnsaid(sums: BilledSums, component: string, { lines }: Settlement): boolean {
+function isUnsaid(sums: BilledSums, component: string, { lines }: SettledAmounts['settlement']): boolean {
   return !sums.lines?.has(component) && lines.every((line) => line.component !== component || !line.inDue);
 }
 
@@ -117,16 +121,17 @@ function sameAmounts(theirs: Sum, mine: Sum): boolean {
 
 /** The quantities of a component in all, where all are printed and in one unit. */
 function sameQuantity(theirs: readonly Comparable[], mine: readonly Comparable[]): boolean {
-  const [first] = mine;
-  if ([...theirs, ...mine].some((line) => line.quantity === null || line.unit !== first?.unit)) return true;
-  const texts = theirs.map((line) => line.quantity ?? '0');
-  const [only] = texts;
-  if (texts.length === 1 && mine.length === 1 && only === first?.quantity) return true;
-  const tolerance = first?.unit === 'USD' ? new Exact(0) : sumOf(texts.map(lastDigit));
-  return sumOf(texts)
-    .minus(sumOf(mine.map((line) => line.quantity ?? '0')))
-    .abs()
-    .lte(tolerance);
+  const units = new Set([...theirs, ...mine].map((line) => line.unit));
+  const printed = quantitiesOf(theirs);
+  const ours = quantitiesOf(mine);
+  if (units.size > 1 || printed === null || ours === null || printed.join() === ours.join()) return true;
+  const tolerance = units.has('USD') ? new Exact(0) : sumOf(printed.map(lastDigit));
+  return sumOf(printed).minus(sumOf(ours)).abs().lte(tolerance);
+}
+
+function quantitiesOf(lines: readonly Comparable[]): string[] | null {
+  const texts = lines.flatMap((line) => line.quantity ?? []);
+  return texts.length < lines.length ? null : texts;
 }
 
 /** Sizes, since a statement may print the kWh of a credit with either sign. */

@@ -1,9 +1,9 @@
-import { settleCycle } from '../../settlement/settle.ts';
+import { settleAmounts } from '../../settlement/settle.ts';
 import type { Opening } from '../../settlement/settlement.ts';
 import type { CauseInput } from './cause.ts';
 import type { Place } from './edit.ts';
 import { flatUsage } from './flat-usage.ts';
-import { billedOtherwise, billedSums, reproducesMoney } from './reproduces.ts';
+import { billedOtherwise, billedSums, leftUnsaid } from './reproduces.ts';
 
 /** The cycles under trial, settled rightly. */
 export type Scene = {
@@ -20,15 +20,17 @@ export function openScene(input: CauseInput): Scene | null {
   let opening = input.opening;
   let planBefore: Place['planBefore'] = null;
   for (const [at, given] of input.cycles.entries()) {
-    const settled = settleCycle(given.plan, opening, given.usage);
+    const settled = settleAmounts(given.plan, opening, given.usage);
     if (!settled.ok) return null;
     const truth = settled.value;
     const cycle = { ...given, usage: flatUsage(given.plan, opening, given.usage, truth) };
     const sums = billedSums(given.billed);
-    const differs = firstOff === null ? billedOtherwise(sums, truth) : null;
-    if (firstOff === null && !reproducesMoney(sums, truth)) firstOff = at;
-    const mayDiffer = (id: string) => differs === null || differs.has(id);
-    places.push({ index: at, cycle, opening, truth, sums, mayDiffer, planBefore });
+    const known = firstOff === null;
+    const differs = known ? billedOtherwise(sums, truth) : new Set<string>();
+    const unsaid = leftUnsaid(sums, truth);
+    const mayDiffer = (id: string) => !known || differs.has(id) || unsaid.has(id);
+    if (known && differs.size > 0) firstOff = at;
+    places.push({ index: at, cycle, opening, truth, sums, differs, mayDiffer, planBefore });
     opening = truth.closing;
     planBefore = given.plan;
   }

@@ -14,31 +14,39 @@ const ORDINARY_YEAR = 2025;
 /** A bank is trued up one to eleven months before its month or day, or before service ends (net-metering.md §4, "true-up": month = elected). */
 export const trueUpEarly = hypothesis('trueUpEarly', editsOf);
 
+/** The least early first: of those that come to the same it is the likeliest. */
 function editsOf({ cycle: { plan, usage } }: Place): Edit[] {
   const cycle = openCycle(preparePlan(plan), usage);
-  return plan.banks.flatMap((bank) =>
-    bank.trueUps.flatMap((trueUp, index) => {
-      if (isDue(trueUp.at, cycle)) return [];
-      const due = earlier(trueUp.at).filter(({ at }) => isDue(at, cycle));
-      return due.map(({ at, early }) => {
-        const trueUps = bank.trueUps.map((one, other) => (other === index ? { ...one, at } : one));
-        return edit(
-          `${bank.id}:${index}:${early}`,
-          { plan: withBank(plan, bank.id, (one) => ({ ...one, trueUps })) },
-          `${bank.label} was trued up on ${sayDate(usage.to)}, ${early}.`,
-          { bank: bank.id, early },
-        );
-      });
-    }),
+  const due = plan.banks.flatMap((bank) =>
+    bank.trueUps.flatMap((trueUp, index) =>
+      isDue(trueUp.at, cycle)
+        ? []
+        : earlier(trueUp.at)
+            .filter(({ at }) => isDue(at, cycle))
+            .map((early) => ({ bank, index, ...early })),
+    ),
   );
+  due.sort((a, b) => a.months - b.months);
+  return due.map(({ bank, index, at, said }) => {
+    const trueUps = bank.trueUps.map((one, other) => (other === index ? { ...one, at } : one));
+    return edit(
+      `${bank.id}:${index}:${said}`,
+      { plan: withBank(plan, bank.id, (one) => ({ ...one, trueUps })) },
+      `${bank.label} was trued up on ${sayDate(usage.to)}, ${said}.`,
+      { bank: bank.id, early: said },
+    );
+  });
 }
 
-function earlier(at: TrueUp['at']): { at: TrueUp['at']; early: string }[] {
-  if (at === 'everyCycle') return [];
-  if (at === 'finalBill') return [{ at: 'everyCycle', early: 'before service ended' }];
-  return MONTHS_EARLY.map((count) => ({
-    at: earlierBy(at, count),
-    early: `${sayCount(count, 'month', 'months')} early`,
+type Earlier = { at: TrueUp['at']; months: number; said: string };
+
+/** What is due at every close is never asked: it cannot be early. */
+function earlier(at: TrueUp['at']): Earlier[] {
+  if (typeof at === 'string') return [{ at: 'everyCycle', months: 0, said: 'before service ended' }];
+  return MONTHS_EARLY.map((months) => ({
+    at: earlierBy(at, months),
+    months,
+    said: `${sayCount(months, 'month', 'months')} early`,
   }));
 }
 

@@ -1,6 +1,6 @@
 import { seasonOf } from '../../settlement/calendar.ts';
 import type { RatePlan } from '../../settlement/plan.ts';
-import type { SettledCycle } from '../../settlement/settle.ts';
+import type { SettledAmounts } from '../../settlement/settle.ts';
 import type { CycleUsage } from '../../settlement/settlement.ts';
 import { type Edit, edit, hypothesis, type Place } from './edit.ts';
 import { type OtherPrices, otherPrices } from './other-prices.ts';
@@ -20,14 +20,32 @@ function editsOf(place: Place): Edit[] {
   const { plan, usage } = place.cycle;
   const alone: Edit[] = [];
   const together = new Map<string, Priced[]>();
-  for (const item of pricedItems(plan).filter(({ id }) => place.mayDiffer(id))) {
+  const items = pricedItems(plan).filter(({ id }) => place.mayDiffer(id));
+  for (const item of items) {
+    const explains = explainsAll(place, [item.id]);
     for (const prices of otherPrices(plan, item, usage)) {
-      alone.push(pricedAlone(place, item, prices));
+      if (explains) alone.push(pricedAlone(place, item, prices));
       together.set(prices.key, [...(together.get(prices.key) ?? []), { item, prices }]);
     }
   }
-  const all = [...together.values()].filter((made) => made.length > 1).map((made) => pricedTogether(plan, made));
+  const all = [...together.values()]
+    .filter(
+      (made) =>
+        made.length > 1 &&
+        explainsAll(
+          place,
+          made.map(({ item }) => item.id),
+        ),
+    )
+    .map((made) => pricedTogether(plan, made));
   return [...alone, ...all, ...changedBy(plan, usage)];
+}
+
+/** Whether other prices of these items can be all that is wrong: no charge that goes by nothing but its own price is billed otherwise. */
+function explainsAll({ cycle: { plan }, differs }: Place, ids: readonly string[]): boolean {
+  return plan.charges.every(
+    ({ id, basis }) => basis === 'percent' || basis === 'floor' || ids.includes(id) || !differs.has(id),
+  );
 }
 
 function pricedAlone({ cycle: { plan, usage }, truth }: Place, item: PricedItem, prices: OtherPrices): Edit {
@@ -58,7 +76,7 @@ function pricedTogether(plan: RatePlan, made: readonly Priced[]): Edit {
 }
 
 /** The one rate of an item that was taken, and the one it should have been; nulls where there are several. */
-function onlyRates(truth: SettledCycle, made: SettledCycle, id: string): [string, string] | [null, null] {
+function onlyRates(truth: SettledAmounts, made: SettledAmounts, id: string): [string, string] | [null, null] {
   const right = ratesOf(truth, id);
   const taken = ratesOf(made, id);
   const [only, ...more] = taken.filter((rate) => !right.includes(rate));
@@ -67,7 +85,7 @@ function onlyRates(truth: SettledCycle, made: SettledCycle, id: string): [string
   return [only, instead];
 }
 
-function ratesOf({ settlement: { lines, payouts } }: SettledCycle, id: string): string[] {
+function ratesOf({ settlement: { lines, payouts } }: SettledAmounts, id: string): string[] {
   const rates = [...lines, ...payouts].flatMap(({ component, rate, unit }) =>
     component === id && rate !== null ? [unit === 'USD' ? rate : `$${rate}`] : [],
   );
@@ -76,7 +94,7 @@ function ratesOf({ settlement: { lines, payouts } }: SettledCycle, id: string): 
 
 /** A price or season that changes inside the cycle, shared by days or taken by the read date. */
 function changedBy(plan: RatePlan, { from, to }: CycleUsage): Edit[] {
-  const priceChanges = pricedItems(plan).some(({ rates }) => rates?.some((row) => row.from > from && row.from < to));
+  const priceChanges = pricedItems(plan).some(({ rates }) => rates.some((row) => row.from > from && row.from < to));
   const seasonChanges = seasonOf(plan.calendar, from) !== seasonOf(plan.calendar, to);
   return (['days', 'readDate'] as const).flatMap((by) => {
     const how = by === 'days' ? 'shared by days' : 'taken by the read date for the whole cycle';

@@ -204,6 +204,32 @@ describe('true-up early', () => {
     expect(ended[0]?.words).toBe('Energy bank was trued up on 16 Mar 2026, before service ended.');
   });
 
+  test('one of two true-ups early', () => {
+    const [bank] = netMetering.banks;
+    if (!bank) throw new Error('no bank');
+    const first = { ...trueUp(bank), at: { months: [12] } };
+    const two = { ...netMetering, banks: [{ ...bank, trueUps: [first, trueUp(bank)] }] };
+    const early = { ...netMetering, banks: [{ ...bank, trueUps: [first, { ...trueUp(bank), at: { months: [3] } }] }] };
+    const causes = causesFor(house(two, spring, { kwhBank: '77' }), { plan: early });
+    expect(causes).toMatchObject([
+      {
+        cause: 'trueUpEarly',
+        found: { early: '1 month early' },
+        alsoWords: ['Energy bank was trued up on 16 Mar 2026, 9 months early.'],
+      },
+    ]);
+  });
+
+  test('a payment on the bill is a line of its own beside the bank’s credit', () => {
+    const [bank] = netBilling.banks;
+    if (!bank) throw new Error('no bank');
+    const onBill = { ...netBilling, banks: [{ ...bank, trueUps: [{ ...trueUp(bank), to: 'bill' as const }] }] };
+    const causes = causesFor(house(onBill, { ...winter, exportWh: kWh(1870) }, { bank: '8.00' }), {
+      plan: withAt(onBill, { months: [2] }),
+    });
+    expect(causes).toMatchObject([{ cause: 'trueUpEarly', found: { early: '7 months early' } }]);
+  });
+
   test('a true-up that is due, or due at every close, cannot be early', () => {
     const every = withAt(netMetering, 'everyCycle');
     const causes = causesFor(house(every, spring, { kwhBank: '77' }), { plan: withAt(netMetering, 'finalBill') });

@@ -63,6 +63,11 @@ describe('what is compared', () => {
     expect(found).toMatchObject([{ cause: 'exportShort', found: { billedKwh: '48', meteredKwh: '55' } }]);
   });
 
+  test('a short export told by the bank and the kWh beside the register alone', () => {
+    expect(ids(short((one) => ({ ...one, lines: null })))).toEqual(['exportShort']);
+    expect(short((one) => ({ ...one, lines: null, exportWh: null }))).toEqual([]);
+  });
+
   test('a bank that earns less than the meter saw leave', () => {
     const built: BuiltHouse = {
       opening: openingOf({ kwhBank: '10' }),
@@ -344,5 +349,19 @@ describe('interval data', () => {
       ),
     };
     expect(causesFor(house, { plan })[0]?.words).toBe('Energy was priced at the rate before 1 Feb 2026.');
+    const credited = {
+      ...plan,
+      netting: 'hour' as const,
+      charges: stepped.charges,
+      credits: [
+        { ...hourly.credits.reduce((credit) => credit), rates: [{ from: usage.from, rate: '0.07' }], ratesOf: null },
+      ],
+    };
+    const netted = { opening: openingOf({}), cycles: house.cycles.map((one) => ({ ...one, plan: credited })) };
+    const half = {
+      ...credited,
+      credits: credited.credits.map((one) => ({ ...one, rates: [{ from: usage.from, rate: '0.05' }] })),
+    };
+    expect(causesFor(netted, { plan: half })).toEqual([]);
   });
 });

@@ -1,5 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import type { TrueRead } from '#shared/reconcile/causes/cause.ts';
+import { isSeen } from '#shared/reconcile/causes/channels-seen.ts';
 import { findCauses } from '#shared/reconcile/causes/find-causes.ts';
 import type { CycleUsage } from '#shared/settlement/settlement.ts';
 import { day } from '#shared/units/day.ts';
@@ -12,6 +13,7 @@ import {
   inputOf,
   kWh,
   openingOf,
+  planOf,
   readOf,
   usageOf,
 } from './billed-house.ts';
@@ -156,6 +158,67 @@ describe('multiplier', () => {
   });
 });
 
+test('a register is tried only where the plan makes something of it or its kWh are printed', () => {
+  const base = planOf({
+    netting: 'none',
+    charges: [
+      {
+        id: 'energy',
+        label: 'Energy',
+        kind: 'import',
+        basis: 'import',
+        rates: [{ from: day('2025-01-01'), rate: '0.11' }],
+      },
+    ],
+  });
+  const onUse = {
+    ...base,
+    load: 'computed' as const,
+    charges: base.charges.map((one) => ({ ...one, basis: 'load' as const })),
+  };
+  const kept = { keep: { averageCycles: 4, usage: 'load' as const }, atLeast: '0', action: 'expire' as const };
+  const trueUp = { at: 'everyCycle' as const, rates: null, ratesOf: null, to: null, fee: '0' };
+  const [bank] = netMetering.banks;
+  if (!bank) throw new Error('no bank');
+  const capped = {
+    ...onUse,
+    charges: base.charges,
+    banks: [{ ...bank, offsets: [], trueUps: [{ ...trueUp, ...kept }] }],
+  };
+  const averaged = {
+    ...capped,
+    banks: [{ ...bank, offsets: [], trueUps: [{ ...trueUp, ...kept, keep: { amount: '5' } }] }],
+  };
+  const metered = { ...onUse, load: 'metered' as const };
+  const netted = { ...base, charges: base.charges.map((one) => ({ ...one, netting: 'cycle' as const })) };
+  const silent = {
+    days: null,
+    reads: [],
+    importWh: null,
+    exportWh: null,
+    productionWh: null,
+    lines: null,
+    banks: [],
+    payouts: null,
+    amountDueCents: null,
+  };
+  const seen = (plan: typeof base) =>
+    (['import', 'export', 'production', 'load'] as const)
+      .filter((channel) => isSeen({ plan, usage, reads: [], billed: silent }, channel))
+      .join();
+  expect(seen(base)).toBe('import');
+  expect(seen(netted)).toBe('import,export');
+  expect(seen(netBilling)).toBe('import,export');
+  expect(seen(netMetering)).toBe('import,export,production');
+  expect(seen(onUse)).toBe('import,export,production');
+  expect(seen(capped)).toBe('import,export,production');
+  expect(seen(averaged)).toBe('import,export');
+  expect(seen(metered)).toBe('load');
+  expect(isSeen({ plan: base, usage, reads: [], billed: { ...silent, productionWh: kWh(1) } }, 'production')).toBe(
+    true,
+  );
+});
+
 describe('registers exchanged', () => {
   test('import and export changed places', () => {
     const swapped = { ...usage, importWh: usage.exportWh, exportWh: usage.importWh };
@@ -259,6 +322,22 @@ describe('estimated read', () => {
       reads: one.reads.map((read) => ({ ...read, type: 'actual' as const })),
     }));
     expect(findCauses(inputOf(two, unmarked))).toEqual([]);
+  });
+
+  test('an estimate of production the plan makes nothing of is no cause', () => {
+    const made = statements({ import: 560, export: 250 }, { import: 507, export: 259 }).map((one, at) => ({
+      ...one,
+      reads: [
+        ...one.reads,
+        {
+          meter: 'roof',
+          channel: 'production' as const,
+          type: at === 0 ? ('estimated' as const) : ('actual' as const),
+          usageWh: kWh(600),
+        },
+      ],
+    }));
+    expect(findCauses(inputOf(two, made))).toEqual([]);
   });
 
   test('one that still waits for the next read is no cause', () => {

@@ -73,6 +73,21 @@ describe('the wrong base', () => {
     expect(causesACentOff(house(netMetering), { plan })).toEqual([]);
   });
 
+  test('two programmes, one of them paid on export', () => {
+    const [credit] = netMetering.credits;
+    if (!credit) throw new Error('no credit');
+    const two = { ...netMetering, credits: [credit, { ...credit, id: 'stateIncentive', label: 'State incentive' }] };
+    const plan = {
+      ...two,
+      credits: two.credits.map((one) =>
+        one.id === 'incentive' ? { ...one, basis: 'export' as const, netting: 'none' as const } : one,
+      ),
+    };
+    expect(causesFor(house(two), { plan })).toMatchObject([
+      { cause: 'incentiveOnExport', found: { credits: 'incentive' } },
+    ]);
+  });
+
   test('the same by the load meter, where the plan has one', () => {
     const metered = { ...netMetering, load: 'metered' as const };
     const plan = withCharge(metered, 'nonbypassable', { basis: 'load' });
@@ -96,7 +111,7 @@ describe('the wrong base', () => {
     const causes = causesFor(house(netMetering), { plan });
     expect(ids(causes)).toEqual(['incentiveOnExport']);
     expect(causes[0]).toMatchObject({
-      words: 'Production incentive was paid on the 187 kWh exported instead of the 640 kWh produced.',
+      words: 'Production incentive was paid on the 187 kWh exported instead of on production.',
       overbilledCents: 4640 - 1356,
     });
     expect(causesACentOff(house(netMetering), { plan })).toEqual([]);
@@ -207,6 +222,24 @@ describe('credited twice', () => {
     });
     expect(ids(causes)).toEqual(['creditedTwice']);
   });
+});
+
+test('a period this bill lacks adds nothing', () => {
+  const usage = {
+    ...winter,
+    importWh: kWh(161),
+    exportWh: kWh(175),
+    byPeriod: { off: { importWh: kWh(161), exportWh: kWh(175) } },
+  };
+  const causes = causesFor(house(byPeriod, usage, { kwhBank: { peak: '7', off: '0' } }), {
+    after: (settled) => {
+      const banks = settled.settlement.banks.map((bank) =>
+        bank.period === 'peak' ? bank : { ...bank, move: { ...bank.move, earned: '175', close: '175' } },
+      );
+      return { ...settled, settlement: { ...settled.settlement, banks } };
+    },
+  });
+  expect(ids(causes)).toEqual(['creditedTwice']);
 });
 
 describe('credit on what it may not pay', () => {

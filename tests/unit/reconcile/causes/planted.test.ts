@@ -11,7 +11,7 @@ import { taken } from '#tests/support/netmetering-adapter.ts';
 import { type BuiltHouse, billed, ids, inputOf, kWh, type Mistake, openingOf, readOf } from './billed-house.ts';
 import { netBilling, netMetering } from './built-plans.ts';
 
-const RUNS = { numRuns: 300 };
+const RUNS = { numRuns: 50 };
 
 type Drawn = {
   from: Day;

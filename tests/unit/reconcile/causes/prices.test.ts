@@ -168,6 +168,20 @@ describe('version', () => {
     });
   });
 
+  test('a rider’s price is read from the bill and is none to be wrong', () => {
+    const rates = [
+      { from: usageOf('2025-01-01', '2025-02-01').from, rate: '0.0061' },
+      { from: winter.from, rate: '0.0084' },
+    ];
+    const plain = repriced(netBilling, 'benefits', rates);
+    const rider = {
+      ...plain,
+      charges: plain.charges.map((one) => (one.id === 'benefits' ? { ...one, learned: true } : one)),
+    };
+    expect(ids(causesFor(house(plain), { plan: netBilling }))).toEqual(['wrongRate']);
+    expect(causesFor(house(rider), { plan: netBilling })).toEqual([]);
+  });
+
   test('versions long gone are not tried', () => {
     const rates = ['2021', '2022', '2023', '2024', '2025', '2026'].map((year, at) => ({
       from: usageOf(`${year}-01-01`, '2030-01-01').from,
@@ -352,6 +366,63 @@ describe('credits and true-ups', () => {
     const other = causesFor(house(plan), { plan: repriced(plan, 'exportCredit', [{ from, rate: '0.075' }]) });
     expect(other[0]?.words).toBe(
       'Export credit was priced at the summer rate, $0.075, instead of the winter rate, $0.055.',
+    );
+  });
+
+  test('a payment at true-up at half a share of another rate', () => {
+    const paid = (fraction: string) => ({
+      ...netMetering,
+      banks: netMetering.banks.map((bank) => ({
+        ...bank,
+        trueUps: [
+          {
+            at: { months: [2] },
+            keep: null,
+            atLeast: '0',
+            action: 'pay' as const,
+            rates: null,
+            ratesOf: { charges: ['delivery'], fraction, tier: 1 },
+            to: 'separate' as const,
+            fee: '0',
+          },
+          {
+            at: { months: [3] },
+            keep: null,
+            atLeast: '0',
+            action: 'expire' as const,
+            rates: null,
+            ratesOf: null,
+            to: null,
+            fee: '0',
+          },
+        ],
+      })),
+    });
+    const causes = causesFor(house(paid('0.8'), { ...winter, importWh: kWh(100) }, { kwhBank: '300' }), {
+      plan: paid('0.4'),
+    });
+    expect(causes).toMatchObject([{ cause: 'wrongRate', found: { price: 'half', items: 'kwhBank' } }]);
+  });
+
+  test('a share of two rates has no version from before both', () => {
+    const both = {
+      ...hourly,
+      charges: [
+        ...hourly.charges,
+        {
+          ...hourly.charges.reduce((charge) => charge),
+          id: 'delivery',
+          label: 'Delivery',
+          rates: [{ from: usageOf('2025-06-01', '2025-07-01').from, rate: '0.03' }],
+        },
+      ],
+    };
+    const plan = share(both, { charges: ['energy', 'delivery'], fraction: '0.5', tier: 1 });
+    const old = repriced(plan, 'exportCredit', [{ from, rate: '0.0751' }]);
+    expect(causesFor(house(plan, netted), { plan: old })).toEqual([]);
+    const between = repriced(plan, 'exportCredit', [{ from, rate: '0.0901' }]);
+    expect(causesFor(house(plan, netted), { plan: between })[0]?.words).toBe(
+      'Export credit was priced at the rate before 1 Jan 2026, $0.0901, instead of $0.0961.',
     );
   });
 
