@@ -42,7 +42,13 @@ export function BankFields({ bank, at }: { bank: BankForm; at: number }) {
       </Columns>
       <TickList
         legend="What may the credit pay?"
-        options={payable}
+        options={[
+          ...payable,
+          // What the plan names and cannot pay is shown, so that it can be taken out.
+          ...bank.offsets
+            .filter((id) => !payable.some(({ value }) => value === id))
+            .map((id) => ({ value: id, label: form.charges.find((charge) => charge.id === id)?.label ?? id })),
+        ]}
         ticked={bank.offsets}
         onChange={(id, on) => put({ offsets: toggled(bank.offsets, id, on) })}
       />

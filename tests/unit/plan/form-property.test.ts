@@ -48,7 +48,7 @@ const forms: fc.Arbitrary<PlanForm> = fc
   .record({
     netting,
     energy: fc.record({ ...by, tiers, netting: ownNetting }),
-    delivery: fc.record({ ...by, netting: ownNetting, solarOnly: fc.boolean() }),
+    delivery: fc.record({ ...by, netting: ownNetting, solarOnly: fc.boolean(), learned: fc.boolean() }),
     minimum: fc.constantFrom('cycle', 'day' as const),
     kWOf: fc.constantFrom('dc', 'ac', 'demand' as const),
     afterCredits: fc.boolean(),
