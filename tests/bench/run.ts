@@ -2,8 +2,9 @@
 import { cpus } from 'node:os';
 import { benchImport } from './import.ts';
 import { benchPosition } from './position.ts';
+import { benchSettlement } from './settlement.ts';
 
-const rows = [...(await benchPosition()), ...(await benchImport())];
+const rows = [...(await benchPosition()), ...(await benchImport()), ...(await benchSettlement())];
 process.stdout.write(`Node ${process.version}, ${cpus().length} × ${cpus()[0]?.model ?? 'unknown processor'}\n\n`);
 for (const row of rows) {
   const ratio = row.ratio === null ? '' : `  ${Math.round(row.ratio * 10) / 10} × floor`;
