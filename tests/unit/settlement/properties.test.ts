@@ -3,11 +3,11 @@ import { describe, expect, test } from 'vitest';
 import { parsePlan } from '#shared/settlement/parse-plan.ts';
 import type { RatePlan } from '#shared/settlement/plan.ts';
 import { settle } from '#shared/settlement/settle.ts';
-import { type CycleUsage, EMPTY_OPENING } from '#shared/settlement/settlement.ts';
+import { EMPTY_OPENING } from '#shared/settlement/settlement.ts';
 import { cents } from '#shared/units/cents.ts';
-import { wh } from '#shared/units/energy.ts';
 import { exact } from '#shared/units/rate.ts';
 import { taken } from '#tests/support/netmetering-adapter.ts';
+import { PROPERTY_RUNS } from '#tests/support/property-runs.ts';
 import { plans, usages } from './arbitrary-plan.ts';
 import { ENERGY, mustHold, plan, settled, usage } from './plans.ts';
 
@@ -42,7 +42,7 @@ describe('whatever the plan and the cycles', () => {
         }
         expect(closing.balanceCents).toBe(settlements.at(-1)?.amountDueCents);
       }),
-      { numRuns: 120 },
+      { numRuns: Math.min(PROPERTY_RUNS, 120) },
     );
   }, 60_000);
 
@@ -53,7 +53,7 @@ describe('whatever the plan and the cycles', () => {
         expect(settle(of, opening, cycles)).toEqual(first);
         expect(settle(taken(parsePlan(JSON.parse(JSON.stringify(of)))), opening, cycles)).toEqual(first);
       }),
-      { numRuns: 40 },
+      { numRuns: Math.min(PROPERTY_RUNS, 40) },
     );
   }, 60_000);
 
@@ -70,57 +70,7 @@ describe('whatever the plan and the cycles', () => {
         expect(apart).toEqual(together.settlements);
         expect(from).toEqual(together.closing);
       }),
-      { numRuns: 40 },
-    );
-  }, 60_000);
-});
-
-/** Import billed and export credited under a netting, in Wh. */
-function netted(netting: string, cycle: CycleUsage): { import: number; export: number } {
-  const of = plan({
-    netting,
-    calendar: {
-      periods: [
-        { id: 'peak', when: [{ days: 'all', from: '16:00', to: '21:00' }] },
-        { id: 'off', when: 'rest' },
-      ],
-    },
-    charges: [
-      { ...ENERGY, rates: [{ from: '2025-01-01', rate: '1' }] },
-      { ...ENERGY, id: 'sent', basis: 'export' },
-    ],
-  });
-  const [bought, sent] = settled(of, cycle).settlement.lines.map((line) =>
-    Number(exact(line.quantity ?? '0').times(1000)),
-  );
-  return { import: bought ?? 0, export: sent ?? 0 };
-}
-
-describe('netting', () => {
-  const days = fc.array(fc.tuple(fc.nat(2000), fc.nat(2000)), { minLength: 96, maxLength: 96 });
-
-  test('over a longer span never bills more import nor credits more export, and import − export is always the same', () => {
-    fc.assert(
-      fc.property(days, (quarters) => {
-        const importWh = quarters.map(([bought]) => bought);
-        const exportWh = quarters.map(([, sent]) => sent);
-        const total = (values: number[]) => values.reduce((sum, value) => sum + value, 0) / 1000;
-        const intervals = { startUtc: '2026-07-01T06:00:00Z', minutes: 15, importWh, exportWh, productionWh: [] };
-        const cycle = usage({
-          from: '2026-07-01',
-          to: '2026-07-02',
-          import: total(importWh),
-          export: total(exportWh),
-          intervals,
-        });
-        const spans = ['none', '15min', 'hour', 'period', 'cycle'].map((netting) => netted(netting, cycle));
-        for (const [at, span] of spans.entries()) {
-          expect(span.import - span.export).toBe((spans[0]?.import ?? 0) - (spans[0]?.export ?? 0));
-          expect(span.import).toBeLessThanOrEqual(spans[at - 1]?.import ?? Number.POSITIVE_INFINITY);
-          expect(span.export).toBeLessThanOrEqual(spans[at - 1]?.export ?? Number.POSITIVE_INFINITY);
-        }
-      }),
-      { numRuns: 40 },
+      { numRuns: Math.min(PROPERTY_RUNS, 40) },
     );
   }, 60_000);
 });
@@ -129,22 +79,6 @@ describe('a flat plan', () => {
   const flat = (part: object): RatePlan =>
     plan({ charges: [{ ...ENERGY, rates: [{ from: '2025-01-01', rate: '0.1684' }] }], ...part });
   const kWh = fc.nat(2_000_000).map((value) => value / 1000);
-
-  test('with export at retail off the bill costs what billing the net does, to the cent of rounding', () => {
-    const sold = flat({
-      credits: [
-        { id: 'sent', label: 'Sent', kind: 'export', basis: 'export', ratesOf: { charges: ['energy'] }, to: 'bill' },
-      ],
-    });
-    fc.assert(
-      fc.property(kWh, kWh, (bought, sent) => {
-        const apart = settled(sold, usage({ import: bought, export: sent })).settlement.amountDueCents;
-        const net = settled(flat({}), { ...usage(), importWh: wh(Math.round((bought - sent) * 1000)) }).settlement
-          .amountDueCents;
-        expect(Math.abs(apart - net)).toBeLessThanOrEqual(1);
-      }),
-    );
-  });
 
   test('split by a row with the same price costs the same, to a cent for each part', () => {
     const row = (from: string) => ({ from, rate: '0.1684' });
