@@ -5,27 +5,30 @@ import { eachAndAll, sayList, withCharges, withoutKwhOffsets } from './plan-edit
 
 /**
  * Netted import charges billed on the register as it is: each alone and all together, without what kWh banks would pay of them; and the whole plan
- * without netting, where a bank earns all that was exported. Charges with tiers and charges without are two mistakes (`tiered`); one that
- * takes in both kinds is counted to neither tier nor price but to netting.
+ * without netting, where a bank earns all that was exported. Charges with tiers and charges without are two mistakes (`tiered`). Both kinds at once
+ * count to those without; the whole plan counts to those with tiers, where it has any.
  */
 export function withGross({ cycle: { plan, usage }, mayDiffer }: Place, tiered: boolean): Edit[] {
   const netted = plan.charges.filter(
-    (charge) => charge.basis === 'import' && (charge.netting ?? plan.netting) !== 'none' && mayDiffer(charge.id),
+    (charge) => charge.basis === 'import' && (charge.netting ?? plan.netting) !== 'none',
   );
-  const own = netted.filter((charge) => charge.tiers.length > 0 === tiered);
-  if (own.length === 0) return [];
-  const words = (charges: readonly Charge[]) => sayGross(charges, tiered, sayKwh(usage.importWh));
+  const billedOther = netted.filter((charge) => mayDiffer(charge.id));
+  const own = billedOther.filter((charge) => hasTiers(charge) === tiered);
   const sets = eachAndAll(own);
-  if (!tiered && own.length < netted.length) sets.push(netted);
+  if (!tiered && own.length > 0 && own.length < billedOther.length) sets.push(billedOther);
+  const words = (charges: readonly Charge[]) => sayGross(charges, tiered, sayKwh(usage.importWh));
   const gross = sets.map((charges) => {
     const ids = charges.map((charge) => charge.id);
     const made = withCharges(withoutKwhOffsets(plan, ids), ids, (charge) => ({ ...charge, netting: 'none' }));
     return edit(ids.join(), { plan: made }, words(charges), { charges: ids.join(', ') });
   });
-  // The whole plan is told by its tiers, where it has any.
-  if (tiered !== netted.some((charge) => charge.tiers.length > 0)) return gross;
+  if (netted.length === 0 || tiered !== netted.some(hasTiers)) return gross;
   const ids = netted.map((charge) => charge.id).join(', ');
   return [...gross, edit('plan', { plan: withoutNetting(plan) }, words(netted), { charges: ids })];
+}
+
+function hasTiers(charge: Charge): boolean {
+  return charge.tiers.length > 0;
 }
 
 function sayGross(charges: readonly Charge[], tiered: boolean, kWh: string): string {

@@ -28,6 +28,7 @@ export function otherPrices(plan: RatePlan, item: PricedItem, usage: CycleUsage)
   const seasonal = rows.some((row) => row.season !== undefined);
   return [
     ...(seasonal ? otherSeasons(plan, usage).map((id) => priced(inSeason(own, id), seasonSaid(id))) : []),
+    ...(seasonal ? otherSeasons(plan, usage).flatMap((id) => inOnePeriod(own, id, periodNames(plan))) : []),
     ...versionsAround(
       rows.map((row) => row.from),
       usage,
@@ -58,6 +59,26 @@ function otherSeasons({ calendar, seasonBy }: RatePlan, { from, to }: CycleUsage
 /** Rows as they hold in one season, all year round. Of one day's rows the one that named the season stands first, as it did before. */
 function inSeason({ rates, tiers }: Rows, season: string): Rows {
   return { rates: ofSeason(rates, season), tiers: ofSeason(tiers, season) };
+}
+
+/** One period's price of another season, the other periods at their own. */
+function inOnePeriod({ rates, tiers }: Rows, season: string, names: Names<string>): OtherPrices[] {
+  const named = names.filter(({ value }) => rates.some((row) => row.period === value && row.season === season));
+  if (named.length < 2) return [];
+  return named.map(({ value, name }) => {
+    const other = ofSeason(
+      rates.filter((row) => row.period === value),
+      season,
+    );
+    return priced(
+      { rates: [...other, ...rates.filter((row) => row.period !== value)], tiers },
+      {
+        key: `season ${season} in ${value}`,
+        said: `the ${season} rate for ${name}`,
+        found: { price: 'season', season, for: name },
+      },
+    );
+  });
 }
 
 function ofSeason<Row extends RateRow | TierRow>(rows: readonly Row[], season: string): Row[] {

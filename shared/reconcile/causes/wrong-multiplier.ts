@@ -55,7 +55,7 @@ function takenFor(meters: readonly string[]): string[] {
 function mayBeBilled({ cycle: { billed } }: Place, { channel, kWh }: Turned, taken: string): boolean {
   const { importWh, exportWh, productionWh } = billed;
   const printed = { import: importWh, export: exportWh, production: productionWh, load: null }[channel];
-  return printed === null || kWh.times(taken).times(1000).eq(printed);
+  return printed === null || roundToWh(kWh.times(taken)) === printed;
 }
 
 function multiplied(usage: CycleUsage, turned: readonly Turned[], meters: readonly string[], taken: string): Edit {

@@ -197,7 +197,7 @@ describe.each(PLANTED)('%s, planted in any house', (cause, plan, mistake) => {
       RUNS,
     );
     expect(seen).toBeGreaterThan(0);
-  });
+  }, 30_000);
 });
 
 describe('billed rightly', () => {
