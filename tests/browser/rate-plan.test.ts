@@ -210,6 +210,11 @@ describe('a time-of-use plan from a printed rate sheet', () => {
       (await page.getByRole('row').filter({ hasText: 'Energy charge, on-peak' }).first().textContent()) ?? '';
     expect(onPeak.split('$34.45')).toHaveLength(3);
     await page.getByText('$62.29').first().waitFor();
+    // The cause is found by settling again, and named in the sheet's words.
+    await page
+      .getByText(/winter rate for Off-peak, \$0\.1560, instead of the summer rate, \$0\.1420/)
+      .first()
+      .waitFor();
     await shot(page, 'rate-plan-cycle');
     expect(visitor.complaints).toEqual([]);
   });
