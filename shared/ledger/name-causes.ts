@@ -3,7 +3,7 @@ import type { Check, CheckId } from '../reconcile/check.ts';
 import type { AssembledCycle } from './cycles.ts';
 
 /** Checks whose likely cause gives way to one that was found by settling again. */
-const EXPLAINED: ReadonlySet<CheckId> = new Set(['amountDue', 'bankChain', 'linePrice']);
+const EXPLAINED: ReadonlySet<CheckId> = new Set(['amountDue', 'linePrice']);
 
 /**
  * The cycles with the mistakes found by trying (net-metering.md §3): each that differs is settled again under each hypothesis, and every one
