@@ -6,7 +6,7 @@ import { eachAndAll, sayList, withCharges, withoutKwhOffsets } from './plan-edit
 /**
  * Netted import charges billed on the register as it is: each alone and all together, without what kWh banks would pay of them; and the whole plan
  * without netting, where a bank earns all that was exported. Charges with tiers and charges without are two mistakes (`tiered`). Both kinds at once
- * count to those without; the whole plan counts to those with tiers, where it has any.
+ * count to those without; the whole plan counts to those with tiers, where it has tiers at all.
  */
 export function withGross({ cycle: { plan, usage }, mayDiffer }: Place, tiered: boolean): Edit[] {
   const netted = plan.charges.filter(
