@@ -380,7 +380,8 @@ describe('the credit bank', () => {
     const checks = ledger.cycles[1]?.checks ?? [];
     expect(differing(checks)).toEqual(['bankChain:creditBank', 'amountDue:']);
     expect(one(checks, 'amountDue:').difference).toBe('40.85');
-    expect(one(checks, 'amountDue:').cause).toMatch(/^It closed at \$40\.85/);
+    expect(one(checks, 'amountDue:').cause).toMatch(/^Credit brought in opens with nothing/);
+    expect(one(checks, 'bankChain:creditBank').cause).toMatch(/^It closed at \$40\.85/);
   });
 
   test('a close that the billed kWh do not give differs', () => {
