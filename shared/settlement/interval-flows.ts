@@ -25,12 +25,18 @@ export function intervalView(data: Intervals, plan: RatePlan): IntervalView {
   if (data.importWh.length !== data.exportWh.length) refuse('Import and export intervals are not of the same number.');
   const view: IntervalView = { data, startMs, days: [], periods: [], offsetsMs: [] };
   const offsetAt = offsetOf(plan.timeZone);
+  let number = Number.NaN;
+  let date = dayFromNumber(0);
   for (let at = 0; at < data.importWh.length; at += 1) {
     const instant = startMs + at * data.minutes * MS_PER_MINUTE;
     const offset = offsetAt(instant);
     const local = instant + offset;
-    const date = dayFromNumber(Math.floor(local / MS_PER_DAY));
-    const minute = Math.floor((local - Math.floor(local / MS_PER_DAY) * MS_PER_DAY) / MS_PER_MINUTE);
+    const localDay = Math.floor(local / MS_PER_DAY);
+    if (localDay !== number) {
+      number = localDay;
+      date = dayFromNumber(localDay);
+    }
+    const minute = Math.floor((local - localDay * MS_PER_DAY) / MS_PER_MINUTE);
     view.days.push(date);
     view.offsetsMs.push(offset);
     view.periods.push(plan.calendar.periods.length === 0 ? null : periodAt(plan.calendar, date, minute));
@@ -38,9 +44,12 @@ export function intervalView(data: Intervals, plan: RatePlan): IntervalView {
   return view;
 }
 
-/** Offsets from UTC in milliseconds, looked up once per quarter-hour (no zone changes its clock inside one). */
-function offsetOf(timeZone: string): (instant: number) => number {
-  const clock = new Intl.DateTimeFormat('en-US', {
+const clocks = new Map<string, Intl.DateTimeFormat>();
+
+function clockOf(timeZone: string): Intl.DateTimeFormat {
+  const known = clocks.get(timeZone);
+  if (known) return known;
+  const made = new Intl.DateTimeFormat('en-US', {
     timeZone,
     hourCycle: 'h23',
     year: 'numeric',
@@ -50,16 +59,41 @@ function offsetOf(timeZone: string): (instant: number) => number {
     minute: 'numeric',
     second: 'numeric',
   });
-  let quarter = Number.NaN;
-  let offset = 0;
-  return (instant) => {
-    const found = Math.floor(instant / (15 * MS_PER_MINUTE));
-    if (found === quarter) return offset;
-    quarter = found;
+  clocks.set(timeZone, made);
+  return made;
+}
+
+/**
+ * Offsets from UTC in milliseconds. A zone's clock is asked at both ends of a UTC day, and inside it only where they differ: then once per
+ * quarter-hour (no zone changes its clock inside one, and none changes it there and back in a day).
+ */
+function offsetOf(timeZone: string): (instant: number) => number {
+  const clock = clockOf(timeZone);
+  const ask = (instant: number): number => {
     const parts = new Map(clock.formatToParts(instant).map((part) => [part.type, Number(part.value)]));
     const part = (name: Intl.DateTimeFormatPartTypes) => Number(parts.get(name));
     const shown = Date.UTC(part('year'), part('month') - 1, part('day'), part('hour'), part('minute'), part('second'));
-    offset = shown - Math.floor(instant / 1000) * 1000;
+    return shown - Math.floor(instant / 1000) * 1000;
+  };
+  let stretch = Number.NaN;
+  let ends = { first: 0, last: 0 };
+  let quarter = Number.NaN;
+  let offset = 0;
+  return (instant) => {
+    const found = Math.floor(instant / MS_PER_DAY);
+    if (found !== stretch) {
+      ends = {
+        first: found === stretch + 1 ? ends.last : ask(found * MS_PER_DAY),
+        last: ask((found + 1) * MS_PER_DAY),
+      };
+      stretch = found;
+    }
+    if (ends.first === ends.last) return ends.first;
+    const step = Math.floor(instant / (15 * MS_PER_MINUTE));
+    if (step !== quarter) {
+      quarter = step;
+      offset = ask(instant);
+    }
     return offset;
   };
 }
