@@ -1,4 +1,5 @@
 import type { SetupView } from '#shared/api/setup.ts';
+import { dcWattsOf } from '#shared/facts/dc-rating.ts';
 import {
   readAssumptions,
   readHouse,
@@ -29,7 +30,7 @@ export function viewSetup({ db }: Pick<Deps, 'db'>, householdId: string): SetupV
       incentive: readIncentive(tx, householdId),
       costs: readCosts(tx, householdId),
       assumptions: readAssumptions(tx, householdId),
-      dcWatts: house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0),
+      dcWatts: dcWattsOf(house.arrays),
     };
   });
 }

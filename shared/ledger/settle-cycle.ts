@@ -1,3 +1,4 @@
+import { dcWattsOf } from '../facts/dc-rating.ts';
 import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
 import type { Statement } from '../facts/papers.ts';
 import { isComplete, type MeteredCycle } from '../metering/cycle-energy.ts';
@@ -127,7 +128,7 @@ export function usageOf(
     return `The ${missing.filter((name) => name !== null).join(' and ')} of this cycle is not known. Add the meter reads from the statement or upload an interval file for its days.`;
   }
   const intervals = asksForIntervals(plan) ? cycleIntervals(index, paper.from, paper.to, facts.house.timeZone) : null;
-  const dcWatts = facts.house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0);
+  const dcWatts = dcWattsOf(facts.house.arrays);
   const kW: CycleUsage['kW'] = {};
   if (dcWatts > 0) kW.dc = qtyText(dcWatts);
   if (facts.house.inverterAcWatts !== null) kW.ac = qtyText(facts.house.inverterAcWatts);

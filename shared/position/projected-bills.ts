@@ -1,3 +1,4 @@
+import { dcWattsOf } from '../facts/dc-rating.ts';
 import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
@@ -143,7 +144,7 @@ function planYears(facts: BillFacts): (inForce: PlanInForce, years: number) => Y
 }
 
 function powerOf(house: HouseholdFacts['house']): CycleUsage['kW'] {
-  const watts = house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0);
+  const watts = dcWattsOf(house.arrays);
   return {
     dc: new Exact(watts).div(1000).toString(),
     ...(house.inverterAcWatts === null ? {} : { ac: new Exact(house.inverterAcWatts).div(1000).toString() }),

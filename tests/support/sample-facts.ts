@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto';
 import { readProductionCsv } from '#server/importers/production-csv.ts';
 import { readStatementCsv } from '#server/importers/statement-csv.ts';
 import { readSampleFile, readSampleHousehold, type SampleHousehold } from '#server/sample/sample-household.ts';
+import { dcWattsOf } from '#shared/facts/dc-rating.ts';
 import { DEFAULT_ASSUMPTIONS, type HouseholdFacts, householdFacts } from '#shared/facts/household.ts';
 import type { DocumentFacts, IntervalChannel, IntervalDay, Statement } from '#shared/facts/papers.ts';
 import type { Result } from '#shared/problem.ts';
@@ -64,7 +65,7 @@ export function sampleReadings(
       channel,
       timeZone: sample.house.timeZone,
       acWatts: sample.roof.inverterAcWatts,
-      dcWatts: sample.roof.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0),
+      dcWatts: dcWattsOf(sample.roof.arrays),
     }),
     path,
   );

@@ -1,4 +1,5 @@
 import type { ProductionMapping } from '#shared/api/log.ts';
+import { dcWattsOf } from '#shared/facts/dc-rating.ts';
 import type { HouseholdFacts } from '#shared/facts/household.ts';
 import type { IntervalChannel } from '#shared/facts/papers.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
@@ -23,7 +24,7 @@ function contextOf(
   channel: IntervalChannel,
   mapping: ProductionMapping | null,
 ): ProductionContext {
-  const dcWatts = house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0);
+  const dcWatts = dcWattsOf(house.arrays);
   return {
     mapping,
     channel,

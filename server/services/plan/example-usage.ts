@@ -1,3 +1,4 @@
+import { dcWattsOf } from '#shared/facts/dc-rating.ts';
 import type { HouseholdFacts } from '#shared/facts/household.ts';
 import type { RatePlan } from '#shared/settlement/plan.ts';
 import type { CycleUsage, Flow } from '#shared/settlement/settlement.ts';
@@ -7,7 +8,7 @@ import { wh } from '#shared/units/energy.ts';
 /** A made-up month for a house without a cycle yet: 600 kWh bought, 400 sent out, 700 made. */
 export function inventedUsage(facts: HouseholdFacts, today: Day): CycleUsage {
   const from = dayOf(yearOf(today), monthOf(today), 1);
-  const dcWatts = facts.house.arrays.reduce((sum, array) => sum + array.modules * array.moduleWatts, 0);
+  const dcWatts = dcWattsOf(facts.house.arrays);
   return {
     from,
     to: addMonths(from, 1),

@@ -74,21 +74,59 @@ function evenColumn(position: Position): Column | null {
   if (!projection || !even || !month) return null;
   const closed = position.points.filter((point) => point.cycle !== 'since');
   const ahead = projection.months.filter((one) => one.on <= even);
-  const books = byBook((book) => ({
-    cents: sumCents([...closed.map((point) => point.books[book]), ...ahead.map((one) => one.books[book])]),
-    working: null,
-  }));
-  const plain = (amount: number): Cell => ({ cents: cents(amount), working: null });
+  const books = byBook((book) => {
+    const past = sumCents(closed.map((point) => point.books[book]));
+    const months = ahead.map((one) => one.books[book]).filter((amount) => amount !== 0);
+    return projectedCell(
+      'The closed cycles, and the months projected from them, added',
+      'past + sum(months)',
+      past + sumCents(months),
+      [
+        projected('past', 'Closed cycles', dollarsText(past)),
+        projected('months', `Projected months to ${monthYear(even)}, those with a sum`, months.map(dollarsText)),
+      ],
+    );
+  });
+  const { cashSoFarCents: cash, settledTodayCents: settled } = month;
+  const owed = cents(Math.abs(month.loanBalanceCents));
+  const cashInput = projected('cash', 'Cash so far by then', dollarsText(cash));
+  const settledInput = projected('settled', 'Settled today by then', dollarsText(settled));
+  const owedInput = projected('owed', 'Principal still owed by then, by the loan’s schedule', dollarsText(owed));
+  const together = cents(settled - cash + owed);
   return {
     ...NOTHING,
     key: 'even',
     head: `By ${monthYear(even)}`,
     books,
-    cash: plain(month.cashSoFarCents),
-    loan: plain(-Math.abs(month.loanBalanceCents)),
-    together: plain(month.settledTodayCents - month.cashSoFarCents + Math.abs(month.loanBalanceCents)),
-    settled: plain(month.settledTodayCents),
+    cash: projectedCell('Every book by then, added', 'sum(books)', cash, [
+      projected(
+        'books',
+        'The books of this column',
+        BOOKS.map((book) => dollarsText(books[book]?.cents ?? cents(0))),
+      ),
+    ]),
+    loan: projectedCell('What the schedule still owes by then', '-owed', -owed, [owedInput]),
+    together: projectedCell(
+      'Settled today by then, less cash so far and the principal: accrued interest, and what is still to come',
+      'settled - cash + owed',
+      together,
+      [settledInput, cashInput, owedInput],
+    ),
+    settled: projectedCell(
+      'Cash so far by then, less the principal, and the sums owed',
+      'cash - owed + sums',
+      settled,
+      [cashInput, owedInput, projected('sums', 'Interest accrued and sums owed', dollarsText(together))],
+    ),
   };
+}
+
+function projected(name: string, label: string, value: string | string[]): Working['inputs'][number] {
+  return { name, label, value, unit: 'USD', source: { kind: 'figure', name: 'the projection' } };
+}
+
+function projectedCell(words: string, formula: string, amount: number, inputs: Working['inputs']): Cell {
+  return { cents: cents(amount), working: { words, formula, inputs, unit: 'USD', basis: 'estimated' } };
 }
 
 function byBook(of: (book: BookId) => Cell): Record<BookId, Cell> {

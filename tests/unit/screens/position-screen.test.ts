@@ -132,6 +132,16 @@ describe('how it adds up', () => {
     }
   });
 
+  it('opens the working of every projected figure, and each comes to exactly it', () => {
+    const even = addsUp(position()).find((column) => column.key === 'even');
+    const cells = even ? [...Object.values(even.books), even.cash, even.loan, even.together, even.settled] : [];
+    expect(cells.length).toBeGreaterThan(8);
+    for (const cell of cells) {
+      expect(cell?.working?.basis).toBe('estimated');
+      if (cell?.working) expect(evaluateWorking(cell.working).toFixed(2)).toBe(dollarsText(cell.cents));
+    }
+  });
+
   it('leaves out books that have nothing in any column', () => {
     expect(booksShown(addsUp(position()))).toEqual(['billAvoided', 'loan', 'costs']);
   });
