@@ -12,8 +12,14 @@ import {
 const GAP_STEPS = 1.5;
 
 /**
+ * A register that stands still for longer, in seconds, is rather a wrong date than a roof without sun: its steps stay missing, never zero
+ * (common practice, no source).
+ */
+const LONGEST_STILL = 366 * 86_400;
+
+/**
  * Energy as differences of a running total. Over a gap the difference is real but belongs to no known step: it is kept apart. A gap without
- * any difference held no energy, so its steps are zero. A fall starts a new segment; under `resets` (a total that starts again at midnight)
+ * any difference held no energy, so its steps are zero, unless it is longer than a year. A fall starts a new segment; under `resets` (a total that starts again at midnight)
  * the first reading of a day counts from zero.
  */
 export function registerSteps(source: Source, resets: boolean): Steps {
@@ -78,7 +84,7 @@ export function registerSteps(source: Source, resets: boolean): Steps {
             `Row ${now.row}, ${source.column.time}: does not fall on the file’s steps of ${minutesOf(grid.step)} minutes.`,
           );
         }
-      } else if (amount === 0 && !fell) {
+      } else if (amount === 0 && !fell && wait <= LONGEST_STILL) {
         for (let at = before.at; at < now.at - grid.step / 2; at += grid.step) add(at, 0, now.row);
       } else {
         out.unallocated += amount;
