@@ -42,8 +42,8 @@ describe('who may import whom', () => {
     ).toHaveLength(1);
   });
 
-  it('shared imports shared, zod and decimal.js only', () => {
-    const packages = ['zod/mini', 'decimal.js'];
+  it('shared imports shared, zod, decimal.js and suncalc only', () => {
+    const packages = ['zod/mini', 'decimal.js', 'suncalc'];
     expect(
       offenders(shared.flatMap(importsOf), ({ target }) => target.startsWith('shared/') || packages.includes(target)),
     ).toEqual([]);
