@@ -9,7 +9,16 @@ import {
   readPlans,
   readUsageBefore,
 } from '../db/facts/read-house.ts';
-import { readCosts, readCredit, readIncentive, readLoan, readMortgage } from '../db/facts/read-money.ts';
+import {
+  readCosts,
+  readCredit,
+  readIncentive,
+  readLease,
+  readLoan,
+  readMortgage,
+  readOtherLoans,
+  readScenarios,
+} from '../db/facts/read-money.ts';
 import { readAccepted, readDocuments, readIntervals, readStatements } from '../db/facts/read-papers.ts';
 
 export type LoadedHousehold = { row: HouseholdRow; facts: HouseholdFacts };
@@ -26,6 +35,8 @@ export function loadFacts(db: Db, householdId: string): LoadedHousehold | null {
         plans: readPlans(tx, householdId),
         opening: readOpening(row),
         loan: readLoan(tx, householdId),
+        otherLoans: readOtherLoans(tx, householdId),
+        lease: readLease(tx, householdId),
         mortgage: readMortgage(tx, householdId),
         credit: readCredit(tx, householdId),
         incentive: readIncentive(tx, householdId),
@@ -36,6 +47,7 @@ export function loadFacts(db: Db, householdId: string): LoadedHousehold | null {
         intervals: readIntervals(tx, householdId),
         accepted: readAccepted(tx, householdId),
         assumptions: readAssumptions(tx, householdId),
+        scenarios: readScenarios(tx, householdId),
       },
     };
   });

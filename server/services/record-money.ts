@@ -52,7 +52,7 @@ export function addReceipt(deps: MoneyDeps, actor: Actor, body: z.infer<typeof r
 export function addCost(deps: MoneyDeps, actor: Actor, body: z.infer<typeof costBody>): Result<null> {
   const about = `${body.on} ${body.kind} ${dollarsText(body.amountCents)}`;
   return writeHousehold(deps, actor, { action: 'cost-added', about }, (tx) => {
-    insertCost(tx, actor.householdId, { id: newId(), ...body, documentId: null });
+    insertCost(tx, actor.householdId, { id: newId(), ...body });
     return succeed(null);
   });
 }

@@ -1,5 +1,6 @@
 import * as z from 'zod/mini';
 import { setupStep } from '#shared/api/setup.ts';
+import { loanMore, loanTerms, mortgageMore, mortgageTerms } from '#shared/facts/finance.ts';
 import { type HouseholdExport, householdExport } from '#shared/facts/household.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
 import type { Tx } from '../db/client.ts';
@@ -15,10 +16,16 @@ import {
   insertLoanPayment,
   insertReceipt,
   putCreditYear,
+  replaceOtherLoans,
+  replaceScenarios,
   writeCredit,
+  writeCreditCarriedIn,
   writeIncentive,
+  writeLease,
   writeLoan,
+  writeLoanMore,
   writeMortgage,
+  writeMortgageMore,
 } from '../db/facts/write-money.ts';
 import { insertDocument, insertStatement, putAccepted, putIntervalDay, sha256Of } from '../db/facts/write-papers.ts';
 import { rejectedRows } from '../db/schema/papers.ts';
@@ -29,16 +36,25 @@ import { writeHousehold } from './write-household.ts';
 
 type Bytes = ReadonlyMap<string, Buffer>;
 
-function writeMoney(tx: Tx, id: string, { loan, mortgage, credit, incentive, costs }: HouseholdExport['facts']): void {
+function writeMoney(tx: Tx, id: string, facts: HouseholdExport['facts']): void {
+  const { loan, mortgage, credit, incentive, costs } = facts;
   if (loan !== null) {
-    const { payments, ...terms } = loan;
-    writeLoan(tx, id, terms);
+    const { payments } = loan;
+    writeLoan(tx, id, loanTerms.parse(loan));
+    writeLoanMore(tx, id, loanMore.parse(loan));
     for (const payment of payments) insertLoanPayment(tx, id, payment);
   }
-  writeMortgage(tx, id, mortgage);
+  if (mortgage !== null) {
+    writeMortgage(tx, id, mortgageTerms.parse(mortgage));
+    writeMortgageMore(tx, id, mortgageMore.parse(mortgage));
+  }
+  replaceOtherLoans(tx, id, facts.otherLoans);
+  writeLease(tx, id, facts.lease);
+  replaceScenarios(tx, id, facts.scenarios);
   if (credit !== null) {
-    const { years, ...terms } = credit;
+    const { years, carriedIn, ...terms } = credit;
     writeCredit(tx, id, terms);
+    writeCreditCarriedIn(tx, id, carriedIn);
     for (const year of years) putCreditYear(tx, id, year);
   }
   if (incentive !== null) {

@@ -35,6 +35,8 @@ export const creditYearBody = z.strictObject({
   filedOn: creditYearSchema.shape.filedOn,
   refundOn: creditYearSchema.shape.refundOn,
   asRefund: creditYearSchema.shape.asRefund,
+  limitFrom: creditYearSchema.shape.limitFrom,
+  documentId: creditYearSchema.shape.documentId,
 });
 
 const at = '/api/households/:householdId/credit';

@@ -71,6 +71,8 @@ export const loanPaymentBody = z.strictObject({
   amountCents: loanPaymentSchema.shape.amountCents.check(z.minimum(1, { error: 'Write the amount paid.' })),
   extraPrincipalCents: loanPaymentSchema.shape.extraPrincipalCents.check(z.minimum(0)),
   note: loanPaymentSchema.shape.note,
+  reamortize: loanPaymentSchema.shape.reamortize,
+  documentId: loanPaymentSchema.shape.documentId,
 });
 export const receiptBody = z.strictObject({
   on: daySchema,
@@ -82,6 +84,9 @@ export const costBody = z.strictObject({
   kind: costSchema.shape.kind,
   label: costSchema.shape.label,
   amountCents: costSchema.shape.amountCents.check(z.minimum(1, { error: 'Write the amount.' })),
+  documentId: z._default(costSchema.shape.documentId, null),
+  every: costSchema.shape.every,
+  until: costSchema.shape.until,
 });
 
 const at = '/api/households/:householdId/money';

@@ -1,5 +1,12 @@
 import * as z from 'zod/mini';
-import { creditSchema, incentiveSchema, loanSchema, mortgageSchema } from '../facts/finance.ts';
+import {
+  creditSchema,
+  incentiveSchema,
+  loanSchema,
+  loanTerms,
+  mortgageSchema,
+  mortgageTerms,
+} from '../facts/finance.ts';
 import { costSchema, houseSchema, usageBeforeSchema } from '../facts/house.ts';
 import { assumptionsSchema, planInForce } from '../facts/household.ts';
 import { openingSchema } from '../settlement/settlement.ts';
@@ -29,10 +36,12 @@ export const roofBody = z.strictObject({
 });
 export const planBody = z.strictObject({ plans: z.array(planInForce), opening: openingSchema });
 export const beforeBody = z.strictObject({ usageBefore: z.array(usageBeforeSchema) });
-/** Null takes the book away. Recorded payments are kept; they are entered on the Money screen. */
-export const loanBody = z.strictObject({ loan: z.nullable(z.omit(loanSchema, { payments: true })) });
-export const mortgageBody = z.strictObject({ mortgage: z.nullable(mortgageSchema) });
-export const creditBody = z.strictObject({ credit: z.nullable(z.omit(creditSchema, { years: true })) });
+/** Null takes the book away. Recorded payments and the rest of the contract are kept; they are entered on the Money screen. */
+export const loanBody = z.strictObject({ loan: z.nullable(loanTerms) });
+export const mortgageBody = z.strictObject({ mortgage: z.nullable(mortgageTerms) });
+export const creditBody = z.strictObject({
+  credit: z.nullable(z.omit(creditSchema, { years: true, carriedIn: true })),
+});
 export const incentiveBody = z.strictObject({ incentive: z.nullable(z.omit(incentiveSchema, { received: true })) });
 /** Cash at signing and permits; replaces the rows of those kinds. */
 export const cashBody = z.strictObject({

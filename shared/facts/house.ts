@@ -70,7 +70,7 @@ export type CostKind = z.infer<typeof costKind>;
 /** Kinds of the costs book that are money in; all others are money out. */
 export const INCOME_KINDS: readonly CostKind[] = ['rebate', 'stateCredit', 'srec', 'patronage', 'otherIncome'];
 
-/** One dated sum outside the other books. `amountCents` is positive; the kind says which way it went. */
+/** One sum outside the other books, on one day or recurring. `amountCents` is positive; the kind says which way it went. */
 export const costSchema = z.object({
   id: z.string(),
   on: daySchema,
@@ -78,5 +78,9 @@ export const costSchema = z.object({
   label: z.string().check(z.minLength(1), z.maxLength(160)),
   amountCents: centsSchema,
   documentId: z.nullable(z.string()),
+  /** It comes again every month, quarter or year from `on`; null for once. */
+  every: z._default(z.nullable(z.enum(['month', 'quarter', 'year'])), null),
+  /** The last day on which it may come again; null while it goes on. */
+  until: z._default(z.nullable(daySchema), null),
 });
 export type CostFacts = z.infer<typeof costSchema>;

@@ -4,9 +4,10 @@ import { openingSchema } from '../settlement/settlement.ts';
 import { centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
 import { decimalText } from '../units/rate-text.ts';
-import { creditSchema, incentiveSchema, loanSchema, mortgageSchema } from './finance.ts';
+import { creditSchema, incentiveSchema, leaseSchema, loanSchema, mortgageSchema, otherLoanSchema } from './finance.ts';
 import { costSchema, houseSchema, usageBeforeSchema } from './house.ts';
 import { acceptedDifference, documentSchema, intervalDay, statementSchema } from './papers.ts';
+import { scenarioSchema } from './scenario.ts';
 
 /** A plan and the day from which it holds; it starts with the first cycle that begins on or after that day. */
 export const planInForce = z.object({
@@ -16,6 +17,18 @@ export const planInForce = z.object({
   withoutRoof: z.nullable(ratePlanSchema),
 });
 export type PlanInForce = z.infer<typeof planInForce>;
+
+/** A published emission factor: pounds of CO₂ per MWh, with where, which basis and which year it is for. */
+export const gridFactor = z.object({
+  region: z.string().check(z.minLength(1), z.maxLength(80)),
+  lbPerMwh: decimalText,
+  basis: z.string().check(z.minLength(1), z.maxLength(80)),
+  year: z.int(),
+});
+export type GridFactor = z.infer<typeof gridFactor>;
+
+/** eGRID2022, US total output emission rate: 823.149 lb CO₂/MWh (a table copied from the EPA workbook, read second-hand). */
+const US_GRID: GridFactor = { region: 'United States', lbPerMwh: '823.149', basis: 'total output', year: 2022 };
 
 /** What the projection assumes. Every one has a default and a source, and is shown. */
 export const assumptionsSchema = z.object({
@@ -27,6 +40,10 @@ export const assumptionsSchema = z.object({
   horizonMonths: z.int().check(z.minimum(12), z.maximum(480)),
   /** Upkeep a year. */
   upkeepYearlyCents: centsSchema.check(z.minimum(0)),
+  /** Yearly rate at which money to come is worth less, fraction; for the handbook figures only. */
+  discountRate: z._default(decimalText, '0.03'),
+  /** Emissions of the grid that a kWh from the roof takes the place of. */
+  grid: z._default(gridFactor, US_GRID),
 });
 export type Assumptions = z.infer<typeof assumptionsSchema>;
 
@@ -37,6 +54,8 @@ export const householdFacts = z.object({
   /** What the utility's books held before the first cycle. */
   opening: openingSchema,
   loan: z.nullable(loanSchema),
+  otherLoans: z._default(z.array(otherLoanSchema), []),
+  lease: z._default(z.nullable(leaseSchema), null),
   mortgage: z.nullable(mortgageSchema),
   credit: z.nullable(creditSchema),
   incentive: z.nullable(incentiveSchema),
@@ -48,6 +67,8 @@ export const householdFacts = z.object({
   intervals: z.array(intervalDay),
   accepted: z.array(acceptedDifference),
   assumptions: assumptionsSchema,
+  /** Changes tried and kept by name; they touch no figure of the record. */
+  scenarios: z._default(z.array(scenarioSchema).check(z.maxLength(20)), []),
 });
 export type HouseholdFacts = z.infer<typeof householdFacts>;
 

@@ -79,9 +79,9 @@ describe('the schema', () => {
   });
 
   it.each([
-    ['a fraction of a cent', "INSERT INTO loan_payments VALUES ('h', 'p', '2026-01-01', 10.5, 0, NULL)"],
-    ['a text for an amount', "INSERT INTO loan_payments VALUES ('h', 'p', '2026-01-01', 'ten', 0, NULL)"],
-    ['a day that is none', "INSERT INTO loan_payments VALUES ('h', 'p', '1 Jan 2026', 10, 0, NULL)"],
+    ['a fraction of a cent', "INSERT INTO loan_payments VALUES ('h', 'p', '2026-01-01', 10.5, 0, NULL, 0, NULL)"],
+    ['a text for an amount', "INSERT INTO loan_payments VALUES ('h', 'p', '2026-01-01', 'ten', 0, NULL, 0, NULL)"],
+    ['a day that is none', "INSERT INTO loan_payments VALUES ('h', 'p', '1 Jan 2026', 10, 0, NULL, 0, NULL)"],
     ['an end before its start', "INSERT INTO usage_before VALUES ('h', '2026-02-01', '2026-01-01', 1000)"],
     ['a plan that is no JSON', "INSERT INTO rate_plans VALUES ('h', '2026-01-01', 'flat', NULL)"],
     ['half a step', "INSERT INTO interval_days VALUES ('h', 'import', '2026-01-01', 60, x'010203', NULL)"],
@@ -90,7 +90,7 @@ describe('the schema', () => {
       'a rate that is no number',
       "INSERT INTO incentives VALUES ('h', 'p', 'abc', '2026-01-01', '2027-01-01', 'separate')",
     ],
-    ['a row of no household', "INSERT INTO loan_payments VALUES ('nobody', 'p', '2026-01-01', 10, 0, NULL)"],
+    ['a row of no household', "INSERT INTO loan_payments VALUES ('nobody', 'p', '2026-01-01', 10, 0, NULL, 0, NULL)"],
   ])('refuses %s', async (_what, sql) => {
     const database = await migrated();
     database.sqlite.exec(
@@ -144,7 +144,7 @@ describe('migrations', () => {
       INSERT INTO users VALUES ('u', 'u@example.org', 'U', '$argon2id$x', 'now');
       INSERT INTO households (id, created_at, name, place, utility, time_zone, opening) VALUES ('h', 'now', 'n', '', '', 'UTC', '{}');
       INSERT INTO memberships VALUES ('h', 'u', 'owner', 'now');
-      INSERT INTO loan_payments VALUES ('h', 'p', '2026-01-01', 10, 0, NULL);`);
+      INSERT INTO loan_payments (household_id, id, on_day, amount_cents, extra_principal_cents) VALUES ('h', 'p', '2026-01-01', 10, 0);`);
 
   it('are done once', async () => {
     const database = openDatabase(file());

@@ -22,6 +22,9 @@ import {
 
 failOnConsole();
 
+const PLAIN = { reamortize: false, documentId: null };
+const ONCE = { documentId: null, every: null, until: null };
+
 const facts = buildHousehold({ cycles: 3 });
 let server: TestServer;
 let home: TestHousehold;
@@ -57,7 +60,13 @@ describe('money', () => {
 
   it('a recorded payment stands in for the scheduled one, and goes again when it is removed', async () => {
     const before = (await home.owner.call(moneyApi.view, { params: home.params })).value;
-    const body = { on: day('2025-09-02'), amountCents: cents(100_000), extraPrincipalCents: cents(70_000), note: null };
+    const body = {
+      on: day('2025-09-02'),
+      amountCents: cents(100_000),
+      extraPrincipalCents: cents(70_000),
+      note: null,
+      ...PLAIN,
+    };
     const paid = (await home.owner.call(moneyApi.addLoanPayment, { params: home.params, body })).value;
     expect(paid.loan?.schedule.filter(({ recorded }) => recorded)).toMatchObject([
       { on: '2025-09-02', paymentCents: 100_000 },
@@ -71,7 +80,13 @@ describe('money', () => {
   });
 
   it('payments that cannot be are refused at their field', async () => {
-    const body = { on: day('2025-09-02'), amountCents: cents(100), extraPrincipalCents: cents(200), note: null };
+    const body = {
+      on: day('2025-09-02'),
+      amountCents: cents(100),
+      extraPrincipalCents: cents(200),
+      note: null,
+      ...PLAIN,
+    };
     const more = await home.owner.call(moneyApi.addLoanPayment, { params: home.params, body });
     expect(more.problem.faults[0]?.field).toBe('extraPrincipalCents');
     const early = { ...body, on: day('2020-01-01'), extraPrincipalCents: cents(0) };
@@ -83,7 +98,13 @@ describe('money', () => {
     const cash = async () =>
       (await home.owner.call(positionApi.view, { params: home.params })).value.position.cashSoFar.amountCents;
     const start = await cash();
-    const cost = { on: day('2025-10-02'), kind: 'repair' as const, label: 'Isolator', amountCents: cents(21_000) };
+    const cost = {
+      on: day('2025-10-02'),
+      kind: 'repair' as const,
+      label: 'Isolator',
+      amountCents: cents(21_000),
+      ...ONCE,
+    };
     await home.owner.call(moneyApi.addCost, { params: home.params, body: cost });
     expect(await cash()).toBe(start - 21_000);
     const income = { ...cost, kind: 'srec' as const, label: 'Certificates', amountCents: cents(5000) };
@@ -92,7 +113,13 @@ describe('money', () => {
   });
 
   it('the loan taken away and entered again still has its recorded payments', async () => {
-    const body = { on: day('2025-11-02'), amountCents: cents(30_000), extraPrincipalCents: cents(0), note: 'kept' };
+    const body = {
+      on: day('2025-11-02'),
+      amountCents: cents(30_000),
+      extraPrincipalCents: cents(0),
+      note: 'kept',
+      ...PLAIN,
+    };
     await home.owner.call(moneyApi.addLoanPayment, { params: home.params, body });
     const { payments: _, ...loan } = facts.loan ?? { payments: [] };
     await home.owner.call(setupApi.loan, { params: home.params, body: { loan: null } });

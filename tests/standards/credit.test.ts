@@ -125,12 +125,23 @@ function creditOf(vector: CreditVector): CreditFacts {
       refundOn: null,
       asRefund: false,
       typedBy: null,
+      limitFrom: null,
+      documentId: null,
     })),
+    carriedIn: null,
   };
 }
 
 function cost(treatment: CreditCost['treatment'], dollars: number): CreditCost {
-  return { id: treatment, label: treatment, amountCents: usd(dollars), treatment, reason: null };
+  return {
+    id: treatment,
+    label: treatment,
+    amountCents: usd(dollars),
+    treatment,
+    reason: null,
+    placedInServiceOn: null,
+    documentId: null,
+  };
 }
 
 function inDollars(line: CreditLines) {

@@ -7,7 +7,7 @@ import {
   paymentReaching,
 } from '#shared/books/mortgage-balance.ts';
 import { insuranceEnds } from '#shared/books/mortgage-insurance.ts';
-import type { InsuranceEndRule, MortgageFacts } from '#shared/facts/finance.ts';
+import { type InsuranceEndRule, type MortgageFacts, mortgageMore } from '#shared/facts/finance.ts';
 import { type Cents, cents, dollarsText, parseDollars } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
 import { readVectors } from './vectors.ts';
@@ -109,6 +109,7 @@ function mortgageOf(vector: MortgageVector): MortgageFacts {
     extraPrincipalMonthlyCents: usd(vector.extraPrincipalMonthly),
     endedOn: null,
     insurance: null,
+    ...mortgageMore.parse({}),
   };
 }
 

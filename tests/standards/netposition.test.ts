@@ -245,7 +245,7 @@ function plain(m: number, book: UnplacedEntry['book'], kind: string, amountCents
 }
 
 function costOf(id: string, on: Day, kind: 'signing' | 'appraisal', amountCents: Cents) {
-  return { id, on, kind, label: id, amountCents, documentId: null };
+  return { id, on, kind, label: id, amountCents, documentId: null, every: null, until: null };
 }
 
 function monthOf(index: number | null): number | null {

@@ -2,7 +2,7 @@ import { asc, eq } from 'drizzle-orm';
 import * as z from 'zod/mini';
 import { SETUP_STEPS, type SetupStep, type stepState } from '#shared/api/setup.ts';
 import type { HouseFacts, MeterFacts, UsageBefore } from '#shared/facts/house.ts';
-import { type Assumptions, DEFAULT_ASSUMPTIONS, type PlanInForce } from '#shared/facts/household.ts';
+import { type Assumptions, assumptionsSchema, DEFAULT_ASSUMPTIONS, type PlanInForce } from '#shared/facts/household.ts';
 import { ratePlanSchema } from '#shared/settlement/plan.ts';
 import { type Opening, openingSchema } from '#shared/settlement/settlement.ts';
 import { whSchema } from '#shared/units/energy.ts';
@@ -94,8 +94,8 @@ export function readUsageBefore(db: Reader, householdId: string): UsageBefore[] 
 export function readAssumptions(db: Reader, householdId: string): Assumptions {
   const row = db.select().from(assumptions).where(eq(assumptions.householdId, householdId)).get();
   if (row === undefined) return DEFAULT_ASSUMPTIONS;
-  const { householdId: _, ...stated } = row;
-  return stated;
+  const { householdId: _, more, ...stated } = row;
+  return assumptionsSchema.parse({ ...JSON.parse(more), ...stated });
 }
 
 /** Every step of the set-up in order; one without a row is open. */

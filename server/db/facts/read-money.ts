@@ -1,13 +1,21 @@
 import { asc, eq } from 'drizzle-orm';
-import type {
-  CreditFacts,
-  IncentiveFacts,
-  IncentiveReceipt,
-  LoanFacts,
-  LoanPayment,
-  MortgageFacts,
+import {
+  type CreditFacts,
+  creditSchema,
+  type IncentiveFacts,
+  type IncentiveReceipt,
+  type LeaseFacts,
+  type LoanFacts,
+  type LoanPayment,
+  leaseSchema,
+  loanMore,
+  type MortgageFacts,
+  mortgageMore,
+  type OtherLoan,
+  otherLoanSchema,
 } from '#shared/facts/finance.ts';
 import { type CostFacts, costKind } from '#shared/facts/house.ts';
+import { type Scenario, scenarioSchema } from '#shared/facts/scenario.ts';
 import type { Reader } from '../client.ts';
 import {
   costs,
@@ -15,9 +23,12 @@ import {
   creditYears,
   incentiveReceipts,
   incentives,
+  leases,
   loanPayments,
   loans,
   mortgages,
+  otherLoans,
+  scenarios,
   taxCredits,
 } from '../schema/money.ts';
 
@@ -34,19 +45,28 @@ export function readLoanPayments(db: Reader, householdId: string): LoanPayment[]
 export function readLoan(db: Reader, householdId: string): LoanFacts | null {
   const row = db.select().from(loans).where(eq(loans.householdId, householdId)).get();
   if (row === undefined) return null;
-  const { householdId: _, ...terms } = row;
-  return { ...terms, payments: readLoanPayments(db, householdId) };
+  const { householdId: _, more, ...terms } = row;
+  return { ...terms, ...loanMore.parse(JSON.parse(more)), payments: readLoanPayments(db, householdId) };
 }
 
 export function readMortgage(db: Reader, householdId: string): MortgageFacts | null {
   const row = db.select().from(mortgages).where(eq(mortgages.householdId, householdId)).get();
   if (row === undefined) return null;
-  const { householdId: _, premiumMonthlyCents, removedOn, becauseOfRoof, endRule, appreciationOn, ...terms } = row;
+  const {
+    householdId: _,
+    premiumMonthlyCents,
+    removedOn,
+    becauseOfRoof,
+    endRule,
+    appreciationOn,
+    more,
+    ...terms
+  } = row;
   const insurance =
     premiumMonthlyCents === null || endRule === null
       ? null
       : { premiumMonthlyCents, removedOn, becauseOfRoof: becauseOfRoof === true, endRule, appreciationOn };
-  return { ...terms, insurance };
+  return { ...terms, insurance, ...mortgageMore.parse(JSON.parse(more)) };
 }
 
 export function readCredit(db: Reader, householdId: string): CreditFacts | null {
@@ -66,15 +86,18 @@ export function readCredit(db: Reader, householdId: string): CreditFacts | null 
     .all();
   return {
     placedInServiceOn: row.placedInServiceOn,
-    costs: costRows.map(({ id, label, amountCents, treatment, reason }) => ({
+    costs: costRows.map(({ id, label, amountCents, treatment, reason, placedInServiceOn, documentId }) => ({
       id,
       label,
       amountCents,
       treatment,
       reason,
+      placedInServiceOn,
+      documentId,
     })),
     homeShare: row.homeShare,
     years: yearRows.map(({ householdId: _, ...year }) => year),
+    carriedIn: row.carriedIn === null ? null : creditSchema.shape.carriedIn.parse(JSON.parse(row.carriedIn)),
   };
 }
 
@@ -103,4 +126,29 @@ export function readCosts(db: Reader, householdId: string): CostFacts[] {
     .orderBy(asc(costs.on), asc(costs.id))
     .all()
     .map(({ householdId: _, ...cost }) => ({ ...cost, kind: costKind.parse(cost.kind) }));
+}
+
+export function readOtherLoans(db: Reader, householdId: string): OtherLoan[] {
+  return db
+    .select({ value: otherLoans.value })
+    .from(otherLoans)
+    .where(eq(otherLoans.householdId, householdId))
+    .orderBy(asc(otherLoans.ordinal))
+    .all()
+    .map(({ value }) => otherLoanSchema.parse(JSON.parse(value)));
+}
+
+export function readLease(db: Reader, householdId: string): LeaseFacts | null {
+  const row = db.select({ value: leases.value }).from(leases).where(eq(leases.householdId, householdId)).get();
+  return row === undefined ? null : leaseSchema.parse(JSON.parse(row.value));
+}
+
+export function readScenarios(db: Reader, householdId: string): Scenario[] {
+  return db
+    .select({ value: scenarios.value })
+    .from(scenarios)
+    .where(eq(scenarios.householdId, householdId))
+    .orderBy(asc(scenarios.ordinal))
+    .all()
+    .map(({ value }) => scenarioSchema.parse(JSON.parse(value)));
 }

@@ -83,9 +83,11 @@ export function replaceUsageBefore(db: Reader, householdId: string, rows: readon
 }
 
 export function writeAssumptions(db: Reader, householdId: string, stated: Assumptions): void {
+  const { discountRate, grid, ...columns } = stated;
+  const values = { ...columns, more: JSON.stringify({ discountRate, grid }) };
   db.insert(assumptions)
-    .values({ householdId, ...stated })
-    .onConflictDoUpdate({ target: assumptions.householdId, set: stated })
+    .values({ householdId, ...values })
+    .onConflictDoUpdate({ target: assumptions.householdId, set: values })
     .run();
 }
 

@@ -106,6 +106,8 @@ export const assumptions = sqliteTable(
     priceRise: text('price_rise').notNull(),
     horizonMonths: integer('horizon_months').notNull(),
     upkeepYearlyCents: centsColumn('upkeep_yearly_cents').notNull(),
+    /** Discount rate and grid factor: validated JSON. */
+    more: text('more').notNull().default('{}'),
   },
   (table) => [
     check('assumptions_rates', sql`${isDecimal(table.degradation)} AND ${isDecimal(table.priceRise)}`),

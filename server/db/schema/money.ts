@@ -37,6 +37,8 @@ export const loans = sqliteTable(
     termMonths: integer('term_months').notNull(),
     fundedOn: dayColumn('funded_on').notNull(),
     firstPaymentOn: dayColumn('first_payment_on').notNull(),
+    /** The rest of the contract, statement balances and refinances: validated JSON. */
+    more: text('more').notNull().default('{}'),
   },
   (table) => [
     check('loans_amounts', sql`${table.principalCents} >= 1 AND ${table.dealerFeeCents} >= 0`),
@@ -56,6 +58,8 @@ export const loanPayments = sqliteTable(
     amountCents: centsColumn('amount_cents').notNull(),
     extraPrincipalCents: centsColumn('extra_principal_cents').notNull(),
     note: text('note'),
+    reamortize: flagColumn('reamortize').notNull().default(false),
+    documentId: text('document_id'),
   },
   (table) => [primaryKey({ columns: [table.householdId, table.id] }), check('loan_payments_on', isDay(table.on))],
 );
@@ -79,6 +83,8 @@ export const mortgages = sqliteTable(
     becauseOfRoof: flagColumn('because_of_roof'),
     endRule: text('end_rule', { enum: ['prudent', 'request80', 'automatic78', 'midpoint', 'appreciation'] }),
     appreciationOn: dayColumn('appreciation_on'),
+    /** Appraisals, later premiums, statement balances and what the request rests on: validated JSON. */
+    more: text('more').notNull().default('{}'),
   },
   (table) => [
     check('mortgages_kind', sql`${table.kind} IN ('conventional', 'fha', 'va')`),
@@ -105,6 +111,8 @@ export const taxCredits = sqliteTable(
     householdId: householdId().primaryKey(),
     placedInServiceOn: dayColumn('placed_in_service_on'),
     homeShare: text('home_share').notNull(),
+    /** Line 16 of a return before the record, as validated JSON; null where there is none. */
+    carriedIn: text('carried_in'),
   },
   (table) => [
     check('tax_credits_placed', isDay(table.placedInServiceOn)),
@@ -122,6 +130,8 @@ export const creditCosts = sqliteTable(
     amountCents: centsColumn('amount_cents').notNull(),
     treatment: text('treatment', { enum: ['qualified', 'reduction', 'leftOut'] }).notNull(),
     reason: text('reason'),
+    placedInServiceOn: dayColumn('placed_in_service_on'),
+    documentId: text('document_id'),
   },
   (table) => [
     primaryKey({ columns: [table.householdId, table.id] }),
@@ -141,6 +151,8 @@ export const creditYears = sqliteTable(
     refundOn: dayColumn('refund_on'),
     asRefund: flagColumn('as_refund').notNull(),
     typedBy: text('typed_by'),
+    limitFrom: text('limit_from'),
+    documentId: text('document_id'),
   },
   (table) => [
     primaryKey({ columns: [table.householdId, table.taxYear] }),
@@ -192,6 +204,8 @@ export const costs = sqliteTable(
     label: text('label').notNull(),
     amountCents: centsColumn('amount_cents').notNull(),
     documentId: text('document_id'),
+    every: text('every', { enum: ['month', 'quarter', 'year'] }),
+    until: dayColumn('until_day'),
   },
   (table) => [
     primaryKey({ columns: [table.householdId, table.id] }),
@@ -200,5 +214,42 @@ export const costs = sqliteTable(
       foreignColumns: [documents.householdId, documents.id],
     }),
     check('costs_on', isDay(table.on)),
+  ],
+);
+
+/** Solar money from elsewhere, each with its loan as one validated JSON value. */
+export const otherLoans = sqliteTable(
+  'other_loans',
+  {
+    householdId: householdId(),
+    id: text('id').notNull(),
+    ordinal: integer('ordinal').notNull(),
+    value: text('value').notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.householdId, table.id] }),
+    check('other_loans_json', sql`json_valid(${table.value})`),
+  ],
+);
+
+/** A lease or power-purchase agreement as one validated JSON value. */
+export const leases = sqliteTable(
+  'leases',
+  { householdId: householdId().primaryKey(), value: text('value').notNull() },
+  (table) => [check('leases_json', sql`json_valid(${table.value})`)],
+);
+
+/** A change tried and kept by name: its levers as one validated JSON value. */
+export const scenarios = sqliteTable(
+  'scenarios',
+  {
+    householdId: householdId(),
+    id: text('id').notNull(),
+    ordinal: integer('ordinal').notNull(),
+    value: text('value').notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.householdId, table.id] }),
+    check('scenarios_json', sql`json_valid(${table.value})`),
   ],
 );

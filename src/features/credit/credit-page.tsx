@@ -108,6 +108,8 @@ function blankYear(taxYear: number) {
     refundOn: null,
     asRefund: true,
     typedBy: null,
+    limitFrom: null,
+    documentId: null,
   };
 }
 

@@ -30,6 +30,8 @@ function readYear(values: YearValues): Reading<{ taxYear: number; body: CreditYe
     filedOn: filed ? list.needed(values.filedOn, parseDay, 'filedOn', NO_DATE, '1970-01-01' as Day) : null,
     refundOn: filed && asRefund ? list.optional(values.refundOn, parseDay, 'refundOn', NO_DATE) : null,
     asRefund,
+    limitFrom: null,
+    documentId: null,
   };
   if (filed && body.limitCents === null) list.add('limitCents', 'A filed return has a line 14; write it here.');
   return list.reading({ taxYear, body });

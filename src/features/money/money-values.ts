@@ -23,6 +23,8 @@ export function readLoanPayment(values: LoanPaymentValues): Reading<z.infer<type
     amountCents,
     extraPrincipalCents: extra,
     note: noteOf(values.note),
+    reamortize: false,
+    documentId: null,
   });
 }
 
@@ -46,6 +48,9 @@ export function readCost(values: CostValues): Reading<z.infer<typeof costBody>> 
     kind: values.kind,
     label: list.needed(values.label, (text) => text.trim(), 'label', '', 'cost'),
     amountCents: list.needed(values.amountCents, aboveZero, 'amountCents', NO_AMOUNT, cents(1)),
+    documentId: null,
+    every: null,
+    until: null,
   });
 }
 

@@ -1,5 +1,5 @@
 import * as z from 'zod/mini';
-import { insuranceEndRule, type MortgageFacts } from '#shared/facts/finance.ts';
+import { insuranceEndRule, type MortgageFacts, type MortgageTerms } from '#shared/facts/finance.ts';
 import { ZERO_CENTS } from '#shared/units/cents.ts';
 import { fieldValue, percentOfFraction, textOf, typed, typedWhole } from '#src/lib/typed-values.ts';
 import { monthsOf, termText } from './term.ts';
@@ -96,7 +96,7 @@ export function mortgageFormOf(mortgage: MortgageFacts | null, answered: boolean
 }
 
 /** The facts of a form that has passed its schema. */
-export function mortgageOf(form: MortgageForm): MortgageFacts | null {
+export function mortgageOf(form: MortgageForm): MortgageTerms | null {
   if (form.has === 'no') return null;
   const gone = form.removed !== 'still';
   return {

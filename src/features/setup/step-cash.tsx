@@ -25,7 +25,8 @@ const cashForm = z.object({
 
 export function CashStep({ view }: { view: SetupView }) {
   const given = view.costs.filter((cost) => cost.kind === 'signing' || cost.kind === 'permit');
-  const papers = new Map(given.map((cost) => [cost.id, cost.documentId]));
+  // What the form does not ask stays as it is.
+  const known = new Map(given.map((cost) => [cost.id, cost]));
   const form = useForm({
     resolver: zodResolver(cashForm),
     mode: 'onTouched',
@@ -54,7 +55,9 @@ export function CashStep({ view }: { view: SetupView }) {
           kind: row.kind,
           label: row.label.trim(),
           amountCents: fieldValue.cents(row.amount),
-          documentId: papers.get(row.key) ?? null,
+          documentId: known.get(row.key)?.documentId ?? null,
+          every: known.get(row.key)?.every ?? null,
+          until: known.get(row.key)?.until ?? null,
         })),
         upkeepYearlyCents: fieldValue.centsOr(values.upkeep, ZERO_CENTS),
       })}

@@ -41,6 +41,8 @@ type CreditForm = z.infer<typeof creditForm>;
 
 export function CreditStep({ view }: { view: SetupView }) {
   const { credit } = view;
+  // What the form does not ask stays as it is.
+  const known = new Map(credit?.costs.map((cost) => [cost.id, cost]));
   const answered = view.steps.some((one) => one.step === 'credit' && one.state === 'done');
   const form = useForm<CreditForm, unknown, CreditForm>({
     resolver: zodResolver(creditForm),
@@ -79,6 +81,8 @@ export function CreditStep({ view }: { view: SetupView }) {
                   amountCents: fieldValue.cents(row.amount),
                   treatment: row.treatment,
                   reason: row.reason.trim() === '' ? null : row.reason.trim(),
+                  placedInServiceOn: known.get(row.key)?.placedInServiceOn ?? null,
+                  documentId: known.get(row.key)?.documentId ?? null,
                 })),
               },
       })}

@@ -31,6 +31,8 @@ describe('the preparer’s summary', () => {
       amountCents: cents(150_000),
       treatment: 'reduction',
       reason: 'Paid by the utility, not income',
+      placedInServiceOn: null,
+      documentId: null,
     });
     const summary = creditSummary(credit);
     expect(summary).toMatchObject({

@@ -1,4 +1,13 @@
-import type { CreditFacts, IncentiveFacts, LoanFacts, LoanPayment, MortgageFacts } from '#shared/facts/finance.ts';
+import {
+  type CreditCost,
+  type CreditFacts,
+  type IncentiveFacts,
+  type LoanFacts,
+  type LoanPayment,
+  loanMore,
+  type MortgageFacts,
+  mortgageMore,
+} from '#shared/facts/finance.ts';
 import { cents } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
 
@@ -12,6 +21,7 @@ export function loanOf(changes: Partial<LoanFacts> = {}): LoanFacts {
     termMonths: 240,
     fundedOn: day('2024-06-10'),
     firstPaymentOn: day('2024-07-15'),
+    ...loanMore.parse({}),
     payments: [],
     ...changes,
   };
@@ -24,6 +34,8 @@ export function paymentOf(on: string, dollars: number, extraDollars = 0): LoanPa
     amountCents: cents(Math.round(dollars * 100)),
     extraPrincipalCents: cents(Math.round(extraDollars * 100)),
     note: null,
+    reamortize: false,
+    documentId: null,
   };
 }
 
@@ -50,6 +62,7 @@ export function mortgageOf(
       appreciationOn: null,
       ...insurance,
     },
+    ...mortgageMore.parse({}),
     ...changes,
   };
 }
@@ -59,11 +72,12 @@ export function creditOf(changes: Partial<CreditFacts> = {}): CreditFacts {
   return {
     placedInServiceOn: day('2024-05-22'),
     costs: [
-      { id: 'contract', label: 'Contract', amountCents: cents(3_640_000), treatment: 'qualified', reason: null },
-      { id: 'permit', label: 'Permit', amountCents: cents(50_000), treatment: 'qualified', reason: null },
-      { id: 'fee', label: 'Dealer fee', amountCents: cents(310_000), treatment: 'leftOut', reason: 'Part of the loan' },
+      creditCost('Contract', 3_640_000, 'qualified'),
+      creditCost('Permit', 50_000, 'qualified'),
+      creditCost('Dealer fee', 310_000, 'leftOut', 'Part of the loan'),
     ],
     homeShare: '1',
+    carriedIn: null,
     years: [
       creditYear(2024, 415_000, {
         status: 'filed',
@@ -75,6 +89,23 @@ export function creditOf(changes: Partial<CreditFacts> = {}): CreditFacts {
       creditYear(2026, 520_000, {}),
     ],
     ...changes,
+  };
+}
+
+export function creditCost(
+  label: string,
+  amountCents: number,
+  treatment: CreditCost['treatment'],
+  reason: string | null = null,
+): CreditCost {
+  return {
+    id: label.toLowerCase().replaceAll(' ', '-'),
+    label,
+    amountCents: cents(amountCents),
+    treatment,
+    reason,
+    placedInServiceOn: null,
+    documentId: null,
   };
 }
 
@@ -91,6 +122,8 @@ export function creditYear(
     refundOn: null,
     asRefund: false,
     typedBy: 'Priya',
+    limitFrom: null,
+    documentId: null,
     ...changes,
   };
 }

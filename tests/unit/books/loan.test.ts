@@ -120,6 +120,8 @@ const anyLoan = fc
         amountCents: cents(one.regular + one.extra),
         extraPrincipalCents: cents(one.extra),
         note: null,
+        reamortize: false,
+        documentId: null,
       })),
     }),
   );

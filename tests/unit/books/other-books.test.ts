@@ -102,6 +102,8 @@ describe('costs and incomes', () => {
     label: kind,
     amountCents: cents(10_000),
     documentId,
+    every: null,
+    until: null,
   });
 
   it('are money out, incomes money in, each in its book', () => {

@@ -24,6 +24,8 @@ const costs = (...given: [CreditCost['treatment'], number][]): CreditCost[] =>
     amountCents: cents(amount),
     treatment,
     reason: null,
+    placedInServiceOn: null,
+    documentId: null,
   }));
 
 describe('the tax credit', () => {

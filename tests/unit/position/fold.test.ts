@@ -178,6 +178,8 @@ function build(options: { cycles: number; extra: number; bill: number }) {
             label: 'Signing',
             amountCents: cents(690_000),
             documentId: null,
+            every: null,
+            until: null,
           },
         ],
         today,

@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { costEntries } from '#shared/books/costs.ts';
 import { incentiveEarned } from '#shared/books/incentive.ts';
 import { loanEntries } from '#shared/books/loan.ts';
+import { DEFAULT_ASSUMPTIONS } from '#shared/facts/household.ts';
 import { foldPosition } from '#shared/position/fold.ts';
 import { monthlyEnergy } from '#shared/position/monthly-energy.ts';
 import { placeEntries } from '#shared/position/place.ts';
@@ -77,7 +78,13 @@ function factsOf(changes: Partial<ProjectionFacts> = {}, plan: RatePlanInput = F
     credit: null,
     incentive: null,
     usageBefore: [],
-    assumptions: { degradation: '0', priceRise: '0', horizonMonths: 36, upkeepYearlyCents: cents(0) },
+    assumptions: {
+      ...DEFAULT_ASSUMPTIONS,
+      degradation: '0',
+      priceRise: '0',
+      horizonMonths: 36,
+      upkeepYearlyCents: cents(0),
+    },
     ...changes,
   };
 }
@@ -122,7 +129,13 @@ describe('the projection', () => {
   it('raises prices by whole years and ages the panels by a year at once', () => {
     const { months } = project(
       factsOf({
-        assumptions: { degradation: '0.01', priceRise: '0.05', horizonMonths: 36, upkeepYearlyCents: cents(0) },
+        assumptions: {
+          ...DEFAULT_ASSUMPTIONS,
+          degradation: '0.01',
+          priceRise: '0.05',
+          horizonMonths: 36,
+          upkeepYearlyCents: cents(0),
+        },
       }),
     );
     // 19.8 kWh a day made, 60 % sent out: 11.88; self-use 7.92; bought 22.08.
@@ -190,7 +203,13 @@ describe('the projection', () => {
   it('spends the upkeep of a year over its months, to the cent', () => {
     const { months } = project(
       factsOf({
-        assumptions: { degradation: '0', priceRise: '0', horizonMonths: 24, upkeepYearlyCents: cents(14_001) },
+        assumptions: {
+          ...DEFAULT_ASSUMPTIONS,
+          degradation: '0',
+          priceRise: '0',
+          horizonMonths: 24,
+          upkeepYearlyCents: cents(14_001),
+        },
       }),
     );
     expect(sumCents(months.slice(0, 12).map((month) => month.books.upkeep))).toBe(-14_001);
@@ -207,6 +226,8 @@ describe('the projection', () => {
             label: 'Repair',
             amountCents: cents(9_000),
             documentId: null,
+            every: null,
+            until: null,
           },
         ],
         day('2026-01-10'),

@@ -3,6 +3,7 @@ import { readSampleHousehold } from '#server/sample/sample-household.ts';
 import { levelPayment } from '#shared/books/interest.ts';
 import { governingEnd } from '#shared/books/mortgage-insurance.ts';
 import { creditLinesOf } from '#shared/books/tax-credit.ts';
+import { mortgageMore } from '#shared/facts/finance.ts';
 import { rowsWhere, samplePapers } from './sample-files.ts';
 
 const sample = readSampleHousehold();
@@ -39,7 +40,7 @@ describe('what the sample’s owner typed', () => {
 
   it('uses up the credit of 11,070 over three returns', () => {
     const years = sample.creditYears.map((year) => ({ ...year, typedBy: null }));
-    const lines = creditLinesOf({ ...present(sample.credit.credit), years });
+    const lines = creditLinesOf({ ...present(sample.credit.credit), years, carriedIn: null });
     expect(lines.map((line) => [line.taxYear, line.line13Cents, line.line15Cents, line.line16Cents])).toEqual([
       [2024, 1_107_000, 415_000, 692_000],
       [2025, 692_000, 505_000, 187_000],
@@ -58,7 +59,7 @@ describe('what the sample’s owner typed', () => {
   it('borrowed 91 % of the house, so that the insurance could have gone without the roof only in 2030', () => {
     const mortgage = present(sample.mortgage.mortgage);
     expect(mortgage.principalCents / mortgage.originalValueCents).toBeCloseTo(0.91, 10);
-    const end = governingEnd(mortgage);
+    const end = governingEnd({ ...mortgage, ...mortgageMore.parse({}) });
     expect([end.rule, end.on?.slice(0, 4)]).toEqual(['request80', '2030']);
   });
 
