@@ -1,6 +1,8 @@
 import { totalBalance } from '../ledger/opening-total.ts';
 import { sayDay } from '../ledger/say.ts';
 import { printedBankId } from '../ledger/settle-cycle.ts';
+import type { RatePlan } from '../settlement/plan.ts';
+import type { Day } from '../units/day.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
@@ -23,22 +25,22 @@ export function bankChainChecks(context: CheckContext): Check[] {
     const id = printedBankId(printed, plan);
     const label = plan.banks.find((bank) => bank.id === id)?.label ?? printed.bank;
     const about = id ?? printed.bank;
-    const last = lastClose(context, about);
+    const last = lastClose(context, about, plan);
     const opens = `${label}: opens as the last cycle closed`;
     if (open === null || last === null) {
       checks.push(
         nothingToCompare('bankChain', about, printed.unit, {
           title: opens,
           stated: open,
-          found: last,
+          found: last?.amount ?? null,
           cause:
             before === null ? 'This is the first cycle.' : 'One of the two statements does not print this balance.',
         }),
       );
     } else {
       checks.push(
-        compare(about, printed.unit, open, last, opens, () => ({
-          cause: `It closed at ${amount(last, printed.unit)}${paper.previous ? ` on ${sayDay(paper.previous.to)}` : ''} and opens at ${amount(open, printed.unit)}.`,
+        compare(about, printed.unit, open, last.amount, opens, () => ({
+          cause: `It closed at ${amount(last.amount, printed.unit)} on ${sayDay(last.on)} and opens at ${amount(open, printed.unit)}.`,
           advice: 'Ask the utility what became of the balance, and for it to be put back.',
         })),
       );
@@ -69,15 +71,22 @@ export function bankChainChecks(context: CheckContext): Check[] {
   return checks;
 }
 
-/** What the last statement printed as the bank's close, else as the ledger carried it; null for the first cycle without an opening. */
-function lastClose({ paper, settled, before }: CheckContext, id: string): string | null {
-  const plan = (before ?? settled).plan?.plan;
-  const printed = plan
-    ? paper.previous?.banks.find((bank) => printedBankId(bank, plan) === id || bank.bank === id)
-    : undefined;
-  if (printed?.close != null) return printed.close;
+/**
+ * What the last statement printed as the bank's close, by the plan it was billed on (by this cycle's where none was known then), else as the ledger
+ * carried it; null where neither says, and for the first statement.
+ */
+function lastClose(
+  { paper: { previous }, before }: CheckContext,
+  id: string,
+  plan: RatePlan,
+): { amount: string; on: Day } | null {
+  if (previous === null) return null;
+  const billedOn = before?.plan?.plan ?? plan;
+  const printed =
+    previous.banks.find((bank) => printedBankId(bank, billedOn) === id || bank.bank === id)?.close ?? null;
+  if (printed !== null) return { amount: printed, on: previous.to };
   const carried = before?.ours?.closing.banks[id];
-  return carried === undefined ? null : totalBalance(carried).toString();
+  return carried === undefined ? null : { amount: totalBalance(carried).toString(), on: previous.to };
 }
 
 function closeOf({ settled }: CheckContext, id: string): string | null {

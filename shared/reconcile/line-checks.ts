@@ -10,8 +10,8 @@ import { isCarried } from './electric-lines.ts';
 import { compareCents, nothingToCompare } from './make-check.ts';
 import { LINE_TOLERANCE_CENTS } from './tolerance.ts';
 
-/** `said` words the price, and is asked for only where it differs. */
-type Priced = { amountCents: Cents; said: () => string } | { why: string };
+/** `words` says the price, and is asked for only where it differs. */
+type Priced = { amountCents: Cents; words: () => string | undefined } | { why: string };
 
 /**
  * Each printed line at the plan's price for its *billed* quantity, kept apart from the quantity's own check (ledger.md §4); taxes on their base of
@@ -29,17 +29,21 @@ export function linePriceChecks(context: CheckContext): Check[] {
       if (!isCarried(line, null)) checks.push(unknownLine(line, at));
       return;
     }
-    const about = line.kind === 'trueup' ? `${component}.trueup` : component;
-    if (done.has(about) || plan.banks.some((bank) => bank.id === component)) return;
-    done.add(about);
+    if (done.has(component) || plan.banks.some((bank) => bank.id === component)) return;
+    done.add(component);
     const same = paper.lines.filter((_, i) => settled.components[i] === component);
-    checks.push(priceCheck(context, plan, component, same));
+    checks.push(priceCheck(context, plan, component, line.label, same));
   });
   return checks;
 }
 
-function priceCheck(context: CheckContext, plan: RatePlan, component: string, lines: PrintedLine[]): Check {
-  const label = lines[0]?.label ?? component;
+function priceCheck(
+  context: CheckContext,
+  plan: RatePlan,
+  component: string,
+  label: string,
+  lines: readonly PrintedLine[],
+): Check {
   const title = `Price of ${label}`;
   const stated = sumCents(lines.map((line) => line.amountCents));
   const priced = priceOf(context, plan, component, lines);
@@ -48,7 +52,7 @@ function priceCheck(context: CheckContext, plan: RatePlan, component: string, li
   }
   const sides = { stated, found: priced.amountCents, tolerance: cents(LINE_TOLERANCE_CENTS * lines.length) };
   return compareCents('linePrice', component, title, sides, () => ({
-    cause: `${label} is billed at ${sayMoney(stated)}; by the rate plan it is ${priced.said()}, ${sayMoney(priced.amountCents)}.`,
+    cause: `${label} is billed at ${sayMoney(stated)}; by the rate plan it is ${[priced.words(), sayMoney(priced.amountCents)].join(', ')}.`,
     advice:
       'Compare the rate printed with the plan. If the utility changed it, add the new rate to the plan with its date.',
   }));
@@ -61,22 +65,26 @@ function priceOf(context: CheckContext, plan: RatePlan, component: string, lines
     const { from, to } = context.paper;
     const amountCents = priceAmount(plan, component, from, to, quantity);
     if (amountCents !== null) {
-      const said = () => priceQuantity(plan, component, from, to, quantity)?.working.words ?? '';
-      return { amountCents, said };
+      return { amountCents, words: () => priceQuantity(plan, component, from, to, quantity)?.working.words };
     }
   }
-  // What the plan prices only in its place among the other lines (a minimum, tiers, a tax after credits) is taken from the bill settled on the
-  // billed kWh.
+  // What the plan prices only in its place among the other lines (a minimum, kWh by period, a tax after credits) is taken from the bill settled on
+  // the billed kWh.
   const placed = context.settled.asBilled?.settlement.lines.filter((line) => line.component === component) ?? [];
   if (placed.length > 0 && (quantity !== null || charge?.basis === 'floor' || charge?.afterCredits === true)) {
     return {
       amountCents: sumCents(placed.map((line) => line.amountCents)),
-      said: () => placed.map((line) => line.working.words).join(', '),
+      words: () => placed.map((line) => line.working.words).join(', '),
     };
   }
-  return quantity === null
-    ? { why: 'The statement prints no quantity for this line. Add it to check the price.' }
-    : { why: 'The rate plan cannot price this line by itself.' };
+  return { why: unpriced(charge, quantity) };
+}
+
+/** What is missing to price a line that neither the plan alone nor the settled bill says. */
+function unpriced(charge: Charge | null, quantity: string | null): string {
+  if (quantity !== null || charge?.basis === 'floor') return 'The rate plan cannot price this line by itself.';
+  if (charge?.basis === 'percent') return 'A line this percentage is taken on is not printed.';
+  return 'The statement prints no quantity for this line. Add it to check the price.';
 }
 
 /** The quantity to price: printed kWh, the cycle, its days, or for a percentage the billed lines it is taken on; null when not printed. */

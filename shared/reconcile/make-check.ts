@@ -9,14 +9,14 @@ export type Difference = { cause: string | null; advice: string | null };
 
 const NO_DIFFERENCE: Difference = { cause: null, advice: null };
 
-/** A check that has nothing to compare: `cause` says what is missing and what would settle it. */
+/** A check that has nothing to compare: `cause` says what is missing, `advice` what would settle it. */
 export function nothingToCompare(
   check: CheckId,
   about: string,
   unit: Check['unit'],
   texts: {
     title: string;
-    cause?: string | null;
+    cause: string | null;
     advice?: string | null;
     stated?: string | null;
     found?: string | null;
@@ -33,7 +33,7 @@ export function nothingToCompare(
     difference: null,
     tolerance: null,
     unit,
-    cause: texts.cause ?? null,
+    cause: texts.cause,
     advice: texts.advice ?? null,
     accepted: null,
   };

@@ -15,56 +15,51 @@ const CHANNEL_WORDS = { import: 'Import', export: 'Export', production: 'Product
 export function registersFollowChecks({ paper }: CheckContext): Check[] {
   const checks: Check[] = [];
   for (const channel of CHANNELS) {
-    const reads = readsOf(paper.statement, channel);
-    const before = readsOf(paper.previous, channel);
+    const reads = byDate(readsOf(paper.statement, channel));
+    const before = byDate(readsOf(paper.previous, channel));
     reads.forEach((read, at) => {
       const seen = reads.findIndex((other) => other.meter === read.meter) < at;
-      if (!seen) checks.push(...followCheck(channel, read.meter, byDate(reads), byDate(before)));
+      if (!seen) checks.push(followCheck(channel, read, reads, before));
     });
   }
   return checks;
 }
 
+/** One meter's check, by its first read: the first joint of its reads that does not meet, else the last. */
 function followCheck(
   channel: (typeof CHANNELS)[number],
-  meter: string,
+  first: RegisterRead,
   reads: RegisterRead[],
   before: RegisterRead[],
-): Check[] {
+): Check {
+  const { meter } = first;
   const about = `${channel}:${meter}`;
   const title = `Register reads follow on, ${CHANNEL_WORDS[channel].toLowerCase()}`;
-  const own = ofMeter(reads, meter);
-  const first = own[0];
-  if (!first) return [];
-  const last = ofMeter(before, meter).at(-1) ?? null;
-  if (last === null) {
-    if (before.length === 0) {
-      return [
-        nothingToCompare('registersFollow', about, 'kWh', {
-          title,
-          stated: first.previous,
-          cause: 'No earlier read of this meter is on record.',
-        }),
-      ];
-    }
-    return [exchangeCheck(about, title, first, reads, before)];
+  const last = ofMeter(before, meter).at(-1);
+  if (last === undefined) {
+    if (before.length > 0) return exchangeCheck(about, title, first, reads, before);
+    return nothingToCompare('registersFollow', about, 'kWh', {
+      title,
+      stated: first.previous,
+      cause: 'No earlier read of this meter is on record.',
+    });
   }
-  // Segments of one meter inside one statement must meet as well.
-  for (let at = 0; at < own.length; at += 1) {
-    const read = own[at];
-    const prior = at === 0 ? last : own[at - 1];
-    if (!read || !prior) continue;
-    const check = compareDecimals('registersFollow', about, title, followSides(read, prior), () => ({
+  const follows = (read: RegisterRead, prior: RegisterRead): Check => {
+    const sides = { stated: read.previous, found: prior.current, tolerance: '0', unit: 'kWh' as const };
+    return compareDecimals('registersFollow', about, title, sides, () => ({
       cause: `Meter ${meter} was read ${prior.current} on ${sayDate(prior.to)}; this statement starts from ${read.previous}.`,
       advice: 'Ask the utility which read is right. The kWh between the two are billed twice or not at all.',
     }));
-    if (check.verdict === 'differs' || at === own.length - 1) return [check];
+  };
+  // Segments of one meter inside one statement must meet as well.
+  let prior = first;
+  let check = follows(first, last);
+  for (const read of ofMeter(reads, meter).slice(1)) {
+    if (check.verdict === 'differs') return check;
+    check = follows(read, prior);
+    prior = read;
   }
-  return [];
-}
-
-function followSides(read: RegisterRead, prior: RegisterRead) {
-  return { stated: read.previous, found: prior.current, tolerance: '0', unit: 'kWh' as const };
+  return check;
 }
 
 function exchangeCheck(
@@ -91,7 +86,9 @@ function exchangeCheck(
 export function readTypeCheck(context: CheckContext): Check {
   const title = 'Read type';
   const { paper, papers, runs } = context;
-  const estimated = CHANNELS.filter((channel) => closesEstimated(paper.reads, channel) === true);
+  // A channel that closes on an estimate is in a run, whose last read may be this one.
+  const joined = CHANNELS.map((channel) => runs.get(runKey(paper.index, channel))).filter((run) => run !== undefined);
+  const estimated = joined.filter((run) => closesEstimated(paper.reads, run.channel) === true);
   if (paper.reads.length === 0) {
     return nothingToCompare('readType', '', 'text', {
       title,
@@ -103,9 +100,8 @@ export function readTypeCheck(context: CheckContext): Check {
     const sides = { stated: 'actual', found: 'actual', difference: null, unit: 'text' as const };
     return compareText('readType', '', title, sides, () => ({ cause: null, advice: null }));
   }
-  const names = estimated.join(' and ');
-  const open = estimated.some((channel) => runs.get(runKey(paper.index, channel))?.pending ?? true);
-  if (open) {
+  const names = estimated.map((run) => run.channel).join(' and ');
+  if (estimated.some((run) => run.pending)) {
     return nothingToCompare('readType', '', 'text', {
       title,
       stated: 'estimated',
@@ -113,11 +109,9 @@ export function readTypeCheck(context: CheckContext): Check {
       advice: 'Read the meter yourself today and keep a photo of it.',
     });
   }
-  const ends = estimated.flatMap((channel) => {
-    const last = runs.get(runKey(paper.index, channel))?.cycles.at(-1);
-    return last === undefined ? [] : [papers[last]?.to ?? paper.to];
-  });
-  const settledOn = ends.sort().at(-1) ?? paper.to;
+  // Papers are in order of date.
+  let settledOn = paper.to;
+  for (const { index, to } of papers) if (estimated.some((run) => run.cycles.includes(index))) settledOn = to;
   return nothingToCompare('readType', '', 'text', {
     title,
     stated: 'estimated',
@@ -141,5 +135,5 @@ function readsOf(statement: Statement | null, channel: RegisterRead['channel']):
 
 function byDate(reads: RegisterRead[]): RegisterRead[] {
   if (reads.length < 2) return reads;
-  return [...reads].sort((a, b) => (a.from < b.from ? -1 : a.from > b.from ? 1 : 0));
+  return [...reads].sort((a, b) => a.from.localeCompare(b.from));
 }

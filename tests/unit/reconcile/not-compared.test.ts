@@ -1,24 +1,12 @@
 import { describe, expect, test } from 'vitest';
 import type { HouseholdFacts } from '#shared/facts/household.ts';
-import type { PrintedLine, Statement } from '#shared/facts/papers.ts';
-import { computeLedger } from '#shared/ledger/compute-ledger.ts';
-import type { Check } from '#shared/reconcile/check.ts';
+import type { PrintedLine } from '#shared/facts/papers.ts';
 import { matchLines } from '#shared/reconcile/match.ts';
 import { cents } from '#shared/units/cents.ts';
 import { addDays, day } from '#shared/units/day.ts';
-import { BUILT_TODAY, buildHousehold } from '#tests/support/build-household.ts';
+import { buildHousehold } from '#tests/support/build-household.ts';
 import { CUSTOMER, ENERGY, FLAT, plan } from '#tests/unit/settlement/plans.ts';
-
-function changed(index: number, change: (statement: Statement) => Statement, facts = buildHousehold()): HouseholdFacts {
-  return { ...facts, statements: facts.statements.map((one, at) => (at === index ? change(one) : one)) };
-}
-
-function check(facts: HouseholdFacts, index: number, key: string): Check {
-  const checks = computeLedger(facts, { today: BUILT_TODAY }).cycles[index]?.checks ?? [];
-  const found = checks.find((one) => one.key === key);
-  if (!found) throw new Error(`no check ${key} among ${checks.map((one) => one.key).join(' ')}`);
-  return found;
-}
+import { changed, check } from './built-checks.ts';
 
 describe('a printed line is taken for the plan’s', () => {
   const tax = { id: 'tax', label: 'City tax', kind: 'tax', basis: 'percent', on: ['energy'], rates: FLAT };

@@ -40,6 +40,17 @@ describe('netting by clock blocks', () => {
     expect(quantities(both({ netting: 'hour' }), sameHour)).toEqual(['0.6', '0']);
   });
 
+  test('in steps of five minutes follows the clock through the night it is set back, as in steps of thirty', () => {
+    const fine = usage({
+      ...changeDay,
+      intervals: steps('2026-11-01T06:00:00Z', 5, 300, (step) =>
+        step === 12 ? { in: 1000 } : step === 23 ? { out: 300 } : step === 24 ? { out: 500 } : {},
+      ),
+    });
+    // The export of 01:55 is in the import's hour; that of the second 01:00 is not.
+    expect(quantities(both({ netting: 'hour' }), fine)).toEqual(['0.7', '0.5']);
+  });
+
   test('follows the clock of zones whose hours begin at half past in UTC', () => {
     const of = both({ netting: 'hour', timeZone: 'Asia/Kolkata' });
     const cycle = (first: number) =>

@@ -93,6 +93,61 @@ describe('season', () => {
     });
   });
 
+  const PERIODS_OF = { peak: 'On-peak', off: 'Off-peak' };
+  const seasonalByPeriod = planOf({
+    netting: 'none',
+    calendar: { ...netBilling.calendar, ...byPeriod.calendar, seasons: netBilling.calendar.seasons },
+    charges: [
+      {
+        id: 'energy',
+        label: 'Energy',
+        kind: 'import',
+        basis: 'import',
+        rates: [
+          { from: '2025-01-01', season: 'summer', period: 'peak', rate: '0.3121' },
+          { from: '2025-01-01', season: 'summer', period: 'off', rate: '0.1317' },
+          { from: '2025-01-01', season: 'winter', period: 'peak', rate: '0.2243' },
+          { from: '2025-01-01', season: 'winter', period: 'off', rate: '0.1109' },
+        ],
+      },
+    ],
+  });
+  const flows = { peak: { importWh: kWh(151), exportWh: kWh(0) }, off: { importWh: kWh(461), exportWh: kWh(0) } };
+
+  test.each(['peak', 'off'] as const)('one period alone at another season’s price: %s', (period) => {
+    const rates = { peak: '0.2243', off: '0.1109', [period]: period === 'peak' ? '0.3121' : '0.1317' };
+    const plan = repriced(seasonalByPeriod, 'energy', [
+      { from, period: 'peak', rate: rates.peak },
+      { from, period: 'off', rate: rates.off },
+    ]);
+    const said = period === 'peak' ? ['$0.3121', '$0.2243'] : ['$0.1317', '$0.1109'];
+    expectOne(
+      house(seasonalByPeriod, { ...winter, byPeriod: flows }),
+      plan,
+      `Energy was priced at the summer rate for ${PERIODS_OF[period]}, ${said[0]}, instead of the winter rate, ${said[1]}.`,
+      { price: 'season', season: 'summer', for: PERIODS_OF[period], items: 'energy' },
+    );
+  });
+
+  test('a price that one period alone has by season is no other period’s', () => {
+    const plan = {
+      ...seasonalByPeriod,
+      charges: seasonalByPeriod.charges.map((charge) => ({
+        ...charge,
+        rates: charge.rates
+          .filter((row) => row.period === 'peak' || row.season === 'summer')
+          .map((row) => (row.period === 'off' ? { ...row, season: undefined } : row)),
+      })),
+    };
+    const wrong = repriced(plan, 'energy', [
+      { from, period: 'peak', rate: '0.3121' },
+      { from, period: 'off', rate: '0.1317' },
+    ]);
+    const causes = causesFor(house(plan, { ...winter, byPeriod: flows }), { plan: wrong });
+    expect(causes[0]?.found).toEqual({ price: 'season', season: 'summer', items: 'energy' });
+    expect(causes[0]?.alsoWords).toEqual([]);
+  });
+
   test('a change of season inside the cycle, one season’s price for all of it', () => {
     const plan = repriced(seasonal, 'delivery', [{ from, rate: '0.0297' }]);
     expectOne(house(seasonal, straddling), plan, 'Delivery was priced at the winter rate.', {
