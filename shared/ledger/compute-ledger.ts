@@ -2,8 +2,10 @@ import { billAvoidedEntry } from '../books/bill-avoided.ts';
 import type { Entry, UnplacedEntry } from '../books/book.ts';
 import { costEntries } from '../books/costs.ts';
 import { type IncentiveCycle, incentiveEarned, incentiveReceived } from '../books/incentive.ts';
+import { leaseEntries } from '../books/lease.ts';
 import { loanEntries } from '../books/loan.ts';
 import { insuranceEntries } from '../books/mortgage-insurance.ts';
+import { otherLoanEntries } from '../books/other-money.ts';
 import { creditEntries, creditLinesOf } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
 import { isComplete } from '../metering/cycle-energy.ts';
@@ -104,22 +106,33 @@ function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCyc
     entries.push(...incentiveEarned(facts.incentive, seen), ...incentiveReceived(facts.incentive, seen, today));
   }
   if (facts.loan !== null) entries.push(...loanEntries(facts.loan, today));
+  entries.push(...otherLoanEntries(facts.otherLoans, today));
+  if (facts.lease !== null) {
+    entries.push(...leaseEntries(facts.lease, assembled.map(productionOf), today, facts.documents));
+  }
   if (facts.mortgage !== null) entries.push(...insuranceEntries(facts.mortgage, today));
   if (facts.credit !== null) entries.push(...creditEntries(facts.credit, today));
   entries.push(...costEntries(facts.costs, today, facts.documents));
   return entries;
 }
 
-/** A cycle as the incentive counts it: the production of the whole cycle, an estimate where it is only the inverter's own count. */
-function incentiveCycle({ cycle, paper }: AssembledCycle, facts: HouseholdFacts): IncentiveCycle {
+/** What a cycle made as a whole: an estimate where it is only the inverter's own count, null where a part of the cycle is not covered. */
+export function productionOf({ cycle }: { cycle: Cycle }) {
   const production = isComplete(cycle.energy.production) ? cycle.energy.production : null;
-  const credited = paper.lines.filter((line) => isIncentiveInBill(line, facts.incentive));
   return {
     from: cycle.from,
     to: cycle.to,
     productionWh: production?.wh ?? null,
     estimated: production?.from === 'monitor' || production?.working.basis === 'estimated',
     source: production?.working.inputs[0]?.source ?? null,
+  };
+}
+
+/** A cycle as the incentive counts it. */
+function incentiveCycle(assembled: AssembledCycle, facts: HouseholdFacts): IncentiveCycle {
+  const credited = assembled.paper.lines.filter((line) => isIncentiveInBill(line, facts.incentive));
+  return {
+    ...productionOf(assembled),
     billCreditCents: credited.length === 0 ? null : cents(-sumCents(credited.map((line) => line.amountCents))),
   };
 }

@@ -1,0 +1,94 @@
+import type { OtherLoan } from '../facts/finance.ts';
+import type { HouseholdFacts } from '../facts/household.ts';
+import { sayCount, sayDate } from '../ledger/say.ts';
+import type { Figure } from '../position/position.ts';
+import { type Cents, sumCents } from '../units/cents.ts';
+import type { Day } from '../units/day.ts';
+import type { Entry, UnplacedEntry } from './book.ts';
+import { stated, usdListInput } from './inputs.ts';
+import { loanEntries, loanPayoff, loanStateOn, type PaymentsOfTheDay } from './loan.ts';
+
+type LoanOf = OtherLoan['loan'];
+
+/** What each kind of other solar money is called. */
+export const OTHER_LOAN_NAMES: Record<OtherLoan['kind'], string> = {
+  mortgageShare: 'Share of the mortgage',
+  homeEquity: 'Home-equity loan',
+  other: 'Second loan',
+};
+
+/** Every loan the roof was paid with: the solar loan first, then the others as entered. */
+export function loansOf(facts: Pick<HouseholdFacts, 'loan' | 'otherLoans'>): LoanOf[] {
+  const others = facts.otherLoans.map(({ loan }) => loan);
+  return facts.loan === null ? others : [facts.loan, ...others];
+}
+
+/** The entries of the other loans through a day, each by the loan book's own rules, its ids set apart by the loan's id. */
+export function otherLoanEntries(others: readonly OtherLoan[], through: Day): UnplacedEntry[] {
+  return others.flatMap((other) =>
+    loanEntries(other.loan, through).map((entry) => ({
+      ...entry,
+      id: `${prefixOf(other.id)}${entry.id}`,
+      label: `${OTHER_LOAN_NAMES[other.kind]}: ${entry.label}`,
+    })),
+  );
+}
+
+/** Whether an entry belongs to one of the other loans. */
+export function isOfOtherLoan(entry: Pick<Entry, 'id'>, otherId: string): boolean {
+  return entry.id.startsWith(prefixOf(otherId));
+}
+
+/** Whether an entry of the loan book is the solar loan's own, and neither another loan's nor a lease's. */
+export function isOfSolarLoan(entry: Pick<Entry, 'id' | 'book'>): boolean {
+  return entry.book === 'loan' && entry.id.startsWith('loan-');
+}
+
+function prefixOf(otherId: string): string {
+  return `other-${otherId}-`;
+}
+
+/** What it takes to pay every loan off on a day, in plain cents, without a working. */
+export function owedOnLoans(loans: readonly LoanOf[], on: Day, payments: PaymentsOfTheDay = 'through'): Cents {
+  return sumCents(loans.map((loan) => loanStateOn(loan, on, payments).payoffCents));
+}
+
+/** The same with its working: the one loan's own, or the sum of them. Null where there is no loan. */
+export function payoffOfLoans(
+  loans: readonly LoanOf[],
+  on: Day,
+  payments: PaymentsOfTheDay = 'through',
+): Figure | null {
+  const figures = loans.map((loan) => loanPayoff(loan, on, payments));
+  const [only] = figures;
+  if (only === undefined) return null;
+  if (figures.length === 1) return only;
+  const amounts = figures.map(({ amountCents }) => amountCents);
+  return {
+    amountCents: sumCents(amounts),
+    working: {
+      words: `The payoff of ${sayCount(loans.length, 'loan', 'loans')} on ${sayDate(on)} added`,
+      formula: 'sum(payoffs)',
+      inputs: [
+        usdListInput(
+          'payoffs',
+          `Payoff of ${loans.map(({ lender }) => (lender === '' ? 'a loan' : lender)).join(', ')}`,
+          amounts,
+          stated('The payoff of each loan, on Money'),
+        ),
+      ],
+      unit: 'USD',
+      basis: 'computed',
+    },
+  };
+}
+
+/** Money of the loan book on a day to come, negative where it is paid. */
+export type LoanFlow = { on: Day; book: 'loan'; cents: Cents };
+
+/** What the other loans pay on the days of `[from, to)`. */
+export function otherLoanFlows(others: readonly OtherLoan[], from: Day, to: Day): LoanFlow[] {
+  return otherLoanEntries(others, to)
+    .filter(({ date }) => date >= from && date < to)
+    .map(({ date, amountCents }) => ({ on: date, book: 'loan', cents: amountCents }));
+}
