@@ -5,6 +5,7 @@ import { addDays, type Day, daysBetween } from '#shared/units/day.ts';
 import { type Wh, wh } from '#shared/units/energy.ts';
 import { fileFault } from './faults.ts';
 import type { RecordOfRow } from './statement-records.ts';
+import type { BalanceItem } from './statement-words.ts';
 
 /** Dates and days that may stand on any row of a cycle; null where the row leaves them empty. */
 export type CycleFacts = { statementOn: Day | null; dueOn: Day | null; printedDays: number | null };
@@ -23,6 +24,25 @@ export type CycleRows = {
 const LONGEST_CYCLE_DAYS = 190;
 /** A due date further off than this is a slip in a year. */
 const LONGEST_TERM_DAYS = 190;
+
+const ITEM_WORDS: Record<BalanceItem, string> = {
+  previousBalance: 'the previous balance',
+  payments: 'the payments',
+  amountDue: 'the amount due',
+  budgetAmount: 'the budget amount',
+  budgetBalance: 'the budget balance',
+  budgetSettlement: 'the budget settlement',
+};
+
+function budgetOf(stated: ReadonlyMap<BalanceItem, { amountCents: Cents }>): StatementBody['budget'] {
+  const instalment = stated.get('budgetAmount');
+  if (instalment === undefined) return null;
+  return {
+    instalmentCents: instalment.amountCents,
+    balanceCents: stated.get('budgetBalance')?.amountCents ?? null,
+    settledCents: stated.get('budgetSettlement')?.amountCents ?? null,
+  };
+}
 
 /** Faults of a cycle's two dates, found before its rows are read. */
 export function cycleDateFault(fileName: string, row: number, from: Day, to: Day): Fault | null {
@@ -86,9 +106,8 @@ export function assembleCycle(
     );
   }
 
-  let previousBalance: Cents | null = null;
   let payments: Cents | null = null;
-  let amountDue: Cents | null = null;
+  const stated = new Map<BalanceItem, { amountCents: Cents; row: number }>();
   const lines: Extract<RecordOfRow, { record: 'line' }>['line'][] = [];
   const body = { reads: [] as StatementBody['reads'], banks: [] as StatementBody['banks'] };
   for (const { row, what } of cycle.rows) {
@@ -116,16 +135,29 @@ export function assembleCycle(
     if (what.record === 'balance') {
       // A payment takes off what is owed, whichever sign the statement prints.
       if (what.item === 'payments') payments = cents((payments ?? 0) - Math.abs(what.amountCents));
-      else if (what.item === 'previousBalance') {
-        if (previousBalance === null) previousBalance = what.amountCents;
-        else fault('twice', row, 'item', 'the previous balance stands twice in this cycle. Keep one.');
-      } else if (amountDue === null) amountDue = what.amountCents;
-      else fault('twice', row, 'item', 'the amount due stands twice in this cycle. Keep one.');
+      else if (!stated.has(what.item)) stated.set(what.item, { amountCents: what.amountCents, row });
+      else fault('twice', row, 'item', `${ITEM_WORDS[what.item]} stands twice in this cycle. Keep one.`);
     }
   }
-  if (amountDue === null) {
+  const amountDue = stated.get('amountDue');
+  if (amountDue === undefined) {
     const message = `the cycle ${cycle.from} to ${cycle.to} has no amount due. Add a row with record “balance” and item “amount due”.`;
     fault('no-amount-due', cycle.firstRow, 'item', message);
+    return { statement: null, faults };
+  }
+  const budget = budgetOf(stated);
+  const loose = stated.get('budgetBalance') ?? stated.get('budgetSettlement');
+  if (budget === null && loose !== undefined) {
+    fault(
+      'no-budget-amount',
+      loose.row,
+      'item',
+      'a budget balance or settlement needs the budget amount in a row too.',
+    );
+  }
+  if (budget !== null && !lines.some((line) => line.kind !== 'otherService')) {
+    const message = 'with a budget amount, add the real charges as lines: the amount due does not say them.';
+    fault('budget-without-lines', stated.get('budgetAmount')?.row ?? lastRow, 'item', message);
     return { statement: null, faults };
   }
   const intoBank = body.banks.some((bank) => bank.unit === 'USD');
@@ -139,9 +171,10 @@ export function assembleCycle(
     productionWh: kwhOf(cycle.rows, 'production'),
     lines: lines.map((line) => ({ ...line, inDue: line.inDue ?? !(line.kind === 'export' && intoBank) })),
     banks: body.banks,
-    previousBalanceCents: previousBalance,
+    previousBalanceCents: stated.get('previousBalance')?.amountCents ?? null,
     paymentsCents: payments,
-    amountDueCents: amountDue,
+    amountDueCents: amountDue.amountCents,
+    budget,
   };
   return { statement, faults };
 }

@@ -75,21 +75,42 @@ const KIND_WORDS: Record<PrintedLine['kind'], readonly string[]> = {
     'other',
     'other service',
     'water',
+    'wastewater',
     'sewer',
+    'sewage',
     'refuse',
     'garbage',
     'trash',
+    'solid waste',
+    'sanitation',
     'recycling',
     'stormwater',
+    'storm water',
+    'storm drain',
+    'drainage',
     'gas',
+    'natural gas',
     'internet',
+    'broadband',
     'street light',
+    'street lighting',
+    'lighting',
+    'area light',
+    'yard light',
+    'security light',
     'late fee',
     'late charge',
+    'late payment charge',
+    'penalty',
+    'returned check fee',
+    'returned payment fee',
+    'reconnection fee',
     'deposit',
+    'security deposit',
     'instalment',
     'installment',
     'payment plan',
+    'payment arrangement',
     'donation',
     'round up',
   ],
@@ -117,6 +138,16 @@ export const OFFERED_ITEMS = [
 ] as const;
 
 export const KNOWN_ITEMS: readonly string[] = [...KIND_BY_WORD.keys()];
+
+/** Services that a tax is printed on by name. "Gas and electric tax" is on electricity too, and stays. */
+const OTHER_SERVICE =
+  /\b(water|waste ?water|sew(er|age)|refuse|garbage|trash|recycling|storm ?water|drainage|solid waste|sanitation|gas|internet|broadband)\b/i;
+const ELECTRICITY = /\b(electric\w*|energy|power|kwh)\b/i;
+
+/** A tax whose label says it is on another service is kept apart with that service; the owner can say otherwise in the check. */
+export function keptApart(kind: PrintedLine['kind'], label: string): PrintedLine['kind'] {
+  return kind === 'tax' && OTHER_SERVICE.test(label) && !ELECTRICITY.test(label) ? 'otherService' : kind;
+}
 
 export function kindOf(text: string): PrintedLine['kind'] | null {
   return KIND_BY_WORD.get(plainWords(text)) ?? null;

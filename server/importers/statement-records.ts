@@ -2,7 +2,7 @@ import type { PrintedBank, PrintedLine } from '#shared/facts/papers.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import type { Day } from '#shared/units/day.ts';
 import { nearestName } from './faults.ts';
-import { KNOWN_ITEMS, kindOf, OFFERED_ITEMS } from './statement-kinds.ts';
+import { KNOWN_ITEMS, keptApart, kindOf, OFFERED_ITEMS } from './statement-kinds.ts';
 import { type ReadRecord, readOf } from './statement-reads.ts';
 import type { RowReader } from './statement-row.ts';
 import { type BalanceItem, balanceItemOf, bankIdOf, plainWords, recordOf, unitOf, yesOrNo } from './statement-words.ts';
@@ -28,6 +28,11 @@ function kindOffer(found: string): string {
 function lineOf(cells: RowReader): RecordOfRow | null {
   cells.need('item', 'a line needs what it is in “item”, such as import or customer charge.');
   cells.need('amount', 'a line needs its amount. A credit is written with a minus: −12.34.');
+  if (balanceItemOf(cells.text('item'))?.startsWith('budget')) {
+    const message = `Row ${cells.row}: write “balance” in “record” for the budget amount, its balance and its settlement; the lines are the real charges.`;
+    cells.fault('record', 'wrong-record', message);
+    return null;
+  }
   const kind = cells.word('item', kindOf, () => kindOffer(cells.text('item')));
   const amountCents = cells.money('amount');
   let quantity = cells.number('quantity');
@@ -57,7 +62,7 @@ function lineOf(cells: RowReader): RecordOfRow | null {
     record: 'line',
     line: {
       component: component === '' ? null : component,
-      kind,
+      kind: keptApart(kind, label),
       label,
       quantity,
       unit,
@@ -94,14 +99,20 @@ function bankOf(cells: RowReader): RecordOfRow | null {
   if (open === null && close === null) {
     cells.need('current', 'a bank needs its opening balance in “previous”, its closing balance in “current”, or both.');
   }
+  const sentOut = cells.number('quantity');
+  const sentValueCents = cells.money('amount');
+  if (sentOut?.startsWith('-')) {
+    cells.fault('quantity', 'below-zero', `Row ${cells.row}: what went to other service points cannot be below zero.`);
+  }
   if (cells.faults.length > 0 || bank === null || unit === null) return null;
-  return { record: 'bank', bank: { bank, unit, open, close, row: cells.row } };
+  return { record: 'bank', bank: { bank, unit, open, close, sentOut, sentValueCents, row: cells.row } };
 }
 
 function balanceOf(cells: RowReader): RecordOfRow | null {
   cells.need('item', 'a balance needs previous balance, payments or amount due in “item”.');
   cells.need('amount', 'a balance needs its amount.');
-  const item = cells.word('item', balanceItemOf, 'previous balance, payments or amount due');
+  const offer = 'previous balance, payments, amount due, budget amount, budget balance or budget settlement';
+  const item = cells.word('item', balanceItemOf, offer);
   const amountCents = cells.money('amount');
   if (cells.faults.length > 0 || item === null || amountCents === null) return null;
   return { record: 'balance', item, amountCents };

@@ -8,10 +8,11 @@ const GUIDE = [
   'record: read, line, bank or balance. statement_date, due_date and days go on any row of the statement, once.',
   'read: item is import, export or production; previous and current are the register; quantity is the kWh printed. After a meter exchange, one row per meter with read_from and read_to.',
   'read: dials and multiplier may stay empty (5 or as many as printed; 1). read_type is actual or estimated; empty means actual.',
-  'line: item is import, export credit, credit used, incentive, customer charge, non-bypassable, demand, tax, minimum, true-up, adjustment, or other service (water, refuse, late fee, deposit, payment plan).',
+  'line: item is import, export credit, credit used, incentive, customer charge, non-bypassable, demand, tax, minimum, true-up, adjustment, or other service (water, sewer, refuse, lighting, a tax on those, late fee, deposit, payment plan, donation).',
   'line: credit used is what the credit bank paid of this bill. A line that is printed but not part of the amount due has no in in_due. An export credit counts as no when the statement shows a bank in USD.',
-  'bank: item is credit bank, or the bank’s id in your rate plan; previous is its opening, current its closing balance; unit is USD or kWh.',
+  'bank: item is credit bank, or the bank’s id in your rate plan; previous is its opening, current its closing balance; unit is USD or kWh. Credit sent to other service points goes in quantity, what it saved on their bills in amount.',
   'balance: item is previous balance, payments or amount due. Each statement needs its amount due.',
+  'balance: on a budget (levelized) plan also budget amount, budget balance (with a minus where the utility owes you) and, once a year, budget settlement. The lines stay the real charges.',
   'The rows below are an example with invented figures. Write over them.',
 ];
 

@@ -48,7 +48,13 @@ export function channelOf(text: string): ReadChannel | null {
   return CHANNEL_WORDS[plainWords(text)] ?? null;
 }
 
-export type BalanceItem = 'previousBalance' | 'payments' | 'amountDue';
+export type BalanceItem =
+  | 'previousBalance'
+  | 'payments'
+  | 'amountDue'
+  | 'budgetAmount'
+  | 'budgetBalance'
+  | 'budgetSettlement';
 const BALANCE_WORDS: Record<string, BalanceItem> = {
   'previous balance': 'previousBalance',
   'balance forward': 'previousBalance',
@@ -61,6 +67,25 @@ const BALANCE_WORDS: Record<string, BalanceItem> = {
   'total due': 'amountDue',
   'total amount due': 'amountDue',
   due: 'amountDue',
+  budget: 'budgetAmount',
+  'budget amount': 'budgetAmount',
+  'budget bill': 'budgetAmount',
+  'budget billing': 'budgetAmount',
+  'budget billing amount': 'budgetAmount',
+  'budget payment': 'budgetAmount',
+  'budget plan amount': 'budgetAmount',
+  'level payment': 'budgetAmount',
+  'levelized amount': 'budgetAmount',
+  'average amount': 'budgetAmount',
+  'budget balance': 'budgetBalance',
+  'budget billing balance': 'budgetBalance',
+  'your budget balance': 'budgetBalance',
+  'deferred balance': 'budgetBalance',
+  'levelized balance': 'budgetBalance',
+  'budget settlement': 'budgetSettlement',
+  'budget settle up': 'budgetSettlement',
+  'budget true up': 'budgetSettlement',
+  'budget year end': 'budgetSettlement',
 };
 
 export function balanceItemOf(text: string): BalanceItem | null {

@@ -23,6 +23,7 @@ function emptyHouse(name: string, timeZone: string): HouseFacts {
     inverterAcWatts: null,
     expectedMonthlyWh: null,
     meters: [],
+    aggregation: 'none',
   };
 }
 

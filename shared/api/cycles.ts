@@ -1,6 +1,6 @@
 import * as z from 'zod/mini';
 import { bookId } from '../books/book.ts';
-import { acceptedDifference, statementSchema } from '../facts/papers.ts';
+import { acceptedDifference, budgetNeedsLines, statementSchema } from '../facts/papers.ts';
 import { cycleSchema, cycleState } from '../ledger/cycle.ts';
 import { owedList } from '../ledger/owed-list.ts';
 import { centsSchema } from '../units/cents.ts';
@@ -48,22 +48,25 @@ export const cycleView = z.object({
 export type CycleView = z.infer<typeof cycleView>;
 
 /** What a person can state of a statement: everything but identity, revision, source and authorship. */
-export const statementBody = z.strictObject({
-  from: daySchema,
-  to: daySchema,
-  printedDays: statementSchema.shape.printedDays,
-  statementOn: statementSchema.shape.statementOn,
-  dueOn: statementSchema.shape.dueOn,
-  reads: statementSchema.shape.reads,
-  importWh: statementSchema.shape.importWh,
-  exportWh: statementSchema.shape.exportWh,
-  productionWh: statementSchema.shape.productionWh,
-  lines: statementSchema.shape.lines,
-  banks: statementSchema.shape.banks,
-  previousBalanceCents: statementSchema.shape.previousBalanceCents,
-  paymentsCents: statementSchema.shape.paymentsCents,
-  amountDueCents: statementSchema.shape.amountDueCents,
-});
+export const statementBody = z
+  .strictObject({
+    from: daySchema,
+    to: daySchema,
+    printedDays: statementSchema.shape.printedDays,
+    statementOn: statementSchema.shape.statementOn,
+    dueOn: statementSchema.shape.dueOn,
+    reads: statementSchema.shape.reads,
+    importWh: statementSchema.shape.importWh,
+    exportWh: statementSchema.shape.exportWh,
+    productionWh: statementSchema.shape.productionWh,
+    lines: statementSchema.shape.lines,
+    banks: statementSchema.shape.banks,
+    previousBalanceCents: statementSchema.shape.previousBalanceCents,
+    paymentsCents: statementSchema.shape.paymentsCents,
+    amountDueCents: statementSchema.shape.amountDueCents,
+    budget: statementSchema.shape.budget,
+  })
+  .check(budgetNeedsLines);
 export type StatementBody = z.infer<typeof statementBody>;
 
 const at = '/api/households/:householdId/cycles';

@@ -33,6 +33,7 @@ export const roofBody = z.strictObject({
   inverterAcWatts: houseSchema.shape.inverterAcWatts,
   expectedMonthlyWh: houseSchema.shape.expectedMonthlyWh,
   meters: houseSchema.shape.meters,
+  aggregation: houseSchema.shape.aggregation,
 });
 export const planBody = z.strictObject({ plans: z.array(planInForce), opening: openingSchema });
 export const beforeBody = z.strictObject({ usageBefore: z.array(usageBeforeSchema) });

@@ -23,8 +23,17 @@ export const meterSchema = z.object({
   channels: z.array(z.enum(['import', 'export', 'production'])),
   dials: z.int().check(z.minimum(3), z.maximum(9)),
   multiplier: decimalText,
+  /** The other place this meter serves (a barn, a second house); null for the house itself. */
+  servicePoint: z._default(z.nullable(z.string().check(z.minLength(1), z.maxLength(80))), null),
 });
 export type MeterFacts = z.infer<typeof meterSchema>;
+
+/**
+ * What the utility does with meters of other service points. `none`: each is billed by itself. `netTogether`: their kWh are added to the house's before
+ * netting. `share`: surplus of the house's credit bank is sent to them.
+ */
+export const aggregation = z.enum(['none', 'netTogether', 'share']);
+export type Aggregation = z.infer<typeof aggregation>;
 
 export const houseSchema = z.object({
   name: z.string().check(z.minLength(1), z.maxLength(120)),
@@ -42,6 +51,7 @@ export const houseSchema = z.object({
   /** The installer's estimate for each month, January first, in Wh; null when there is none. */
   expectedMonthlyWh: z.nullable(z.array(whSchema).check(z.length(12))),
   meters: z.array(meterSchema),
+  aggregation: z._default(aggregation, 'none'),
 });
 export type HouseFacts = z.infer<typeof houseSchema>;
 

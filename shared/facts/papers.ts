@@ -69,12 +69,34 @@ export const printedBank = z.object({
   unit: z.enum(['kWh', 'USD']),
   open: z.nullable(decimalText),
   close: z.nullable(decimalText),
+  /** What went from this bank to other service points in the cycle, in its unit; null when nothing is printed of it. */
+  sentOut: z._default(z.nullable(decimalText), null),
+  /** What it took off the other service points' bills, as printed there; null when the owner has not said. */
+  sentValueCents: z._default(z.nullable(centsSchema), null),
   row: z.nullable(z.int()),
 });
 export type PrintedBank = z.infer<typeof printedBank>;
 
-/** A statement, as printed. A correction is a new revision of the same statement; the old one stays. */
-export const statementSchema = z.object({
+/**
+ * Budget (levelized) billing: the utility asks for a fixed sum and keeps the difference to the real charges in a balance. The statement's lines
+ * stay the real charges; the amount due holds the instalment in place of those for electricity.
+ */
+export const printedBudget = z.object({
+  instalmentCents: centsSchema,
+  /** The running deferred balance as printed; positive: the house owes it. */
+  balanceCents: z.nullable(centsSchema),
+  /** The yearly settlement of that balance where this bill holds it; positive: charged. */
+  settledCents: z.nullable(centsSchema),
+});
+export type PrintedBudget = z.infer<typeof printedBudget>;
+
+/** The amount due of a bill on a budget plan does not say what the electricity cost: only its lines do. */
+export const budgetNeedsLines = z.refine<{ budget: PrintedBudget | null; lines: PrintedLine[] }>(
+  ({ budget, lines }) => budget === null || lines.some((line) => line.kind !== 'otherService'),
+  { error: 'With a budget amount, add the real charges as lines: the amount due does not say them.', path: ['lines'] },
+);
+
+const statementFields = z.object({
   id: z.string(),
   /** 1 for the first; the highest revision is the one in force. */
   revision: z.int().check(z.minimum(1)),
@@ -93,12 +115,17 @@ export const statementSchema = z.object({
   previousBalanceCents: z.nullable(centsSchema),
   paymentsCents: z.nullable(centsSchema),
   amountDueCents: centsSchema,
+  /** Null where the bill is not on a budget plan. */
+  budget: z._default(z.nullable(printedBudget), null),
   source: paperSource,
   /** Why this revision was made; null for the first. */
   reason: z.nullable(z.string()),
   enteredBy: z.string(),
   enteredAt: z.string(),
 });
+
+/** A statement, as printed. A correction is a new revision of the same statement; the old one stays. */
+export const statementSchema = statementFields.check(budgetNeedsLines);
 export type Statement = z.infer<typeof statementSchema>;
 
 /** `production`: the utility's or programme's production meter. `monitor`: the inverter's own monitoring. */

@@ -9,7 +9,7 @@ const NOT_CURRENT =
  * Whether a printed line is a current charge or credit for electricity: in the amount due, and no previous balance, payment, other service,
  * late fee, deposit or instalment.
  */
-export function isElectric(line: PrintedLine): boolean {
+export function isElectric(line: Pick<PrintedLine, 'component' | 'kind' | 'label' | 'inDue'>): boolean {
   if (!line.inDue || line.kind === 'previousBalance' || line.kind === 'payment' || line.kind === 'otherService')
     return false;
   return line.component !== null || !NOT_CURRENT.test(line.label);
@@ -22,9 +22,10 @@ export function isIncentiveInBill(line: PrintedLine, incentive: IncentiveFacts |
 
 /**
  * Whether a line is carried into our side as billed: what no meter and no rate plan can say (other services, the account's balance and
- * payments, and adjustments the plan does not know).
+ * payments, late fees and deposits whatever their kind, and adjustments the plan does not know).
  */
 export function isCarried(line: PrintedLine, component: string | null): boolean {
   if (component !== null) return false;
+  if (line.inDue && !isElectric(line)) return true;
   return ['otherService', 'previousBalance', 'payment', 'adjustment'].includes(line.kind);
 }

@@ -70,6 +70,8 @@ export function builtStatements(built: readonly BuiltCycle[], exportTo: 'bill' |
                 unit: 'USD',
                 open: dollarsText(cents(open)),
                 close: dollarsText(cents(bank)),
+                sentOut: null,
+                sentValueCents: null,
                 row: null,
               },
             ]
@@ -77,6 +79,7 @@ export function builtStatements(built: readonly BuiltCycle[], exportTo: 'bill' |
       previousBalanceCents: at === 0 ? null : cents(lastDue),
       paymentsCents: at === 0 ? null : cents(-lastDue),
       amountDueCents: cents(due),
+      budget: null,
       source: { kind: 'typed', by: 'Priya', on: addDays(cycle.to, 5) },
       reason: null,
       enteredBy: 'Priya',

@@ -1,7 +1,7 @@
 import { bodyOfStatement } from '#server/services/statements-in-force.ts';
 import type { StatementBody } from '#shared/api/cycles.ts';
 import type { IntervalDay, Statement } from '#shared/facts/papers.ts';
-import { dollarsText } from '#shared/units/cents.ts';
+import { type Cents, dollarsText } from '#shared/units/cents.ts';
 
 const ITEMS: Record<string, string> = {
   import: 'import',
@@ -78,6 +78,8 @@ function rowsOf(body: StatementBody): Row[] {
         item: bank.bank,
         previous: bank.open ?? '',
         current: bank.close ?? '',
+        quantity: bank.sentOut ?? '',
+        amount: bank.sentValueCents === null ? '' : dollarsText(bank.sentValueCents),
         unit: bank.unit,
       }),
     ),
@@ -87,8 +89,20 @@ function rowsOf(body: StatementBody): Row[] {
     ...(body.paymentsCents === null
       ? []
       : [{ ...dates, record: 'balance', item: 'payments', amount: dollarsText(body.paymentsCents) }]),
+    ...budgetRows(body).map(
+      ([item, amountCents]): Row => ({ ...dates, record: 'balance', item, amount: dollarsText(amountCents) }),
+    ),
     { ...dates, record: 'balance', item: 'amount due', amount: dollarsText(body.amountDueCents) },
   ];
+}
+
+function budgetRows({ budget }: StatementBody): [string, Cents][] {
+  const rows: [string, Cents | null][] = [
+    ['budget amount', budget?.instalmentCents ?? null],
+    ['budget balance', budget?.balanceCents ?? null],
+    ['budget settlement', budget?.settledCents ?? null],
+  ];
+  return rows.flatMap(([item, amount]) => (amount === null ? [] : [[item, amount] as [string, Cents]]));
 }
 
 /** Statements as a file in the documented layout. */

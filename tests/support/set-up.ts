@@ -14,9 +14,9 @@ import { must, type TestHousehold, type TestServer } from './test-server.ts';
 
 /** Saves every step of the set-up from a household's facts, through the services. */
 export function setUpFrom({ deps }: TestServer, { actor }: TestHousehold, facts: HouseholdFacts): void {
-  const { arrays, inverterAcWatts, expectedMonthlyWh, meters, ...house } = facts.house;
+  const { arrays, inverterAcWatts, expectedMonthlyWh, meters, aggregation, ...house } = facts.house;
   must(saveHouse(deps, actor, house));
-  must(saveRoof(deps, actor, { arrays, inverterAcWatts, expectedMonthlyWh, meters }));
+  must(saveRoof(deps, actor, { arrays, inverterAcWatts, expectedMonthlyWh, meters, aggregation }));
   must(savePlans(deps, actor, { plans: facts.plans, opening: facts.opening }));
   must(saveBefore(deps, actor, { usageBefore: facts.usageBefore }));
   if (facts.loan !== null) {

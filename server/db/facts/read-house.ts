@@ -32,6 +32,7 @@ export function readMeters(db: Reader, householdId: string): MeterFacts[] {
       channels: channelsText.parse(JSON.parse(row.channels)),
       dials: row.dials,
       multiplier: row.multiplier,
+      servicePoint: row.servicePoint,
     }));
 }
 
@@ -61,6 +62,7 @@ export function readHouse(db: Reader, row: HouseholdRow): HouseFacts {
     inverterAcWatts: row.inverterAcWatts,
     expectedMonthlyWh: row.expectedMonthlyWh === null ? null : expectedText.parse(JSON.parse(row.expectedMonthlyWh)),
     meters: readMeters(db, row.id),
+    aggregation: row.aggregation,
   };
 }
 

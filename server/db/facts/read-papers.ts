@@ -5,6 +5,7 @@ import {
   type IntervalDay,
   type PaperSource,
   type PrintedBank,
+  type PrintedBudget,
   type PrintedLine,
   printedLine,
   type RegisterRead,
@@ -81,8 +82,14 @@ function lineOf(row: typeof statementLines.$inferSelect): PrintedLine {
   return { component, kind, label, quantity, unit, rate, amountCents, inDue, row: row.row };
 }
 
-function bankOf({ bank, unit, open, close, row }: typeof statementBanks.$inferSelect): PrintedBank {
-  return { bank, unit, open, close, row };
+function bankOf(printed: typeof statementBanks.$inferSelect): PrintedBank {
+  const { bank, unit, open, close, sentOut, sentValueCents, row } = printed;
+  return { bank, unit, open, close, sentOut, sentValueCents, row };
+}
+
+function budgetOf({ budgetCents, budgetBalanceCents, budgetSettledCents }: StatementRow): PrintedBudget | null {
+  if (budgetCents === null) return null;
+  return { instalmentCents: budgetCents, balanceCents: budgetBalanceCents, settledCents: budgetSettledCents };
 }
 
 /** Every revision of every statement, by the day it ends on, then by revision. */
@@ -139,6 +146,7 @@ export function readStatements(db: Reader, householdId: string): Statement[] {
       previousBalanceCents: row.previousBalanceCents,
       paymentsCents: row.paymentsCents,
       amountDueCents: row.amountDueCents,
+      budget: budgetOf(row),
       source: sourceOf(row),
       reason: row.reason,
       enteredBy: row.enteredBy,

@@ -24,7 +24,8 @@ export function insertHousehold(
       opening: JSON.stringify(row.opening),
     })
     .run();
-  replaceRoof(db, row.id, { arrays, meters: meterList, inverterAcWatts: house.inverterAcWatts, expectedMonthlyWh });
+  const { inverterAcWatts, aggregation } = house;
+  replaceRoof(db, row.id, { arrays, meters: meterList, inverterAcWatts, expectedMonthlyWh, aggregation });
 }
 
 export function updateHouse(db: Reader, householdId: string, fields: HouseFields): void {
@@ -34,11 +35,12 @@ export function updateHouse(db: Reader, householdId: string, fields: HouseFields
 export function replaceRoof(
   db: Reader,
   householdId: string,
-  roof: Pick<HouseFacts, 'arrays' | 'meters' | 'inverterAcWatts' | 'expectedMonthlyWh'>,
+  roof: Pick<HouseFacts, 'arrays' | 'meters' | 'inverterAcWatts' | 'expectedMonthlyWh' | 'aggregation'>,
 ): void {
   db.update(households)
     .set({
       inverterAcWatts: roof.inverterAcWatts,
+      aggregation: roof.aggregation,
       expectedMonthlyWh: roof.expectedMonthlyWh === null ? null : JSON.stringify(roof.expectedMonthlyWh),
     })
     .where(eq(households.id, householdId))

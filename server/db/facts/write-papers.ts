@@ -53,7 +53,7 @@ export function deleteHeldDocument(db: Reader, householdId: string, id: string):
 }
 
 export function insertStatement(db: Reader, householdId: string, statement: Statement): void {
-  const { id, revision, source, from, to, reads, lines, banks, ...rest } = statement;
+  const { id, revision, source, from, to, reads, lines, banks, budget, ...rest } = statement;
   const where =
     source.kind === 'file'
       ? {
@@ -64,8 +64,16 @@ export function insertStatement(db: Reader, householdId: string, statement: Stat
           lastRow: source.lastRow,
         }
       : { sourceKind: source.kind, typedBy: source.by, typedOn: source.on };
+  const onBudget =
+    budget === null
+      ? {}
+      : {
+          budgetCents: budget.instalmentCents,
+          budgetBalanceCents: budget.balanceCents,
+          budgetSettledCents: budget.settledCents,
+        };
   db.insert(statements)
-    .values({ householdId, id, revision, fromDay: from, toDay: to, ...rest, ...where })
+    .values({ householdId, id, revision, fromDay: from, toDay: to, ...rest, ...onBudget, ...where })
     .run();
   const key = { householdId, statementId: id, revision };
   for (const [ordinal, { from: fromDay, to: toDay, ...read }] of reads.entries()) {

@@ -21,6 +21,9 @@ export const households = sqliteTable(
     inverterAcWatts: integer('inverter_ac_watts'),
     /** Twelve Wh, January first, as JSON; null when there is no estimate. */
     expectedMonthlyWh: text('expected_monthly_wh'),
+    aggregation: text('aggregation', { enum: ['none', 'netTogether', 'share'] })
+      .notNull()
+      .default('none'),
     /** What the utility's books held before the first cycle, as validated JSON. */
     opening: text('opening').notNull(),
   },
@@ -72,6 +75,7 @@ export const meters = sqliteTable(
     channels: text('channels').notNull(),
     dials: integer('dials').notNull(),
     multiplier: text('multiplier').notNull(),
+    servicePoint: text('service_point'),
   },
   (table) => [
     primaryKey({ columns: [table.householdId, table.id] }),

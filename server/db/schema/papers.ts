@@ -64,6 +64,10 @@ export const statements = sqliteTable(
     previousBalanceCents: centsColumn('previous_balance_cents'),
     paymentsCents: centsColumn('payments_cents'),
     amountDueCents: centsColumn('amount_due_cents').notNull(),
+    /** Budget billing: all null where the bill is not on a budget plan, else at least the instalment. */
+    budgetCents: centsColumn('budget_cents'),
+    budgetBalanceCents: centsColumn('budget_balance_cents'),
+    budgetSettledCents: centsColumn('budget_settled_cents'),
     sourceKind: text('source_kind', { enum: ['file', 'typed'] }).notNull(),
     documentId: text('document_id'),
     fileName: text('file_name'),
@@ -173,6 +177,8 @@ export const statementBanks = sqliteTable(
     unit: text('unit', { enum: ['kWh', 'USD'] }).notNull(),
     open: text('open'),
     close: text('close'),
+    sentOut: text('sent_out'),
+    sentValueCents: centsColumn('sent_value_cents'),
     row: integer('row'),
   },
   (table) => [

@@ -1,4 +1,4 @@
-import type { PrintedBank, PrintedLine, RegisterRead, Statement } from '#shared/facts/papers.ts';
+import type { PrintedBank, PrintedBudget, PrintedLine, RegisterRead, Statement } from '#shared/facts/papers.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import type { Day } from '#shared/units/day.ts';
 import type { Wh } from '#shared/units/energy.ts';
@@ -33,6 +33,9 @@ export function statementChanges(before: Statement, after: Statement): string[] 
   });
   compare('Previous balance', moneyWords(before.previousBalanceCents), moneyWords(after.previousBalanceCents));
   compare('Payments', moneyWords(before.paymentsCents), moneyWords(after.paymentsCents));
+  compare('Budget amount', ...budgetWords(before, after, 'instalmentCents'));
+  compare('Budget balance', ...budgetWords(before, after, 'balanceCents'));
+  compare('Budget settlement', ...budgetWords(before, after, 'settledCents'));
   compare('Due', money(before.amountDueCents), money(after.amountDueCents));
   return changes;
 }
@@ -72,7 +75,13 @@ function lineWords(line: PrintedLine | undefined): string {
 function bankWords(bank: PrintedBank | undefined): string {
   if (!bank) return NOTHING;
   const side = (value: string | null) => (value === null ? NOTHING : `${decimal(value)} ${bank.unit}`);
-  return `${side(bank.open)} to ${side(bank.close)}`;
+  const sent = bank.sentOut === null ? '' : `, ${side(bank.sentOut)} sent to other service points`;
+  const saved = bank.sentValueCents === null ? '' : `, ${money(bank.sentValueCents)} saved there`;
+  return `${side(bank.open)} to ${side(bank.close)}${sent}${saved}`;
+}
+
+function budgetWords(before: Statement, after: Statement, name: keyof PrintedBudget): [string, string] {
+  return [moneyWords(before.budget?.[name] ?? null), moneyWords(after.budget?.[name] ?? null)];
 }
 
 function dayWords(day: Day | null): string {

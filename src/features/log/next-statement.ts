@@ -35,6 +35,8 @@ export function emptyStatementForm(stated: SetupView | null, last: StatementBody
             unit: bank.unit,
             open: bank.close ?? '',
             close: '',
+            sentOut: '',
+            sentValue: '',
             row: null,
           }))
         : (plan?.banks ?? []).map((bank) => ({
@@ -43,11 +45,16 @@ export function emptyStatementForm(stated: SetupView | null, last: StatementBody
             unit: bank.unit,
             open: '',
             close: '',
+            sentOut: '',
+            sentValue: '',
             row: null,
           })),
     previousBalance: textOf.cents(last?.amountDueCents ?? null),
     payments: '',
     due: '',
+    budget: textOf.cents(last?.budget?.instalmentCents ?? null),
+    budgetBalance: '',
+    budgetSettled: '',
     reason: '',
   };
 }

@@ -1,5 +1,5 @@
 import * as z from 'zod/mini';
-import type { MeterFacts } from '#shared/facts/house.ts';
+import type { Aggregation, MeterFacts } from '#shared/facts/house.ts';
 import { decimal } from '#src/lib/format.ts';
 import { plainDecimal, typed, typedWhole } from '#src/lib/typed-values.ts';
 
@@ -13,6 +13,14 @@ export const METER_KINDS = {
 } as const satisfies Record<string, { words: string; channels: readonly MeterFacts['channels'][number][] }>;
 export type MeterKind = keyof typeof METER_KINDS;
 export const KINDS = Object.keys(METER_KINDS) as MeterKind[];
+
+/** What the utility does with a meter of another service point, as people say it. */
+export const AGGREGATION_WORDS = {
+  none: 'bills it by itself',
+  netTogether: 'adds its kWh to the house’s before netting',
+  share: 'sends it a share of the house’s surplus',
+} as const satisfies Record<Aggregation, string>;
+export const AGGREGATIONS = Object.keys(AGGREGATION_WORDS) as Aggregation[];
 
 export const roofForm = z
   .object({
@@ -39,8 +47,10 @@ export const roofForm = z
         kind: z.enum(KINDS),
         dials: typedWhole(3, 9),
         multiplier: typed.rate,
+        servicePoint: z.string().check(z.maxLength(80)),
       }),
     ),
+    aggregation: z.enum(AGGREGATIONS),
   })
   .check(
     z.refine((form) => [0, 12].includes(form.months.filter((month) => month.kwh.trim() !== '').length), {

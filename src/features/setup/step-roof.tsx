@@ -6,9 +6,10 @@ import { MONTH_NAMES } from '#shared/units/words.ts';
 import { kwh } from '#src/lib/format.ts';
 import { newId } from '#src/lib/new-id.ts';
 import { fieldValue, textOf, typed } from '#src/lib/typed-values.ts';
-import { Field, SelectField } from '#src/ui/field.tsx';
+import { Field } from '#src/ui/field.tsx';
 import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
-import { KINDS, kilowatts, kindOf, METER_KINDS, type RoofForm, roofForm, wattsOf } from './roof-form.ts';
+import { MetersPart } from './meters-part.tsx';
+import { kilowatts, kindOf, METER_KINDS, type RoofForm, roofForm, wattsOf } from './roof-form.ts';
 import { StepForm } from './step-form.tsx';
 
 const MONTHS = MONTH_NAMES.map((name) => name.slice(0, 3));
@@ -40,11 +41,12 @@ export function RoofStep({ view }: { view: SetupView }) {
         kind: kindOf(meter),
         dials: String(meter.dials),
         multiplier: meter.multiplier,
+        servicePoint: meter.servicePoint ?? '',
       })),
+      aggregation: house.aggregation,
     },
   });
   const arrays = useFieldArray({ control: form.control, name: 'arrays' });
-  const meters = useFieldArray({ control: form.control, name: 'meters' });
   const { errors } = form.formState;
   return (
     <StepForm
@@ -69,7 +71,9 @@ export function RoofStep({ view }: { view: SetupView }) {
           channels: [...METER_KINDS[meter.kind].channels],
           dials: fieldValue.whole(meter.dials),
           multiplier: fieldValue.decimal(meter.multiplier),
+          servicePoint: meter.servicePoint.trim() || null,
         })),
+        aggregation: values.meters.some((meter) => meter.servicePoint.trim() !== '') ? values.aggregation : 'none',
       })}
     >
       {arrays.fields.map((row, index) => {
@@ -140,56 +144,7 @@ export function RoofStep({ view }: { view: SetupView }) {
         </div>
         <YearTotal control={form.control} />
       </Part>
-      <Part
-        title="Meters, if you like"
-        hint="With dials and multiplier a register that turns over or is exchanged still adds up."
-      >
-        {meters.fields.map((row, index) => {
-          const at = errors.meters?.[index];
-          return (
-            <FormRow key={row.id} title={`Meter ${index + 1}`} onRemove={() => meters.remove(index)}>
-              <Columns>
-                <Field
-                  label="Number, as statements print it"
-                  error={at?.number?.message}
-                  {...form.register(`meters.${index}.number`)}
-                />
-                <Field
-                  label="Name, if you like"
-                  error={at?.label?.message}
-                  {...form.register(`meters.${index}.label`)}
-                />
-                <SelectField
-                  label="What it counts"
-                  error={at?.kind?.message}
-                  {...form.register(`meters.${index}.kind`)}
-                >
-                  {KINDS.map((kind) => (
-                    <option key={kind} value={kind}>
-                      {METER_KINDS[kind].words}
-                    </option>
-                  ))}
-                </SelectField>
-                <Field
-                  label="Dials or digits"
-                  inputMode="numeric"
-                  error={at?.dials?.message}
-                  {...form.register(`meters.${index}.dials`)}
-                />
-                <Field
-                  label="Multiplier"
-                  inputMode="decimal"
-                  error={at?.multiplier?.message}
-                  {...form.register(`meters.${index}.multiplier`)}
-                />
-              </Columns>
-            </FormRow>
-          );
-        })}
-        <AddRow onClick={() => meters.append({ number: '', label: '', kind: 'net', dials: '5', multiplier: '1' })}>
-          Add a meter
-        </AddRow>
-      </Part>
+      <MetersPart form={form} />
     </StepForm>
   );
 }

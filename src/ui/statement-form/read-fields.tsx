@@ -2,6 +2,7 @@ import { useFieldArray } from 'react-hook-form';
 import { Button } from '#src/ui/button.tsx';
 import { Field, SelectField } from '#src/ui/field.tsx';
 import { type Form, TakeOut, Three } from './fields-row.tsx';
+import { MeterExchange } from './meter-exchange.tsx';
 import { emptyRead } from './statement-values.ts';
 
 /** The register reads of a statement, and the kWh it prints. */
@@ -24,6 +25,7 @@ export function ReadFields({ form }: { form: Form }) {
           Add a read
         </Button>
       </p>
+      <MeterExchange form={form} onAdd={(next) => reads.replace(next)} />
       <Three>
         <Field label="Bought, as printed" {...kwh} error={errors.importKwh?.message} {...form.register('importKwh')} />
         <Field

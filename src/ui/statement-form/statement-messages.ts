@@ -30,9 +30,17 @@ const FIELD_WORDS: Record<string, string> = {
   previousBalance: 'Previous balance',
   payments: 'Payments',
   due: 'Amount due',
+  budget: 'Budget amount',
+  budgetBalance: 'Budget balance',
+  budgetSettled: 'Settlement',
   reason: 'Reason',
 };
-const ROW_WORDS: Record<string, string> = { open: 'brought in', close: 'carried on' };
+const ROW_WORDS: Record<string, string> = {
+  open: 'brought in',
+  close: 'carried on',
+  sentOut: 'sent on',
+  sentValue: 'what it saved',
+};
 
 function placeOf(path: string[]): string {
   const [head = '', index, field = ''] = path;

@@ -36,11 +36,16 @@ export function formOfStatement(body: StatementBody): StatementFormValues {
       unit: bank.unit,
       open: textOf.text(bank.open),
       close: textOf.text(bank.close),
+      sentOut: textOf.text(bank.sentOut),
+      sentValue: textOf.cents(bank.sentValueCents),
       row: bank.row,
     })),
     previousBalance: textOf.cents(body.previousBalanceCents),
     payments: textOf.cents(body.paymentsCents),
     due: textOf.cents(body.amountDueCents),
+    budget: textOf.cents(body.budget?.instalmentCents ?? null),
+    budgetBalance: textOf.cents(body.budget?.balanceCents ?? null),
+    budgetSettled: textOf.cents(body.budget?.settledCents ?? null),
     reason: '',
   };
 }
@@ -97,10 +102,23 @@ export function statementOfForm(form: StatementFormValues): StatementBody {
       unit: bank.unit,
       open: fieldValue.decimalOrNull(bank.open),
       close: fieldValue.decimalOrNull(bank.close),
+      sentOut: fieldValue.decimalOrNull(bank.sentOut),
+      sentValueCents: fieldValue.centsOrNull(bank.sentValue),
       row: bank.row,
     })),
     previousBalanceCents: fieldValue.centsOrNull(form.previousBalance),
     paymentsCents: fieldValue.centsOrNull(form.payments),
     amountDueCents: fieldValue.cents(form.due),
+    budget: budgetOfForm(form),
+  };
+}
+
+function budgetOfForm(form: StatementFormValues): StatementBody['budget'] {
+  const instalmentCents = fieldValue.centsOrNull(form.budget);
+  if (instalmentCents === null) return null;
+  return {
+    instalmentCents,
+    balanceCents: fieldValue.centsOrNull(form.budgetBalance),
+    settledCents: fieldValue.centsOrNull(form.budgetSettled),
   };
 }

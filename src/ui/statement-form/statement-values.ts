@@ -57,6 +57,8 @@ const bankRow = z.object({
   unit: z.enum(['kWh', 'USD']),
   open: typed.numberOrNone,
   close: typed.numberOrNone,
+  sentOut: typed.numberOrNone,
+  sentValue: typed.moneyOrNone,
   row,
 });
 
@@ -75,6 +77,10 @@ const fields = {
   previousBalance: typed.moneyOrNone,
   payments: typed.moneyOrNone,
   due: typed.money,
+  /** Empty where the bill is not on a budget plan. */
+  budget: typed.moneyOrNone,
+  budgetBalance: typed.moneyOrNone,
+  budgetSettled: typed.moneyOrNone,
   /** Why a posted statement is corrected; empty in any other. */
   reason: text,
 };
@@ -83,8 +89,18 @@ const datesInOrder = z.refine<{ from: string; to: string }>((form) => form.from 
   path: ['to'],
 });
 
+type BudgetTexts = { budget: string; budgetBalance: string; budgetSettled: string };
+const budgetNamed = z.refine<BudgetTexts>(
+  (form) => form.budget.trim() !== '' || (form.budgetBalance.trim() === '' && form.budgetSettled.trim() === ''),
+  { error: 'Write the budget amount of this bill too.', path: ['budget'] },
+);
+const budgetHasLines = z.refine<BudgetTexts & { lines: Pick<LineRow, 'kind' | 'label' | 'amount' | 'quantity'>[] }>(
+  (form) => form.budget.trim() === '' || form.lines.some((line) => !isUntouched(line) && line.kind !== 'otherService'),
+  { error: 'Add the real charges as lines above: the amount due does not say them.', path: ['budget'] },
+);
+
 /** A statement as a person types it: every value a text. */
-export const statementForm = z.object(fields).check(datesInOrder);
+export const statementForm = z.object(fields).check(datesInOrder, budgetNamed, budgetHasLines);
 export type StatementFormValues = z.infer<typeof statementForm>;
 export type LineRow = StatementFormValues['lines'][number];
 export type ReadRow = StatementFormValues['reads'][number];
@@ -95,7 +111,7 @@ export const correctionForm = z
     ...fields,
     reason: text.check(z.trim(), z.minLength(1, { error: 'Say why, in a few words.' }), z.maxLength(500)),
   })
-  .check(datesInOrder);
+  .check(datesInOrder, budgetNamed, budgetHasLines);
 
 export const emptyLine = (): LineRow => ({
   component: null,

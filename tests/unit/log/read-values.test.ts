@@ -64,6 +64,7 @@ function statement(changes: Partial<StatementBody> = {}): StatementBody {
     previousBalanceCents: null,
     paymentsCents: null,
     amountDueCents: cents(8690),
+    budget: null,
     ...changes,
   };
 }

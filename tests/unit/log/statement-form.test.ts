@@ -71,11 +71,16 @@ const BODY: StatementBody = {
       row: 6,
     },
   ],
-  banks: [{ bank: 'creditBank', unit: 'USD', open: '31.77', close: '12.00', row: 7 }],
+  banks: [
+    { bank: 'creditBank', unit: 'USD', open: '31.77', close: '12.00', sentOut: null, sentValueCents: null, row: 7 },
+  ],
   previousBalanceCents: cents(4000),
   paymentsCents: cents(-4000),
   amountDueCents: cents(8395),
+  budget: null,
 };
+
+const NO_BUDGET = { budget: '', budgetSettled: '' };
 
 describe('a statement as a form', () => {
   it('comes back from the form as it went in, a meter exchange and the file’s rows with it', () => {
@@ -150,7 +155,13 @@ describe('a statement as a form', () => {
           inDue,
         }));
         const expected = typed.reduce((sum, { amount, inDue }) => sum + (inDue ? amount : 0), balance);
-        const sum = runningSum({ lines, previousBalance: dollarsText(balance as Cents), payments: '', due: '1.00' });
+        const sum = runningSum({
+          ...NO_BUDGET,
+          lines,
+          previousBalance: dollarsText(balance as Cents),
+          payments: '',
+          due: '1.00',
+        });
         expect(sum).toEqual({ linesCents: expected === 0 ? 0 : expected, dueCents: 100, unread: 0 });
       }),
     );
@@ -158,6 +169,7 @@ describe('a statement as a form', () => {
 
   it('does not pass a line it cannot read off as nothing', () => {
     const sum = runningSum({
+      ...NO_BUDGET,
       lines: [{ ...emptyLine(), label: 'x', amount: '12.x' }],
       previousBalance: '',
       payments: '',

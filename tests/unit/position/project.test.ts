@@ -71,6 +71,7 @@ function factsOf(changes: Partial<ProjectionFacts> = {}, plan: RatePlanInput = F
       inverterAcWatts: null,
       expectedMonthlyWh: null,
       meters: [],
+      aggregation: 'none',
     },
     plans: [{ from: day('2020-01-01'), plan: ratePlanSchema.parse(plan), withoutRoof: null }],
     loan: null,
