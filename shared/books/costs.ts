@@ -38,14 +38,14 @@ export function costEntries(
 }
 
 /** Money of the costs and upkeep books on a day to come. */
-export type CostFlow = { on: Day; book: BookId; cents: Cents };
+export type CostFlow = { on: Day; book: BookId; amountCents: Cents };
 
 /** What costs and incomes move on the days of `[from, to)`, by the same rule as their entries: for the projection, from the day after today. */
 export function costFlows(costs: readonly CostFacts[], from: Day, to: Day): CostFlow[] {
   return costs.flatMap((cost) =>
     costDays(cost, to)
       .filter((on) => on >= from && on < to)
-      .map((on) => ({ on, book: bookOf(cost.kind), cents: signedAmount(cost) })),
+      .map((on) => ({ on, book: bookOf(cost.kind), amountCents: signedAmount(cost) })),
   );
 }
 

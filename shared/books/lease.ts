@@ -69,7 +69,7 @@ export function leaseMissing(lease: LeaseFacts, cycles: readonly LeaseCycle[]): 
 export function leaseFlows(lease: LeaseFacts, from: Day, to: Day): LoanFlow[] {
   if (lease.kind !== 'lease') return [];
   return leaseDays(lease, to).flatMap((on, index) =>
-    on >= from && on < to ? [{ on, book: 'loan', cents: negateCents(leasePayment(lease, index)) }] : [],
+    on >= from && on < to ? [{ on, book: 'loan', amountCents: negateCents(leasePayment(lease, index)) }] : [],
   );
 }
 

@@ -84,11 +84,11 @@ export function payoffOfLoans(
 }
 
 /** Money of the loan book on a day to come, negative where it is paid. */
-export type LoanFlow = { on: Day; book: 'loan'; cents: Cents };
+export type LoanFlow = { on: Day; book: 'loan'; amountCents: Cents };
 
 /** What the other loans pay on the days of `[from, to)`. */
 export function otherLoanFlows(others: readonly OtherLoan[], from: Day, to: Day): LoanFlow[] {
   return otherLoanEntries(others, to)
     .filter(({ date }) => date >= from && date < to)
-    .map(({ date, amountCents }) => ({ on: date, book: 'loan', cents: amountCents }));
+    .map(({ date, amountCents }) => ({ on: date, book: 'loan', amountCents }));
 }
