@@ -1,167 +1,104 @@
 import type { PrintedLine } from '../facts/papers.ts';
-import { input, ownFigure, paperSourceOf } from '../metering/source.ts';
-import { isCarried } from '../reconcile/electric-lines.ts';
-import { totalToleranceCents } from '../reconcile/tolerance.ts';
-import { type Cents, dollarsText, subtractCents, sumCents } from '../units/cents.ts';
+import { isCarried, isElectric } from '../reconcile/electric-lines.ts';
+import { type Cents, sumCents } from '../units/cents.ts';
 import type { FacingLine } from './cycle.ts';
 import type { CyclePaper } from './cycle-papers.ts';
-import { facingLine, pairUp } from './facing-pairs.ts';
+import { accountLines, budgetLines, budgetOf, electricCents } from './due-parts.ts';
+import { facingLine, type Pair, pairUp } from './facing-pairs.ts';
+import { carriedLine, type Side, totalLine } from './facing-totals.ts';
 import type { SettledCycle } from './settle-cycle.ts';
 
-/** The facing pages and what they come to. */
-export type Facing = { lines: FacingLine[]; billedDueCents: Cents; oursDueCents: Cents | null };
+/** The facing pages and what they come to. `electric` is the charges for electricity alone, as billed and as settled. */
+export type Facing = {
+  lines: FacingLine[];
+  billedDueCents: Cents;
+  oursDueCents: Cents | null;
+  electric: { billedCents: Cents; oursCents: Cents | null; lines: number };
+  /** How many lines stand on the pages, totals apart. */
+  count: number;
+};
+
+type Section = 'electric' | 'other' | 'account';
 
 /**
- * Billed lines facing ours, in the order printed; ours that are not printed follow, where they come to anything; last `Due`. What no rate plan
- * can say (the balance, payments, other services, adjustments) stands on our side as billed, so that both sides add up. In a cycle split at
- * switch-on nothing is judged: its billed lines are shares by days.
+ * Billed lines facing ours. First electricity, in the order printed; ours that are not printed follow, where they come to anything. Then other
+ * services, late fees and deposits, the balance and payments, and the budget amount, each kept apart; last `Due`. What no rate plan can say stands
+ * on our side as billed, so that both sides add up. In a cycle split at switch-on nothing is judged: its billed lines are shares by days.
  */
 export function facingLines(paper: CyclePaper, settled: SettledCycle): Facing {
-  const judged = settled.ours !== null && paper.split === null;
-  const pairs = pairUp(paper.lines, settled);
-  const lines: FacingLine[] = [];
-  const carried: Cents[] = [];
-  pairs.forEach((pair, at) => {
+  const known = settled.ours !== null;
+  const judged = known && paper.split === null;
+  const shown: Record<Section, FacingLine[]> = { electric: [], other: [], account: [] };
+  const taken: Record<Section, Cents[]> = { electric: [], other: [], account: [] };
+  const carry = (section: Section, line: PrintedLine, key: string) => {
+    shown[section].push(carriedLine(paper, line, key, known));
+    if (line.inDue) taken[section].push(line.amountCents);
+  };
+  pairUp(paper.lines, settled).forEach((pair, at) => {
     const [first] = pair.billed;
     if (first && isCarried(first, pair.component)) {
-      lines.push(carriedLine(paper, first, `carried:${at}`, settled.ours !== null));
-      if (first.inDue) carried.push(first.amountCents);
+      carry(sectionOf(pair, first), first, `carried:${at}`);
       return;
     }
     const line = facingLine(pair, at, judged);
-    if (line) lines.push(line);
+    if (line) shown.electric.push(line);
   });
-  for (const account of openAccountLines(paper)) {
-    lines.push(carriedLine(paper, account, `carried:${account.kind}`, settled.ours !== null));
-    carried.push(account.amountCents);
-  }
-  const due = dueLine(paper, settled, carried, judged, lines.length);
-  lines.push(due.line);
-  return { lines, billedDueCents: due.billedDueCents, oursDueCents: due.oursDueCents };
-}
+  for (const line of openAccountLines(paper)) carry('account', line, `carried:${line.kind}`);
 
-/** The previous balance and payments printed in the statement's head, where they are no lines of their own. */
-export function accountLines(paper: CyclePaper): PrintedLine[] {
-  if (paper.split !== null) return [];
-  const { statement } = paper;
-  const made: PrintedLine[] = [];
-  const add = (kind: 'previousBalance' | 'payment', label: string, amountCents: Cents | null) => {
-    if (amountCents === null || amountCents === 0 || paper.lines.some((line) => line.kind === kind)) return;
-    made.push({
-      component: null,
-      kind,
-      label,
-      quantity: null,
-      unit: null,
-      rate: null,
-      amountCents,
-      inDue: true,
-      row: null,
-    });
+  const settledDue = settled.ours?.settlement.lines.filter((line) => line.inDue) ?? [];
+  const electricOurs: Side = {
+    settled: settledDue.map(({ label, amountCents }) => ({ label, amountCents })),
+    carried: taken.electric,
   };
-  add('previousBalance', 'Previous balance', statement.previousBalanceCents);
-  add('payment', 'Payments', statement.paymentsCents);
-  return made;
-}
+  const onBudget = budgetOf(paper) !== null;
+  const apart = budgetLines(paper);
+  const withoutElectric = [...taken.other, ...taken.account, ...apart.map((line) => line.amountCents)];
+  const dueOurs: Side = onBudget
+    ? { settled: [], carried: withoutElectric }
+    : { settled: electricOurs.settled, carried: [...taken.electric, ...withoutElectric] };
 
-/** The same, left out where the payments have settled the balance: then they change nothing on this page. */
-function openAccountLines(paper: CyclePaper): PrintedLine[] {
-  const made = accountLines(paper);
-  return sumCents(made.map((line) => line.amountCents)) === 0 ? [] : made;
-}
-
-function carriedLine(paper: CyclePaper, line: PrintedLine, key: string, withOurs: boolean): FacingLine {
-  const side = { quantity: line.quantity, rate: line.rate, amountCents: line.amountCents, inDue: line.inDue };
-  return {
-    key,
-    label: line.label,
-    unit: line.unit,
-    billed: side,
-    ours: withOurs
-      ? {
-          ...side,
-          working: {
-            words: 'As billed: no meter or rate plan says it',
-            formula: 'billed',
-            inputs: [
-              input(
-                'billed',
-                line.label,
-                dollarsText(line.amountCents),
-                'USD',
-                paperSourceOf(paper.statement.source, line.row),
-              ),
-            ],
-            unit: 'USD',
-            basis: 'billed',
-          },
-        }
-      : null,
-    differenceCents: withOurs ? subtractCents(line.amountCents, line.amountCents) : null,
-    verdict: 'nothing-to-compare',
-  };
-}
-
-function dueLine(
-  paper: CyclePaper,
-  settled: SettledCycle,
-  carried: readonly Cents[],
-  judged: boolean,
-  count: number,
-): { line: FacingLine; billedDueCents: Cents; oursDueCents: Cents | null } {
+  const billed = electricCents(paper.lines);
   const billedDueCents =
     paper.split === null
       ? paper.statement.amountDueCents
       : sumCents(paper.lines.filter((line) => line.inDue).map((line) => line.amountCents));
-  const due = settled.ours?.settlement.lines.filter((line) => line.inDue) ?? [];
-  const oursDueCents = settled.ours === null ? null : sumCents([...due.map((line) => line.amountCents), ...carried]);
-  const differenceCents = oursDueCents === null ? null : subtractCents(billedDueCents, oursDueCents);
-  const within = differenceCents !== null && Math.abs(differenceCents) <= totalToleranceCents(count);
+  const total = (key: string, label: string, billedCents: Cents, ours: Side, lines: number) =>
+    totalLine(paper, { key, label, billedCents, ours: known ? ours : null, judged, lines });
+  const electric = total('subtotal:electric', 'Electric charges', billed, electricOurs, shown.electric.length);
+  const others = { settled: [], carried: taken.other };
+  const other = total('subtotal:other', 'Other services', sumCents(taken.other), others, shown.other.length);
+  const parts = shown.electric.length + shown.other.length + shown.account.length + apart.length;
+  const due = total('due', 'Due', billedDueCents, dueOurs, parts);
+  const instalments = apart.map((line, at) => carriedLine(paper, line, `carried:budget${at}`, known));
   return {
+    lines: [
+      ...shown.electric,
+      ...(onBudget || shown.other.length > 0 ? [electric] : []),
+      ...instalments,
+      ...shown.other,
+      ...(shown.other.length > 1 ? [{ ...other, verdict: 'nothing-to-compare' as const }] : []),
+      ...shown.account,
+      due,
+    ],
     billedDueCents,
-    oursDueCents,
-    line: {
-      key: 'due',
-      label: 'Due',
-      unit: null,
-      billed: { quantity: null, rate: null, amountCents: billedDueCents, inDue: true },
-      ours:
-        oursDueCents === null
-          ? null
-          : {
-              quantity: null,
-              rate: null,
-              amountCents: oursDueCents,
-              inDue: true,
-              working: {
-                words: carried.length > 0 ? 'Our lines, and what is taken as billed, added' : 'Our lines added',
-                formula: carried.length > 0 ? 'sum(lines) + sum(carried)' : 'sum(lines)',
-                inputs: [
-                  input(
-                    'lines',
-                    due.map((line) => line.label).join(', '),
-                    due.map((line) => dollarsText(line.amountCents)),
-                    'USD',
-                    ownFigure('the settled lines'),
-                  ),
-                  ...(carried.length > 0
-                    ? [
-                        input(
-                          'carried',
-                          'Taken as billed',
-                          carried.map(dollarsText),
-                          'USD',
-                          paperSourceOf(paper.statement.source, null),
-                        ),
-                      ]
-                    : []),
-                ],
-                unit: 'USD',
-                basis: 'computed',
-              },
-            },
-      differenceCents,
-      verdict: !judged || differenceCents === null ? 'nothing-to-compare' : within ? 'agrees' : 'differs',
+    oursDueCents: due.ours?.amountCents ?? null,
+    electric: {
+      billedCents: billed,
+      oursCents: electric.ours?.amountCents ?? null,
+      lines: shown.electric.length,
     },
+    count: parts,
   };
+}
+
+function sectionOf(pair: Pair, line: PrintedLine): Section {
+  if (line.kind === 'previousBalance' || line.kind === 'payment') return 'account';
+  if (line.kind === 'otherService') return 'other';
+  return pair.component === null && line.inDue && !isElectric(line) ? 'other' : 'electric';
+}
+
+/** The balance and payments of the statement's head, left out where they cancel each other: then they change nothing on this page. */
+function openAccountLines(paper: CyclePaper): PrintedLine[] {
+  const made = accountLines(paper);
+  return sumCents(made.map((line) => line.amountCents)) === 0 ? [] : made;
 }

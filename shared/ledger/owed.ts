@@ -30,9 +30,9 @@ export function owedOf(cycles: readonly Cycle[]): OwedList {
 
 function rowOf(cycle: Cycle): Omit<OwedRow, 'runningCents'> | null {
   if (cycle.settlement === null || cycle.oursDueCents === null) return null;
-  // Within its tolerance a total agrees, and rounding is owed to nobody.
-  const due = cycle.checks.find((check) => check.check === 'amountDue');
-  const dueCents = due?.verdict === 'differs' ? cents(cycle.billedDueCents - cycle.oursDueCents) : ZERO_CENTS;
+  // Within its tolerance a total agrees, and rounding is owed to nobody. On a budget plan the charges and the amount due are two totals.
+  const totals = cycle.checks.filter((check) => check.check === 'amountDue' && check.verdict === 'differs');
+  const dueCents = sumCents(totals.map((check) => parseDollars(check.difference ?? '0') ?? ZERO_CENTS));
   const bank = bankShort(cycle);
   if (dueCents === 0 && bank.cents === 0 && bank.kwh === null) return null;
   const amountCents = cents(dueCents + bank.cents);

@@ -3,8 +3,10 @@ import * as z from 'zod/mini';
 export const checkId = z.enum([
   'datesChain',
   'days',
+  'daysInRange',
   'registersFollow',
   'readType',
+  'fileGaps',
   'importAgainstIntervals',
   'exportAgainstIntervals',
   'exportWithinProduction',
@@ -12,6 +14,7 @@ export const checkId = z.enum([
   'linePrice',
   'bankChain',
   'balanceChain',
+  'budgetChain',
   'linesAddUp',
   'amountDue',
 ]);

@@ -1,5 +1,5 @@
 import type { CyclePaper } from '../../ledger/cycle-papers.ts';
-import { accountLines } from '../../ledger/facing.ts';
+import { accountLines, budgetOf, electricCents } from '../../ledger/due-parts.ts';
 import { printedBankId, type SettledCycle } from '../../ledger/settle-cycle.ts';
 import type { MeteredCycle } from '../../metering/cycle-energy.ts';
 
@@ -8,6 +8,7 @@ import type { CycleUsage } from '../../settlement/settlement.ts';
 import { cents } from '../../units/cents.ts';
 import type { Wh } from '../../units/energy.ts';
 import { roundToWh } from '../../units/rate.ts';
+import { isElectric } from '../electric-lines.ts';
 import type { BilledBank, BilledCycle, BilledLine, Cause, CauseCycle } from './cause.ts';
 import { actualSplit, isEstimatedPair } from './estimated-pair.ts';
 import { findCauses } from './find-causes.ts';
@@ -66,12 +67,14 @@ function causeCycle({ paper, settled, usage }: LedgerCycle): CauseCycle | null {
 function billedOf(paper: CyclePaper, plan: RatePlan, components: readonly (string | null)[]): BilledCycle {
   const { statement } = paper;
   const lines: BilledLine[] = [];
-  let due: number = statement.amountDueCents;
-  for (const line of accountLines(paper)) due -= line.amountCents;
+  const onBudget = budgetOf(paper) !== null;
+  // On a budget plan the amount due does not hold the plan's lines; their own sum does.
+  let due: number = onBudget ? electricCents(paper.lines) : statement.amountDueCents;
+  for (const line of onBudget ? [] : accountLines(paper)) due -= line.amountCents;
   paper.lines.forEach((line, at) => {
     const component = components[at] ?? null;
     if (component !== null) lines.push({ ...line, component });
-    else if (line.inDue) due -= line.amountCents;
+    else if (onBudget ? isElectric(line) : line.inDue) due -= line.amountCents;
   });
   // A line's own kWh say more than those printed beside the registers, which may be right though the line is not.
   const beside = (channel: 'import' | 'export' | 'production', printed: Wh | null) =>

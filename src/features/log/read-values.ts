@@ -53,6 +53,7 @@ const AGREES: Record<CheckId, string> = {
   linePrice: 'adds up',
   bankChain: 'follows the last',
   balanceChain: 'carries over',
+  budgetChain: 'carries over',
   linesAddUp: 'lines add up',
   amountDue: 'agrees',
 };
