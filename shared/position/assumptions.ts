@@ -5,14 +5,14 @@ import { sayMoney } from '../ledger/say.ts';
 import { cents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import { exact } from '../units/rate.ts';
+import type { BasisFacts } from './basis.ts';
 import type { MonthBasis, MonthlyEnergy } from './monthly-energy.ts';
 import type { Projection } from './position.ts';
-import type { ProjectionFacts } from './project.ts';
 
 const OWN = 'Your own figure';
 
 /** What the projection takes for granted, each with where it comes from. */
-export function assumptionsOf(facts: ProjectionFacts, energy: MonthlyEnergy, today: Day): Projection['assumptions'] {
+export function assumptionsOf(facts: BasisFacts, energy: MonthlyEnergy, today: Day): Projection['assumptions'] {
   const { assumptions } = facts;
   const isDefault = (name: 'degradation' | 'priceRise') =>
     exact(assumptions[name]).eq(exact(DEFAULT_ASSUMPTIONS[name]));
@@ -81,7 +81,7 @@ export function assumptionsOf(facts: ProjectionFacts, energy: MonthlyEnergy, tod
   return stated;
 }
 
-function creditAssumption(credit: NonNullable<ProjectionFacts['credit']>, today: Day) {
+function creditAssumption(credit: NonNullable<BasisFacts['credit']>, today: Day) {
   const expected = creditExpected(credit, today).reduce((sum, part) => sum + part.amountCents, 0);
   const left = cents(creditStillToCome(credit, today).amountCents - expected);
   const notPlanned =

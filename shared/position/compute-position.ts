@@ -3,6 +3,7 @@ import type { Wh } from '../units/energy.ts';
 import { positionEvents } from './events.ts';
 import { marginFigures, paceFigure, settledFigures } from './figures.ts';
 import { type FoldInput, foldPosition, type PositionCycle } from './fold.ts';
+import { loansOf } from './loans.ts';
 import type { Position } from './position.ts';
 import { type ProjectionFacts, projectBase } from './project.ts';
 import { sumsByBook } from './sums.ts';
@@ -21,7 +22,7 @@ export type PositionInput = {
 /** The whole position of a household: points, figures with their workings, events and the base projection. */
 export function computePosition(input: PositionInput): Position {
   const { facts, today, entries, cycles } = input;
-  const fold: FoldInput = { entries, cycles, today, loan: facts.loan, credit: facts.credit };
+  const fold: FoldInput = { entries, cycles, today, loans: loansOf(facts), credit: facts.credit };
   const points = foldPosition(fold);
   const last = points.at(-1);
   if (last === undefined) throw new Error('a position always has a point');

@@ -1,7 +1,7 @@
 import type { Entry } from '../books/book.ts';
 import { owedFigure } from '../books/incentive.ts';
 import { stated, usdInput } from '../books/inputs.ts';
-import { loanPayoff } from '../books/loan.ts';
+import { payoffOfLoans } from '../books/other-money.ts';
 import { creditEarnedBy, stillToComeFigure } from '../books/tax-credit.ts';
 import { sayCount, sayMoney } from '../ledger/say.ts';
 import { cents, negateCents, subtractCents, ZERO_CENTS } from '../units/cents.ts';
@@ -33,11 +33,12 @@ export function settledFigures(input: FoldInput, last: PositionPoint, cashSoFar:
 }
 
 function settledPartsOf(input: FoldInput, last: PositionPoint): SettledParts {
-  const { loan, credit, entries } = input;
+  const { loans, credit, entries } = input;
+  const payoff = payoffOfLoans(loans, last.on);
   const amounts = (kept: (entry: Entry) => boolean) => entries.filter(kept).map((entry) => entry.amountCents);
   const incentive = entries.filter((entry) => entry.book === 'incentive');
   return {
-    loanPayoff: loan ? negative(loanPayoff(loan, last.on)) : nothing('There is no loan'),
+    loanPayoff: payoff ? negative(payoff) : nothing('There is no loan'),
     creditStillToCome: credit
       ? stillToComeFigure(
           credit,

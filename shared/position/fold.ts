@@ -1,10 +1,11 @@
 import type { CycleKey, Entry } from '../books/book.ts';
-import { loanStateOn, type PaymentsOfTheDay } from '../books/loan.ts';
+import type { PaymentsOfTheDay } from '../books/loan.ts';
 import { creditEarnedBy } from '../books/tax-credit.ts';
 import type { CreditFacts, LoanFacts } from '../facts/finance.ts';
 import { cents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import { asByBook, type BookSums, counts, noSums, totalOf } from './books-sum.ts';
+import { owedOn } from './loans.ts';
 import type { Figure, PositionPoint } from './position.ts';
 
 /** A closed cycle as the position sees it; `utilityBank` is what the utility holds for the house after it. */
@@ -16,7 +17,8 @@ export type FoldInput = {
   /** In order of their dates. */
   cycles: readonly PositionCycle[];
   today: Day;
-  loan: LoanFacts | null;
+  /** Every loan that paid for the roof. */
+  loans: readonly LoanFacts[];
   credit: CreditFacts | null;
 };
 
@@ -36,7 +38,7 @@ export function foldPosition(input: FoldInput): PositionPoint[] {
     for (const entry of byCycle.get(cycle) ?? []) addEntry(entry, books, running);
     const added = totalOf(books);
     running.cash += added;
-    const loanPayoff = input.loan ? -loanStateOn(input.loan, on, payments).payoffCents : 0;
+    const loanPayoff = -owedOn(input.loans, on, payments).payoffCents;
     const credit = input.credit ? creditEarnedBy(input.credit, on) - running.credit : 0;
     const owed = running.earned - running.received;
     points.push({

@@ -3,16 +3,8 @@ import { type Day, daysBetween, daysInMonth } from '../units/day.ts';
 import { type Wh, wh } from '../units/energy.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { DecimalText } from '../units/rate-text.ts';
+import type { EnergyCycle } from './basis.ts';
 import { gather, type Heap, type Heaps, MONTHS, monthOfAll, segmentsOf, wholeYear } from './month-heaps.ts';
-
-/** What is known of a closed cycle's energy; null where it is not measured. */
-export type EnergyCycle = {
-  from: Day;
-  to: Day;
-  importWh: Wh | null;
-  exportWh: Wh | null;
-  productionWh: Wh | null;
-};
 
 export type MonthlyEnergyInput = {
   cycles: readonly EnergyCycle[];

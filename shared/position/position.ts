@@ -54,6 +54,11 @@ export const projectedMonth = z.object({
   books: byBook,
   addedCents: centsSchema,
   cashSoFarCents: centsSchema,
+  /** The parts of settled today beside cash so far, signed as at a close: the payoff negative. */
+  loanPayoffCents: centsSchema,
+  creditStillToComeCents: centsSchema,
+  incentiveOwedCents: centsSchema,
+  utilityBankCents: centsSchema,
   settledTodayCents: centsSchema,
   loanBalanceCents: centsSchema,
 });

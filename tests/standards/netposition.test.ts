@@ -166,7 +166,7 @@ function runVector(input: Input): { months: Month[] } {
     },
   }));
   const placed = placeEntries(entries, cycles);
-  const points = foldPosition({ entries: placed, cycles, today: monthEnd(input.horizon), loan: null, credit: null });
+  const points = foldPosition({ entries: placed, cycles, today: monthEnd(input.horizon), loans: [], credit: null });
   const closes = points.filter((point) => point.cycle !== 'before' && point.cycle !== 'since');
   return {
     months: closes.map((point, index) => monthFrom(point, index + 1, bills, loan)),

@@ -82,7 +82,7 @@ describe('the position by cycle', () => {
       ],
       cycles,
     );
-    const points = foldPosition({ entries, cycles, today: day('2024-10-01'), loan: null, credit: null });
+    const points = foldPosition({ entries, cycles, today: day('2024-10-01'), loans: [], credit: null });
     expect(
       points.map((point) => [point.cycle, point.addedCents, point.cashSoFarCents, point.incentiveOwedCents]),
     ).toEqual([
@@ -96,7 +96,7 @@ describe('the position by cycle', () => {
     const loan = loanOf({ firstPaymentOn: day('2024-09-14'), fundedOn: day('2024-08-14') });
     const cycles = monthly('2024-08-14', 1);
     const entries = placeEntries(loanEntries(loan, day('2024-09-14')), cycles);
-    const [, close, since] = foldPosition({ entries, cycles, today: day('2024-09-14'), loan, credit: null });
+    const [, close, since] = foldPosition({ entries, cycles, today: day('2024-09-14'), loans: [loan], credit: null });
     expect(close).toMatchObject({ cashSoFarCents: 0, loanPayoffCents: -3_017_475 });
     expect(since).toMatchObject({ cashSoFarCents: -23_241, loanPayoffCents: -2_994_234 });
     // Paying on the day moves nothing in what is settled.
@@ -107,7 +107,7 @@ describe('the position by cycle', () => {
 
   it('has one point, up to today, while there is no cycle', () => {
     const entries = placeEntries([plain('2024-09-14', 'costs', -500)], []);
-    const points = foldPosition({ entries, cycles: [], today: day('2024-10-01'), loan: null, credit: null });
+    const points = foldPosition({ entries, cycles: [], today: day('2024-10-01'), loans: [], credit: null });
     expect(points).toHaveLength(1);
     expect(points[0]).toMatchObject({ cycle: 'before', on: '2024-10-01', cashSoFarCents: -500 });
   });
@@ -145,7 +145,17 @@ function build(options: { cycles: number; extra: number; bill: number }) {
   const credit = creditOf();
   const incentive = incentiveOf({
     firstDay: day('2024-08-14'),
-    received: [{ id: 'r', on: addMonths(day('2024-10-14'), 1), amountCents: cents(4_321), note: null }],
+    received: [
+      {
+        id: 'r',
+        on: addMonths(day('2024-10-14'), 1),
+        amountCents: cents(4_321),
+        note: null,
+        from: null,
+        to: null,
+        quantityWh: null,
+      },
+    ],
   });
   const seen = cycles.map((cycle, index) => ({
     from: cycle.from,
@@ -187,7 +197,7 @@ function build(options: { cycles: number; extra: number; bill: number }) {
     ],
     cycles,
   );
-  const input = { entries, cycles, today, loan, credit };
+  const input = { entries, cycles, today, loans: [loan], credit };
   return { ...input, points: foldPosition(input) };
 }
 
@@ -221,7 +231,13 @@ describe('for any household', () => {
     fc.assert(
       fc.property(any, (options) => {
         const household = build(options);
-        const { entries, points, cycles, loan, credit } = household;
+        const {
+          entries,
+          points,
+          cycles,
+          loans: [loan],
+          credit,
+        } = household;
         const last = points.at(-1);
         const cashSoFar = sumsByBook(
           entries,
@@ -231,7 +247,7 @@ describe('for any household', () => {
         const settled = settledFigures(household, last, cashSoFar);
         expect(settled.settledToday.amountCents).toBe(last.settledTodayCents);
         expect(settled.settledWithoutCredit.amountCents).toBe(last.settledTodayCents - last.creditStillToComeCents);
-        expect(settled.settledParts.loanPayoff.amountCents).toBe(-loanPayoff(loan, last.on).amountCents);
+        expect(settled.settledParts.loanPayoff.amountCents).toBe(loan && -loanPayoff(loan, last.on).amountCents);
         expect(settled.settledParts.creditStillToCome.amountCents).toBe(creditStillToCome(credit, last.on).amountCents);
         const pace = paceFigure(points);
         const figures = [

@@ -75,9 +75,12 @@ function factsOf(changes: Partial<ProjectionFacts> = {}, plan: RatePlanInput = F
     },
     plans: [{ from: day('2020-01-01'), plan: ratePlanSchema.parse(plan), withoutRoof: null }],
     loan: null,
+    otherLoans: [],
+    lease: null,
     mortgage: null,
     credit: null,
     incentive: null,
+    costs: [],
     usageBefore: [],
     assumptions: {
       ...DEFAULT_ASSUMPTIONS,
@@ -95,7 +98,13 @@ function inputOf(facts: ProjectionFacts, changes: Partial<ProjectionInput> = {})
   const cycles = changes.cycles ?? YEAR;
   const folded = cycles.map((cycle) => ({ ...cycle, provisional: false, utilityBank: NOTHING }));
   const entries = placeEntries(facts.loan ? loanEntries(facts.loan, today) : [], folded);
-  const points = foldPosition({ entries, cycles: folded, today, loan: facts.loan, credit: facts.credit });
+  const points = foldPosition({
+    entries,
+    cycles: folded,
+    today,
+    loans: facts.loan ? [facts.loan] : [],
+    credit: facts.credit,
+  });
   const since = entries.filter((entry) => entry.cycle === 'since');
   return { facts, today, cycles, opening: EMPTY_OPENING, points, since, ...changes };
 }
@@ -193,7 +202,7 @@ describe('the projection', () => {
     const today = day('2026-01-10');
     const entries = placeEntries(incentiveEarned(incentive, YEAR), YEAR);
     const folded = YEAR.map((cycle) => ({ ...cycle, provisional: false, utilityBank: NOTHING }));
-    const points = foldPosition({ entries, cycles: folded, today, loan: null, credit: null });
+    const points = foldPosition({ entries, cycles: folded, today, loans: [], credit: null });
     const { months } = project(factsOf({ incentive }), { points });
     const owed = points.at(-1)?.incentiveOwedCents ?? cents(0);
     expect(owed).toBe(sumCents(entries.map((entry) => entry.amountCents)));

@@ -79,6 +79,10 @@ function position(): Position {
       books,
       addedCents: cents(95_00),
       cashSoFarCents: cents(cash),
+      loanPayoffCents: cents(-3800_00 + (index + 1) * 95_00 - cash),
+      creditStillToComeCents: cents(0),
+      incentiveOwedCents: cents(0),
+      utilityBankCents: cents(0),
       settledTodayCents: cents(-3800_00 + (index + 1) * 95_00),
       loanBalanceCents: cents(Math.max(cash + 3800_00 - (index + 1) * 95_00, 0)),
     };

@@ -1,0 +1,131 @@
+import * as z from 'zod/mini';
+import { bookId } from '../books/book.ts';
+import { creditEarnedBy } from '../books/tax-credit.ts';
+import { householdFacts } from '../facts/household.ts';
+import { openingSchema } from '../settlement/settlement.ts';
+import { cents, centsSchema, ZERO_CENTS } from '../units/cents.ts';
+import { type Day, daySchema } from '../units/day.ts';
+import { whSchema } from '../units/energy.ts';
+import { counts } from './books-sum.ts';
+import { lastingCrossing } from './even.ts';
+import type { PositionPoint } from './position.ts';
+import type { ProjectionInput } from './project.ts';
+
+/** The facts a projection needs; papers, readings and names stay behind. */
+export const basisFacts = z.object({
+  house: z.pick(householdFacts.shape.house, { arrays: true, inverterAcWatts: true, expectedMonthlyWh: true }),
+  plans: householdFacts.shape.plans,
+  loan: householdFacts.shape.loan,
+  otherLoans: householdFacts.shape.otherLoans,
+  lease: householdFacts.shape.lease,
+  mortgage: householdFacts.shape.mortgage,
+  credit: householdFacts.shape.credit,
+  incentive: householdFacts.shape.incentive,
+  costs: householdFacts.shape.costs,
+  usageBefore: householdFacts.shape.usageBefore,
+  assumptions: householdFacts.shape.assumptions,
+});
+export type BasisFacts = z.infer<typeof basisFacts>;
+
+/** What is known of a closed cycle's energy; null where it is not measured. */
+export const energyCycle = z.object({
+  from: daySchema,
+  to: daySchema,
+  importWh: z.nullable(whSchema),
+  exportWh: z.nullable(whSchema),
+  productionWh: z.nullable(whSchema),
+});
+export type EnergyCycle = z.infer<typeof energyCycle>;
+
+/** Money on a day: positive is kept or received. */
+export const flowSchema = z.object({ on: daySchema, book: bookId, amountCents: centsSchema });
+export type Flow = z.infer<typeof flowSchema>;
+
+/**
+ * Everything a projection starts from, as plain data of a few kilobytes: it can be sent to the browser, changed there and projected again. Money in
+ * cents, energy in Wh.
+ */
+export const projectionBasis = z.object({
+  today: daySchema,
+  facts: basisFacts,
+  /** Closed cycles in order. */
+  cycles: z.array(energyCycle),
+  /** What the utility's books hold after the last cycle. */
+  opening: openingSchema,
+  /** The position at the close of the last cycle. */
+  close: z.object({
+    on: daySchema,
+    cashSoFarCents: centsSchema,
+    incentiveOwedCents: centsSchema,
+    creditReceivedCents: centsSchema,
+  }),
+  /** Since when settled today has stood at or above zero at every close that is not provisional, to the last; null where it does not. */
+  evenSince: z.nullable(daySchema),
+  /** What was posted since the last cycle, save what follows from the loan's and the mortgage's schedules. */
+  since: z.array(flowSchema),
+});
+export type ProjectionBasis = z.infer<typeof projectionBasis>;
+
+export type MadeBasis = { ok: true; basis: ProjectionBasis } | { ok: false; why: string };
+
+/** The basis of a household's projection, or why there is none yet. */
+export function basisOf(input: ProjectionInput): MadeBasis {
+  const { facts, points, today } = input;
+  const closes = points.filter(isClose);
+  const close = closes.at(-1);
+  if (close === undefined) return { ok: false, why: 'Post the first cycle to see a projection.' };
+  if (facts.plans.length === 0) return { ok: false, why: 'Enter the rate plan to see a projection.' };
+  const received = facts.credit ? creditEarnedBy(facts.credit, close.on) - close.creditStillToComeCents : ZERO_CENTS;
+  return {
+    ok: true,
+    basis: {
+      today,
+      facts: factsOf(facts),
+      cycles: input.cycles.map(({ from, to, importWh, exportWh, productionWh }) => ({
+        from,
+        to,
+        importWh,
+        exportWh,
+        productionWh,
+      })),
+      opening: input.opening,
+      close: {
+        on: close.on,
+        cashSoFarCents: close.cashSoFarCents,
+        incentiveOwedCents: close.incentiveOwedCents,
+        creditReceivedCents: cents(received),
+      },
+      evenSince: evenSince(closes),
+      since: input.since
+        .filter((entry) => counts(entry) && entry.book !== 'loan' && entry.book !== 'insurance')
+        .map(({ date, book, amountCents }) => ({ on: date, book, amountCents })),
+    },
+  };
+}
+
+function factsOf(facts: ProjectionInput['facts']): BasisFacts {
+  const { arrays, inverterAcWatts, expectedMonthlyWh } = facts.house;
+  return {
+    house: { arrays, inverterAcWatts, expectedMonthlyWh },
+    plans: facts.plans,
+    loan: facts.loan,
+    otherLoans: facts.otherLoans,
+    lease: facts.lease,
+    mortgage: facts.mortgage,
+    credit: facts.credit,
+    incentive: facts.incentive,
+    costs: facts.costs,
+    usageBefore: facts.usageBefore,
+    assumptions: facts.assumptions,
+  };
+}
+
+function isClose(point: PositionPoint): boolean {
+  return point.cycle !== 'before' && point.cycle !== 'since';
+}
+
+function evenSince(closes: readonly PositionPoint[]): Day | null {
+  const firm = closes.filter((point) => !point.provisional);
+  const index = lastingCrossing(firm.map((point) => point.settledTodayCents));
+  return index === null ? null : (firm[index]?.on ?? null);
+}
