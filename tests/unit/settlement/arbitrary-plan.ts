@@ -1,187 +1,163 @@
 import fc from 'fast-check';
 import type { RatePlan } from '#shared/settlement/plan.ts';
-import type { CycleUsage } from '#shared/settlement/settlement.ts';
-import { addDays, type Day, day } from '#shared/units/day.ts';
-import { wh } from '#shared/units/energy.ts';
+import { arbitraryBanks } from './arbitrary-banks.ts';
+import { type By, PERIODS, PLAIN, rows } from './arbitrary-rows.ts';
 import { type Loose, plan, TWO_SEASONS } from './plans.ts';
 
-const PERIODS = [
-  { id: 'peak', label: 'Peak', when: [{ days: 'weekday', from: '16:00', to: '21:00' }] },
-  { id: 'off', label: 'Off-peak', when: 'rest' },
-];
-const rate = (most: number, scale = 5) =>
-  fc.integer({ min: 0, max: most * 10 ** scale }).map((value) => (value / 10 ** scale).toFixed(scale));
-/** Days on which prices may change: some fall inside the cycles below. */
-const CHANGE_DAYS = ['2026-01-10', '2026-02-01', '2026-06-01', '2026-06-20', '2026-07-04'];
+const NETTINGS = ['none', '15min', 'hour', 'period', 'cycle'] as const;
 
-/** Rows with one price from 2025 on and up to two changes, for each of the names an item is priced by. */
-function rows(most: number, by: { season: boolean; period: boolean; tiers: number }): fc.Arbitrary<object[]> {
-  const seasons = by.season ? TWO_SEASONS.map(({ id }) => ({ season: id })) : [{}];
-  const periods = by.period ? PERIODS.map(({ id }) => ({ period: id })) : [{}];
-  const tiers = by.tiers > 0 ? Array.from({ length: by.tiers }, (_, at) => ({ tier: at + 1 })) : [{}];
-  const keys = seasons.flatMap((season) =>
-    periods.flatMap((period) => tiers.map((tier) => ({ ...season, ...period, ...tier }))),
-  );
-  return fc
-    .subarray(CHANGE_DAYS, { maxLength: 2 })
-    .chain((days) =>
-      fc.tuple(
-        ...['2025-01-01', ...days].flatMap((from) =>
-          keys.map((key) => rate(most).map((price) => ({ from, ...key, rate: price }))),
-        ),
+/** What a drawn plan is made of. `steps`: it is settled on interval data. */
+export type Shape = {
+  steps: boolean;
+  netting: (typeof NETTINGS)[number];
+  byPeriod: boolean;
+  seasonal: boolean;
+  tiers: number;
+  per: 'cycle' | 'day';
+  form: 'kWh' | 'twoKWh' | 'USD' | 'twoUSD' | 'ledger' | 'buyAll' | 'none';
+  sameCycle: boolean;
+  lots: boolean;
+  keepMinimum: boolean;
+  trueUp: 'none' | 'expire' | 'donate' | 'payBill' | 'paySeparate';
+  at: 'months' | 'date' | 'everyCycle' | 'finalBill';
+  keep: 'none' | 'amount' | 'import' | 'load' | 'net';
+  ratio: string;
+};
+
+const shape = fc
+  .record({
+    steps: fc.integer({ min: 0, max: 5 }).map((value) => value === 0),
+    netting: fc.constantFrom(...NETTINGS),
+    byPeriod: fc.boolean(),
+    seasonal: fc.boolean(),
+    tiers: fc.constantFrom(0, 0, 2, 3),
+    per: fc.constantFrom('cycle', 'day'),
+    form: fc.constantFrom('kWh', 'twoKWh', 'USD', 'twoUSD', 'ledger', 'buyAll', 'none'),
+    sameCycle: fc.boolean(),
+    lots: fc.boolean(),
+    keepMinimum: fc.boolean(),
+    trueUp: fc.constantFrom('none', 'expire', 'donate', 'payBill', 'paySeparate'),
+    at: fc.constantFrom('months', 'date', 'everyCycle', 'finalBill'),
+    keep: fc.constantFrom('none', 'amount', 'import', 'load', 'net'),
+    ratio: fc.constantFrom('1', '0.6', '0.123456789'),
+  })
+  .map((drawn): Shape => {
+    const netting = drawn.steps && drawn.netting === 'period' ? 'hour' : drawn.netting;
+    const byPeriod = drawn.byPeriod && netting !== 'cycle';
+    // How periods with days of their own share a tier is not said, and refused.
+    return { ...drawn, netting, byPeriod, tiers: drawn.steps && byPeriod ? 0 : drawn.tiers };
+  });
+
+const extras = (is: Shape) => {
+  const by = is.steps && is.netting !== 'cycle' ? ['days', 'readDate', 'intervals'] : ['days', 'readDate'];
+  return fc.record({
+    rateChangeBy: fc.constantFrom(...by),
+    seasonBy: fc.constantFrom(...by),
+    money: fc.constantFrom('halfUp', 'halfEven'),
+    limits: fc.constantFrom('whole', 'exact'),
+    kWh: fc.constantFrom('exact', 'whole'),
+    fraction: fc.constantFrom('1', '0.75', null),
+    kWOf: fc.constantFrom('dc', 'ac', 'demand'),
+    incentive: fc.constantFrom('none', 'bill', 'separate', 'negative'),
+    term: fc.constantFrom(null, { firstDay: '2026-01-20', lastDay: '2026-04-11' }),
+    cap: fc.constantFrom(null, { amount: '40.00', per: 'year' }, { amount: '90.50', per: 'term' }),
+  });
+};
+
+const prices = (energyBy: By, creditBy: By) =>
+  fc.record({
+    energy: rows(1, energyBy),
+    delivery: rows(1),
+    gross: rows(1),
+    fixed: rows(20),
+    tax: rows(0.2),
+    credit: rows(1, creditBy),
+    incentive: rows(1, PLAIN),
+    negative: rows(0, PLAIN, -1),
+    payment: rows(1),
+  });
+
+/** Plans of every form the language has, each of which can be settled; by construction, so that none has to be thrown away. */
+export const shapedPlans: fc.Arbitrary<{ is: Shape; plan: RatePlan }> = shape.chain((is) =>
+  fc
+    .record({
+      more: extras(is),
+      priced: prices(
+        { season: is.seasonal, period: is.byPeriod, tiers: is.tiers },
+        { season: is.seasonal, period: is.byPeriod && is.form !== 'buyAll', tiers: 0 },
       ),
-    );
+    })
+    .map(({ more, priced }) => ({ is, plan: planOf(is, more, priced) })),
+);
+
+export const plans: fc.Arbitrary<RatePlan> = shapedPlans.map(({ plan: made }) => made);
+
+type Drawn<T> = T extends fc.Arbitrary<infer Value> ? Value : never;
+
+function planOf(is: Shape, more: Drawn<ReturnType<typeof extras>>, priced: Drawn<ReturnType<typeof prices>>): RatePlan {
+  const banks = arbitraryBanks(is, priced.payment);
+  const to = is.form === 'USD' || is.form === 'twoUSD' || is.form === 'ledger' ? 'bank' : 'bill';
+  const price =
+    more.fraction === null || is.form === 'buyAll'
+      ? { rates: priced.credit }
+      : { ratesOf: { charges: ['energy'], fraction: more.fraction } };
+  const basis = is.form === 'buyAll' ? 'production' : 'export';
+  const sent = { id: 'sent', label: 'Sent', kind: 'export', basis, to, ...price };
+  const incentive = {
+    id: 'incentive',
+    label: 'Incentive',
+    kind: 'incentive',
+    basis: 'production',
+    term: more.term,
+    cap: more.incentive === 'negative' ? null : more.cap,
+    rates: more.incentive === 'negative' ? priced.negative : priced.incentive,
+    to: more.incentive === 'separate' ? 'separate' : 'bill',
+  };
+  const input: Loose = {
+    netting: is.netting,
+    load: 'computed',
+    calendar: {
+      seasons: TWO_SEASONS,
+      periods: PERIODS,
+      holidays: { dates: ['2026-01-01', '2026-05-25'], as: 'weekend' },
+    },
+    rateChangeBy: more.rateChangeBy,
+    seasonBy: more.seasonBy,
+    rounding: { money: more.money, limits: more.limits, kWh: more.kWh },
+    charges: charges(is, more.kWOf, priced),
+    credits: [
+      ...(is.form === 'kWh' || is.form === 'twoKWh' ? [] : [sent]),
+      ...(is.form === 'twoUSD' ? [{ ...sent, id: 'sentToo', label: 'Sent too', to: 'second' }] : []),
+      ...(more.incentive === 'none' ? [] : [incentive]),
+    ],
+    banks,
+  };
+  return plan(input);
 }
 
-const shape = fc.record({
-  netting: fc.constantFrom('none', 'period', 'cycle'),
-  wantsPeriods: fc.boolean(),
-  seasonal: fc.boolean(),
-  tiers: fc.constantFrom(0, 0, 2, 3),
-  perTier: fc.constantFrom('cycle', 'day'),
-  rateChangeBy: fc.constantFrom('days', 'readDate'),
-  seasonBy: fc.constantFrom('days', 'readDate'),
-  money: fc.constantFrom('halfUp', 'halfEven'),
-  limits: fc.constantFrom('whole', 'exact'),
-  kWh: fc.constantFrom('exact', 'whole'),
-  form: fc.constantFrom('kWh', 'USD', 'ledger', 'none'),
-  sameCycle: fc.boolean(),
-  lots: fc.boolean(),
-  keepMinimum: fc.boolean(),
-  trueUp: fc.constantFrom('none', 'expire', 'pay'),
-  ratio: fc.constantFrom('1', '0.6', '0.123456789'),
-  fraction: fc.constantFrom('1', '0.75', null),
-});
-
-/** Plans of many forms, each of which can be settled; by construction, so that none has to be thrown away. */
-export const plans: fc.Arbitrary<RatePlan> = shape.chain((is) => {
-  const byPeriod = is.wantsPeriods && is.netting !== 'cycle';
-  const energyRows = rows(1, { season: is.seasonal, period: byPeriod, tiers: is.tiers });
-  const tiers =
-    is.tiers === 0
-      ? []
-      : [
-          {
-            from: '2025-01-01',
-            per: is.perTier,
-            limits: Array.from({ length: is.tiers - 1 }, (_, at) =>
-              String(is.perTier === 'day' ? 7.3 * (at + 1) : 211 * (at + 1)),
-            ),
-          },
-        ];
-  return fc
-    .record({
-      energy: energyRows,
-      gross: rows(1, { season: false, period: false, tiers: 0 }),
-      fixed: rows(20, { season: false, period: false, tiers: 0 }),
-      tax: rows(0.2, { season: false, period: false, tiers: 0 }),
-      credit: rows(1, { season: is.seasonal, period: byPeriod, tiers: 0 }),
-    })
-    .map((priced) => {
-      const at = { months: [1, 2, 3, 4, 5, 6, 7, 8, 9, 10, 11, 12] };
-      const pays = is.trueUp === 'pay' ? { action: 'pay', to: 'bill', fee: '2.50' } : { action: 'expire' };
-      const trueUps =
-        is.trueUp === 'none'
-          ? []
-          : [
-              {
-                at: is.keepMinimum ? 'everyCycle' : at,
-                keep: is.form === 'kWh' ? { amount: '40' } : null,
-                ...pays,
-                ...(is.trueUp === 'pay' && is.form === 'kWh' ? { rates: priced.gross } : {}),
-              },
-            ];
-      const lotLife = is.lots && is.form !== 'ledger' ? { cycles: 2 } : null;
-      const common = { label: 'Bank', sameCycle: is.sameCycle, trueUps, lotLife };
-      const kWhBank = { id: 'bank', unit: 'kWh', offsets: ['energy'], byPeriod, ratio: is.ratio, ...common };
-      const usdBank = {
-        id: 'bank',
-        unit: 'USD',
-        offsets: ['energy', 'gross'],
-        belowZero: is.form === 'ledger',
-        keepMinimum: is.keepMinimum && is.form === 'USD' ? 'least' : null,
-        ...common,
-      };
-      const to = is.form === 'USD' || is.form === 'ledger' ? 'bank' : 'bill';
-      const price =
-        is.fraction === null || is.form === 'kWh'
-          ? { rates: priced.credit }
-          : { ratesOf: { charges: ['energy'], fraction: is.fraction } };
-      const input: Loose = {
-        netting: is.netting,
-        calendar: { seasons: TWO_SEASONS, periods: PERIODS },
-        rateChangeBy: is.rateChangeBy,
-        seasonBy: is.seasonBy,
-        rounding: { money: is.money, limits: is.limits, kWh: is.kWh },
-        charges: [
-          { id: 'energy', label: 'Energy', kind: 'import', basis: 'import', rates: priced.energy, tiers },
-          { id: 'gross', label: 'Gross', kind: 'nonbypassable', basis: 'import', netting: 'none', rates: priced.gross },
-          { id: 'customer', label: 'Customer', kind: 'fixed', basis: 'cycle', rates: priced.fixed },
-          { id: 'daily', label: 'Daily', kind: 'minimum', basis: 'day', rates: priced.gross },
-          {
-            id: 'before',
-            label: 'Tax before',
-            kind: 'tax',
-            basis: 'percent',
-            on: ['energy', 'customer'],
-            rates: priced.tax,
-          },
-          {
-            id: 'least',
-            label: 'Minimum',
-            kind: 'minimum',
-            basis: 'floor',
-            per: is.perTier,
-            on: ['energy', 'customer'],
-            rates: priced.fixed,
-          },
-          {
-            id: 'tax',
-            label: 'Tax',
-            kind: 'tax',
-            basis: 'percent',
-            on: ['energy', 'least'],
-            afterCredits: true,
-            rates: priced.tax,
-          },
-        ],
-        credits:
-          is.form === 'kWh' ? [] : [{ id: 'sent', label: 'Sent', kind: 'export', basis: 'export', to, ...price }],
-        banks: is.form === 'none' ? [] : [is.form === 'kWh' ? kWhBank : usdBank],
-      };
-      return plan(input);
-    });
-});
-
-/** Import and export by period, in Wh, and their totals. */
-const energies = fc.record({
-  peak: fc.record({ importWh: fc.nat(300_000), exportWh: fc.nat(300_000) }),
-  off: fc.record({ importWh: fc.nat(600_000), exportWh: fc.nat(600_000) }),
-});
-
-/** Six cycles that chain, over changes of price, season and year. */
-export const usages: fc.Arbitrary<CycleUsage[]> = fc
-  .array(fc.tuple(fc.integer({ min: 1, max: 65 }), energies), { minLength: 2, maxLength: 6 })
-  .map((cycles) => {
-    let from: Day = day('2025-12-16');
-    return cycles.map(([days, { peak, off }]): CycleUsage => {
-      const to = addDays(from, days);
-      const flow = (of: typeof peak) => ({ importWh: wh(of.importWh), exportWh: wh(of.exportWh) });
-      const cycle: CycleUsage = {
-        from,
-        to,
-        importWh: wh(peak.importWh + off.importWh),
-        exportWh: wh(peak.exportWh + off.exportWh),
-        productionWh: wh(peak.exportWh + off.exportWh),
-        loadWh: null,
-        byPeriod: { peak: flow(peak), off: flow(off) },
-        netted: {},
-        kW: { dc: '7.2' },
-        payments: [],
-        finalBill: false,
-        intervals: null,
-      };
-      from = to;
-      return cycle;
-    });
-  });
+function charges(is: Shape, kWOf: string, priced: Drawn<ReturnType<typeof prices>>): object[] {
+  const limits = Array.from({ length: is.tiers - 1 }, (_, at) => String((is.per === 'day' ? 7.3 : 211) * (at + 1)));
+  const tiers = is.tiers === 0 ? [] : [{ from: '2025-01-01', per: is.per, limits }];
+  const basis = is.form === 'buyAll' && !is.byPeriod ? 'load' : 'import';
+  const fixed = { kind: 'fixed', rates: priced.fixed };
+  const tax = { kind: 'tax', basis: 'percent', rates: priced.tax };
+  return [
+    { id: 'energy', label: 'Energy', kind: 'import', basis, rates: priced.energy, tiers },
+    { id: 'delivery', label: 'Delivery', kind: 'import', basis: 'import', rates: priced.delivery },
+    { id: 'gross', label: 'Gross', kind: 'nonbypassable', basis: 'import', netting: 'none', rates: priced.gross },
+    { id: 'customer', label: 'Customer', basis: 'cycle', ...fixed },
+    { id: 'daily', label: 'Daily', kind: 'minimum', basis: 'day', rates: priced.gross },
+    { id: 'access', label: 'Grid access', kind: 'demand', basis: 'kW', kWOf, rates: priced.gross },
+    { id: 'before', label: 'Tax before', on: ['energy', 'customer'], ...tax },
+    {
+      id: 'least',
+      label: 'Minimum',
+      kind: 'minimum',
+      basis: 'floor',
+      per: is.per,
+      on: ['energy', 'customer'],
+      rates: priced.fixed,
+    },
+    { id: 'tax', label: 'Tax', on: ['energy', 'least'], afterCredits: true, ...tax },
+  ];
+}
