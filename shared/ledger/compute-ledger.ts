@@ -37,7 +37,7 @@ export function postLedger(
   const dates = assembled.map((one) => one.cycle);
   const entries = placeEntries(unplacedEntries(facts, assembled, today), dates);
   const creditLines = facts.credit === null ? [] : creditLinesOf(facts.credit);
-  const position = computePosition({
+  const { position, basis } = computePosition({
     facts: plans.every((plan, at) => plan === facts.plans[at]) ? facts : { ...facts, plans },
     today,
     entries,
@@ -58,6 +58,7 @@ export function postLedger(
     entries,
     creditLines,
     position,
+    basis,
     needs: needsOf({ facts, assembled, entries, creditLines, position, today }),
   };
 }

@@ -1,6 +1,7 @@
 import * as z from 'zod/mini';
 import { entrySchema } from '../books/book.ts';
 import { creditLines } from '../books/credit-lines.ts';
+import { projectionBasis } from '../position/basis.ts';
 import { positionSchema } from '../position/position.ts';
 import { daySchema } from '../units/day.ts';
 import { cycleSchema } from './cycle.ts';
@@ -13,6 +14,8 @@ export const ledgerSchema = z.object({
   entries: z.array(entrySchema),
   creditLines: z.array(creditLines),
   position: positionSchema,
+  /** What the projection starts from, to be projected again with changes; null where there is no projection. */
+  basis: z.nullable(projectionBasis),
   needs: z.array(needSchema),
 });
 export type Ledger = z.infer<typeof ledgerSchema>;

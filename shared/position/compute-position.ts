@@ -1,11 +1,12 @@
 import type { Opening } from '../settlement/settlement.ts';
 import type { Wh } from '../units/energy.ts';
+import { basisOf, type ProjectionBasis } from './basis.ts';
 import { positionEvents } from './events.ts';
 import { marginFigures, paceFigure, settledFigures } from './figures.ts';
 import { type FoldInput, foldPosition, type PositionCycle } from './fold.ts';
 import { loansOf } from './loans.ts';
 import type { Position } from './position.ts';
-import { type ProjectionFacts, projectBase } from './project.ts';
+import { type ProjectionFacts, projectFrom } from './project.ts';
 import { sumsByBook } from './sums.ts';
 
 export type PositionInput = {
@@ -19,8 +20,11 @@ export type PositionInput = {
   opening: Opening;
 };
 
+/** The position, and what its projection starts from (null while there is none). */
+export type MadePosition = { position: Position; basis: ProjectionBasis | null };
+
 /** The whole position of a household: points, figures with their workings, events and the base projection. */
-export function computePosition(input: PositionInput): Position {
+export function computePosition(input: PositionInput): MadePosition {
   const { facts, today, entries, cycles } = input;
   const fold: FoldInput = { entries, cycles, today, loans: loansOf(facts), credit: facts.credit };
   const points = foldPosition(fold);
@@ -32,7 +36,7 @@ export function computePosition(input: PositionInput): Position {
   );
   const cashSoFar = sums.all.cashSoFar;
   if (cashSoFar === undefined) throw new Error('the sum of the books is missing');
-  const projected = projectBase({
+  const made = basisOf({
     facts,
     today,
     cycles,
@@ -40,7 +44,8 @@ export function computePosition(input: PositionInput): Position {
     points,
     since: entries.filter((entry) => entry.cycle === 'since'),
   });
-  return {
+  const projected = made.ok ? projectFrom(made.basis) : made;
+  const position: Position = {
     today,
     points,
     cashSoFar,
@@ -52,4 +57,5 @@ export function computePosition(input: PositionInput): Position {
     projection: projected.ok ? projected.projection : null,
     whyNoProjection: projected.ok ? null : projected.why,
   };
+  return { position, basis: made.ok && projected.ok ? made.basis : null };
 }
