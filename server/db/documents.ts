@@ -46,3 +46,15 @@ export function documentTotals(db: Reader, householdId: string): { held: number;
     .get();
   return row ?? { held: 0, bytes: 0 };
 }
+
+/** The kind of a kept file; null where the household keeps none of that id. */
+export function keptDocumentKind(db: Reader, householdId: string, id: string): StoredDocument['kind'] | null {
+  const kept = and(eq(documents.householdId, householdId), eq(documents.id, id), eq(documents.state, 'kept'));
+  return db.select({ kind: documents.kind }).from(documents).where(kept).get()?.kind ?? null;
+}
+
+/** Takes a kept file away; true where there was one. The database refuses one that a statement, a reading or a cost rests on. */
+export function deleteKeptDocument(db: Reader, householdId: string, id: string): boolean {
+  const kept = and(eq(documents.householdId, householdId), eq(documents.id, id), eq(documents.state, 'kept'));
+  return db.delete(documents).where(kept).run().changes > 0;
+}

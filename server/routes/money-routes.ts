@@ -2,14 +2,8 @@ import { moneyApi } from '#shared/api/money.ts';
 import { type Result, succeed } from '#shared/problem.ts';
 import type { Actor, Deps } from '../deps.ts';
 import type { Api } from '../http/api.ts';
-import {
-  addCost,
-  addLoanPayment,
-  addReceipt,
-  removeCost,
-  removeLoanPayment,
-  removeReceipt,
-} from '../services/record-money.ts';
+import { addCost, removeCost } from '../services/money/costs.ts';
+import { addLoanPayment, addReceipt, removeLoanPayment, removeReceipt } from '../services/record-money.ts';
 import { viewMoney } from '../services/view-money.ts';
 
 export function moneyRoutes(api: Api, deps: Deps): void {

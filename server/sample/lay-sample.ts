@@ -8,8 +8,9 @@ import { ledgerOf } from '../services/ledger-of.ts';
 import { addProductionFile } from '../services/log/add-production.ts';
 import { addStatementFile } from '../services/log/add-statement.ts';
 import { postDraft } from '../services/log/post-draft.ts';
+import { addCost } from '../services/money/costs.ts';
 import { addPerson } from '../services/people.ts';
-import { addCost, addLoanPayment, addReceipt } from '../services/record-money.ts';
+import { addLoanPayment, addReceipt } from '../services/record-money.ts';
 import {
   saveBefore,
   saveCash,

@@ -1,8 +1,10 @@
 import type { MoneyView } from '#shared/api/money.ts';
 import type { BookId, Entry } from '#shared/books/book.ts';
+import { costToDate } from '#shared/books/costs.ts';
 import { levelPayment, loanPayoff, loanSchedule } from '#shared/books/loan.ts';
 import { governingEnd, insuranceEnds } from '#shared/books/mortgage-insurance.ts';
-import { INCOME_KINDS } from '#shared/facts/house.ts';
+import { isOfSolarLoan } from '#shared/books/other-money.ts';
+import { type CostFacts, INCOME_KINDS } from '#shared/facts/house.ts';
 import { type Cents, negateCents, sumCents } from '#shared/units/cents.ts';
 import type { Deps } from '../deps.ts';
 import { type HouseholdLedger, ledgerOf } from './ledger-of.ts';
@@ -35,7 +37,7 @@ function loanView({ facts, ledger, today }: HouseholdLedger): MoneyView['loan'] 
     payoffCents: payoff.amountCents,
     payoff,
     payoffOn: today,
-    paidCents: negateCents(sumOf(ledger.entries, 'loan', true)),
+    paidCents: negateCents(sumOf(ledger.entries.filter(isOfSolarLoan), 'loan', true)),
     interestPaidCents: sumCents(schedule.filter((row) => row.past).map((row) => row.interestCents)),
     lastPaymentOn: schedule.at(-1)?.on ?? null,
     schedule,
@@ -68,13 +70,14 @@ function incentiveView({ facts, ledger }: HouseholdLedger): MoneyView['incentive
 export function viewMoney(deps: Pick<Deps, 'db' | 'clock'>, householdId: string): MoneyView {
   const household = ledgerOf(deps, householdId);
   const { costs } = household.facts;
-  const isIncome = (cost: (typeof costs)[number]) => INCOME_KINDS.includes(cost.kind);
+  const isIncome = (cost: CostFacts) => INCOME_KINDS.includes(cost.kind);
+  const toDate = (some: readonly CostFacts[]) => sumCents(some.map((cost) => costToDate(cost, household.today)));
   return {
     loan: loanView(household),
     insurance: insuranceView(household),
     incentive: incentiveView(household),
     costs,
-    costsCents: sumCents(costs.filter((cost) => !isIncome(cost)).map((cost) => cost.amountCents)),
-    incomeCents: sumCents(costs.filter(isIncome).map((cost) => cost.amountCents)),
+    costsCents: toDate(costs.filter((cost) => !isIncome(cost))),
+    incomeCents: toDate(costs.filter(isIncome)),
   };
 }

@@ -50,9 +50,8 @@ export function costFlows(costs: readonly CostFacts[], from: Day, to: Day): Cost
 }
 
 /** What a sum has come to through a day: positive, as its amount is. */
-export function costToDate(cost: CostFacts, through: Day): { times: number; totalCents: Cents } {
-  const times = costDays(cost, through).length;
-  return { times, totalCents: cents(cost.amountCents * times) };
+export function costToDate(cost: CostFacts, through: Day): Cents {
+  return cents(cost.amountCents * costDays(cost, through).length);
 }
 
 function bookOf(kind: CostKind): BookId {

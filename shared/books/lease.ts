@@ -7,7 +7,6 @@ import { exact, kwhOf, roundToCents, usdOf } from '../units/rate.ts';
 import type { Source, Working } from '../working.ts';
 import type { UnplacedEntry } from './book.ts';
 import { kwhInput, plainInput, stated, usdInput } from './inputs.ts';
-import type { LoanFlow } from './other-money.ts';
 import { type PaperName, sourceOfPaper } from './paper-source.ts';
 
 /** A cycle as a power-purchase agreement sees it. */
@@ -65,8 +64,11 @@ export function leaseMissing(lease: LeaseFacts, cycles: readonly LeaseCycle[]): 
     .map(({ to }) => to);
 }
 
+/** A lease's payment on a day to come, negative. */
+export type LeaseFlow = { on: Day; book: 'loan'; amountCents: Cents };
+
 /** What a lease pays on the days of `[from, to)`; nothing for a power-purchase agreement, which `purchaseOfPeriod` works out by the month. */
-export function leaseFlows(lease: LeaseFacts, from: Day, to: Day): LoanFlow[] {
+export function leaseFlows(lease: LeaseFacts, from: Day, to: Day): LeaseFlow[] {
   if (lease.kind !== 'lease') return [];
   return leaseDays(lease, to).flatMap((on, index) =>
     on >= from && on < to ? [{ on, book: 'loan', amountCents: negateCents(leasePayment(lease, index)) }] : [],

@@ -1,14 +1,11 @@
-import type { OtherLoan } from '../facts/finance.ts';
-import type { HouseholdFacts } from '../facts/household.ts';
+import type { LoanFacts, OtherLoan } from '../facts/finance.ts';
 import { sayCount, sayDate } from '../ledger/say.ts';
 import type { Figure } from '../position/position.ts';
-import { type Cents, sumCents } from '../units/cents.ts';
+import { sumCents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { Entry, UnplacedEntry } from './book.ts';
 import { stated, usdListInput } from './inputs.ts';
-import { loanEntries, loanPayoff, loanStateOn, type PaymentsOfTheDay } from './loan.ts';
-
-type LoanOf = OtherLoan['loan'];
+import { loanEntries, loanPayoff, type PaymentsOfTheDay } from './loan.ts';
 
 /** What each kind of other solar money is called. */
 export const OTHER_LOAN_NAMES: Record<OtherLoan['kind'], string> = {
@@ -16,12 +13,6 @@ export const OTHER_LOAN_NAMES: Record<OtherLoan['kind'], string> = {
   homeEquity: 'Home-equity loan',
   other: 'Second loan',
 };
-
-/** Every loan the roof was paid with: the solar loan first, then the others as entered. */
-export function loansOf(facts: Pick<HouseholdFacts, 'loan' | 'otherLoans'>): LoanOf[] {
-  const others = facts.otherLoans.map(({ loan }) => loan);
-  return facts.loan === null ? others : [facts.loan, ...others];
-}
 
 /** The entries of the other loans through a day, each by the loan book's own rules, its ids set apart by the loan's id. */
 export function otherLoanEntries(others: readonly OtherLoan[], through: Day): UnplacedEntry[] {
@@ -48,14 +39,9 @@ function prefixOf(otherId: string): string {
   return `other-${otherId}-`;
 }
 
-/** What it takes to pay every loan off on a day, in plain cents, without a working. */
-export function owedOnLoans(loans: readonly LoanOf[], on: Day, payments: PaymentsOfTheDay = 'through'): Cents {
-  return sumCents(loans.map((loan) => loanStateOn(loan, on, payments).payoffCents));
-}
-
-/** The same with its working: the one loan's own, or the sum of them. Null where there is no loan. */
+/** What it takes to pay every loan off on a day: the one loan's own working, or the sum of them. Null where there is no loan. */
 export function payoffOfLoans(
-  loans: readonly LoanOf[],
+  loans: readonly LoanFacts[],
   on: Day,
   payments: PaymentsOfTheDay = 'through',
 ): Figure | null {
@@ -81,14 +67,4 @@ export function payoffOfLoans(
       basis: 'computed',
     },
   };
-}
-
-/** Money of the loan book on a day to come, negative where it is paid. */
-export type LoanFlow = { on: Day; book: 'loan'; amountCents: Cents };
-
-/** What the other loans pay on the days of `[from, to)`. */
-export function otherLoanFlows(others: readonly OtherLoan[], from: Day, to: Day): LoanFlow[] {
-  return otherLoanEntries(others, to)
-    .filter(({ date }) => date >= from && date < to)
-    .map(({ date, amountCents }) => ({ on: date, book: 'loan', amountCents }));
 }
