@@ -41,6 +41,15 @@ export function addLoanPayment(deps: MoneyDeps, actor: Actor, body: z.infer<type
 /** Records money received from the incentive's payer. */
 export function addReceipt(deps: MoneyDeps, actor: Actor, body: z.infer<typeof receiptBody>): Result<null> {
   if (readIncentive(deps.db, actor.householdId) === null) return fail('conflict', 'Enter the incentive first.');
+  if (body.from !== null && body.to === null) {
+    return fail('invalid-fields', null, [fieldFault('to', 'Write the last day it covers as well, or neither.')]);
+  }
+  if (body.from === null && body.to !== null) {
+    return fail('invalid-fields', null, [fieldFault('from', 'Write the first day it covers as well, or neither.')]);
+  }
+  if (body.from !== null && body.to !== null && body.to <= body.from) {
+    return fail('invalid-fields', null, [fieldFault('to', 'The last day it covers cannot come before the first.')]);
+  }
   const about = `${body.on} ${dollarsText(body.amountCents)}`;
   return writeHousehold(deps, actor, { action: 'receipt-added', about }, (tx) => {
     insertReceipt(tx, actor.householdId, { id: newId(), ...body });

@@ -12,6 +12,7 @@ import { costSchema } from '../facts/house.ts';
 import { figureSchema } from '../position/position.ts';
 import { centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
+import { whSchema } from '../units/energy.ts';
 import { endpoint, HOUSEHOLD, OWNER } from './endpoint.ts';
 
 export const scheduleRow = z.object({
@@ -78,6 +79,10 @@ export const receiptBody = z.strictObject({
   on: daySchema,
   amountCents: incentiveReceiptSchema.shape.amountCents,
   note: incentiveReceiptSchema.shape.note,
+  /** The days it covers, `[from, to)`; both or neither. */
+  from: incentiveReceiptSchema.shape.from,
+  to: incentiveReceiptSchema.shape.to,
+  quantityWh: z._default(z.nullable(whSchema.check(z.minimum(0))), null),
 });
 export const costBody = z.strictObject({
   on: daySchema,

@@ -1,6 +1,7 @@
 import * as z from 'zod/mini';
 import { cents, centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
+import { whSchema } from '../units/energy.ts';
 import { decimalText } from '../units/rate-text.ts';
 
 /** A payment as it was made. `extraPrincipalCents` is the part of it beyond the regular payment and goes to principal whole. */
@@ -253,6 +254,10 @@ export const incentiveReceiptSchema = z.object({
   on: daySchema,
   amountCents: centsSchema,
   note: z.nullable(z.string()),
+  /** The days it says it covers, `[from, to)`, and the kWh it was paid on; null where it does not say. */
+  from: z._default(z.nullable(daySchema), null),
+  to: z._default(z.nullable(daySchema), null),
+  quantityWh: z._default(z.nullable(whSchema), null),
 });
 export type IncentiveReceipt = z.infer<typeof incentiveReceiptSchema>;
 

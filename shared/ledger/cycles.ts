@@ -1,9 +1,10 @@
 import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
-import { type MeteredCycle, meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
+import { meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
 import { estimatedRuns } from '../metering/estimated-reads.ts';
 import { indexIntervals } from '../metering/interval-index.ts';
 import type { Figure } from '../position/position.ts';
 import type { Check } from '../reconcile/check.ts';
+import { programmeOf } from '../reconcile/programme.ts';
 import { isProvisional } from '../reconcile/reads.ts';
 import { runChecks } from '../reconcile/run-checks.ts';
 import type { Opening } from '../settlement/settlement.ts';
@@ -44,26 +45,24 @@ export type Assembled = {
  */
 export function assembleCycles(facts: HouseholdFacts): Assembled {
   const inForce = statementsInForce(facts.statements);
-  const papers = cyclePapers(inForce, facts.house.switchOn);
+  const papers = cyclePapers(inForce, facts.house);
   const index = indexIntervals(facts.intervals, facts.documents);
   const runs = estimatedRuns(papers);
   const witnessed: WitnessedCycle[] = papers.map((paper) => witnessCycle(paper, index));
   const usage = usageBeforeRoof(facts.usageBefore, inForce, facts.house.switchOn);
   const cycles: AssembledCycle[] = [];
-  const meters: MeteredCycle[] = [];
+  const measured = papers.map((paper) => ({ paper, metered: meterCycle(paper, witnessed, runs) }));
+  const meters = measured.map(({ metered }) => metered);
+  const programme = programmeOf(facts.incentive, papers, meters);
   let opening: Opening | null = null;
   let before: SettledCycle | null = null;
-  for (const paper of papers) {
+  for (const { paper, metered } of measured) {
     opening ??= firstOpening(facts, paper);
-    const metered = meterCycle(paper, witnessed, runs);
-    meters.push(metered);
     const settled: SettledCycle = settleOne(facts, paper, metered, index, opening, before?.learned ?? NOTHING_LEARNED);
     const facing = facingLines(paper, settled);
     const { balanceCents: openingBalanceCents } = facts.opening;
-    const checks = runChecks(
-      { paper, papers, metered, witnessed, runs, settled, before, facing, openingBalanceCents },
-      facts.accepted,
-    );
+    const own = { paper, metered, settled, before, facing, openingBalanceCents };
+    const checks = runChecks({ ...own, facts, papers, witnessed, runs, meters, index, programme }, facts.accepted);
     const provisional = isProvisional({ paper, runs });
     opening = nextOpening(settled, paper.statement);
     before = settled;

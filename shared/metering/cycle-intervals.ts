@@ -59,15 +59,7 @@ function steps(
 /** The instant a civil day begins in a time zone, as an ISO text in UTC. */
 export function midnightUtc(date: Day, timeZone: string): string {
   const wanted = Date.UTC(yearOf(date), monthOf(date) - 1, dayOfMonth(date));
-  const clock = new Intl.DateTimeFormat('en-US', {
-    timeZone,
-    hourCycle: 'h23',
-    year: 'numeric',
-    month: 'numeric',
-    day: 'numeric',
-    hour: 'numeric',
-    minute: 'numeric',
-  });
+  const clock = clockOf(timeZone);
   let instant = wanted;
   // Two rounds settle it: the first finds the offset near midnight, the second the one in force at the corrected instant.
   for (let round = 0; round < 2; round += 1) {
@@ -77,4 +69,23 @@ export function midnightUtc(date: Day, timeZone: string): string {
     instant += wanted - shown;
   }
   return new Date(instant).toISOString();
+}
+
+const clocks = new Map<string, Intl.DateTimeFormat>();
+
+/** A zone's clock takes longer to make than to ask. */
+function clockOf(timeZone: string): Intl.DateTimeFormat {
+  const known = clocks.get(timeZone);
+  if (known) return known;
+  const made = new Intl.DateTimeFormat('en-US', {
+    timeZone,
+    hourCycle: 'h23',
+    year: 'numeric',
+    month: 'numeric',
+    day: 'numeric',
+    hour: 'numeric',
+    minute: 'numeric',
+  });
+  clocks.set(timeZone, made);
+  return made;
 }

@@ -11,11 +11,16 @@ export const checkId = z.enum([
   'exportAgainstIntervals',
   'exportWithinProduction',
   'productionAgainstMonitor',
+  'productionAtNight',
+  'productionExpected',
   'linePrice',
   'bankChain',
+  'nothingLost',
   'balanceChain',
   'budgetChain',
   'linesAddUp',
+  'incentiveQuantity',
+  'incentivePaid',
   'amountDue',
 ]);
 export type CheckId = z.infer<typeof checkId>;

@@ -80,3 +80,13 @@ export function addMonths(date: Day, count: number): Day {
 export function monthsBetween(from: Day, to: Day): number {
   return (yearOf(to) - yearOf(from)) * 12 + monthOf(to) - monthOf(from);
 }
+
+/** The first of some days; there must be one. */
+export function earliestDay(first: Day, ...others: readonly Day[]): Day {
+  return dayFromNumber(Math.min(dayNumber(first), ...others.map(dayNumber)));
+}
+
+/** The last of some days; there must be one. */
+export function latestDay(first: Day, ...others: readonly Day[]): Day {
+  return dayFromNumber(Math.max(dayNumber(first), ...others.map(dayNumber)));
+}

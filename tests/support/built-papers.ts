@@ -164,13 +164,24 @@ export function builtIntervals(
           channel,
           day: addDays(cycle.from, at),
           minutes,
-          values: stepsOf(total, minutes),
+          values: isMade(channel) ? byDay(total, minutes) : stepsOf(total, minutes),
           documentId: null,
         });
       }
     }
   }
   return days;
+}
+
+function isMade(channel: IntervalChannel): boolean {
+  return channel === 'production' || channel === 'monitor';
+}
+
+/** What a roof makes, in equal steps from nine to three by the clock, when the sun is up all year round; a figure a day stays one. */
+function byDay(total: number, minutes: 60 | 1440): number[] {
+  if (minutes === 1440) return [total];
+  const light = Array.from({ length: 6 }, (_, at) => Math.floor(((at + 1) * total) / 6) - Math.floor((at * total) / 6));
+  return Array.from({ length: 24 }, (_, hour) => light[hour - 9] ?? 0);
 }
 
 /** A day's energy in equal steps, the remainder in the first ones. Days of 23 and 25 hours are not built. */

@@ -1,6 +1,6 @@
 import { sql } from 'drizzle-orm';
 import { check, foreignKey, integer, primaryKey, sqliteTable, text } from 'drizzle-orm/sqlite-core';
-import { centsColumn, dayColumn, flagColumn, isDay, isDecimal, isFlag } from './columns.ts';
+import { centsColumn, dayColumn, flagColumn, isDay, isDecimal, isFlag, whColumn } from './columns.ts';
 import { households } from './households.ts';
 import { documents } from './papers.ts';
 
@@ -190,6 +190,9 @@ export const incentiveReceipts = sqliteTable(
     on: dayColumn('on_day').notNull(),
     amountCents: centsColumn('amount_cents').notNull(),
     note: text('note'),
+    from: dayColumn('from_day'),
+    to: dayColumn('to_day'),
+    quantityWh: whColumn('quantity_wh'),
   },
   (table) => [primaryKey({ columns: [table.householdId, table.id] }), check('incentive_receipts_on', isDay(table.on))],
 );

@@ -44,17 +44,24 @@ const INTERVAL_CHECKS: Record<ReadChannel, CheckId[]> = {
 const AGREES: Record<CheckId, string> = {
   datesChain: 'follows the last',
   days: 'agrees',
+  daysInRange: 'usual length',
   registersFollow: 'follows on',
   readType: 'agrees',
+  fileGaps: 'complete',
   importAgainstIntervals: 'agrees',
   exportAgainstIntervals: 'agrees',
   exportWithinProduction: 'agrees',
   productionAgainstMonitor: 'agrees',
+  productionAtNight: 'none',
+  productionExpected: 'as expected',
   linePrice: 'adds up',
   bankChain: 'follows the last',
+  nothingLost: 'nothing lost',
   balanceChain: 'carries over',
   budgetChain: 'carries over',
   linesAddUp: 'lines add up',
+  incentiveQuantity: 'agrees',
+  incentivePaid: 'paid',
   amountDue: 'agrees',
 };
 
@@ -75,7 +82,7 @@ export function readValues(drafted: DraftStatement): { values: ReadValue[]; othe
       'dates',
       'Service dates',
       dateFields(statement),
-      take((check) => check.check === 'datesChain' || check.check === 'days'),
+      take((check) => ['datesChain', 'days', 'daysInRange'].includes(check.check)),
     ),
   ];
   statement.reads.forEach((read, index) => {

@@ -99,7 +99,7 @@ export function IncentiveSheet({
           title="Record money received"
           hint="As it came: by cheque or transfer, on the day it came."
           householdId={householdId}
-          defaults={{ on: today, amountCents: '', note: '' }}
+          defaults={{ on: today, amountCents: '', note: '', from: '', to: '', quantityWh: '' }}
           read={readReceipt}
           change={(body) => ({ kind: 'receipt', body })}
           onClose={() => setRecording(false)}
@@ -114,7 +114,31 @@ export function IncentiveSheet({
                 error={errors.amountCents?.message}
                 {...register('amountCents')}
               />
-              <Field label="Note" hint="which months it pays" maxLength={200} {...register('note')} />
+              <div className="grid gap-x-6 sm:grid-cols-2">
+                <Field
+                  label="Covers from"
+                  type="date"
+                  hint="as its letter says"
+                  error={errors.from?.message}
+                  {...register('from')}
+                />
+                <Field
+                  label="to and with"
+                  type="date"
+                  hint="the last day paid for"
+                  error={errors.to?.message}
+                  {...register('to')}
+                />
+              </div>
+              <Field
+                label="kWh paid on"
+                unit="kWh"
+                inputMode="decimal"
+                hint="if it says so"
+                error={errors.quantityWh?.message}
+                {...register('quantityWh')}
+              />
+              <Field label="Note" maxLength={200} {...register('note')} />
             </>
           )}
         </RecordDialog>
