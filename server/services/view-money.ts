@@ -8,6 +8,7 @@ import { type CostFacts, INCOME_KINDS } from '#shared/facts/house.ts';
 import { type Cents, negateCents, sumCents } from '#shared/units/cents.ts';
 import type { Deps } from '../deps.ts';
 import { type HouseholdLedger, ledgerOf } from './ledger-of.ts';
+import { viewIncentive } from './view-incentive.ts';
 
 function sumOf(entries: readonly Entry[], book: BookId, counted: boolean): Cents {
   return sumCents(
@@ -55,17 +56,6 @@ function insuranceView({ facts, ledger }: HouseholdLedger): MoneyView['insurance
   };
 }
 
-function incentiveView({ facts, ledger }: HouseholdLedger): MoneyView['incentive'] {
-  if (facts.incentive === null) return null;
-  return {
-    facts: facts.incentive,
-    earnedCents: sumOf(ledger.entries, 'incentive', false),
-    receivedCents: sumOf(ledger.entries, 'incentive', true),
-    owedCents: ledger.position.settledParts.incentiveOwed.amountCents,
-    earned: ledger.entries.filter((entry) => entry.book === 'incentive' && entry.basis === 'memo'),
-  };
-}
-
 /** Loan, mortgage insurance, incentive and costs as they stand today. */
 export function viewMoney(deps: Pick<Deps, 'db' | 'clock'>, householdId: string): MoneyView {
   const household = ledgerOf(deps, householdId);
@@ -75,7 +65,7 @@ export function viewMoney(deps: Pick<Deps, 'db' | 'clock'>, householdId: string)
   return {
     loan: loanView(household),
     insurance: insuranceView(household),
-    incentive: incentiveView(household),
+    incentive: viewIncentive(household),
     costs,
     costsCents: toDate(costs.filter((cost) => !isIncome(cost))),
     incomeCents: toDate(costs.filter(isIncome)),

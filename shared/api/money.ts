@@ -58,7 +58,28 @@ export const moneyView = z.object({
       earnedCents: centsSchema,
       receivedCents: centsSchema,
       owedCents: centsSchema,
-      earned: z.array(entrySchema),
+      /** By cycle, oldest first: what it earned, which receipts pay it (`stated`: the receipt says so; else matched oldest first), what is owed. */
+      cycles: z.array(
+        z.object({
+          from: daySchema,
+          earned: entrySchema,
+          paidBy: z.array(
+            z.object({ receipt: z.string(), on: daySchema, amountCents: centsSchema, stated: z.boolean() }),
+          ),
+          owedCents: centsSchema,
+        }),
+      ),
+      /** Received and paying no earned cycle: ahead, or too much. */
+      unmatchedCents: centsSchema,
+      /** What is left of the term from today; null once it is over. The figure is an estimate. */
+      left: z.nullable(
+        z.object({
+          lastDay: daySchema,
+          months: z.int(),
+          expectedWh: z.nullable(whSchema),
+          figure: z.nullable(figureSchema),
+        }),
+      ),
     }),
   ),
   costs: z.array(costSchema),

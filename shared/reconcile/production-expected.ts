@@ -1,11 +1,11 @@
 import { sayCount, sayDay, sayKwh } from '../ledger/say.ts';
 import { isComplete } from '../metering/cycle-energy.ts';
+import { estimateOf, expectedWh } from '../metering/expected-production.ts';
 import { addDays, type Day } from '../units/day.ts';
 import { kwhText, sumWh, type Wh, wh } from '../units/energy.ts';
 import { Exact } from '../units/rate.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
-import { estimateOf, expectedWh } from './expected-production.ts';
 import { compareWh, type Difference, nothingToCompare } from './make-check.ts';
 
 /** Weather moves a month's production by up to a quarter either way (common practice, no source). */

@@ -49,8 +49,10 @@ describe('money', () => {
     expect(money.loan?.paidCents).toBe(-(position.sums.all.loan?.amountCents ?? 0));
     expect(money.insurance?.avoidedCents).toBe(position.sums.all.insurance?.amountCents);
     expect(money.incentive?.earnedCents).toBe(
-      money.incentive?.earned.reduce((sum, entry) => sum + entry.amountCents, 0),
+      money.incentive?.cycles.reduce((sum, { earned }) => sum + earned.amountCents, 0),
     );
+    const owed = money.incentive?.cycles.reduce((sum, cycle) => sum + cycle.owedCents, 0) ?? 0;
+    expect(owed - (money.incentive?.unmatchedCents ?? 0)).toBe(money.incentive?.owedCents);
     expect(money.costsCents).toBe(540_000);
     expect(money.loan?.payoff.amountCents).toBe(money.loan?.payoffCents);
     const worked = everyWorking(money);

@@ -1,11 +1,9 @@
 import type { ReactNode } from 'react';
 
+export type FactsRow = { label: ReactNode; value: ReactNode; hint?: ReactNode; total?: boolean };
+
 /** Ruled label and value rows. `total` draws the double rule. */
-export function FactsList({
-  rows,
-}: {
-  rows: { label: ReactNode; value: ReactNode; hint?: ReactNode; total?: boolean }[];
-}) {
+export function FactsList({ rows }: { rows: FactsRow[] }) {
   return (
     <dl className="mt-2 border-t-2 border-ink">
       {rows.map((row, index) => (

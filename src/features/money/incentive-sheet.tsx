@@ -1,17 +1,18 @@
 import { useState } from 'react';
 import type { MoneyView } from '#shared/api/money.ts';
-import { decimal, fullDate, money } from '#src/lib/format.ts';
+import { addDays } from '#shared/units/day.ts';
+import { kwhText } from '#shared/units/energy.ts';
+import { cycleRangeWithYear, decimal, fullDate, kwh, money } from '#src/lib/format.ts';
 import { Button } from '#src/ui/button.tsx';
-import { Field } from '#src/ui/field.tsx';
 import { MoneyFigure } from '#src/ui/figure.tsx';
 import { Money } from '#src/ui/money.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
-import { FactsList } from './facts-list.tsx';
-import { type ReceiptValues, readReceipt } from './money-values.ts';
-import { RecordDialog } from './record-dialog.tsx';
+import { FactsList, type FactsRow } from './facts-list.tsx';
+import { IncentiveCycles } from './incentive-cycles.tsx';
+import { ReceiptDialog } from './receipt-dialog.tsx';
 import { RemoveButton } from './remove-button.tsx';
 
-type ReceiptBody = Extract<ReturnType<typeof readReceipt>, { ok: true }>['body'];
+type Incentive = NonNullable<MoneyView['incentive']>;
 
 /** The production incentive: earned by the meter, received as cash, the rest owed. */
 export function IncentiveSheet({
@@ -20,7 +21,7 @@ export function IncentiveSheet({
   canEdit,
   today,
 }: {
-  incentive: NonNullable<MoneyView['incentive']>;
+  incentive: Incentive;
   householdId: string;
   canEdit: boolean;
   today: string;
@@ -40,6 +41,18 @@ export function IncentiveSheet({
           { label: 'Owed', value: <Money cents={incentive.owedCents} />, total: true },
         ]}
       />
+      {incentive.unmatchedCents !== 0 && (
+        <p className="hint mt-2">
+          {money(incentive.unmatchedCents)} of what came pays no cycle that has earned anything: paid ahead, too much,
+          or for days that are on no statement yet.
+        </p>
+      )}
+      <h3 className="mt-6">Left of the term</h3>
+      {incentive.left === null ? (
+        <p className="border-y border-rule py-2 text-soft">The term is over.</p>
+      ) : (
+        <FactsList rows={leftRows(incentive.left)} />
+      )}
       {separate && (
         <>
           <h3 className="mt-6">Received</h3>
@@ -52,6 +65,7 @@ export function IncentiveSheet({
                 <span>
                   {fullDate(receipt.on)}
                   {receipt.note && <span className="hint">, {receipt.note}</span>}
+                  {coverWords(receipt) && <span className="hint block">{coverWords(receipt)}</span>}
                 </span>
                 <span className="ml-auto flex items-baseline gap-4">
                   {canEdit && (
@@ -78,71 +92,29 @@ export function IncentiveSheet({
           )}
         </>
       )}
-      {incentive.earned.length > 0 && (
-        <details className="mt-5">
-          <summary className="link inline-flex min-h-11 cursor-pointer items-center">Earned, cycle by cycle</summary>
-          <ul className="border-t border-rule">
-            {incentive.earned.map((entry) => (
-              <li key={entry.id} className="flex items-baseline justify-between gap-5 border-b border-rule py-2">
-                <span>
-                  {fullDate(entry.date)}
-                  {entry.estimated && <span className="hint">, an estimate</span>}
-                </span>
-                <MoneyFigure title={entry.label} cents={entry.amountCents} working={entry.working} />
-              </li>
-            ))}
-          </ul>
-        </details>
-      )}
-      {recording && (
-        <RecordDialog<ReceiptValues, ReceiptBody>
-          title="Record money received"
-          hint="As it came: by cheque or transfer, on the day it came."
-          householdId={householdId}
-          defaults={{ on: today, amountCents: '', note: '', from: '', to: '', quantityWh: '' }}
-          read={readReceipt}
-          change={(body) => ({ kind: 'receipt', body })}
-          onClose={() => setRecording(false)}
-        >
-          {({ register, formState: { errors } }) => (
-            <>
-              <Field label="Received on" type="date" error={errors.on?.message} {...register('on')} />
-              <Field
-                label="Amount"
-                unit="$"
-                inputMode="decimal"
-                error={errors.amountCents?.message}
-                {...register('amountCents')}
-              />
-              <div className="grid gap-x-6 sm:grid-cols-2">
-                <Field
-                  label="Covers from"
-                  type="date"
-                  hint="as its letter says"
-                  error={errors.from?.message}
-                  {...register('from')}
-                />
-                <Field
-                  label="to and with"
-                  type="date"
-                  hint="the last day paid for"
-                  error={errors.to?.message}
-                  {...register('to')}
-                />
-              </div>
-              <Field
-                label="kWh paid on"
-                unit="kWh"
-                inputMode="decimal"
-                hint="if it says so"
-                error={errors.quantityWh?.message}
-                {...register('quantityWh')}
-              />
-              <Field label="Note" maxLength={200} {...register('note')} />
-            </>
-          )}
-        </RecordDialog>
-      )}
+      {incentive.cycles.length > 0 && <IncentiveCycles cycles={incentive.cycles} separate={separate} />}
+      {recording && <ReceiptDialog householdId={householdId} today={today} onClose={() => setRecording(false)} />}
     </Sheet>
   );
+}
+
+/** "covers 1 Jul – 30 Sep 2026, 3,120 kWh"; null where the receipt says neither. */
+function coverWords({ from, to, quantityWh }: Incentive['facts']['received'][number]): string | null {
+  const days = from === null || to === null ? null : `covers ${cycleRangeWithYear(from, addDays(to, -1))}`;
+  const energy = quantityWh === null ? null : `${decimal(kwhText(quantityWh))} kWh`;
+  const said = [days, energy].filter((part) => part !== null);
+  return said.length === 0 ? null : said.join(', ');
+}
+
+function leftRows({ lastDay, months, expectedWh, figure }: NonNullable<Incentive['left']>): FactsRow[] {
+  const rows: FactsRow[] = [
+    { label: 'Last day', value: fullDate(lastDay) },
+    { label: 'Months left, this one counted', value: String(months) },
+  ];
+  if (figure === null || expectedWh === null) return rows;
+  const hint = `An estimate: ${kwh(expectedWh)} kWh by the installer’s figures, aged. Before income tax.`;
+  const value = (
+    <MoneyFigure title="Still to be earned, an estimate" cents={figure.amountCents} working={figure.working} />
+  );
+  return [...rows, { label: 'Still to be earned', value, hint }];
 }

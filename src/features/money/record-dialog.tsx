@@ -1,6 +1,7 @@
-import type { ReactNode } from 'react';
+import { type ReactNode, useState } from 'react';
 import { type DefaultValues, type FieldValues, type UseFormReturn, useForm } from 'react-hook-form';
-import { type Reading, refusalLines, resolverOf } from '#src/lib/form.ts';
+import { type Reading, resolverOf } from '#src/lib/form.ts';
+import { showRefusal } from '#src/lib/form-faults.ts';
 import { Button } from '#src/ui/button.tsx';
 import { Dialog } from '#src/ui/dialog.tsx';
 import { ErrorSummary } from '#src/ui/field.tsx';
@@ -28,15 +29,21 @@ export function RecordDialog<V extends FieldValues, B>({
   children: (form: UseFormReturn<V>) => ReactNode;
 }) {
   const save = useMoneyChange(householdId);
+  const [refused, setRefused] = useState<string[]>([]);
   const form = useForm<V>({ defaultValues: defaults, resolver: resolverOf(read), mode: 'onTouched' });
   const submit = form.handleSubmit((values) => {
     const reading = read(values);
-    if (reading.ok) save.mutate(change(reading.body), { onSuccess: onClose });
+    if (!reading.ok) return;
+    setRefused([]);
+    save.mutate(change(reading.body), {
+      onSuccess: onClose,
+      onError: (error) => setRefused(showRefusal<V>(error, form.setError, (field) => field in form.getValues())),
+    });
   });
   return (
     <Dialog title={title} onClose={onClose}>
       {hint && <p className="hint">{hint}</p>}
-      <ErrorSummary errors={save.isError ? refusalLines(save.error) : []} title="Not recorded" />
+      <ErrorSummary errors={refused.map((text) => ({ text }))} title="Not recorded" />
       <form noValidate onSubmit={submit}>
         {children(form)}
         <p className="mt-6">
