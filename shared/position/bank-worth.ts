@@ -1,7 +1,8 @@
+import { wholeBalance } from '../settlement/bank-state.ts';
 import type { PlanBank, RatePlan } from '../settlement/plan.ts';
 import { priceAmount } from '../settlement/price.ts';
-import { compare, exactText, plus, priced, type Qty, qtyOfText, rateOf, roundedCents } from '../settlement/quantity.ts';
-import type { Opening, OpeningBalance } from '../settlement/settlement.ts';
+import { compare, exactText, priced, type Qty, rateOf, roundedCents } from '../settlement/quantity.ts';
+import type { Opening } from '../settlement/settlement.ts';
 import type { Day } from '../units/day.ts';
 
 /**
@@ -40,13 +41,4 @@ function worthOfKwh(bank: PlanBank, plan: RatePlan, held: Qty, from: Day, to: Da
 function isIncentiveOnly(bank: PlanBank, plan: RatePlan): boolean {
   const fed = plan.credits.filter((credit) => credit.to === bank.id);
   return bank.unit === 'USD' && fed.length > 0 && fed.every((credit) => credit.kind === 'incentive');
-}
-
-function wholeBalance(balance: OpeningBalance): Qty {
-  if (typeof balance === 'string') return qtyOfText(balance);
-  const parts =
-    'lots' in balance && Array.isArray(balance.lots)
-      ? balance.lots.map((lot) => lot.amount)
-      : Object.values(balance).map(String);
-  return parts.reduce<Qty>((sum, part) => plus(sum, qtyOfText(part)), 0);
 }

@@ -17,7 +17,7 @@ import { loansOf, owedOn } from './loans.ts';
 import { type MonthlyEnergy, monthlyEnergy } from './monthly-energy.ts';
 import { energyOfPeriods, type Period, type PeriodEnergy, periodsAfter } from './periods.ts';
 import type { PositionPoint, ProjectedMonth, Projection } from './position.ts';
-import { type ProjectedBill, projectBills } from './projected-bills.ts';
+import { type BillSides, billSides, type ProjectedBill, projectBills } from './projected-bills.ts';
 
 export type ProjectionFacts = Pick<
   HouseholdFacts,
@@ -56,6 +56,7 @@ export type ProjectionParts = {
   energy: MonthlyEnergy;
   periods: Period[];
   energies: PeriodEnergy[];
+  sides: BillSides;
   bills: ProjectedBill[];
   /** What each month's production brings and costs beside the bill. */
   made: MadeMoney[];
@@ -111,13 +112,15 @@ export function projectParts(
     const period = periods[at];
     return changes.energy && period ? changes.energy(made, period) : made;
   });
-  const settled = projectBills(facts, changes, periods, energies, basis.opening);
+  const sides = billSides(facts, changes, periods);
+  if (sides === null) return { ok: false, why: 'There is no rate plan for the months to come.' };
+  const settled = projectBills(sides, energies, basis.opening);
   if (!settled.ok) return settled;
   const made = periods.map((period, at) =>
     moneyOfProduction(facts, changes.endsOn, period, energies[at]?.productionWh ?? ZERO_WH),
   );
   const months = monthsOf(basis, facts, changes, periods, settled.bills, made);
-  return { ok: true, facts, energy, periods, energies, bills: settled.bills, made, months };
+  return { ok: true, facts, energy, periods, energies, sides, bills: settled.bills, made, months };
 }
 
 function monthsOf(

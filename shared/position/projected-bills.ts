@@ -1,15 +1,14 @@
 import { dcWattsOf } from '../facts/dc-rating.ts';
 import type { PlanInForce } from '../facts/household.ts';
+import type { CompiledUsage } from '../settlement/compile-banks.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
-import { type SettledAmounts, settleAmounts } from '../settlement/settle.ts';
 import { type CycleUsage, EMPTY_OPENING, type Opening } from '../settlement/settlement.ts';
 import { planWithoutRoof } from '../settlement/without-roof.ts';
 import { type Cents, cents } from '../units/cents.ts';
-import { ZERO_WH } from '../units/energy.ts';
 import { Exact } from '../units/rate.ts';
-import { bankWorth } from './bank-worth.ts';
 import type { BasisFacts } from './basis.ts';
+import { type BillSide, billSide, settleSide } from './bill-side.ts';
 import type { Changes } from './changes.ts';
 import { escalatePlan } from './escalate.ts';
 import type { Period, PeriodEnergy } from './periods.ts';
@@ -22,85 +21,61 @@ export type ProjectedBills = { ok: true; bills: ProjectedBill[] } | { ok: false;
 /** A plan in a year to come: with the roof and without it. */
 type YearPlans = { withRoof: RatePlan; withoutRoof: RatePlan };
 
-/**
- * Settles every month with the roof and without it, under the plan in force with its prices raised by whole years; both carry their own banks. Months
- * that begin on or after the day the house is sold have no bill, and the banks are lost with the account.
- */
-export function projectBills(
+/** Both sides of the bills to come: what is settled again for every resample. Months on or after the day the house is sold are left out. */
+export type BillSides = { roof: BillSide; plain: BillSide };
+
+/** Makes both sides ready: the plan in force in each month, its prices raised by whole years. Null where no plan is. */
+export function billSides(
   facts: BasisFacts,
   changes: Pick<Changes, 'plan' | 'endsOn'>,
   periods: readonly Period[],
-  energies: readonly PeriodEnergy[],
-  opening: Opening,
-): ProjectedBills {
+): BillSides | null {
   const planOf = planYears(facts);
-  const kW = powerOf(facts.house);
-  const incentiveApart = facts.incentive !== null;
-  let withRoof: Opening = { ...opening, balanceCents: null };
-  let without: Opening = EMPTY_OPENING;
-  const bills: ProjectedBill[] = [];
-  for (const [at, period] of periods.entries()) {
-    if (changes.endsOn !== null && period.from >= changes.endsOn) {
-      bills.push(NO_BILL);
-      continue;
-    }
-    const energy = energies[at];
+  const roof: { period: Period; plan: RatePlan }[] = [];
+  const plain: { period: Period; plan: RatePlan }[] = [];
+  for (const period of periods) {
+    if (changes.endsOn !== null && period.from >= changes.endsOn) break;
     const inForce = planFor(facts.plans, period.from);
-    if (!inForce || !energy) return { ok: false, why: 'There is no rate plan for the months to come.' };
-    const years = planOf(inForce, Math.floor(period.index / 12));
-    const plan = changes.plan ? changes.plan(years.withRoof, period) : years.withRoof;
-    const usage = usageOf(period, energy, kW);
-    const roof = settleAmounts(plan, withRoof, usage);
-    const plain = settleAmounts(years.withoutRoof, without, {
-      ...usage,
-      importWh: energy.useWh,
-      exportWh: ZERO_WH,
-      productionWh: ZERO_WH,
-    });
-    if (!roof.ok || !plain.ok) {
-      const refused = !roof.ok ? roof.problem : !plain.ok ? plain.problem : null;
-      const said = refused?.faults[0]?.message ?? refused?.detail ?? '';
-      return { ok: false, why: `The rate plan cannot be settled on monthly figures. ${said}`.trim() };
-    }
-    withRoof = roof.value.closing;
-    without = plain.value.closing;
-    const asItWas = electricDue(roof.value.settlement, incentiveApart);
-    const avoided = electricDue(plain.value.settlement, false) - asItWas;
-    const bank = bankWorth(plan, withRoof, period.from, period.to);
-    bills.push({ avoidedCents: cents(avoided), bankCents: cents(bank) });
+    if (!inForce) return null;
+    const plans = planOf(inForce, Math.floor(period.index / 12));
+    roof.push({ period, plan: changes.plan ? changes.plan(plans.withRoof, period) : plans.withRoof });
+    plain.push({ period, plan: plans.withoutRoof });
   }
-  return { ok: true, bills };
+  const kW = powerOf(facts.house);
+  return { roof: billSide(roof, kW, facts.incentive !== null), plain: billSide(plain, kW, false) };
 }
 
-const NO_BILL: ProjectedBill = { avoidedCents: cents(0), bankCents: cents(0) };
-
-function usageOf(period: Period, energy: PeriodEnergy, kW: CycleUsage['kW']): CycleUsage {
+/** Settles every month with the roof and without it; both carry their own banks. A house that is sold has no bill, and its banks are lost. */
+export function projectBills(sides: BillSides, energies: readonly PeriodEnergy[], opening: Opening): ProjectedBills {
+  const roof = settleSide(sides.roof, { ...opening, balanceCents: null }, (at) => usageWithRoof(energies[at]));
+  if (!roof.ok) return refused(roof.why);
+  const plain = settleSide(sides.plain, EMPTY_OPENING, (at) => usageWithoutRoof(energies[at]));
+  if (!plain.ok) return refused(plain.why);
   return {
-    from: period.from,
-    to: period.to,
-    importWh: energy.importWh,
-    exportWh: energy.exportWh,
-    productionWh: energy.productionWh,
-    loadWh: energy.useWh,
-    byPeriod: null,
-    netted: {},
-    kW,
-    payments: [],
-    finalBill: false,
-    intervals: null,
+    ok: true,
+    bills: energies.map((_, at) => ({
+      avoidedCents: cents((plain.value.dueCents[at] ?? 0) - (roof.value.dueCents[at] ?? 0)),
+      bankCents: cents(roof.value.bankCents[at] ?? 0),
+    })),
   };
 }
 
-/** Current charges in due less what is paid out beside the bill; the incentive apart where it has a book of its own. */
-function electricDue(settlement: SettledAmounts['settlement'], incentiveApart: boolean): number {
-  let due = 0;
-  for (const line of settlement.lines) {
-    if (line.inDue && !(incentiveApart && line.kind === 'incentive')) due += line.amountCents;
-  }
-  for (const payout of settlement.payouts) {
-    if (!(incentiveApart && payout.kind === 'incentive')) due -= payout.amountCents;
-  }
-  return due;
+function refused(why: string): ProjectedBills {
+  return { ok: false, why: `The rate plan cannot be settled on monthly figures. ${why}`.trim() };
+}
+
+const NO_USE: CompiledUsage = { importWh: 0, exportWh: 0, productionWh: 0, loadWh: 0 };
+
+export function usageWithRoof(energy: PeriodEnergy | undefined): CompiledUsage {
+  if (energy === undefined) return NO_USE;
+  const { importWh, exportWh, productionWh, useWh } = energy;
+  return { importWh, exportWh, productionWh, loadWh: useWh };
+}
+
+/** Without a roof everything used is bought. */
+export function usageWithoutRoof(energy: PeriodEnergy | undefined): CompiledUsage {
+  if (energy === undefined) return NO_USE;
+  return { importWh: energy.useWh, exportWh: 0, productionWh: 0, loadWh: energy.useWh };
 }
 
 function planYears(facts: BasisFacts): (inForce: PlanInForce, years: number) => YearPlans {

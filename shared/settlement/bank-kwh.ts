@@ -1,6 +1,7 @@
 import { type BankState, enter, type Pocket, take } from './bank-state.ts';
 import { type Cycle, flowOf, type NettedFlow } from './cycle-flows.ts';
 import type { LessBank } from './energy-figures.ts';
+import type { PreparedBank } from './prepare.ts';
 import { compare, greater, lesser, minus, plus, type Qty, roundToWhole, scaled, times } from './quantity.ts';
 import { refuse } from './refused.ts';
 
@@ -18,7 +19,7 @@ export function moveKwhBank(cycle: Cycle, state: BankState, taken: TakenByCharge
   const flow = flowOf(cycle, netting);
   const life = bank.lotLife?.cycles ?? null;
   for (const pocket of state.pockets) {
-    const earned = earnedKwh(cycle, state, sideOf(flow, pocket, 'export', bank.label));
+    const earned = earnedKwh(cycle, state.prepared, sideOf(flow, pocket, 'export', bank.label));
     if (bank.sameCycle) enter(pocket, earned, life, cycle.to);
     else pocket.waiting = earned;
   }
@@ -31,8 +32,8 @@ export function moveKwhBank(cycle: Cycle, state: BankState, taken: TakenByCharge
     payOtherPeriods(state, flow.byPeriod, taken);
 }
 
-function earnedKwh(cycle: Cycle, state: BankState, exported: Qty): Qty {
-  const { bank, ratio } = state.prepared;
+/** What a kWh bank earns for an export, by its ratio. */
+export function earnedKwh(cycle: Cycle, { bank, ratio }: PreparedBank, exported: Qty): Qty {
   if (bank.ratio !== '1' && cycle.prepared.plan.rounding.kWh === 'whole')
     return roundToWhole(times(exported, ratio), 1000);
   return scaled(exported, ratio);

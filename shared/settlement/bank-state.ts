@@ -31,10 +31,10 @@ export function openBank(prepared: PreparedBank, plan: PreparedPlan, opening: Op
   const open = (period: string | null, amount: Held) => pocketOf(period, amount, bank.unit, life, from);
   if (!bank.byPeriod) {
     if (typeof held === 'string') return { prepared, pockets: [open(null, held)] };
-    return { prepared, pockets: [open(null, inLots(held) && life !== null ? held.lots : qtyText(sumOf(held)))] };
+    return { prepared, pockets: [open(null, inLots(held) && life !== null ? held.lots : qtyText(wholeBalance(held)))] };
   }
   if (typeof held === 'string' || inLots(held)) {
-    if (compare(sumOf(held), 0) !== 0)
+    if (compare(wholeBalance(held), 0) !== 0)
       refuse(`${bank.label} keeps a balance for each period: say how much of its opening belongs to each.`);
     return { prepared, pockets: [...plan.period.keys()].map((period) => open(period, '0')) };
   }
@@ -59,7 +59,7 @@ function inLots(held: Exclude<OpeningBalance, string>): held is { lots: Lot[] } 
 }
 
 /** A balance as one sum: what a bank takes over that was kept by period or in lots under an earlier plan. */
-function sumOf(held: OpeningBalance): Qty {
+export function wholeBalance(held: OpeningBalance): Qty {
   if (typeof held === 'string') return qtyOfText(held);
   if (inLots(held)) return sumLots(held.lots);
   let sum: Qty = 0;

@@ -23,7 +23,8 @@ export function termPieces(cycle: Cycle, item: EnergyItem, term: { firstDay: Day
   });
 }
 
-function daysInBoth(a: { from: Day; to: Day }, b: { from: Day; to: Day }): number {
+/** Days that two spans share. */
+export function daysInBoth(a: { from: Day; to: Day }, b: { from: Day; to: Day }): number {
   const [, from] = [a.from, b.from].sort();
   const [to] = [a.to, b.to].sort();
   return from !== undefined && to !== undefined && from < to ? daysBetween(from, to) : 0;

@@ -11,7 +11,7 @@ import { refuse } from './refused.ts';
  * The tiers of a part: upper bounds in thousandths of kWh over `scale`. `scale` is 1 save for exact limits per cycle in a split cycle, where it is
  * the cycle's days so that nothing is divided before the price.
  */
-type Bounds = { upper: readonly Qty[]; texts: readonly Qty[]; label: string; scale: number; limits: Limits };
+export type Bounds = { upper: readonly Qty[]; texts: readonly Qty[]; label: string; scale: number; limits: Limits };
 
 /**
  * Runs an item's kWh of a part through its tiers, a piece for each tier also at zero. Limits per day go by the part's days, limits per cycle by
@@ -62,7 +62,8 @@ export function tierPieces(
   return pieces;
 }
 
-function boundsOf(cycle: Cycle, part: Part, limits: Limits): Bounds {
+/** The tiers of a part, from the limits in force. */
+export function boundsOf(cycle: Cycle, part: Part, limits: Limits): Bounds {
   const whole = cycle.prepared.plan.rounding.limits === 'whole';
   if (limits.per === 'day') {
     const scaled = limits.limits.map((limit) => times(limit, part.days));
@@ -79,7 +80,7 @@ function boundsOf(cycle: Cycle, part: Part, limits: Limits): Bounds {
 }
 
 /** The kWh of a tier over the shares' divisor and the bounds' scale. What is below the first limit may be negative, as a misread register is. */
-function kWhInTier(total: Qty, bounds: Bounds, tier: number, d: Qty): Qty {
+export function kWhInTier(total: Qty, bounds: Bounds, tier: number, d: Qty): Qty {
   const upper = bounds.upper[tier - 1];
   const lower = bounds.upper[tier - 2];
   const reached = upper === undefined ? total : lesser(total, times(upper, d));

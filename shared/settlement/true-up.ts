@@ -64,7 +64,8 @@ export function trueUpBank(cycle: Cycle, state: BankState, usage: Usage | null):
   return result;
 }
 
-function keptOf(cycle: Cycle, item: PreparedTrueUp, usage: Usage | null): Qty {
+/** What a true-up leaves in the bank. */
+export function keptOf(cycle: Cycle, item: PreparedTrueUp, usage: Usage | null): Qty {
   const { keep } = item.trueUp;
   if (!keep) return 0;
   if ('amount' in keep || !usage) return item.keep;
