@@ -24,6 +24,30 @@ const LABELS: Record<BillAvoidedMethod, string> = {
   yearlyMeanBefore: 'Bill avoided, on the mean use of the year before the roof',
 };
 
+/**
+ * What credit sent to other service points took off their bills in a cycle, as the owner states it from those bills. Without that nothing is counted:
+ * its worth there is not on this bill.
+ */
+export function sharedCreditEntry(to: Day, valueCents: Cents): UnplacedEntry {
+  return {
+    id: `shared-credit-${to}`,
+    date: to,
+    book: 'billAvoided',
+    kind: 'sharedCredit',
+    label: 'Saved on the bills of other service points',
+    amountCents: valueCents,
+    basis: 'avoided',
+    estimated: false,
+    working: {
+      words: `${sayMoney(valueCents)} as printed on the other bill`,
+      formula: 'printed',
+      inputs: [usdInput('printed', 'As printed on the other bill', valueCents, stated('The other bill'))],
+      unit: 'USD',
+      basis: 'entered',
+    },
+  };
+}
+
 /** The cycle's entry in the first book: what the roof kept off the bill, dated on the cycle's `to`. */
 export function billAvoidedEntry(input: BillAvoidedInput): UnplacedEntry {
   const estimated = input.estimated || input.method !== 'measured';

@@ -1,4 +1,4 @@
-import { billAvoidedEntry } from '../books/bill-avoided.ts';
+import { billAvoidedEntry, sharedCreditEntry } from '../books/bill-avoided.ts';
 import type { Entry, UnplacedEntry } from '../books/book.ts';
 import { costEntries } from '../books/costs.ts';
 import { type IncentiveCycle, incentiveEarned, incentiveReceived } from '../books/incentive.ts';
@@ -90,6 +90,8 @@ function completeWh(figure: EnergyFigure | null): Wh | null {
 function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCycle[], today: Day): UnplacedEntry[] {
   const entries: UnplacedEntry[] = [];
   for (const { cycle } of assembled) {
+    const values = cycle.sentOut.flatMap(({ valueCents }) => (valueCents === null ? [] : [valueCents]));
+    if (values.length > 0) entries.push(sharedCreditEntry(cycle.to, sumCents(values)));
     if (cycle.withoutRoof === null) continue;
     entries.push(
       billAvoidedEntry({

@@ -1,4 +1,5 @@
-import type { PrintedLine, RegisterRead, Statement } from '../facts/papers.ts';
+import type { HouseFacts } from '../facts/house.ts';
+import type { PrintedLine, ReadChannel, RegisterRead, Statement } from '../facts/papers.ts';
 import { splitCents } from '../units/cents.ts';
 import { type Day, daysBetween } from '../units/day.ts';
 
@@ -19,7 +20,12 @@ export type CyclePaper = {
   readsFit: boolean;
   /** Printed lines, shared by days in a split. */
   lines: PrintedLine[];
+  /** Registers that other service points' reads belong to: `apart` are not in `reads`, `joined` are, under an aggregation that nets together. */
+  elsewhere: { apart: ReadonlySet<ReadChannel>; joined: ReadonlySet<ReadChannel> };
 };
+
+/** What of the house says which meters count, and from when. */
+export type HouseOfPapers = Pick<HouseFacts, 'switchOn' | 'meters' | 'aggregation'>;
 
 /**
  * The statements in force, by date: the highest revision of each id. Of two statements that end on one day the one entered last stands, since a
@@ -41,18 +47,26 @@ export function statementsInForce(statements: readonly Statement[]): Statement[]
 
 /**
  * Cycles `[from, to)` from the statements in force. Those that end by the switch-on day are not cycles; one that holds the day is split there, by
- * the register reads of that day where every channel it reads has one, else by days (ledger.md §2).
+ * the register reads of that day where every channel it reads has one, else by days (ledger.md §2). Reads of meters at other service points count
+ * only where the utility nets them together with the house's.
  */
-export function cyclePapers(inForce: readonly Statement[], switchOn: Day | null): CyclePaper[] {
+export function cyclePapers(inForce: readonly Statement[], house: HouseOfPapers): CyclePaper[] {
+  const { switchOn } = house;
   const papers: CyclePaper[] = [];
+  const others = new Set(house.meters.filter((meter) => meter.servicePoint !== null).map((meter) => meter.id));
+  const together = house.aggregation === 'netTogether';
   inForce.forEach((statement, at) => {
     if (switchOn !== null && statement.to <= switchOn) return;
     const from = switchOn !== null && statement.from < switchOn ? switchOn : statement.from;
     const days = daysBetween(from, statement.to);
     const of = daysBetween(statement.from, statement.to);
     const split = from === statement.from ? null : { days, of };
-    const own = split === null ? statement.reads : statement.reads.filter((read) => read.from >= from);
-    const channels = new Set(statement.reads.map((read) => read.channel));
+    const away = others.size === 0 ? [] : statement.reads.filter((read) => others.has(read.meter));
+    const counted =
+      away.length === 0 || together ? statement.reads : statement.reads.filter((read) => !away.includes(read));
+    const own = split === null ? counted : counted.filter((read) => read.from >= from);
+    const channels = new Set(counted.map((read) => read.channel));
+    const awayOf = new Set(away.map((read) => read.channel));
     const readsFit =
       split === null || [...channels].every((c) => own.some((read) => read.channel === c && read.from === from));
     papers.push({
@@ -63,13 +77,16 @@ export function cyclePapers(inForce: readonly Statement[], switchOn: Day | null)
       statement,
       previous: inForce[at - 1] ?? null,
       split,
-      reads: readsFit ? own : statement.reads,
+      reads: readsFit ? own : counted,
       readsFit,
       lines: split === null ? statement.lines : statement.lines.map((line) => shareLine(line, days, of)),
+      elsewhere: together ? { apart: NO_CHANNELS, joined: awayOf } : { apart: awayOf, joined: NO_CHANNELS },
     });
   });
   return papers;
 }
+
+const NO_CHANNELS: ReadonlySet<ReadChannel> = new Set();
 
 /** The cycle's share of a printed line, by days. Its quantity is left out: nothing printed says it. */
 function shareLine(line: PrintedLine, days: number, of: number): PrintedLine {

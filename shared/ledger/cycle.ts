@@ -1,11 +1,12 @@
 import * as z from 'zod/mini';
 import { entrySchema } from '../books/book.ts';
-import { statementSchema } from '../facts/papers.ts';
+import { readChannel, statementSchema } from '../facts/papers.ts';
 import { checkSchema } from '../reconcile/check.ts';
 import { settlementSchema } from '../settlement/settlement.ts';
 import { centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
 import { whSchema } from '../units/energy.ts';
+import { decimalText } from '../units/rate-text.ts';
 import { workingSchema } from '../working.ts';
 
 /** An energy of a cycle and how it is known. */
@@ -30,6 +31,28 @@ export const cycleEnergy = z.object({
   use: z.nullable(energyFigure),
 });
 export type CycleEnergy = z.infer<typeof cycleEnergy>;
+
+/** Credit that left a bank for other service points in a cycle, as the statement states it. */
+export const sentOutSchema = z.object({
+  bank: z.string(),
+  unit: z.enum(['kWh', 'USD']),
+  amount: decimalText,
+  /** What it took off the other bills, as printed there; null when not stated. */
+  valueCents: z.nullable(centsSchema),
+});
+export type SentOut = z.infer<typeof sentOutSchema>;
+
+/** What one meter of several saw of a channel. `counted` is false for a meter of another service point that is billed by itself. */
+export const meterEnergy = z.object({
+  meter: z.string(),
+  /** The name the house gives it; null where it is not among its meters. */
+  label: z.nullable(z.string()),
+  channel: readChannel,
+  servicePoint: z.nullable(z.string()),
+  counted: z.boolean(),
+  figure: energyFigure,
+});
+export type MeterEnergy = z.infer<typeof meterEnergy>;
 
 /** `open`: something is missing. `balanced`: every check agrees. `differs`: one differs. `accepted`: all that differ are accepted. */
 export const cycleState = z.enum(['open', 'balanced', 'differs', 'accepted']);
@@ -79,6 +102,10 @@ export const cycleSchema = z.object({
   split: z.boolean(),
   statement: statementSchema,
   energy: cycleEnergy,
+  /** Meter by meter, where a channel has more than one. */
+  meters: z.array(meterEnergy),
+  /** Credit sent to other service points, by which `settlement.banks` close lower than their moves alone say. */
+  sentOut: z.array(sentOutSchema),
   /** What the bill should have been on the metered energy, from the bank as the ledger carries it. Null when not computable; `why` says so. */
   settlement: z.nullable(settlementSchema),
   whyNotSettled: z.nullable(z.string()),

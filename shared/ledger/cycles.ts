@@ -1,4 +1,5 @@
 import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
+import { energyByMeter } from '../metering/by-meter.ts';
 import { meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
 import { estimatedRuns } from '../metering/estimated-reads.ts';
 import { indexIntervals } from '../metering/interval-index.ts';
@@ -15,7 +16,8 @@ import { type CyclePaper, cyclePapers, statementsInForce } from './cycle-papers.
 import { facingLines } from './facing.ts';
 import { type LearnedRates, NOTHING_LEARNED, withLearnedRates } from './learned-rates.ts';
 import { nameCauses } from './name-causes.ts';
-import { firstOpening, nextOpening, type SettledCycle, settleOne, usageOf } from './settle-cycle.ts';
+import { sentOutOf } from './sent-out.ts';
+import { firstOpening, nextOpening, printedBankId, type SettledCycle, settleOne, usageOf } from './settle-cycle.ts';
 import { usageBeforeRoof } from './use-before.ts';
 import { utilityBank } from './utility-bank.ts';
 import { billWithoutRoof } from './without-roof.ts';
@@ -81,6 +83,10 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
         split: paper.split !== null,
         statement: paper.statement,
         energy: metered.energy,
+        meters: energyByMeter(paper, facts.house.meters),
+        sentOut: sentOutOf(paper.statement, (printed) =>
+          settled.plan === null ? null : printedBankId(printed, settled.plan.plan),
+        ),
         settlement: settled.ours?.settlement ?? null,
         whyNotSettled: settled.why,
         planFrom: settled.plan?.from ?? null,

@@ -15,7 +15,8 @@ export const REPORT_VERSION = 1;
  * - `cycles`: each with its dates, `days`, `state` (open, balanced, differs, accepted), `provisional`, `split`, `energy`
  *   (import, export, production, selfUse, use), `lines` (the bill as it should have been: component, kind, label, quantity, unit,
  *   rate, amountCents, inDue, working; null where it cannot be settled, `whyNotSettled` says why), `facing` (billed beside ours), `banks` (open,
- *   earned, used, expired, paid, close), `payouts`, `billedDueCents`, `oursDueCents`, `withoutRoofCents` with its `method`, `asItWasCents`,
+ *   earned, used, expired, paid, close), `meters` (each meter of a channel that has several), `sentOut` (credit sent to other service points, by
+ *   which a bank closes lower), `payouts`, `billedDueCents`, `oursDueCents`, `withoutRoofCents` with its `method`, `asItWasCents`,
  *   `checks`, `addedCents` and `entryIds` (the entries that fall in it).
  * - `books`: every book's entries (id, date, cycle, kind, label, amountCents, basis, estimated, working). `cycle` is the cycle's `to`, or `before` the
  *   first, or `since` the last. Entries of basis `memo` are never summed.
@@ -45,6 +46,8 @@ type ReportedCycle = Pick<
   | 'split'
   | 'planFrom'
   | 'energy'
+  | 'meters'
+  | 'sentOut'
   | 'whyNotSettled'
   | 'facing'
   | 'billedDueCents'
@@ -95,6 +98,8 @@ function reportCycle(cycle: Cycle): ReportedCycle {
     planFrom: cycle.planFrom,
     statement: { id: cycle.statement.id, revision: cycle.statement.revision },
     energy: cycle.energy,
+    meters: cycle.meters,
+    sentOut: cycle.sentOut,
     lines: cycle.settlement?.lines ?? null,
     whyNotSettled: cycle.whyNotSettled,
     facing: cycle.facing,

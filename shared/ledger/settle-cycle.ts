@@ -13,6 +13,7 @@ import { settleCycle } from '../settlement/settle.ts';
 import type { CycleUsage, Opening, Settlement } from '../settlement/settlement.ts';
 import type { CyclePaper } from './cycle-papers.ts';
 import { type LearnedRates, learnRates, withLearnedRates } from './learned-rates.ts';
+import { sentOutOf, withSentOut } from './sent-out.ts';
 
 /** A settlement and what the utility's books should hold after it. */
 export type Settled = { settlement: Settlement; closing: Opening };
@@ -59,16 +60,18 @@ export function settleOne(
   const base = { plan: inForce, components, opening, learned };
   const usage = usageOf(facts, paper, metered, index, plan);
   if (typeof usage === 'string') return { ...base, ours: null, why: usage, asBilled: null };
-  const ours = settleCycle(plan, opening, usage);
-  if (!ours.ok) return { ...base, ours: null, why: refusal(ours.problem), asBilled: null };
+  const settled = settleCycle(plan, opening, usage);
+  if (!settled.ok) return { ...base, ours: null, why: refusal(settled.problem), asBilled: null };
+  const sent = sentOutOf(paper.statement, (printed) => printedBankId(printed, plan));
+  const ours = withSentOut(settled.value, sent);
 
   const importWh = billedQuantity(paper, 'import', plan, components) ?? usage.importWh;
   const exportWh = billedQuantity(paper, 'export', plan, components) ?? usage.exportWh;
   const printed = withPrintedBanks(opening, paper.statement, plan, 'open');
   const same = importWh === usage.importWh && exportWh === usage.exportWh && printed === opening;
-  if (same) return { ...base, ours: ours.value, why: null, asBilled: ours.value };
+  if (same) return { ...base, ours, why: null, asBilled: ours };
   const asBilled = settleCycle(plan, printed, { ...usage, importWh, exportWh });
-  return { ...base, ours: ours.value, why: null, asBilled: asBilled.ok ? asBilled.value : null };
+  return { ...base, ours, why: null, asBilled: asBilled.ok ? withSentOut(asBilled.value, sent) : null };
 }
 
 /**
@@ -127,7 +130,10 @@ export function usageOf(
     const missing = [isComplete(energy.import) ? null : 'import', isComplete(energy.export) ? null : 'export'];
     return `The ${missing.filter((name) => name !== null).join(' and ')} of this cycle is not known. Add the meter reads from the statement or upload an interval file for its days.`;
   }
-  const intervals = asksForIntervals(plan) ? cycleIntervals(index, paper.from, paper.to, facts.house.timeZone) : null;
+  // The files hold the house's own meter; kWh of other places that are netted with it are only in the reads.
+  const own = paper.elsewhere.joined.size === 0;
+  const intervals =
+    own && asksForIntervals(plan) ? cycleIntervals(index, paper.from, paper.to, facts.house.timeZone) : null;
   const dcWatts = dcWattsOf(facts.house.arrays);
   const kW: CycleUsage['kW'] = {};
   if (dcWatts > 0) kW.dc = qtyText(dcWatts);

@@ -22,10 +22,11 @@ const REGISTER_STEP_WH = 1000;
 const INTERVAL_SHARE = '0.01';
 
 export function channelWitnesses(paper: CyclePaper, index: IntervalIndex, channel: ReadChannel): ChannelWitnesses {
-  const { statement, split } = paper;
-  const printedWh = { import: statement.importWh, export: statement.exportWh, production: statement.productionWh }[
-    channel
-  ];
+  const { statement, split, elsewhere } = paper;
+  // Printed kWh of a statement that reads other service points too may hold theirs.
+  const printedWh = elsewhere.apart.has(channel)
+    ? null
+    : { import: statement.importWh, export: statement.exportWh, production: statement.productionWh }[channel];
   let register = registerEnergy(paper.reads, channel, statement.source);
   // Printed kWh are asked only where no register speaks.
   let printed = printedWh === null || register !== null ? null : printedEnergy(paper, channel, printedWh);
@@ -33,7 +34,8 @@ export function channelWitnesses(paper: CyclePaper, index: IntervalIndex, channe
     if (register !== null && !paper.readsFit) register = shareByDays(register, split);
     if (printed !== null) printed = shareByDays(printed, split);
   }
-  const intervals = intervalEnergy(index, channel, paper.from, paper.to);
+  // An interval file speaks of the house's own meter; it is no witness of kWh that other service points are netted into.
+  const intervals = elsewhere.joined.has(channel) ? null : intervalEnergy(index, channel, paper.from, paper.to);
   return { channel, register, printed, intervals, toleranceWh: agreementTolerance(paper, channel, intervals) };
 }
 

@@ -12,13 +12,12 @@ export type EstimatedRun = {
 
 const CHANNELS: readonly ReadChannel[] = ['import', 'export', 'production'];
 
-/** Whether the read that closes a channel in these reads is an estimate; null where the channel is not read. */
+/** Whether a read that closes a channel in these reads, of whichever of its meters, is an estimate; null where the channel is not read. */
 export function closesEstimated(reads: readonly RegisterRead[], channel: ReadChannel): boolean | null {
-  let last: RegisterRead | null = null;
-  for (const read of reads) {
-    if (read.channel === channel && (last === null || read.to >= last.to)) last = read;
-  }
-  return last === null ? null : last.type === 'estimated';
+  const own = reads.filter((read) => read.channel === channel);
+  if (own.length === 0) return null;
+  const end = own.reduce((latest, { to }) => (to > latest ? to : latest), own[0]?.to ?? '');
+  return own.some((read) => read.to === end && read.type === 'estimated');
 }
 
 /** Runs of cycles joined by estimated reads, by cycle index and channel. */

@@ -1,7 +1,9 @@
+import type { PrintedLine } from '../facts/papers.ts';
 import type { CyclePaper } from '../ledger/cycle-papers.ts';
 import type { RatePlan } from '../settlement/plan.ts';
-import { plus, type Qty, qtyOfText, sizeOf, whOfQty } from '../settlement/quantity.ts';
 import { type Wh, wh } from '../units/energy.ts';
+import { Exact, exact, kwhOf, roundToWh } from '../units/rate.ts';
+import { lastDigit } from './tolerance.ts';
 
 /**
  * The kWh the statement charges or credits for a channel: the quantity of the lines of the first component of the plan that takes the register as it is
@@ -13,22 +15,30 @@ export function billedQuantity(
   plan: RatePlan | null,
   components: readonly (string | null)[],
 ): Wh | null {
+  const printed = printedBeside(paper, channel);
   if (plan !== null) {
     for (const id of grossComponents(plan, channel)) {
-      let sum: Qty = 0;
-      let found = false;
-      let complete = true;
-      for (let at = 0; at < paper.lines.length; at += 1) {
-        const line = paper.lines[at];
-        if (!line || components[at] !== id) continue;
-        if (line.quantity === null || (line.unit !== null && line.unit !== 'kWh')) complete = false;
-        else sum = plus(sum, sizeOf(qtyOfText(line.quantity)));
-        found = true;
-      }
-      if (found && complete) return whOfQty(sum);
+      const quantities = paper.lines.flatMap((line, at) => (components[at] === id ? [quantityOf(line)] : []));
+      const known = quantities.filter((quantity) => quantity !== null);
+      if (known.length === 0 || known.length < quantities.length) continue;
+      const sum = known.reduce((total, quantity) => total.plus(exact(quantity).abs()), new Exact(0));
+      const rounded = known.reduce((total, quantity) => total.plus(lastDigit(quantity)), new Exact(0));
+      // Parts that are each rounded come to the kWh beside the registers only so far.
+      const same = printed !== null && kwhOf(printed).minus(sum).abs().lte(rounded);
+      return same ? printed : roundToWh(sum);
     }
   }
-  if (paper.split !== null) return null;
+  return printed;
+}
+
+/** The kWh of a line; null where it prints none. */
+function quantityOf({ quantity, unit }: PrintedLine): string | null {
+  return unit === null || unit === 'kWh' ? quantity : null;
+}
+
+/** The kWh printed beside the registers, where they are this cycle's alone. */
+function printedBeside(paper: CyclePaper, channel: 'import' | 'export'): Wh | null {
+  if (paper.split !== null || paper.elsewhere.apart.has(channel)) return null;
   const printed = channel === 'import' ? paper.statement.importWh : paper.statement.exportWh;
   return printed === null ? null : wh(Math.abs(printed));
 }

@@ -7,6 +7,7 @@ import { Exact } from '../units/rate.ts';
 import { billedQuantity } from './billed-quantities.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
+import { exchangeGap } from './exchange-gap.ts';
 import { compareWh, nothingToCompare } from './make-check.ts';
 
 /** Meters in service within ±2 % each way, and a whole-kWh step at both ends (net-metering.md §5): "reject hard when E > P·1.04 + 2". */
@@ -67,9 +68,11 @@ export function channelCheck(context: CheckContext, channel: 'import' | 'export'
   }
   if (seen.intervals?.complete) {
     const sides = { stated, found: seen.intervals.figure.wh, tolerance: seen.toleranceWh };
-    return compareWh(check, '', title, sides, () =>
-      channelTexts(channel, wh(stated - sides.found), readsSay(seen.register?.wh ?? null, stated)),
-    );
+    return compareWh(check, '', title, sides, () => {
+      const texts = channelTexts(channel, wh(stated - sides.found), readsSay(seen.register?.wh ?? null, stated));
+      const gap = stated < sides.found ? exchangeGap(context, channel) : null;
+      return gap === null ? texts : { ...texts, cause: `${texts.cause} ${gap}` };
+    });
   }
   if (billed !== null && seen.register !== null && paper.readsFit) {
     const sides = { stated: billed, found: seen.register.wh, tolerance: seen.toleranceWh };

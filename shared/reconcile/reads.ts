@@ -21,6 +21,7 @@ export function registersFollowChecks({ paper }: CheckContext): Check[] {
       const seen = reads.findIndex((other) => other.meter === read.meter) < at;
       if (!seen) checks.push(followCheck(channel, read, reads, before));
     });
+    if (reads.length > 0) checks.push(...missingMeters(channel, reads, before));
   }
   return checks;
 }
@@ -37,7 +38,15 @@ function followCheck(
   const title = `Register reads follow on, ${CHANNEL_WORDS[channel].toLowerCase()}`;
   const last = ofMeter(before, meter).at(-1);
   if (last === undefined) {
-    if (before.length > 0) return exchangeCheck(about, title, first, reads, before);
+    const gone = metersOf(before).some((other) => !readToTheEnd(reads, other));
+    if (gone) return exchangeCheck(about, title, first, reads, before);
+    if (before.length > 0) {
+      return nothingToCompare('registersFollow', about, 'kWh', {
+        title,
+        stated: first.previous,
+        cause: `Meter ${meter} is new beside ${metersOf(before).join(' and ')}; its reads begin here.`,
+      });
+    }
     return nothingToCompare('registersFollow', about, 'kWh', {
       title,
       stated: first.previous,
@@ -60,6 +69,30 @@ function followCheck(
     prior = read;
   }
   return check;
+}
+
+/** Meters of the statement before that this one does not read, where no new meter took their place. */
+function missingMeters(channel: (typeof CHANNELS)[number], reads: RegisterRead[], before: RegisterRead[]): Check[] {
+  const known = metersOf(before);
+  if (metersOf(reads).some((meter) => !known.includes(meter))) return [];
+  const missing = known.filter((meter) => readToTheEnd(before, meter) && ofMeter(reads, meter).length === 0);
+  return missing.map((meter) =>
+    nothingToCompare('registersFollow', `${channel}:${meter}`, 'kWh', {
+      title: `Register reads follow on, ${CHANNEL_WORDS[channel].toLowerCase()}`,
+      cause: `Meter ${meter} was read on the last statement and is not on this one.`,
+      advice: 'If it was taken out, nothing is to do. If not, its kWh are missing here: add its read.',
+    }),
+  );
+}
+
+function metersOf(reads: readonly RegisterRead[]): string[] {
+  return [...new Set(reads.map((read) => read.meter))];
+}
+
+/** Whether a meter is read to the last day that any of these reads has. */
+function readToTheEnd(reads: readonly RegisterRead[], meter: string): boolean {
+  const end = reads.reduce((latest, { to }) => (to > latest ? to : latest), '');
+  return reads.some((read) => read.meter === meter && read.to === end);
 }
 
 function exchangeCheck(

@@ -17,7 +17,7 @@ export type HouseCycle = {
 
 /** The house's cycles with the energy each plan would be settled on, by the same rules as the ledger's own settlement. */
 export function houseCycles(facts: HouseholdFacts): HouseCycle[] {
-  const papers = cyclePapers(statementsInForce(facts.statements), facts.house.switchOn);
+  const papers = cyclePapers(statementsInForce(facts.statements), facts.house);
   const index = indexIntervals(facts.intervals, facts.documents);
   const runs = estimatedRuns(papers);
   const witnessed = papers.map((paper) => witnessCycle(paper, index));

@@ -4,6 +4,7 @@ import { printedBankId, type SettledCycle } from '../../ledger/settle-cycle.ts';
 import type { MeteredCycle } from '../../metering/cycle-energy.ts';
 
 import type { RatePlan } from '../../settlement/plan.ts';
+import { exactText, plus, qtyOfText } from '../../settlement/quantity.ts';
 import type { CycleUsage } from '../../settlement/settlement.ts';
 import { cents } from '../../units/cents.ts';
 import type { Wh } from '../../units/energy.ts';
@@ -101,6 +102,8 @@ function saysKwh(lines: readonly BilledLine[], plan: RatePlan, channel: 'import'
 function bankOf(printed: CyclePaper['statement']['banks'][number], plan: RatePlan): BilledBank[] {
   const id = printedBankId(printed, plan);
   if (id === null || plan.banks.some((bank) => bank.id === id && bank.byPeriod)) return [];
-  const { open, close } = printed;
-  return [{ bank: id, period: null, open, earned: null, used: null, expired: null, paid: null, close }];
+  const { open, close, sentOut } = printed;
+  // What went to other service points is no mistake of this bill: the bank is taken as it would have closed with it.
+  const kept = close === null || sentOut === null ? close : exactText(plus(qtyOfText(close), qtyOfText(sentOut)));
+  return [{ bank: id, period: null, open, earned: null, used: null, expired: null, paid: null, close: kept }];
 }
