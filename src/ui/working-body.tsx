@@ -1,5 +1,8 @@
 import { useState } from 'react';
+import { useParams } from 'react-router-dom';
+import { creditApi } from '#shared/api/credit.ts';
 import type { Source, Working } from '#shared/working.ts';
+import { addressOf } from '#src/lib/api.ts';
 import { decimal, decimalDollars } from '#src/lib/format.ts';
 
 export type ShownWorking = { title: string; figure: string; working: Working };
@@ -59,8 +62,25 @@ function InputRows({ input }: { input: Working['inputs'][number] }) {
           Show all {values.length}
         </button>
       )}
-      <p className="hint">{sourceWords(input.source)}</p>
+      <p className="hint">
+        {sourceWords(input.source)} <PaperDownload source={input.source} />
+      </p>
     </div>
+  );
+}
+
+/** The paper an input was taken from, to take away as it came. Asked for at the one address that every role may ask. */
+function PaperDownload({ source }: { source: Source }) {
+  const { householdId } = useParams();
+  if (source.kind !== 'document' || householdId === undefined) return null;
+  return (
+    <a
+      className="link no-print inline-flex min-h-11 items-center sm:min-h-6"
+      href={addressOf(creditApi.paper, { householdId, documentId: source.documentId })}
+      download={source.fileName}
+    >
+      Take the paper
+    </a>
   );
 }
 

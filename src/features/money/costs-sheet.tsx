@@ -1,163 +1,165 @@
 import { useState } from 'react';
-import type { MoneyView } from '#shared/api/money.ts';
-import { type CostFacts, costKind, INCOME_KINDS } from '#shared/facts/house.ts';
-import { negateCents } from '#shared/units/cents.ts';
+import type { CostsView } from '#shared/api/money-other.ts';
+import type { CostFacts } from '#shared/facts/house.ts';
 import { fullDate } from '#src/lib/format.ts';
 import { Button } from '#src/ui/button.tsx';
-import { Field, SelectField } from '#src/ui/field.tsx';
+import { MoneyFigure } from '#src/ui/figure.tsx';
 import { Money } from '#src/ui/money.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
-import { type CostValues, readCost } from './money-values.ts';
+import { CostDialog } from './costs-dialog.tsx';
+import { CostsTotals } from './costs-totals.tsx';
+import { signedCents, whenWords } from './costs-values.ts';
 import { COST_KINDS } from './money-words.ts';
-import { RecordDialog } from './record-dialog.tsx';
-import { RemoveButton } from './remove-button.tsx';
+import { OtherRemove } from './other-remove.tsx';
+import { PaperLink } from './paper-link.tsx';
 
-type CostBody = Extract<ReturnType<typeof readCost>, { ok: true }>['body'];
+type Given = { householdId: string; canEdit: boolean; today: string };
 
-/** Costs and income outside the other books, newest first. */
-export function CostsSheet({
-  view,
-  householdId,
-  canEdit,
-  today,
-}: {
-  view: MoneyView;
-  householdId: string;
-  canEdit: boolean;
-  today: string;
-}) {
-  const [recording, setRecording] = useState(false);
+/** Costs, losses and income outside the other books, once or recurring, newest first. */
+export function CostsSheet({ view, ...given }: { view: CostsView } & Given) {
+  const [editing, setEditing] = useState<CostFacts | 'new' | null>(null);
   const costs = [...view.costs].sort((a, b) => (a.on < b.on ? 1 : a.on > b.on ? -1 : 0));
+  const { householdId, canEdit, today } = given;
   return (
     <Sheet
-      title="Costs and income"
-      hint="Cash at signing, permits, upkeep, repairs, rebates, patronage: what stands in no other book."
+      title="Costs, losses and income"
+      hint="Cash at signing, permits, upkeep, a deposit lost, rebates, patronage: what stands in no other book. Income is before income tax."
     >
       <table className="ruled ruled-stack">
         <thead>
           <tr>
-            <th scope="col">Date</th>
             <th scope="col" className="text">
               What
+            </th>
+            <th scope="col" className="text">
+              When
             </th>
             <th scope="col" className="text">
               Kind
             </th>
             <th scope="col">Amount</th>
+            <th scope="col">So far</th>
             {canEdit && (
               <td className="no-print">
-                <span className="visually-hidden">Remove</span>
+                <span className="visually-hidden">Change or remove</span>
               </td>
             )}
           </tr>
         </thead>
         <tbody>
           {costs.map((cost) => (
-            <tr key={cost.id}>
-              <th scope="row" className="whitespace-nowrap">
-                {fullDate(cost.on)}
-              </th>
-              <td className="text" data-label="What">
-                {cost.label}
-              </td>
-              <td className="text text-soft" data-label="Kind">
-                {COST_KINDS[cost.kind]}
-              </td>
-              <td data-label="Amount">
-                <Money cents={signed(cost)} />
-              </td>
-              {canEdit && (
-                <td className="no-print" data-label="">
-                  <RemoveButton
-                    what={cost.label}
-                    householdId={householdId}
-                    change={{ kind: 'removeCost', id: cost.id }}
-                  />
-                </td>
-              )}
-            </tr>
+            <CostRow key={cost.id} cost={cost} view={view} {...given} onChange={() => setEditing(cost)} />
           ))}
           {costs.length === 0 && (
             <tr>
-              <td colSpan={5} className="text text-soft">
+              <td colSpan={6} className="text text-soft">
                 None recorded.
               </td>
             </tr>
           )}
-          <tr className="subtotal">
-            <th scope="row">Paid</th>
-            <td />
-            <td />
-            <td data-label="In all">
-              <Money cents={negateCents(view.costsCents)} />
-            </td>
-            {canEdit && <td className="no-print" />}
-          </tr>
-          <tr className="subtotal">
-            <th scope="row">Received</th>
-            <td />
-            <td />
-            <td data-label="In all">
-              <Money cents={view.incomeCents} />
-            </td>
-            {canEdit && <td className="no-print" />}
-          </tr>
+          <Total label="Paid" figure={view.paid} canEdit={canEdit} />
+          <Total label="Received" figure={view.received} canEdit={canEdit} />
         </tbody>
       </table>
+      <CostsTotals view={view} />
       {canEdit && (
         <p className="no-print mt-4">
-          <Button look="plain" onClick={() => setRecording(true)}>
+          <Button look="plain" onClick={() => setEditing('new')}>
             Record a cost or an income
           </Button>
         </p>
       )}
-      {recording && (
-        <RecordDialog<CostValues, CostBody>
-          title="Record a cost or an income"
-          hint="The kind says which way the money went."
+      {editing !== null && (
+        <CostDialog
+          cost={editing === 'new' ? null : editing}
           householdId={householdId}
-          defaults={{ on: today, kind: 'upkeep', label: '', amountCents: '' }}
-          read={readCost}
-          change={(body) => ({ kind: 'cost', body })}
-          onClose={() => setRecording(false)}
-        >
-          {({ register, formState: { errors } }) => (
-            <>
-              <Field label="Date" type="date" error={errors.on?.message} {...register('on')} />
-              <SelectField label="Kind" error={errors.kind?.message} {...register('kind')}>
-                <optgroup label="Money paid">
-                  {costKind.options
-                    .filter((kind) => !INCOME_KINDS.includes(kind))
-                    .map((kind) => (
-                      <option key={kind} value={kind}>
-                        {COST_KINDS[kind]}
-                      </option>
-                    ))}
-                </optgroup>
-                <optgroup label="Money received">
-                  {INCOME_KINDS.map((kind) => (
-                    <option key={kind} value={kind}>
-                      {COST_KINDS[kind]}
-                    </option>
-                  ))}
-                </optgroup>
-              </SelectField>
-              <Field label="What" maxLength={160} error={errors.label?.message} {...register('label')} />
-              <Field
-                label="Amount"
-                unit="$"
-                inputMode="decimal"
-                error={errors.amountCents?.message}
-                {...register('amountCents')}
-              />
-            </>
-          )}
-        </RecordDialog>
+          today={today}
+          onClose={() => setEditing(null)}
+        />
       )}
     </Sheet>
   );
 }
 
-function signed(cost: CostFacts) {
-  return INCOME_KINDS.includes(cost.kind) ? cost.amountCents : negateCents(cost.amountCents);
+function CostRow({
+  cost,
+  view,
+  householdId,
+  canEdit,
+  onChange,
+}: { cost: CostFacts; view: CostsView; onChange: () => void } & Given) {
+  const standing = view.standings.find(({ id }) => id === cost.id);
+  return (
+    <tr>
+      <th scope="row" className="text">
+        {cost.label}
+        <PaperOf householdId={householdId} documentId={cost.documentId} />
+      </th>
+      <td className="text" data-label="When">
+        <span>
+          {whenWords(cost)}
+          {standing && cost.every !== null && (
+            <span className="hint block">
+              {standing.nextOn === null ? 'It does not come again.' : `Next ${fullDate(standing.nextOn)}.`}
+            </span>
+          )}
+          {standing && cost.every === null && standing.times === 0 && (
+            <span className="hint block">Not yet; the projection counts it.</span>
+          )}
+        </span>
+      </td>
+      <td className="text text-soft" data-label="Kind">
+        {COST_KINDS[cost.kind]}
+      </td>
+      <td data-label="Amount">
+        <MoneyFigure title={cost.label} cents={signedCents(cost)} working={standing?.working ?? null} />
+      </td>
+      <td data-label="So far">
+        <span>
+          <Money cents={standing?.toDateCents ?? null} />
+          {standing && standing.times > 1 && <span className="hint block">{standing.times} times</span>}
+        </span>
+      </td>
+      {canEdit && (
+        <td className="no-print" data-label="">
+          <span className="inline-flex flex-wrap justify-end gap-x-4">
+            <button
+              type="button"
+              className="link min-h-11 text-[15px] text-soft sm:min-h-9"
+              aria-label={`Change ${cost.label}`}
+              onClick={onChange}
+            >
+              Change
+            </button>
+            <OtherRemove what={cost.label} householdId={householdId} change={{ kind: 'removeCost', id: cost.id }} />
+          </span>
+        </td>
+      )}
+    </tr>
+  );
+}
+
+function PaperOf(props: { householdId: string; documentId: string | null }) {
+  return (
+    <span className="block font-normal">
+      <PaperLink {...props} />
+    </span>
+  );
+}
+
+function Total({ label, figure, canEdit }: { label: string; figure: CostsView['paid']; canEdit: boolean }) {
+  return (
+    <tr className="subtotal">
+      <th scope="row" className="text">
+        {label}
+      </th>
+      <td />
+      <td />
+      <td />
+      <td data-label="In all">
+        <MoneyFigure title={`${label}, in all`} cents={figure.amountCents} working={figure.working} />
+      </td>
+      {canEdit && <td className="no-print" />}
+    </tr>
+  );
 }

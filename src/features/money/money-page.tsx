@@ -6,11 +6,11 @@ import { type HouseholdContext, useHousehold } from '#src/lib/household.ts';
 import { ButtonLink } from '#src/ui/button.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
 import { EmptyState, ErrorState, PageSkeleton } from '#src/ui/states.tsx';
-import { CostsSheet } from './costs-sheet.tsx';
 import { IncentiveSheet } from './incentive-sheet.tsx';
 import { InsuranceSheet } from './insurance-sheet.tsx';
 import { LoanSheet } from './loan-sheet.tsx';
 import { moneyQuery } from './money-queries.ts';
+import { OtherParts } from './other-parts.tsx';
 
 /** Money: the loan, mortgage insurance, the incentive, and every cost and income beside them. */
 export function MoneyPage() {
@@ -56,7 +56,7 @@ function Money({ view, household }: { view: MoneyView; household: HouseholdConte
           )}
         </div>
       </div>
-      <CostsSheet view={view} {...given} />
+      <OtherParts {...given} />
       <p className="foot">
         Computed from what was entered; not lending or tax advice. The servicer’s statements and quotes decide.
       </p>

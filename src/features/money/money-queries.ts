@@ -1,6 +1,6 @@
 import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type * as z from 'zod/mini';
-import { type costBody, type loanPaymentBody, type MoneyView, moneyApi, type receiptBody } from '#shared/api/money.ts';
+import { type loanPaymentBody, type MoneyView, moneyApi, type receiptBody } from '#shared/api/money.ts';
 import { call } from '#src/lib/api.ts';
 
 export const moneyQuery = (householdId: string) =>
@@ -13,8 +13,7 @@ export const moneyQuery = (householdId: string) =>
 export type MoneyChange =
   | { kind: 'loanPayment'; body: z.infer<typeof loanPaymentBody> }
   | { kind: 'receipt'; body: z.infer<typeof receiptBody> }
-  | { kind: 'cost'; body: z.infer<typeof costBody> }
-  | { kind: 'removeLoanPayment' | 'removeReceipt' | 'removeCost'; id: string };
+  | { kind: 'removeLoanPayment' | 'removeReceipt'; id: string };
 
 /** Makes one change and keeps the answered view; every other screen of the household asks again. */
 export function useMoneyChange(householdId: string) {
@@ -27,14 +26,10 @@ export function useMoneyChange(householdId: string) {
           return call(moneyApi.addLoanPayment, { params, body: change.body });
         case 'receipt':
           return call(moneyApi.addReceipt, { params, body: change.body });
-        case 'cost':
-          return call(moneyApi.addCost, { params, body: change.body });
         case 'removeLoanPayment':
           return call(moneyApi.removeLoanPayment, { params: { householdId, id: change.id } });
         case 'removeReceipt':
           return call(moneyApi.removeReceipt, { params: { householdId, id: change.id } });
-        case 'removeCost':
-          return call(moneyApi.removeCost, { params: { householdId, id: change.id } });
       }
     },
     onSuccess: (view) => {

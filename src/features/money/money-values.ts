@@ -1,6 +1,5 @@
 import type * as z from 'zod/mini';
-import type { costBody, loanPaymentBody, receiptBody } from '#shared/api/money.ts';
-import type { CostKind } from '#shared/facts/house.ts';
+import type { loanPaymentBody, receiptBody } from '#shared/api/money.ts';
 import { type Cents, cents, parseDollars } from '#shared/units/cents.ts';
 import { addDays, type Day, parseDay } from '#shared/units/day.ts';
 import { parseKwh, type Wh } from '#shared/units/energy.ts';
@@ -58,21 +57,6 @@ export function readReceipt(values: ReceiptValues): Reading<z.infer<typeof recei
     from,
     to: last === null ? null : addDays(last, 1),
     quantityWh: list.optional(values.quantityWh, kwhFromZero, 'quantityWh', 'Write kWh such as 3,120.'),
-  });
-}
-
-export type CostValues = { on: string; kind: CostKind; label: string; amountCents: string };
-
-export function readCost(values: CostValues): Reading<z.infer<typeof costBody>> {
-  const list = new FaultList();
-  return list.reading({
-    on: list.needed(values.on, parseDay, 'on', NO_DATE, SOME_DAY),
-    kind: values.kind,
-    label: list.needed(values.label, (text) => text.trim(), 'label', '', 'cost'),
-    amountCents: list.needed(values.amountCents, aboveZero, 'amountCents', NO_AMOUNT, cents(1)),
-    documentId: null,
-    every: null,
-    until: null,
   });
 }
 
