@@ -1,7 +1,7 @@
 import type { CreditFacts, CreditYear } from '../facts/finance.ts';
 import type { Cents } from '../units/cents.ts';
 import { addDays, type Day, dayOf } from '../units/day.ts';
-import { creditCashOn, creditLinesOf } from './tax-credit.ts';
+import { creditCashOn, creditLinesOf } from './credit-entries.ts';
 
 export type ExpectedCredit = { taxYear: number; on: Day; amountCents: Cents };
 

@@ -1,13 +1,10 @@
 import type { CreditCost, CreditFacts, CreditYear } from '../facts/finance.ts';
-import { sayMoney } from '../ledger/say.ts';
 import { type Cents, cents, sumCents } from '../units/cents.ts';
-import { yearOf } from '../units/day.ts';
-import type { DecimalText } from '../units/rate-text.ts';
+import { type CreditCheck, creditChecks } from './credit-checks.ts';
+import { creditLinesOf } from './credit-entries.ts';
 import { type CreditForm, creditFormOf } from './credit-forms.ts';
 import type { CreditLines } from './credit-lines.ts';
-import { creditRate } from './credit-rate.ts';
-import { countedShare } from './form-5695.ts';
-import { creditLinesOf } from './tax-credit.ts';
+import { type CreditVintage, creditVintages, undatedCosts } from './credit-vintages.ts';
 
 /** One year of the preparer's summary. */
 export type CreditSummaryYear = {
@@ -15,28 +12,22 @@ export type CreditSummaryYear = {
   form: CreditForm;
   lines: CreditLines;
   status: CreditYear['status'] | 'notListed';
-  /** Who typed line 14, and from where; null until it is typed. */
+  /** Who typed line 14, from what, and the kept return it stands on; null until it is typed. */
   limitTypedBy: string | null;
+  limitFrom: string | null;
+  documentId: string | null;
   filedOn: CreditYear['filedOn'];
+  refundOn: CreditYear['refundOn'];
+  /** Line 15 of this and every earlier filed return: by so much the credit has lowered the home's basis by then. */
+  basisReductionCents: Cents;
 };
 
-/** A check of the form's own arithmetic; `agrees` is null where something is not known yet. */
-export type CreditCheck = { label: string; agrees: boolean | null; detail: string };
-
 export type CreditSummary = {
-  /** The year the roof was placed in service, which sets the rate; null until it is stated. */
-  originYear: number | null;
-  originRate: DecimalText;
-  /** What qualifies before reductions, each reduction with its reason, and what is left out. */
-  grossCostCents: Cents;
-  reductions: CreditCost[];
-  leftOut: CreditCost[];
-  /** The share of the cost that counts, "1" from 80 % home use on. */
-  countedShare: DecimalText;
+  vintages: CreditVintage[];
+  undated: CreditCost[];
+  carriedIn: CreditFacts['carriedIn'];
   years: CreditSummaryYear[];
   checks: CreditCheck[];
-  /** Line 15 of filed years: by so much the credit has reduced the home's basis so far. When a carried credit reduces it is a question for the preparer. */
-  basisReductionCents: Cents;
   cautions: string[];
 };
 
@@ -48,66 +39,42 @@ export const CREDIT_CAUTIONS: readonly string[] = [
   'Carryforward shown is unused, not guaranteed.',
 ];
 
+/** What the record cannot answer and whoever prepares the return is asked. */
+export const PREPARER_QUESTIONS: readonly string[] = [
+  'Whether a credit carried forward lowers the home’s basis as it is used, or all at once.',
+  'Whether a dealer fee inside a loan is part of the cost; it is left out here unless the owner entered it otherwise.',
+];
+
 /** Everything a preparer asks for to carry the credit on, year by year. */
 export function creditSummary(credit: CreditFacts): CreditSummary {
   const lines = creditLinesOf(credit);
-  const originYear = credit.placedInServiceOn === null ? null : yearOf(credit.placedInServiceOn);
-  const of = (treatment: CreditCost['treatment']) => credit.costs.filter((cost) => cost.treatment === treatment);
-  const years = lines.map((line): CreditSummaryYear => {
+  const years: CreditSummaryYear[] = [];
+  for (const line of lines) {
     const year = credit.years.find((one) => one.taxYear === line.taxYear);
-    return {
+    const filed = year?.status === 'filed' || year?.status === 'amended';
+    const typed = year !== undefined && year.limitCents !== null;
+    years.push({
       taxYear: line.taxYear,
       form: creditFormOf(line.taxYear),
       lines: line,
       status: year?.status ?? 'notListed',
-      limitTypedBy: year?.limitCents == null ? null : year.typedBy,
+      limitTypedBy: typed ? year.typedBy : null,
+      limitFrom: typed ? year.limitFrom : null,
+      documentId: year?.documentId ?? null,
       filedOn: year?.filedOn ?? null,
-    };
-  });
-  const filed = years.filter((year) => year.status === 'filed' || year.status === 'amended');
-  return {
-    originYear,
-    originRate: originYear === null ? '0' : creditRate(originYear),
-    grossCostCents: sumCents(of('qualified').map((cost) => cost.amountCents)),
-    reductions: of('reduction'),
-    leftOut: of('leftOut'),
-    countedShare: countedShare(credit.homeShare).toString(),
-    years,
-    checks: creditChecks(lines),
-    basisReductionCents: sumCents(filed.map((year) => year.lines.line15Cents ?? cents(0))),
-    cautions: [...CREDIT_CAUTIONS],
-  };
-}
-
-/** Line 12 of each year is line 16 of the one before; all of line 6b is used on line 15 or left on the last line 16. */
-export function creditChecks(lines: readonly CreditLines[]): CreditCheck[] {
-  const checks: CreditCheck[] = [];
-  for (const [index, line] of lines.entries()) {
-    const before = lines[index - 1];
-    if (!before) continue;
-    const known = before.line16Cents !== null && line.line12Cents !== null;
-    checks.push({
-      label: `Line 12 of ${line.taxYear} is line 16 of ${before.taxYear}`,
-      agrees: known ? line.line12Cents === before.line16Cents : null,
-      detail:
-        before.line16Cents === null || line.line12Cents === null
-          ? `Type the limit of ${before.taxYear} to know it`
-          : `${sayMoney(line.line12Cents)} and ${sayMoney(before.line16Cents)}`,
+      refundOn: year?.refundOn ?? null,
+      basisReductionCents: sumCents([
+        years.at(-1)?.basisReductionCents ?? cents(0),
+        filed ? (line.line15Cents ?? cents(0)) : cents(0),
+      ]),
     });
   }
-  const last = lines.at(-1);
-  if (!last) return checks;
-  const earned = sumCents(lines.map((line) => line.line6bCents));
-  const used = lines.map((line) => line.line15Cents).filter((amount) => amount !== null);
-  const label = 'All of line 6b is used on line 15 or carried on the last line 16';
-  if (last.line16Cents === null || used.length < lines.length) {
-    return [...checks, { label, agrees: null, detail: 'Type every year’s limit to know it' }];
-  }
-  const total = cents(sumCents(used) + last.line16Cents);
-  checks.push({
-    label,
-    agrees: total === earned,
-    detail: `${sayMoney(earned)} = ${sayMoney(sumCents(used))} used + ${sayMoney(last.line16Cents)} carried`,
-  });
-  return checks;
+  return {
+    vintages: creditVintages(credit),
+    undated: undatedCosts(credit),
+    carriedIn: credit.carriedIn,
+    years,
+    checks: creditChecks(lines, credit.carriedIn),
+    cautions: [...CREDIT_CAUTIONS],
+  };
 }

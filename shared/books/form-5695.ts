@@ -27,6 +27,13 @@ function signed(cost: CreditCost): number {
   return cost.treatment === 'qualified' ? cost.amountCents : -cost.amountCents;
 }
 
+/** Line 6b: line 6a at the rate of the year, in whole dollars, and no more than the law's own sum where it sets one. */
+export function creditLine6b(line6aCents: Cents, rate: DecimalText, taxYear: number): Cents {
+  const cap = creditCapCents(taxYear);
+  const atRate = wholeDollars(new Exact(line6aCents).times(exact(rate)));
+  return cap !== null && atRate > cap ? cap : atRate;
+}
+
 /** A tax year as Form 5695 Part I takes it: line 1 and its rate where cost enters, and line 14 if known. */
 export type CreditYearInput = {
   taxYear: number;
@@ -46,9 +53,7 @@ export function carryCredit(carryInCents: Cents, years: readonly CreditYearInput
     .sort((a, b) => a.taxYear - b.taxYear)
     .map((year) => {
       const line1Cents = wholeDollars(new Exact(year.line1Cents));
-      const cap = creditCapCents(year.taxYear);
-      const atRate = year.rate === null ? ZERO_CENTS : wholeDollars(new Exact(line1Cents).times(exact(year.rate)));
-      const line6bCents = cap !== null && atRate > cap ? cap : atRate;
+      const line6bCents = year.rate === null ? ZERO_CENTS : creditLine6b(line1Cents, year.rate, year.taxYear);
       const line12Cents = carried;
       const line13Cents = line12Cents === null ? null : cents(line6bCents + line12Cents);
       const line14Cents = year.limitCents === null ? null : wholeDollars(new Exact(year.limitCents));

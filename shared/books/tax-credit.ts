@@ -1,98 +1,30 @@
-import type { CreditFacts, CreditYear } from '../facts/finance.ts';
+import type { CreditFacts } from '../facts/finance.ts';
 import { sayDate, sayMoney } from '../ledger/say.ts';
 import type { Figure } from '../position/position.ts';
-import { type Cents, cents, ZERO_CENTS } from '../units/cents.ts';
+import { type Cents, cents, sumCents, ZERO_CENTS } from '../units/cents.ts';
 import { type Day, yearOf } from '../units/day.ts';
-import type { UnplacedEntry } from './book.ts';
-import type { CreditLines } from './credit-lines.ts';
-import { creditLaw, creditRate } from './credit-rate.ts';
-import { carryCredit, creditLine1 } from './form-5695.ts';
+import { creditCashOn, creditEntries, creditLinesOf } from './credit-entries.ts';
+import { creditLaw } from './credit-rate.ts';
+import { creditVintages } from './credit-vintages.ts';
 import { rule, stated, usdInput, usdListInput } from './inputs.ts';
 
+export { creditCashOn, creditEntries, creditLinesOf } from './credit-entries.ts';
 export { creditRate } from './credit-rate.ts';
 export { carryCredit, creditLine1 } from './form-5695.ts';
 
-const lines = new WeakMap<CreditFacts, CreditLines[]>();
-
-/**
- * The form's lines for each year the owner lists, and for the year the roof was placed in service if the law gives that year a credit. Cost enters in
- * that year alone: one completed after 2025 earns nothing, whenever it was paid.
- */
-export function creditLinesOf(credit: CreditFacts): CreditLines[] {
-  const known = lines.get(credit);
-  if (known) return known;
-  const placed = credit.placedInServiceOn === null ? null : yearOf(credit.placedInServiceOn);
-  const rate = placed === null ? '0' : creditRate(placed);
-  const earns = placed !== null && rate !== '0';
-  const byYear = new Map(credit.years.map((year) => [year.taxYear, year.limitCents]));
-  if (earns && !byYear.has(placed)) byYear.set(placed, null);
-  const made = carryCredit(
-    ZERO_CENTS,
-    [...byYear].map(([taxYear, limitCents]) => {
-      const enters = earns && taxYear === placed;
-      return {
-        taxYear,
-        line1Cents: enters ? creditLine1(credit.costs, credit.homeShare) : ZERO_CENTS,
-        rate: enters ? rate : null,
-        limitCents,
-      };
-    }),
-  );
-  lines.set(credit, made);
-  return made;
-}
-
-/** The day a return's use of the credit counts as cash: the refund's, or the filing's where it only lowered the tax due. Null until then. */
-export function creditCashOn(year: CreditYear): Day | null {
-  if (year.status === 'planned') return null;
-  return year.asRefund ? year.refundOn : year.filedOn;
-}
-
-/** Cash entries through a day: line 15 of each return whose money has come. A planned year gives none. */
-export function creditEntries(credit: CreditFacts, through: Day): UnplacedEntry[] {
-  const entries: UnplacedEntry[] = [];
-  for (const line of creditLinesOf(credit)) {
-    const year = credit.years.find((one) => one.taxYear === line.taxYear);
-    const on = year ? creditCashOn(year) : null;
-    const { line13Cents, line14Cents, line15Cents } = line;
-    if (!year || on === null || on > through) continue;
-    if (line13Cents === null || line14Cents === null || line15Cents === null || line15Cents === 0) continue;
-    const form = rule('Form 5695, Part I', String(line.taxYear));
-    entries.push({
-      id: `credit-${line.taxYear}`,
-      date: on,
-      book: 'credit',
-      kind: year.asRefund ? 'refund' : 'lessTax',
-      label: `Tax credit used on the ${line.taxYear} return${year.asRefund ? ', refunded' : ''}`,
-      amountCents: line15Cents,
-      basis: 'cash',
-      estimated: false,
-      working: {
-        words: `Line 15 of ${line.taxYear}: the smaller of ${sayMoney(line13Cents)} and the limit ${sayMoney(line14Cents)}`,
-        formula: 'min(available, limit)',
-        inputs: [
-          usdInput('available', 'Line 13', line13Cents, form),
-          usdInput('limit', 'Line 14, from the return', line14Cents, limitSource(year)),
-        ],
-        unit: 'USD',
-        basis: 'computed',
-      },
-    });
-  }
-  return entries;
-}
-
-function limitSource(year: CreditYear) {
-  return stated(year.typedBy === null ? 'Limit as entered' : `Limit as entered by ${year.typedBy}`);
-}
-
-/** What the roof earned by a day: line 6b once it is placed in service. */
+/** What is there to be used by a day: line 6b of all that is completed by then, and what a return before the record carried in once its year is over. */
 export function creditEarnedBy(credit: CreditFacts, on: Day): Cents {
-  if (credit.placedInServiceOn === null || credit.placedInServiceOn > on) return ZERO_CENTS;
-  return cents(creditLinesOf(credit).reduce((sum, line) => sum + line.line6bCents, 0));
+  const earned = creditVintages(credit, on)
+    .filter((vintage) => vintage.state === 'counts')
+    .map((vintage) => vintage.line6bCents);
+  return sumCents([...earned, carriedInBy(credit, on)]);
 }
 
-/** Everything earned less everything received by a day. No one guarantees the part that is carried forward. */
+function carriedInBy({ carriedIn }: CreditFacts, on: Day): Cents {
+  return carriedIn !== null && yearOf(on) > carriedIn.taxYear ? carriedIn.amountCents : ZERO_CENTS;
+}
+
+/** Everything earned and carried in less everything received by a day. No one guarantees the part that is carried forward. */
 export function creditStillToCome(credit: CreditFacts, on: Day): Figure {
   return stillToComeFigure(
     credit,
@@ -103,17 +35,17 @@ export function creditStillToCome(credit: CreditFacts, on: Day): Figure {
 
 /** The same from what was received, as the book's own entries have it. */
 export function stillToComeFigure(credit: CreditFacts, earned: Cents, received: readonly Cents[]): Figure {
-  const total = received.reduce((sum, amount) => sum + amount, 0);
+  const total = sumCents(received);
   const placed = credit.placedInServiceOn;
   return {
     amountCents: cents(earned - total),
     working: {
-      words: `${sayMoney(earned)} earned − ${sayMoney(cents(total))} received`,
+      words: `${sayMoney(earned)} earned − ${sayMoney(total)} received`,
       formula: 'earned - sum(received)',
       inputs: [
         usdInput(
           'earned',
-          placed === null ? 'Credit earned' : `Line 6b, placed in service ${sayDate(placed)}`,
+          earnedWords(credit),
           earned,
           placed === null ? stated('Tax credit as entered') : rule('26 U.S.C. 25D', creditLaw(yearOf(placed))),
         ),
@@ -123,6 +55,22 @@ export function stillToComeFigure(credit: CreditFacts, earned: Cents, received: 
       basis: 'computed',
     },
   };
+}
+
+/** "Line 6b, placed in service 22 May 2024"; the years where there are several, and what was carried in. */
+function earnedWords(credit: CreditFacts): string {
+  const { placedInServiceOn: placed, carriedIn } = credit;
+  const years = creditVintages(credit)
+    .filter((vintage) => vintage.state === 'counts')
+    .map((vintage) => vintage.year);
+  const own =
+    years.length > 1
+      ? [`Line 6b of ${years.join(' and ')}`]
+      : years.length === 1 && placed !== null
+        ? [`Line 6b, placed in service ${sayDate(placed)}`]
+        : [];
+  const before = carriedIn === null ? [] : [`line 16 of ${carriedIn.taxYear}`];
+  return [...own, ...before].join(' and ') || 'Credit earned';
 }
 
 export type CreditParts = {
@@ -138,7 +86,7 @@ export type CreditParts = {
 export function creditParts(credit: CreditFacts, on: Day): CreditParts {
   const total = creditStillToCome(credit, on).amountCents;
   let awaited = 0;
-  let carried = 0;
+  let carried: number = carriedInBy(credit, on);
   for (const line of creditLinesOf(credit)) {
     const year = credit.years.find((one) => one.taxYear === line.taxYear);
     const filed = year !== undefined && year.status !== 'planned' && (year.filedOn === null || year.filedOn <= on);

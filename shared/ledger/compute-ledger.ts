@@ -106,7 +106,7 @@ function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCyc
   }
   if (facts.incentive !== null) {
     const seen = assembled.map((one) => incentiveCycle(one, facts));
-    entries.push(...incentiveEarned(facts.incentive, seen), ...incentiveReceived(facts.incentive, seen, today));
+    entries.push(...incentiveEarned(facts.incentive, seen), ...incentiveReceived(facts.incentive, seen, today, facts.documents));
   }
   if (facts.loan !== null) entries.push(...loanEntries(facts.loan, today));
   entries.push(...otherLoanEntries(facts.otherLoans, today));
@@ -114,7 +114,7 @@ function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCyc
     entries.push(...leaseEntries(facts.lease, assembled.map(productionOf), today, facts.documents));
   }
   if (facts.mortgage !== null) entries.push(...insuranceEntries(facts.mortgage, today));
-  if (facts.credit !== null) entries.push(...creditEntries(facts.credit, today));
+  if (facts.credit !== null) entries.push(...creditEntries(facts.credit, today, facts.documents));
   entries.push(...costEntries(facts.costs, today, facts.documents));
   return entries;
 }

@@ -1,5 +1,7 @@
+import { type CreditPaperKind, namedAs } from '#shared/books/credit-paper.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
 import { readDocumentBytes } from '../../db/documents.ts';
+import { renameCreditPaper } from '../../db/facts/write-credit.ts';
 import { insertDocument } from '../../db/facts/write-papers.ts';
 import type { Actor, Deps } from '../../deps.ts';
 import type { FileInput } from '../../importers/contract.ts';
@@ -9,7 +11,13 @@ import { writeHousehold } from '../write-household.ts';
 import { acceptPaper, contentTypeOf } from './paper-kind.ts';
 
 /** Keeps a paper behind the credit: contract, invoice, inspection, worksheet. */
-export function addPaper(deps: Pick<Deps, 'db' | 'clock'>, actor: Actor, file: FileInput): Result<null> {
+export function addPaper(
+  deps: Pick<Deps, 'db' | 'clock'>,
+  actor: Actor,
+  given: FileInput,
+  kind: CreditPaperKind | null = null,
+): Result<null> {
+  const file = kind === null ? given : { ...given, fileName: namedAs(given.fileName, kind) };
   const accepted = acceptPaper(file.fileName, file.bytes);
   if (!accepted.ok) return accepted;
   const { today } = ledgerOf(deps, actor.householdId);
@@ -21,6 +29,23 @@ export function addPaper(deps: Pick<Deps, 'db' | 'clock'>, actor: Actor, file: F
     insertDocument(tx, actor.householdId, { ...document.value, state: 'kept' });
     return succeed(null);
   });
+}
+
+/** Says what a kept paper is, in front of its name; its bytes stay as they came. */
+export function putPaperKind(
+  deps: Pick<Deps, 'db' | 'clock'>,
+  actor: Actor,
+  documentId: string,
+  kind: CreditPaperKind,
+): Result<null> {
+  const paper = ledgerOf(deps, actor.householdId).facts.documents.find(({ id }) => id === documentId);
+  if (paper?.kind !== 'credit') return fail('not-found', 'There is no such file.');
+  const fileName = namedAs(paper.fileName, kind);
+  return writeHousehold(deps, actor, { action: 'paper-kind-saved', about: fileName }, (tx) =>
+    renameCreditPaper(tx, actor.householdId, documentId, fileName)
+      ? succeed(null)
+      : fail('not-found', 'There is no such file.'),
+  );
 }
 
 /** A kept file as it came. A preparer is given the credit's papers and no other. */

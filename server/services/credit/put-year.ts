@@ -7,6 +7,7 @@ import { deleteCreditYear, putCreditYear } from '../../db/facts/write-money.ts';
 import type { Actor, Deps } from '../../deps.ts';
 import { fieldFault } from '../field-fault.ts';
 import { writeHousehold } from '../write-household.ts';
+import { creditPaperFault } from './credit-paper-fault.ts';
 
 type CreditDeps = Pick<Deps, 'db' | 'clock'>;
 
@@ -26,6 +27,9 @@ function yearFaults(taxYear: number, body: z.infer<typeof creditYearBody>): Faul
   if (body.refundOn !== null && (body.filedOn === null || body.refundOn < body.filedOn)) {
     faults.push(fieldFault('refundOn', 'The refund comes after the return was filed.'));
   }
+  if (body.status !== 'planned' && body.limitCents === null) {
+    faults.push(fieldFault('limitCents', 'A filed return has a line 14; write it here.'));
+  }
   return faults;
 }
 
@@ -40,7 +44,10 @@ export function putYear(
   if (taxYear === null) return fail('not-found', 'There is no such tax year.');
   const credit = readCredit(deps.db, actor.householdId);
   if (credit === null) return fail('conflict', 'Enter what the roof cost first, in the set-up.');
-  const faults = yearFaults(taxYear, body);
+  if (credit.carriedIn !== null && taxYear <= credit.carriedIn.taxYear) {
+    return fail('conflict', `What was carried in from ${credit.carriedIn.taxYear} holds the years before it already.`);
+  }
+  const faults = [...yearFaults(taxYear, body), ...creditPaperFault(deps, actor.householdId, body.documentId)];
   if (faults.length > 0) return fail('invalid-fields', faults[0]?.message ?? null, faults);
   const before = credit.years.find((known) => known.taxYear === taxYear);
   const typedBy =

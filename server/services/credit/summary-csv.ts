@@ -1,13 +1,19 @@
-import type { CreditView } from '#shared/api/credit.ts';
 import type { CreditLines } from '#shared/books/credit-lines.ts';
-import { CREDIT_CAUTIONS, creditSummary } from '#shared/books/credit-summary.ts';
+import { CREDIT_PAPER_KINDS } from '#shared/books/credit-paper.ts';
+import { CREDIT_CAUTIONS, type CreditSummary, PREPARER_QUESTIONS } from '#shared/books/credit-summary.ts';
+import { completedOn } from '#shared/books/credit-vintages.ts';
+import type { CreditCost } from '#shared/facts/finance.ts';
 import type { Cents } from '#shared/units/cents.ts';
-import type { Deps } from '../../deps.ts';
+import type { Actor, Deps } from '../../deps.ts';
 import { type Cell, csvText } from '../csv-text.ts';
-import { ledgerOf } from '../ledger-of.ts';
-import { viewCredit } from './view-credit.ts';
+import { limitWords, STATUS_WORDS, type SummaryFacts, summaryFacts, VINTAGE_STATES } from './summary-facts.ts';
 
 const AGREES: Record<string, string> = { true: 'yes', false: 'no', null: 'not known yet' };
+const TREATMENTS: Record<CreditCost['treatment'], string> = {
+  qualified: 'qualified',
+  reduction: 'reduction',
+  leftOut: 'left out',
+};
 
 const money = (amount: Cents | null): Cell => (amount === null ? null : { cents: amount });
 
@@ -22,64 +28,106 @@ const ROWS: readonly { key: string; label: string; of: (line: CreditLines) => Ce
   { key: 'line16', label: 'Carried forward', of: (line) => line.line16Cents },
 ];
 
-/** The line's number where all years agree on it, else the number of each year. */
-function numberOf(view: CreditView, key: string): string {
-  const numbers = [...new Set(view.forms.map((form) => form.lines[key] ?? '?'))];
-  return numbers.join(' / ');
-}
-
-function sheet(view: CreditView, householdName: string, today: string): Cell[][] {
-  const years = view.credit?.years ?? [];
-  const summary = view.credit === null ? null : creditSummary(view.credit);
-  const yearOf = (taxYear: number) => years.find((year) => year.taxYear === taxYear) ?? null;
-  const across = <T extends Cell>(of: (line: CreditLines) => T): T[] => view.lines.map(of);
+/** The form, years across and lines down, each year with its status and where its limit comes from. */
+function formRows({ view }: SummaryFacts, summary: CreditSummary): Cell[][] {
+  const { years } = summary;
+  const across = (of: (year: CreditSummary['years'][number]) => Cell): Cell[] => years.map(of);
+  const numbers = (key: string) => [...new Set(view.forms.map((form) => form.lines[key] ?? '?'))].join(' / ');
   return [
-    ['Residential clean energy credit, carryforward summary'],
-    ['Household', householdName],
-    ['Made on', today],
-    ['Placed in service', view.credit?.placedInServiceOn ?? 'not stated'],
-    ['Origin year', summary?.originYear ?? 'not stated'],
-    ['Rate of the origin year', summary?.originRate ?? ''],
-    ['Cost before reductions', money(summary?.grossCostCents ?? null)],
-    ['Reduction of the home’s basis by filed returns', money(summary?.basisReductionCents ?? null)],
-    [],
-    ['Form 5695, Part I', 'Line', ...across((line) => line.taxYear)],
-    ...ROWS.map(({ key, label, of }): Cell[] => [label, numberOf(view, key), ...across((line) => money(of(line)))]),
-    ['Rate', '', ...across((line) => line.rate ?? '')],
-    ['Schedule 3, line', '', ...view.forms.map((form) => form.schedule3 ?? 'not checked')],
-    ['Status', '', ...across((line) => yearOf(line.taxYear)?.status ?? 'planned')],
-    ['Filed on', '', ...across((line) => yearOf(line.taxYear)?.filedOn ?? '')],
-    ['Limit typed by', '', ...across((line) => yearOf(line.taxYear)?.typedBy ?? '')],
-    ['About the form', '', ...view.forms.map((form) => form.note ?? '')],
-    [],
-    ['What the cost is made of', 'Treatment', 'Amount', 'Reason'],
-    ...(view.credit?.costs ?? []).map((cost): Cell[] => [
-      cost.label,
-      cost.treatment === 'leftOut' ? 'left out' : cost.treatment,
-      money(cost.amountCents),
-      cost.reason ?? '',
-    ]),
-    ['Share for the home', '', view.credit?.homeShare ?? ''],
-    [],
-    ['Checks', 'Agrees', 'Figures'],
-    ...view.checks.map((check): Cell[] => [check.label, AGREES[String(check.agrees)] ?? '', check.detail]),
-    [],
-    ['Papers', 'Uploaded on'],
-    ...view.papers.map((paper): Cell[] => [paper.fileName, paper.uploadedOn]),
-    [],
-    ...CREDIT_CAUTIONS.map((caution): Cell[] => [caution]),
+    ['Form 5695, Part I', 'Line', ...across(({ taxYear }) => taxYear)],
+    ...ROWS.map(({ key, label, of }): Cell[] => [label, numbers(key), ...across(({ lines }) => money(of(lines)))]),
+    ['Rate', '', ...across(({ lines }) => lines.rate ?? '')],
+    ['Schedule 3, line', '', ...across(({ form }) => form.schedule3 ?? 'not checked')],
+    ['Status', '', ...across(({ status }) => STATUS_WORDS[status])],
+    ['Filed on', '', ...across(({ filedOn }) => filedOn ?? '')],
+    ['Refund came on', '', ...across(({ refundOn }) => refundOn ?? '')],
+    ['Where the limit comes from', '', ...across((year) => limitWords(year, view))],
+    ['Reduction of the home’s basis so far', '', ...across((year) => money(year.basisReductionCents))],
+    ['About the form', '', ...across(({ form }) => form.note ?? '')],
   ];
 }
 
-/** The preparer's carryforward summary: years across, form lines down, then costs, checks and papers. */
+function costRows({ credit }: SummaryFacts, summary: CreditSummary): Cell[][] {
+  return [
+    ['Completed in', 'Rate', 'Cost', 'Taken off', 'Share that counts', 'Line 1', 'Line 6b', 'Law', 'State'],
+    ...summary.vintages.map((one): Cell[] => [
+      one.year,
+      one.rate,
+      money(one.grossCents),
+      money(one.reductionCents),
+      one.share,
+      money(one.line1Cents),
+      money(one.line6bCents),
+      one.law,
+      VINTAGE_STATES[one.state],
+    ]),
+    [],
+    ['What the cost is made of', 'Treatment', 'Amount', 'Reason', 'Completed on'],
+    ...(credit?.costs ?? []).map((cost): Cell[] => [
+      cost.label,
+      TREATMENTS[cost.treatment],
+      money(cost.amountCents),
+      cost.reason ?? '',
+      credit === null ? '' : (completedOn(credit, cost) ?? 'not stated'),
+    ]),
+    ['Share for the home', '', credit?.homeShare ?? ''],
+  ];
+}
+
+function sheet(facts: SummaryFacts): Cell[][] {
+  const { view, summary, credit } = facts;
+  const head: Cell[][] = [
+    ['Residential clean energy credit, carryforward summary'],
+    ['Household', facts.household],
+    ['Home', facts.place],
+    ['Made on', facts.madeOn],
+    ['Made by', facts.madeBy],
+  ];
+  const cautions = CREDIT_CAUTIONS.map((caution): Cell[] => [caution]);
+  if (summary === null) return [...head, ['No tax credit is entered'], [], ...cautions];
+  const { carriedIn } = summary;
+  return [
+    ...head,
+    ['Placed in service', credit?.placedInServiceOn ?? 'not stated'],
+    carriedIn === null
+      ? ['Carried in from before this record', 'none']
+      : [`Carried in, line 16 of ${carriedIn.taxYear}`, money(carriedIn.amountCents)],
+    [],
+    ...formRows(facts, summary),
+    [],
+    ...costRows(facts, summary),
+    [],
+    ['Effect on the home’s basis (26 U.S.C. 25D(f))', 'Amount'],
+    ['With the credit used on filed returns', money(view.basis?.soFar.amountCents ?? null)],
+    ['With all of the credit', money(view.basis?.whole.amountCents ?? null)],
+    [],
+    ['Checks', 'Agrees', 'Figures'],
+    ...summary.checks.map((check): Cell[] => [check.label, AGREES[String(check.agrees)] ?? '', check.detail]),
+    [],
+    ['Papers', 'What it is', 'Uploaded on', 'Uploaded by'],
+    ...view.papers.map((paper): Cell[] => [
+      paper.fileName,
+      CREDIT_PAPER_KINDS.find(({ kind }) => kind === paper.paperKind)?.words ?? '',
+      paper.uploadedOn,
+      paper.uploadedBy,
+    ]),
+    [],
+    ['To ask the preparer'],
+    ...PREPARER_QUESTIONS.map((question): Cell[] => [question]),
+    [],
+    ...cautions,
+  ];
+}
+
+/** The preparer's carryforward summary: years across, form lines down, then costs, basis, checks and papers. */
 export function creditSummaryCsv(
   deps: Pick<Deps, 'db' | 'clock'>,
-  householdId: string,
+  actor: Pick<Actor, 'householdId' | 'name'>,
 ): { fileName: string; contentType: string; body: string } {
-  const { row, today } = ledgerOf(deps, householdId);
+  const facts = summaryFacts(deps, actor);
   return {
-    fileName: `tax-credit-summary-${today}.csv`,
+    fileName: `tax-credit-summary-${facts.madeOn}.csv`,
     contentType: 'text/csv; charset=utf-8',
-    body: csvText(sheet(viewCredit(deps, householdId), row.name, today)),
+    body: csvText(sheet(facts)),
   };
 }
