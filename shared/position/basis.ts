@@ -34,6 +34,8 @@ export const energyCycle = z.object({
   importWh: z.nullable(whSchema),
   exportWh: z.nullable(whSchema),
   productionWh: z.nullable(whSchema),
+  /** Stands on an estimated read: it is projected from, and no range is drawn from it. */
+  provisional: z.boolean(),
 });
 export type EnergyCycle = z.infer<typeof energyCycle>;
 
@@ -81,12 +83,13 @@ export function basisOf(input: ProjectionInput): MadeBasis {
     basis: {
       today,
       facts: factsOf(facts),
-      cycles: input.cycles.map(({ from, to, importWh, exportWh, productionWh }) => ({
+      cycles: input.cycles.map(({ from, to, importWh, exportWh, productionWh, provisional }) => ({
         from,
         to,
         importWh,
         exportWh,
         productionWh,
+        provisional,
       })),
       opening: input.opening,
       close: {

@@ -58,12 +58,13 @@ export function settleSide(side: BillSide, opening: Opening, usageAt: (at: numbe
   return made.ok ? { ok: true, value: made.value } : { ok: false, why: made.problem.detail ?? '' };
 }
 
-/** One month's bill of a side that carries nothing from month to month. */
+/**
+ * One month's bill of a compiled side that carries nothing from month to month; null for any other. May throw what the full settlement would refuse: run
+ * inside `orRefusal`.
+ */
 export function settleAlone(side: BillSide, at: number, usage: CompiledUsage): number | null {
   const cycle = side.compiled?.cycles[at];
-  if (!cycle || !side.compiled) return null;
-  const made = orRefusal(() => dueOf(cycle, usage, stateOf(NO_SLOTS, NO_OPENING)));
-  return made.ok ? made.value : null;
+  return cycle && side.isStateless ? dueOf(cycle, usage, stateOf(NO_SLOTS, NO_OPENING)) : null;
 }
 
 const NO_SLOTS = newSlots();

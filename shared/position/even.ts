@@ -2,7 +2,7 @@
  * The first index from which every value is zero or more to the end: the lasting crossing, not the first touch. Null when the last value is below
  * zero or there is none.
  */
-export function lastingCrossing(values: readonly number[]): number | null {
+export function lastingCrossing(values: ArrayLike<number>): number | null {
   let index = values.length;
   while (index > 0 && (values[index - 1] ?? -1) >= 0) index -= 1;
   return index === values.length ? null : index;

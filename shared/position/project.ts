@@ -178,7 +178,7 @@ const NOTHING_OWED = { payoffCents: 0, balanceCents: 0 };
  * The first day from which settled today stays at or above zero, through the record's last closes and the months to come; null when it does not
  * within the horizon.
  */
-export function evenOn(evenSince: Day | null, days: readonly Day[], settledCents: readonly number[]): Day | null {
+export function evenOn(evenSince: Day | null, days: readonly Day[], settledCents: ArrayLike<number>): Day | null {
   const index = lastingCrossing(settledCents);
   if (index === null) return null;
   return index === 0 && evenSince !== null ? evenSince : (days[index] ?? null);

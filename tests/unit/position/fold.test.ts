@@ -154,6 +154,7 @@ function build(options: { cycles: number; extra: number; bill: number }) {
         from: null,
         to: null,
         quantityWh: null,
+        documentId: null,
       },
     ],
   });

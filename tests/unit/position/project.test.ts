@@ -54,7 +54,14 @@ const YEAR = Array.from({ length: 12 }, (_, index) => {
   const from = addMonths(day('2025-01-01'), index);
   const to = addMonths(from, 1);
   const days = daysBetween(from, to);
-  return { from, to, importWh: wh(22_000 * days), exportWh: wh(12_000 * days), productionWh: wh(20_000 * days) };
+  return {
+    from,
+    to,
+    importWh: wh(22_000 * days),
+    exportWh: wh(12_000 * days),
+    productionWh: wh(20_000 * days),
+    provisional: false,
+  };
 });
 
 function factsOf(changes: Partial<ProjectionFacts> = {}, plan: RatePlanInput = FLAT): ProjectionFacts {
@@ -339,6 +346,7 @@ describe('the year to repeat', () => {
       importWh: wh(0),
       exportWh: wh(0),
       productionWh: wh(30_001),
+      provisional: false,
     };
     const made = monthlyEnergy({ ...base, lastTo: day('2025-02-16'), cycles: [cycle] });
     expect(

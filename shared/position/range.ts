@@ -1,0 +1,155 @@
+import * as z from 'zod/mini';
+import { orRefusal, refuse } from '../settlement/refused.ts';
+import { EMPTY_OPENING } from '../settlement/settlement.ts';
+import { cents, centsSchema } from '../units/cents.ts';
+import { type Day, daySchema } from '../units/day.ts';
+import type { ProjectionBasis } from './basis.ts';
+import { settleAlone, settleSide } from './bill-side.ts';
+import { drawing } from './chance.ts';
+import { candidateAt, candidatesOf, completeCycles, drawnEnergy, type Urns, urnsOf } from './draws.ts';
+import type { PeriodEnergy } from './periods.ts';
+import { evenOn, moneyOfProduction, type ProjectionParts, projectParts } from './project.ts';
+import { usageWithoutRoof, usageWithRoof } from './projected-bills.ts';
+
+/** What eight of ten resampled futures lie between, month by month as the projection's months stand, and when they come even. */
+export const rangeSchema = z.object({
+  resamples: z.int(),
+  months: z.array(z.object({ lowCents: centsSchema, highCents: centsSchema })),
+  /** The tenth and the ninetieth of a hundred, by the day they come even for good; null where that one does not within the horizon. */
+  evenEarliest: z.nullable(daySchema),
+  evenLatest: z.nullable(daySchema),
+  /** How many of the resamples come even within the horizon. */
+  evenWithin: z.int(),
+});
+export type Range = z.infer<typeof rangeSchema>;
+
+export type MadeRange = { ok: true; range: Range } | { ok: false; why: string };
+
+/** Complete cycles a range needs. */
+export const CYCLES_FOR_RANGE = 12;
+
+const RESAMPLES = 200;
+
+/** Where the plan cannot be compiled each future is settled in full, about twenty times as slow. */
+const FULL_RESAMPLES = 40;
+
+const SEED = 19_051_884;
+
+/**
+ * The 10–90 % range of the base projection: its months drawn again from the house's own, with their production, use and share sent out together, each
+ * month for itself, and every bill settled again by the plan's rules with its banks carried on. The same basis and seed give the same range. What the draws leave
+ * as it is: prices, degradation, the plan, and whatever would change for many months at once.
+ */
+export function rangeOf(basis: ProjectionBasis, options: { seed?: number; resamples?: number } = {}): MadeRange {
+  const complete = completeCycles(basis).length;
+  if (complete < CYCLES_FOR_RANGE) {
+    return { ok: false, why: `A range needs twelve complete cycles; the record has ${complete}.` };
+  }
+  const parts = projectParts(basis);
+  if (!parts.ok) return parts;
+  const resamples = options.resamples ?? (parts.sides.roof.compiled === null ? FULL_RESAMPLES : RESAMPLES);
+  const future = futures(basis, parts, drawing(options.seed ?? SEED));
+  const made = orRefusal(() => Array.from({ length: resamples }, () => future()));
+  if (!made.ok) return { ok: false, why: `A drawn month cannot be settled. ${made.problem.detail ?? ''}`.trim() };
+  const days = parts.months.map((month) => month.on);
+  const evens = made.value.map((settled) => evenOn(basis.evenSince, days, settled));
+  return { ok: true, range: rangeFrom(made.value, evens) };
+}
+
+function rangeFrom(settled: readonly Float64Array[], evens: readonly (Day | null)[]): Range {
+  const count = settled.length;
+  const low = Math.ceil(count * 0.1) - 1;
+  const high = Math.ceil(count * 0.9) - 1;
+  const column = new Float64Array(count);
+  const months = Array.from(settled[0] ?? [], (_, month) => {
+    for (const [at, line] of settled.entries()) column[at] = line[month] ?? 0;
+    column.sort();
+    return { lowCents: cents(column[low] ?? 0), highCents: cents(column[high] ?? 0) };
+  });
+  // A future that does not come even within the horizon comes after all that do.
+  const inOrder = [...evens].sort((a, b) => (a === b ? 0 : a === null ? 1 : b === null ? -1 : a < b ? -1 : 1));
+  return {
+    resamples: count,
+    months,
+    evenEarliest: inOrder[low] ?? null,
+    evenLatest: inOrder[high] ?? null,
+    evenWithin: evens.filter((even) => even !== null).length,
+  };
+}
+
+/** Draws one future after another: what is settled at the end of each month, in cents. Refuses where a plan refuses a drawn month. */
+function futures(basis: ProjectionBasis, parts: ProjectionParts, draw: (below: number) => number): () => Float64Array {
+  const { sides, months, energies, periods } = parts;
+  const fixed = fixedOf(parts);
+  const table = drawTable(parts, urnsOf(basis));
+  const opening = { ...basis.opening, balanceCents: null };
+  // A bill that carries nothing on is in the table already.
+  const isAlone = sides.plain.isStateless && sides.plain.compiled !== null;
+  const chosen: Drawn[] = [];
+  return () => {
+    for (const at of periods.keys()) chosen[at] = table(at, draw);
+    const roof = settleSide(sides.roof, opening, (at) => usageWithRoof(chosen[at]?.energy));
+    if (!roof.ok) return refuse(roof.why);
+    const plain = isAlone ? null : settleSide(sides.plain, EMPTY_OPENING, (at) => usageWithoutRoof(chosen[at]?.energy));
+    if (plain && !plain.ok) return refuse(plain.why);
+    const settled = new Float64Array(months.length);
+    let running = 0;
+    for (const at of energies.keys()) {
+      const drawn = chosen[at];
+      const without = plain ? plain.value.dueCents[at] : drawn?.plainCents;
+      running += (without ?? 0) - (roof.value.dueCents[at] ?? 0) + (drawn?.madeCents ?? 0);
+      settled[at] = (fixed[at] ?? 0) + running + (roof.value.bankCents[at] ?? 0);
+    }
+    return settled;
+  };
+}
+
+/** What of settled today does not hang on the month's energy, by month. */
+function fixedOf({ months, bills, made }: ProjectionParts): number[] {
+  let running = 0;
+  return months.map((month, at) => {
+    const bill = bills[at];
+    const money = made[at];
+    running += (bill?.avoidedCents ?? 0) + (money?.incentiveCents ?? 0) + (money?.purchaseCents ?? 0);
+    return month.settledTodayCents - running - (bill?.bankCents ?? 0);
+  });
+}
+
+/** A period as one of its candidates has it, worked out once: there are few, and every future draws among them. */
+type Drawn = {
+  energy: PeriodEnergy;
+  madeCents: number;
+  /** The bill without the roof, where it carries nothing on from month to month. */
+  plainCents: number | null;
+};
+
+function drawTable(parts: ProjectionParts, urns: Urns): (at: number, draw: (below: number) => number) => Drawn {
+  const { periods, energies, sides, facts } = parts;
+  const rows = periods.map((period, at) => {
+    const urn = candidatesOf(urns, period);
+    const base = energies[at];
+    if (base === undefined) throw new Error('a projected month has no energy');
+    const known: (Drawn | undefined)[] = [];
+    return { period, at, urn, base, known };
+  });
+  const make = (row: (typeof rows)[number], energy: PeriodEnergy): Drawn => {
+    const money = moneyOfProduction(facts, null, row.period, energy.productionWh);
+    return {
+      energy,
+      madeCents: money.incentiveCents + money.purchaseCents,
+      plainCents: settleAlone(sides.plain, row.at, usageWithoutRoof(energy)),
+    };
+  };
+  return (at, draw) => {
+    const row = rows[at];
+    if (row === undefined) throw new Error('a month past the horizon was drawn');
+    const { urn, base, period, known } = row;
+    const index = urn.days === 0 ? 0 : candidateAt(urn, draw(urn.days));
+    const found = known[index];
+    if (found !== undefined) return found;
+    const candidate = urn.candidates[index];
+    const made = make(row, candidate ? drawnEnergy(urns, period, candidate, base) : base);
+    known[index] = made;
+    return made;
+  };
+}
