@@ -9,11 +9,19 @@ export function checkValue(value: string, unit: Check['unit']): string {
   return exactValue(unit === 'kWh' ? shortKwh(value) : value, unit);
 }
 
+/** What the two values of a check are, where "stated" and "found" would not say it. */
+export type PairWords = { stated: string; found: string };
+
 /** "Stated 698 kWh, found 742 kWh." Two values that would read the same are said in full. */
-export function statedAndFound(stated: string, found: string, unit: Check['unit']): string {
+export function statedAndFound(
+  stated: string,
+  found: string,
+  unit: Check['unit'],
+  words: PairWords = { stated: 'Stated', found: 'found' },
+): string {
   const short = [checkValue(stated, unit), checkValue(found, unit)];
   const [first, second] = short[0] === short[1] ? [exactValue(stated, unit), exactValue(found, unit)] : short;
-  return `Stated ${first}, found ${second}.`;
+  return `${words.stated} ${first}, ${words.found} ${second}.`;
 }
 
 function exactValue(value: string, unit: Check['unit']): string {

@@ -11,32 +11,52 @@ import { Prose } from '#src/ui/prose.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { Verdict } from '#src/ui/verdict.tsx';
 import { AcceptDialog } from './accept-dialog.tsx';
+import { groupedChecks, pairWords, tellsMore } from './check-groups.ts';
 import { useAccept } from './cycles-queries.ts';
 
-/** Every check of the cycle with its outcome; those that differ say why, and what to do. */
+/** Every check of the cycle by what it looks at: those that do not agree first, saying why and what to do; those that agree in one line each. */
 export function ChecksSheet({ cycle, household }: { cycle: Cycle; household: HouseholdContext }) {
   const [accepting, setAccepting] = useState<Check | null>(null);
   return (
     <Sheet title="Checks">
-      <ul className="mt-2 border-t-2 border-ink">
-        {cycle.checks.map((check) => (
-          <li key={check.key} className="border-b border-rule py-2">
-            <p className="flex items-baseline justify-between gap-4">
-              <span>{check.title}</span>
-              <Verdict check={check} />
-            </p>
-            {check.verdict !== 'agrees' && <Explained check={check} />}
-            {check.verdict === 'differs' && household.canEdit && check.accepted === null && (
-              <p className="no-print">
-                <button type="button" className="link min-h-11 text-[15px]" onClick={() => setAccepting(check)}>
-                  Accept with a note
-                </button>
-              </p>
-            )}
-            {check.accepted && <Accepted check={check} cycle={cycle} household={household} />}
-          </li>
-        ))}
-      </ul>
+      {groupedChecks(cycle.checks).map(({ title, open, agreeing }) => (
+        <section key={title} className="mt-3 first:mt-1">
+          <h3 className="flex items-baseline justify-between gap-4 border-b-2 border-ink pb-1">
+            {title}
+            <span className="hint font-normal">
+              {agreeing.length} of {agreeing.length + open.length} agree
+            </span>
+          </h3>
+          <ul>
+            {open.map((check) => (
+              <li key={check.key} className="border-b border-rule py-2">
+                <p className="flex items-baseline justify-between gap-4">
+                  <span>{check.title}</span>
+                  <Verdict check={check} />
+                </p>
+                <Explained check={check} />
+                {check.verdict === 'differs' && household.canEdit && check.accepted === null && (
+                  <p className="no-print">
+                    <button type="button" className="link min-h-11 text-[15px]" onClick={() => setAccepting(check)}>
+                      Accept with a note
+                    </button>
+                  </p>
+                )}
+                {check.accepted && <Accepted check={check} cycle={cycle} household={household} />}
+              </li>
+            ))}
+            {agreeing.map((check) => (
+              <li key={check.key} className="flex items-baseline justify-between gap-4 py-0.5 text-[15px] text-soft">
+                <span className="min-w-0">
+                  {check.title}
+                  {tellsMore(check) && <span className="hint block">{tellsMore(check)}</span>}
+                </span>
+                <Verdict check={check} />
+              </li>
+            ))}
+          </ul>
+        </section>
+      ))}
       {accepting && (
         <AcceptDialog
           checks={[accepting]}
@@ -54,7 +74,7 @@ function Explained({ check }: { check: Check }) {
   return (
     <div className="hint max-w-[60ch]">
       {check.verdict === 'differs' && stated !== null && found !== null && (
-        <p>{statedAndFound(stated, found, check.unit)}</p>
+        <p>{statedAndFound(stated, found, check.unit, pairWords(check.check))}</p>
       )}
       {check.cause && (
         <p>
