@@ -20,7 +20,9 @@ export function nameCauses(
     if (own === null) return one;
     const found = causesOfCycle(own, { before: given(at - 1), after: given(at + 1) });
     if (found.length === 0) return one;
-    const causes = found.map(({ cause, words }) => ({ cause, words }));
+    // A check that says the same and knows more of it is heard.
+    const fuller = (words: string) => checks.find((check) => check.cause?.startsWith(words))?.cause ?? words;
+    const causes = found.map(({ cause, words }) => ({ cause, words: fuller(words) }));
     const words = sentenceOf(causes.map((cause) => cause.words));
     return { ...one, cycle: { ...one.cycle, causes, checks: checks.map((check) => explained(check, words)) } };
   });

@@ -1,5 +1,5 @@
 import type { Check } from '../reconcile/check.ts';
-import { cents } from '../units/cents.ts';
+import { cents, parseDollars, ZERO_CENTS } from '../units/cents.ts';
 import type { Cycle } from './cycle.ts';
 import { sayMoney } from './say.ts';
 
@@ -8,7 +8,7 @@ export type SentencePart = { text: string; tone: 'plain' | 'strong' | 'ahead' | 
 
 type SentenceCycle = Pick<
   Cycle,
-  'addedCents' | 'state' | 'provisional' | 'split' | 'whyNotSettled' | 'checks' | 'billedDueCents' | 'oursDueCents'
+  'addedCents' | 'state' | 'provisional' | 'split' | 'whyNotSettled' | 'checks' | 'oursDueCents'
 >;
 
 /** The sentence under a cycle's dates: what it added, and how the bill stands against the meters. */
@@ -29,7 +29,9 @@ export function billSentence(cycle: SentenceCycle): string {
 
 function billParts(cycle: SentenceCycle): SentencePart[] {
   if (cycle.whyNotSettled !== null) return [plain(cycle.whyNotSettled)];
-  const due = cycle.checks.find((check) => check.check === 'amountDue');
+  // On a budget plan the charges and the amount due are two checks; the one that differs is told.
+  const totals = cycle.checks.filter((check) => check.check === 'amountDue');
+  const due = totals.find((check) => check.verdict === 'differs') ?? totals[0];
   const off = dueParts(cycle, due);
   switch (cycle.state) {
     case 'open':
@@ -53,7 +55,7 @@ function billParts(cycle: SentenceCycle): SentencePart[] {
 
 function dueParts(cycle: SentenceCycle, due: Check | undefined): SentencePart[] | null {
   if (due?.verdict !== 'differs' || cycle.oursDueCents === null) return null;
-  const difference = cycle.billedDueCents - cycle.oursDueCents;
+  const difference = parseDollars(due.difference ?? '0') ?? ZERO_CENTS;
   return [
     plain('The bill is '),
     { text: sayMoney(cents(Math.abs(difference))), tone: 'strong' },

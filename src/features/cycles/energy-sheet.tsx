@@ -3,6 +3,7 @@ import { kwh } from '#src/lib/format.ts';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { FigureButton } from '#src/ui/working.tsx';
 import { type BarPart, type EnergyBars, energyBars, missingEnergy } from './energy-bars.ts';
+import { MeterRows } from './meter-rows.tsx';
 
 const LOOKS: Record<BarPart['key'], string> = {
   selfUse: 'bg-roof text-sheet',
@@ -50,6 +51,7 @@ export function EnergySheet({ cycle }: { cycle: Cycle }) {
           {line}
         </p>
       ))}
+      <MeterRows cycle={cycle} />
       {coverageLines(energy).map((line) => (
         <p key={line} className="hint mt-1">
           {line}

@@ -81,7 +81,7 @@ function FacingTable({ cycle }: { cycle: Cycle }) {
       </thead>
       <tbody>
         {cycle.facing.map((line) => (
-          <tr key={line.key} className={line.key === 'due' ? 'total' : undefined}>
+          <tr key={line.key} className={rowLook(line)}>
             <th scope="row">{line.billed && <Label line={line} inDue={line.billed.inDue} />}</th>
             <td className={differentQuantity(line) ? 'neg' : undefined}>
               {line.billed && quantityWords(line.billed.quantity, line.unit)}
@@ -116,14 +116,7 @@ function FacingBlocks({ cycle }: { cycle: Cycle }) {
       </p>
       <ul className="mt-3 border-t-2 border-ink">
         {cycle.facing.map((line) => (
-          <li
-            key={line.key}
-            className={
-              line.key === 'due'
-                ? 'border-t border-b-4 border-double border-ink py-2 font-bold'
-                : 'border-b border-rule py-2'
-            }
-          >
+          <li key={line.key} className={BLOCK_LOOKS[partOf(line)]}>
             <p className="flex items-baseline justify-between gap-4">
               <span className="font-semibold">
                 <Label line={line} inDue={(line.billed ?? line.ours)?.inDue ?? true} />
@@ -147,6 +140,23 @@ function FacingBlocks({ cycle }: { cycle: Cycle }) {
       </ul>
     </>
   );
+}
+
+/** Electric charges and other services each have a total of their own above `Due`. */
+function partOf(line: FacingLine): 'due' | 'subtotal' | 'line' {
+  if (line.key === 'due') return 'due';
+  return line.key.startsWith('subtotal:') ? 'subtotal' : 'line';
+}
+
+const BLOCK_LOOKS = {
+  due: 'border-t border-b-4 border-double border-ink py-2 font-bold',
+  subtotal: 'border-t border-b-2 border-ink py-2 font-semibold',
+  line: 'border-b border-rule py-2',
+} as const;
+
+function rowLook(line: FacingLine): string | undefined {
+  const part = partOf(line);
+  return part === 'due' ? 'total' : part === 'subtotal' ? 'subtotal' : undefined;
 }
 
 function Label({ line, inDue }: { line: FacingLine; inDue: boolean }) {

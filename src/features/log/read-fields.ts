@@ -106,6 +106,28 @@ export function moneyField(
   };
 }
 
+/** A figure of the budget plan. Its balance may be left empty: not every bill prints it. */
+export function budgetField(
+  statement: StatementBody,
+  name: 'instalmentCents' | 'balanceCents' | 'settledCents',
+  label: string,
+): ReadField {
+  const { budget } = statement;
+  const amount = budget?.[name] ?? null;
+  return {
+    name: label,
+    text: amount === null ? '' : money(amount),
+    type: 'text',
+    put: (text) => {
+      if (budget === null) return statement;
+      const read = parseDollars(text);
+      if (name !== 'instalmentCents' && text.trim() === '')
+        return { ...statement, budget: { ...budget, [name]: null } };
+      return read === null ? 'Write an amount such as 118.00.' : { ...statement, budget: { ...budget, [name]: read } };
+    },
+  };
+}
+
 export function kwhField(statement: StatementBody, channel: ReadChannel): ReadField {
   const name = KWH_FIELDS[channel];
   return {

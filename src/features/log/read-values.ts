@@ -6,6 +6,7 @@ import type { Check, CheckId } from '#shared/reconcile/check.ts';
 import { decimal } from '#src/lib/format.ts';
 import {
   bankFields,
+  budgetField,
   CHANNEL_WORDS,
   dateFields,
   KWH_FIELDS,
@@ -118,8 +119,9 @@ export function readValues(drafted: DraftStatement): { values: ReadValue[]; othe
   const faced = facingByLabel(drafted.facing);
   statement.lines.forEach((line, index) => {
     const facing = faced(line.label);
-    const component = line.component ?? componentOf(facing);
-    const mine = take((check) => check.check === 'linePrice' && check.about === component);
+    const part = partOf(facing);
+    const component = line.component ?? part?.split(':')[0];
+    const mine = take((check) => check.check === 'linePrice' && (check.about === part || check.about === component));
     const made = value(`line${index}`, lineLabel(line), [lineField(statement, index)], mine, line.row);
     values.push(isNewLine(line, facing, drafted) && made.tone !== 'no' ? newLine(made) : made);
   });
@@ -144,6 +146,16 @@ export function readValues(drafted: DraftStatement): { values: ReadValue[]; othe
     if (statement[name] === null) continue;
     const mine = name === 'previousBalanceCents' ? take((check) => check.check === 'balanceChain') : [];
     values.push(value(name, label, [moneyField(statement, name, label)], mine));
+  }
+  if (statement.budget !== null) {
+    const mine = take((check) => check.check === 'budgetChain');
+    values.push(value('budget', 'Budget amount', [budgetField(statement, 'instalmentCents', 'Budget amount')], []));
+    values.push(
+      value('budgetBalance', 'Budget balance', [budgetField(statement, 'balanceCents', 'Budget balance')], mine),
+    );
+    if (statement.budget.settledCents !== null) {
+      values.push(value('budgetSettled', 'Settlement', [budgetField(statement, 'settledCents', 'Settlement')], []));
+    }
   }
   const due = value(
     'due',
@@ -225,8 +237,9 @@ function facingByLabel(facing: FacingLine[]): (label: string) => FacingLine | nu
   return (label) => facing.find((line) => line.billed !== null && line.label === label) ?? null;
 }
 
-function componentOf(facing: FacingLine | null): string | null {
-  return /^line:([^:]+):/.exec(facing?.key ?? '')?.[1] ?? null;
+/** The component a line faces, with its period and tier where those are told apart: "energy", "energy:peak". */
+function partOf(facing: FacingLine | null): string | null {
+  return /^line:(.+):\d+$/.exec(facing?.key ?? '')?.[1] ?? null;
 }
 
 const CARRIED = new Set(['otherService', 'previousBalance', 'payment']);

@@ -83,7 +83,8 @@ function Summary({ readings }: { readings: DraftReadings }) {
           <b>{countOf(overlap.differentDays.length, 'day')} here already with other values</b>
           <span>
             The first is {fullDate(overlap.differentDays[0] ?? firstDay)}. You decide on the next page which values
-            stand.
+            stand; they are not added up. If this is another meter of the same kind, take the file out, put both meters
+            into one file, their kWh added for each time, and choose that.
           </span>
         </div>
       )}

@@ -87,7 +87,10 @@ const ITEM_ROWS: Record<string, RegExp> = {
   dates: /^statement$/,
   due: /amount.?due/,
   previousBalanceCents: /previous.?balance|balance.?forward/,
-  paymentsCents: /payment/,
+  paymentsCents: /^payments?\b/,
+  budget: /^(budget|level|average)\b.*(amount|bill|payment)/,
+  budgetBalance: /(budget|deferred|levelized).*balance/,
+  budgetSettled: /^budget (settle|true|year)/,
 };
 
 /** Where a value stands in the file: its own row where known, else the row of its record among the statement's. */
