@@ -1,20 +1,14 @@
 import type * as z from 'zod/mini';
-import type { costBody, loanPaymentBody, receiptBody } from '#shared/api/money.ts';
+import type { loanPaymentBody, receiptBody } from '#shared/api/money.ts';
 import { fail, type Result, succeed } from '#shared/problem.ts';
 import { dollarsText } from '#shared/units/cents.ts';
 import type { Tx } from '../db/client.ts';
-import { readCosts, readIncentive, readLoan } from '../db/facts/read-money.ts';
-import {
-  deleteCost,
-  deleteLoanPayment,
-  deleteReceipt,
-  insertCost,
-  insertLoanPayment,
-  insertReceipt,
-} from '../db/facts/write-money.ts';
+import { readIncentive, readLoan } from '../db/facts/read-money.ts';
+import { deleteLoanPayment, deleteReceipt, insertLoanPayment, insertReceipt } from '../db/facts/write-money.ts';
 import type { Actor, Deps } from '../deps.ts';
 import { newId } from '../ids.ts';
 import { fieldFault } from './field-fault.ts';
+import { unknownPaper } from './money/known-paper.ts';
 import { writeHousehold } from './write-household.ts';
 
 type MoneyDeps = Pick<Deps, 'db' | 'clock'>;
@@ -31,6 +25,8 @@ export function addLoanPayment(deps: MoneyDeps, actor: Actor, body: z.infer<type
       fieldFault('extraPrincipalCents', 'The extra principal is a part of the payment and cannot be more than it.'),
     ]);
   }
+  const unknown = unknownPaper(deps, actor, body.documentId);
+  if (unknown.length > 0) return fail('invalid-fields', null, unknown);
   const about = `${body.on} ${dollarsText(body.amountCents)}`;
   return writeHousehold(deps, actor, { action: 'loan-payment-added', about }, (tx) => {
     insertLoanPayment(tx, actor.householdId, { id: newId(), ...body });
@@ -50,18 +46,11 @@ export function addReceipt(deps: MoneyDeps, actor: Actor, body: z.infer<typeof r
   if (body.from !== null && body.to !== null && body.to <= body.from) {
     return fail('invalid-fields', null, [fieldFault('to', 'The last day it covers cannot come before the first.')]);
   }
+  const unknown = unknownPaper(deps, actor, body.documentId);
+  if (unknown.length > 0) return fail('invalid-fields', null, unknown);
   const about = `${body.on} ${dollarsText(body.amountCents)}`;
   return writeHousehold(deps, actor, { action: 'receipt-added', about }, (tx) => {
     insertReceipt(tx, actor.householdId, { id: newId(), ...body });
-    return succeed(null);
-  });
-}
-
-/** Records a cost or an income outside the other books. */
-export function addCost(deps: MoneyDeps, actor: Actor, body: z.infer<typeof costBody>): Result<null> {
-  const about = `${body.on} ${body.kind} ${dollarsText(body.amountCents)}`;
-  return writeHousehold(deps, actor, { action: 'cost-added', about }, (tx) => {
-    insertCost(tx, actor.householdId, { id: newId(), ...body });
     return succeed(null);
   });
 }
@@ -78,12 +67,4 @@ export function removeLoanPayment(deps: MoneyDeps, actor: Actor, id: string): Re
 
 export function removeReceipt(deps: MoneyDeps, actor: Actor, id: string): Result<null> {
   return remove(deps, actor, 'receipt-removed', id, (tx) => deleteReceipt(tx, actor.householdId, id));
-}
-
-export function removeCost(deps: MoneyDeps, actor: Actor, id: string): Result<null> {
-  const known = readCosts(deps.db, actor.householdId).find((cost) => cost.id === id);
-  const about = known === undefined ? id : `${known.on} ${known.kind} ${dollarsText(known.amountCents)}`;
-  return writeHousehold(deps, actor, { action: 'cost-removed', about }, (tx) =>
-    deleteCost(tx, actor.householdId, id) ? succeed(null) : fail('not-found', 'This entry is not there any more.'),
-  );
 }

@@ -17,6 +17,7 @@ import { parsePlan } from '#shared/settlement/parse-plan.ts';
 import { isTimeZone } from '../clock.ts';
 import type { Tx } from '../db/client.ts';
 import { readAssumptions, readSteps } from '../db/facts/read-house.ts';
+import { readCosts } from '../db/facts/read-money.ts';
 import {
   replacePlans,
   replaceRoof,
@@ -28,6 +29,7 @@ import {
 import { replaceCosts, writeCredit, writeIncentive, writeLoan, writeMortgage } from '../db/facts/write-money.ts';
 import type { Actor, Deps } from '../deps.ts';
 import { fieldFault } from './field-fault.ts';
+import { unknownPaper } from './money/known-paper.ts';
 import { writeHousehold } from './write-household.ts';
 
 type StepDeps = Pick<Deps, 'db' | 'clock'>;
@@ -151,7 +153,11 @@ export function saveCredit(deps: StepDeps, actor: Actor, { credit }: z.infer<typ
     costs.map(({ id }) => id),
     'Two costs have the same id.',
   );
-  if (twice.length > 0) return fail('invalid-fields', null, twice);
+  const unknown = costs.flatMap(({ documentId }, index) =>
+    unknownPaper(deps, actor, documentId, `credit.costs.${index}.documentId`),
+  );
+  const faults = [...twice, ...unknown];
+  if (faults.length > 0) return fail('invalid-fields', null, faults);
   return saveStep(deps, actor, 'credit', (tx) => writeCredit(tx, actor.householdId, credit));
 }
 
@@ -183,10 +189,15 @@ export function saveCash(deps: StepDeps, actor: Actor, body: z.infer<typeof cash
       'Two costs have the same id.',
     ),
   );
+  const known = readCosts(deps.db, actor.householdId);
   for (const [index, cost] of body.costs.entries()) {
     if (cost.amountCents < 0)
       faults.push(fieldFault(`costs.${index}.amountCents`, 'Write the amount without a minus.'));
-    if (cost.documentId !== null) faults.push(fieldFault(`costs.${index}.documentId`, 'Papers are added under Money.'));
+    // A paper that was set under Money stays through this form; a new one is set there.
+    const kept = known.find(({ id }) => id === cost.id)?.documentId ?? null;
+    if (cost.documentId !== null && cost.documentId !== kept) {
+      faults.push(fieldFault(`costs.${index}.documentId`, 'Papers are added under Money.'));
+    }
   }
   if (faults.length > 0) return fail('invalid-fields', null, faults);
   return saveStep(deps, actor, 'cash', (tx) => {

@@ -104,6 +104,7 @@ export const receiptBody = z.strictObject({
   from: incentiveReceiptSchema.shape.from,
   to: incentiveReceiptSchema.shape.to,
   quantityWh: z._default(z.nullable(whSchema.check(z.minimum(0))), null),
+  documentId: incentiveReceiptSchema.shape.documentId,
 });
 export const costBody = z.strictObject({
   on: daySchema,

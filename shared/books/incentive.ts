@@ -8,6 +8,7 @@ import { exact, kwhOf, roundToCents } from '../units/rate.ts';
 import type { Source } from '../working.ts';
 import type { UnplacedEntry } from './book.ts';
 import { kwhInput, plainInput, stated, usdInput, usdListInput } from './inputs.ts';
+import { type PaperName, sourceOfPaper } from './paper-source.ts';
 
 /** A cycle as the incentive sees it. `billCreditCents` is what the statement credited for it, positive, where it is paid inside the bill. */
 export type IncentiveCycle = {
@@ -80,6 +81,7 @@ export function incentiveReceived(
   incentive: IncentiveFacts,
   cycles: readonly IncentiveCycle[],
   through: Day | null = null,
+  papers: readonly PaperName[] = [],
 ): UnplacedEntry[] {
   if (incentive.paidAs === 'separate') {
     return incentive.received
@@ -88,7 +90,7 @@ export function incentiveReceived(
         receivedEntry(`incentive-${receipt.id}`, receipt.on, 'received', receipt.amountCents, {
           label: receipt.note ?? `Incentive from ${incentive.payer === '' ? 'the payer' : incentive.payer}`,
           words: 'Received, as entered; before income tax',
-          source: stated('Incentive receipts as entered'),
+          source: sourceOfPaper(receipt.documentId, papers, stated('Incentive receipts as entered')),
         }),
       );
   }

@@ -258,6 +258,7 @@ export const incentiveReceiptSchema = z.object({
   from: z._default(z.nullable(daySchema), null),
   to: z._default(z.nullable(daySchema), null),
   quantityWh: z._default(z.nullable(whSchema), null),
+  documentId: z._default(z.nullable(z.string()), null),
 });
 export type IncentiveReceipt = z.infer<typeof incentiveReceiptSchema>;
 

@@ -14,6 +14,7 @@ export const paperLinkKind = z.enum([
   'mortgageBalance',
   'appraisal',
   'cost',
+  'receipt',
   'creditCost',
   'creditYear',
 ]);
@@ -29,7 +30,7 @@ export type PaperLink = {
   documentId: string | null;
 };
 
-type MoneyFacts = Pick<HouseholdFacts, 'loan' | 'otherLoans' | 'lease' | 'mortgage' | 'credit' | 'costs'>;
+type MoneyFacts = Pick<HouseholdFacts, 'loan' | 'otherLoans' | 'lease' | 'mortgage' | 'credit' | 'costs' | 'incentive'>;
 
 /** Everything of a household that can name a paper, with the paper it names. */
 export function paperLinks(facts: MoneyFacts): PaperLink[] {
@@ -39,6 +40,7 @@ export function paperLinks(facts: MoneyFacts): PaperLink[] {
     ...mortgageLinks(facts),
     ...creditLinks(facts),
     ...costLinks(facts),
+    ...receiptLinks(facts),
   ];
 }
 
@@ -83,6 +85,10 @@ function creditLinks({ credit }: MoneyFacts): PaperLink[] {
 
 function costLinks({ costs }: MoneyFacts): PaperLink[] {
   return costs.map(({ id, on, label, documentId }) => link('cost', id, on, documentId, label));
+}
+
+function receiptLinks({ incentive }: MoneyFacts): PaperLink[] {
+  return (incentive?.received ?? []).map(({ id, on, documentId }) => link('receipt', id, on, documentId));
 }
 
 function link(kind: PaperLinkKind, id: string, on: Day | null, documentId: string | null, label = ''): PaperLink {

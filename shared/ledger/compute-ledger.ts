@@ -106,7 +106,10 @@ function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCyc
   }
   if (facts.incentive !== null) {
     const seen = assembled.map((one) => incentiveCycle(one, facts));
-    entries.push(...incentiveEarned(facts.incentive, seen), ...incentiveReceived(facts.incentive, seen, today, facts.documents));
+    entries.push(
+      ...incentiveEarned(facts.incentive, seen),
+      ...incentiveReceived(facts.incentive, seen, today, facts.documents),
+    );
   }
   if (facts.loan !== null) entries.push(...loanEntries(facts.loan, today));
   entries.push(...otherLoanEntries(facts.otherLoans, today));

@@ -1,6 +1,6 @@
 import { and, eq } from 'drizzle-orm';
 import type { Reader } from '../client.ts';
-import { costs, creditCosts, creditYears, loanPayments } from '../schema/money.ts';
+import { costs, creditCosts, creditYears, incentiveReceipts, loanPayments } from '../schema/money.ts';
 
 /** Sets the paper of a recorded payment of the solar loan. */
 export function setLoanPaymentPaper(db: Reader, householdId: string, id: string, documentId: string | null): void {
@@ -11,6 +11,11 @@ export function setLoanPaymentPaper(db: Reader, householdId: string, id: string,
 export function setCostPaper(db: Reader, householdId: string, id: string, documentId: string | null): void {
   const one = and(eq(costs.householdId, householdId), eq(costs.id, id));
   db.update(costs).set({ documentId }).where(one).run();
+}
+
+export function setReceiptPaper(db: Reader, householdId: string, id: string, documentId: string | null): void {
+  const one = and(eq(incentiveReceipts.householdId, householdId), eq(incentiveReceipts.id, id));
+  db.update(incentiveReceipts).set({ documentId }).where(one).run();
 }
 
 export function setCreditCostPaper(db: Reader, householdId: string, id: string, documentId: string | null): void {

@@ -193,6 +193,7 @@ export const incentiveReceipts = sqliteTable(
     from: dayColumn('from_day'),
     to: dayColumn('to_day'),
     quantityWh: whColumn('quantity_wh'),
+    documentId: text('document_id'),
   },
   (table) => [primaryKey({ columns: [table.householdId, table.id] }), check('incentive_receipts_on', isDay(table.on))],
 );

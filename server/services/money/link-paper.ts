@@ -11,6 +11,7 @@ import {
   setCreditCostPaper,
   setCreditYearPaper,
   setLoanPaymentPaper,
+  setReceiptPaper,
 } from '../../db/facts/write-paper-links.ts';
 import type { Actor, Deps } from '../../deps.ts';
 import { fieldFault } from '../field-fault.ts';
@@ -93,6 +94,9 @@ function writeLink(
       return;
     case 'cost':
       setCostPaper(tx, householdId, id, documentId);
+      return;
+    case 'receipt':
+      setReceiptPaper(tx, householdId, id, documentId);
       return;
     case 'creditCost':
       setCreditCostPaper(tx, householdId, id, documentId);

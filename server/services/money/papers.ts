@@ -60,6 +60,7 @@ const NAMES: Record<PaperLink['kind'], string> = {
   mortgageBalance: 'a balance of the mortgage',
   appraisal: 'an appraisal',
   cost: 'a cost or income',
+  receipt: 'a payment of the incentive',
   creditCost: 'a cost of the tax credit',
   creditYear: 'a tax return',
 };

@@ -11,6 +11,7 @@ import { Sheet } from '#src/ui/sheet.tsx';
 import { FactsList } from './facts-list.tsx';
 import { LoanSchedule } from './loan-schedule.tsx';
 import { type LoanPaymentValues, readLoanPayment } from './money-values.ts';
+import { PaperField } from './paper-field.tsx';
 import { RecordDialog } from './record-dialog.tsx';
 import { RemoveButton } from './remove-button.tsx';
 
@@ -107,12 +108,18 @@ export function LoanSheet({
           title="Record a loan payment"
           hint="It stands in for the scheduled payment of its month."
           householdId={householdId}
-          defaults={{ on: today, amountCents: dollarsText(loan.paymentCents), extraPrincipalCents: '', note: '' }}
+          defaults={{
+            on: today,
+            amountCents: dollarsText(loan.paymentCents),
+            extraPrincipalCents: '',
+            note: '',
+            documentId: '',
+          }}
           read={readLoanPayment}
           change={(body) => ({ kind: 'loanPayment', body })}
           onClose={() => setRecording(false)}
         >
-          {({ register, formState: { errors } }) => (
+          {({ register, watch, setValue, formState: { errors } }) => (
             <>
               <Field label="Paid on" type="date" error={errors.on?.message} {...register('on')} />
               <Field
@@ -132,6 +139,12 @@ export function LoanSheet({
                 {...register('extraPrincipalCents')}
               />
               <Field label="Note" maxLength={200} {...register('note')} />
+              <PaperField
+                householdId={householdId}
+                value={watch('documentId')}
+                error={errors.documentId?.message}
+                onChange={(id) => setValue('documentId', id, { shouldDirty: true })}
+              />
             </>
           )}
         </RecordDialog>

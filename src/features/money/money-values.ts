@@ -9,7 +9,13 @@ const NO_DATE = 'Write a date that exists.';
 const NO_AMOUNT = 'Write an amount such as 244.93.';
 const SOME_DAY = '1970-01-01' as Day;
 
-export type LoanPaymentValues = { on: string; amountCents: string; extraPrincipalCents: string; note: string };
+export type LoanPaymentValues = {
+  on: string;
+  amountCents: string;
+  extraPrincipalCents: string;
+  note: string;
+  documentId: string;
+};
 
 export function readLoanPayment(values: LoanPaymentValues): Reading<z.infer<typeof loanPaymentBody>> {
   const list = new FaultList();
@@ -24,7 +30,7 @@ export function readLoanPayment(values: LoanPaymentValues): Reading<z.infer<type
     extraPrincipalCents: extra,
     note: noteOf(values.note),
     reamortize: false,
-    documentId: null,
+    documentId: paperOf(values.documentId),
   });
 }
 
@@ -36,6 +42,7 @@ export type ReceiptValues = {
   from: string;
   to: string;
   quantityWh: string;
+  documentId: string;
 };
 
 const NO_LAST_DAY = 'Write the last day it covers as well, or neither.';
@@ -57,6 +64,7 @@ export function readReceipt(values: ReceiptValues): Reading<z.infer<typeof recei
     from,
     to: last === null ? null : addDays(last, 1),
     quantityWh: list.optional(values.quantityWh, kwhFromZero, 'quantityWh', 'Write kWh such as 3,120.'),
+    documentId: paperOf(values.documentId),
   });
 }
 
@@ -73,6 +81,11 @@ function zeroOrMore(text: string): Cents | null {
 function kwhFromZero(text: string): Wh | null {
   const amount = parseKwh(text);
   return amount !== null && amount >= 0 ? amount : null;
+}
+
+/** An empty choice is no paper. */
+function paperOf(text: string): string | null {
+  return text === '' ? null : text;
 }
 
 function noteOf(text: string): string | null {

@@ -12,6 +12,7 @@ const KINDS: Record<PaperTarget['kind'], string> = {
   mortgageBalance: 'Balance of the mortgage',
   appraisal: 'Value of the home',
   cost: 'Cost or income',
+  receipt: 'Incentive received',
   creditCost: 'Cost for the tax credit',
   creditYear: 'Tax return',
 };

@@ -1,5 +1,6 @@
 import { Field } from '#src/ui/field.tsx';
 import { type ReceiptValues, readReceipt } from './money-values.ts';
+import { PaperField } from './paper-field.tsx';
 import { RecordDialog } from './record-dialog.tsx';
 
 type ReceiptBody = Extract<ReturnType<typeof readReceipt>, { ok: true }>['body'];
@@ -19,12 +20,12 @@ export function ReceiptDialog({
       title="Record money received"
       hint="As it came: by cheque or transfer, on the day it came. The days and kWh it pays are on its letter; with them it is checked against the production meter."
       householdId={householdId}
-      defaults={{ on: today, amountCents: '', note: '', from: '', to: '', quantityWh: '' }}
+      defaults={{ on: today, amountCents: '', note: '', from: '', to: '', quantityWh: '', documentId: '' }}
       read={readReceipt}
       change={(body) => ({ kind: 'receipt', body })}
       onClose={onClose}
     >
-      {({ register, formState: { errors } }) => (
+      {({ register, watch, setValue, formState: { errors } }) => (
         <>
           <Field label="Received on" type="date" error={errors.on?.message} {...register('on')} />
           <Field
@@ -59,6 +60,12 @@ export function ReceiptDialog({
             {...register('quantityWh')}
           />
           <Field label="Note" maxLength={200} {...register('note')} />
+          <PaperField
+            householdId={householdId}
+            value={watch('documentId')}
+            error={errors.documentId?.message}
+            onChange={(id) => setValue('documentId', id, { shouldDirty: true })}
+          />
         </>
       )}
     </RecordDialog>

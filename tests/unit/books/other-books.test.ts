@@ -44,7 +44,18 @@ describe('the production incentive', () => {
   });
 
   it('is received on the days recorded, and owed is what was earned less that', () => {
-    const received = [{ id: 'r1', on: day('2025-02-20'), amountCents: cents(2_000), note: null, from: null, to: null, quantityWh: null }];
+    const received = [
+      {
+        id: 'r1',
+        on: day('2025-02-20'),
+        amountCents: cents(2_000),
+        note: null,
+        from: null,
+        to: null,
+        quantityWh: null,
+        documentId: null,
+      },
+    ];
     const incentive = incentiveOf({ received });
     expect(incentiveReceived(incentive, cycles)).toMatchObject([
       { date: '2025-02-20', amountCents: 2_000, basis: 'cash' },
@@ -56,7 +67,18 @@ describe('the production incentive', () => {
   });
 
   it('is below zero when more came than was earned', () => {
-    const received = [{ id: 'r1', on: day('2025-02-20'), amountCents: cents(9_000), note: null, from: null, to: null, quantityWh: null }];
+    const received = [
+      {
+        id: 'r1',
+        on: day('2025-02-20'),
+        amountCents: cents(9_000),
+        note: null,
+        from: null,
+        to: null,
+        quantityWh: null,
+        documentId: null,
+      },
+    ];
     expect(incentiveOwed(incentiveOf({ received }), cycles, day('2025-03-01')).amountCents).toBe(3_285 - 9_000);
   });
 

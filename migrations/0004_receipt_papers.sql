@@ -1,0 +1,1 @@
+ALTER TABLE `incentive_receipts` ADD `document_id` text;
