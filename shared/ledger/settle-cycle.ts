@@ -6,11 +6,13 @@ import { asksForIntervals, cycleIntervals } from '../metering/cycle-intervals.ts
 import type { IntervalIndex } from '../metering/interval-index.ts';
 import { billedQuantity } from '../reconcile/billed-quantities.ts';
 import { matchLines } from '../reconcile/match.ts';
+import { lastDigit } from '../reconcile/tolerance.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
-import { compare, qtyOfText, qtyText } from '../settlement/quantity.ts';
+import { qtyText } from '../settlement/quantity.ts';
 import { settleCycle } from '../settlement/settle.ts';
 import type { CycleUsage, Opening, Settlement } from '../settlement/settlement.ts';
+import { exact } from '../units/rate.ts';
 import type { CyclePaper } from './cycle-papers.ts';
 import { type LearnedRates, learnRates, withLearnedRates } from './learned-rates.ts';
 import { sentOutOf, withSentOut } from './sent-out.ts';
@@ -110,11 +112,18 @@ function withPrintedBanks(opening: Opening, statement: Statement, plan: RatePlan
     if (value === null || id === null) continue;
     const held = opening.banks[id];
     if (held !== undefined && typeof held !== 'string') continue;
-    if (held !== undefined && (held === value || compare(qtyOfText(held), qtyOfText(value)) === 0)) continue;
+    if (held !== undefined && printsAs(held, value, printed.unit)) continue;
     banks ??= { ...opening.banks };
     banks[id] = value;
   }
   return banks === null ? opening : { ...opening, banks };
+}
+
+/** Whether a balance is the one printed: kWh may be printed rounded, dollars are not. */
+function printsAs(held: string, printed: string, unit: 'kWh' | 'USD'): boolean {
+  if (held === printed) return true;
+  const tolerance = unit === 'kWh' ? lastDigit(printed) : 0;
+  return exact(held).minus(exact(printed)).abs().lte(tolerance);
 }
 
 /** The usage to settle on, or a sentence that says what is missing and what to do. */

@@ -1,6 +1,7 @@
 import type { SettledAmounts } from '../../settlement/settle.ts';
 import type { CycleUsage, SettledBank } from '../../settlement/settlement.ts';
 import { Exact } from '../../units/rate.ts';
+import { lastDigit } from '../tolerance.ts';
 import type { BilledBank, BilledCycle, BilledLine } from './cause.ts';
 
 /** Lines of one component taken together: a price that changes inside a cycle may be printed as one line or as several. */
@@ -148,10 +149,4 @@ function sameBank(printed: BilledBank, banks: readonly SettledBank[]): boolean {
     const tolerance = ours.unit === 'USD' ? new Exact(0) : lastDigit(said);
     return new Exact(said).minus(ours.move[move]).abs().lte(tolerance);
   });
-}
-
-/** Half of the last digit printed: "470" kWh stand for anything from 469.5 to 470.5. */
-function lastDigit(text: string): Exact {
-  const dot = text.indexOf('.');
-  return new Exact(10).pow(dot < 0 ? 0 : dot + 1 - text.length).div(2);
 }

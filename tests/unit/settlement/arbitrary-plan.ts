@@ -78,19 +78,37 @@ const prices = (energyBy: By, creditBy: By) =>
   });
 
 /** Plans of every form the language has, each of which can be settled; by construction, so that none has to be thrown away. */
-export const shapedPlans: fc.Arbitrary<{ is: Shape; plan: RatePlan }> = shape.chain((is) =>
-  fc
-    .record({
-      more: extras(is),
-      priced: prices(
-        { season: is.seasonal, period: is.byPeriod, tiers: is.tiers },
-        { season: is.seasonal, period: is.byPeriod && is.form !== 'buyAll', tiers: 0 },
-      ),
-    })
-    .map(({ more, priced }) => ({ is, plan: planOf(is, more, priced) })),
-);
+export const shapedPlans: fc.Arbitrary<{ is: Shape; plan: RatePlan }> = plansOf(shape);
 
-export const plans: fc.Arbitrary<RatePlan> = shapedPlans.map(({ plan: made }) => made);
+/** Plans that a household without interval data can be settled on. */
+export const wholeCyclePlans: fc.Arbitrary<RatePlan> = plansOf(
+  shape.map((is) => ({ ...is, steps: false, byPeriod: false, netting: is.netting === 'cycle' ? 'cycle' : 'none' })),
+).map(({ plan: made }) => made);
+
+/** Plans that take interval data: netted by clock blocks or by period, or priced by period. */
+export const intervalPlans: fc.Arbitrary<RatePlan> = plansOf(
+  shape.map((is) => ({
+    ...is,
+    steps: true,
+    byPeriod: is.netting !== 'cycle',
+    netting: is.netting === 'cycle' ? 'hour' : is.netting,
+    tiers: 0,
+  })),
+).map(({ plan: made }) => made);
+
+function plansOf(shapes: fc.Arbitrary<Shape>): fc.Arbitrary<{ is: Shape; plan: RatePlan }> {
+  return shapes.chain((is) =>
+    fc
+      .record({
+        more: extras(is),
+        priced: prices(
+          { season: is.seasonal, period: is.byPeriod, tiers: is.tiers },
+          { season: is.seasonal, period: is.byPeriod && is.form !== 'buyAll', tiers: 0 },
+        ),
+      })
+      .map(({ more, priced }) => ({ is, plan: planOf(is, more, priced) })),
+  );
+}
 
 type Drawn<T> = T extends fc.Arbitrary<infer Value> ? Value : never;
 
