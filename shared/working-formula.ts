@@ -1,4 +1,5 @@
 import { Decimal } from 'decimal.js';
+import { paybackYears, presentValue, rateOfReturn } from './position/economics.ts';
 import { Exact, exact } from './units/rate.ts';
 import type { Working } from './working.ts';
 
@@ -6,8 +7,8 @@ type Value = Exact | Exact[];
 
 /**
  * Evaluates a working from its inputs alone: + − * / and brackets over the inputs' names and plain numbers, and
- * `roundCents(x)` (half away from zero to 0.01), `roundCentsEven(x)`, `roundWhole(x)`, `sum(list)`, `min(…)`, `max(…)`,
- * `pow(x, n)` with a whole n.
+ * `roundCents(x)` (half away from zero to 0.01), `roundCentsEven(x)`, `roundWhole(x)`, `roundTo(x, n)` to n decimals, `sum(list)`, `min(…)`, `max(…)`,
+ * `pow(x, n)` with a whole n; over yearly sums, the first undiscounted: `npv(rate, list)`, `payback(rate, list)`, `irr(list)`.
  * Throws on a formula it cannot read or a name it does not know: a working must always be readable.
  */
 export function evaluateWorking(working: Working): Exact {
@@ -104,11 +105,26 @@ function call(name: string, given: Value[]): Exact {
     case 'roundWhole':
       if (first) return first.toDecimalPlaces(0, Decimal.ROUND_HALF_UP);
       break;
+    case 'roundTo':
+      if (first && list[1]?.isInteger()) return first.toDecimalPlaces(list[1].toNumber(), Decimal.ROUND_HALF_UP);
+      break;
+    case 'npv':
+      if (first) return presentValue(first, list.slice(1));
+      break;
+    case 'payback':
+      return found(name, first ? paybackYears(first, list.slice(1)) : null);
+    case 'irr':
+      return found(name, rateOfReturn(list));
     case 'pow':
       if (first && list[1]?.isInteger()) return first.pow(list[1]);
       break;
   }
   throw new Error(`the function ${name} is not known or lacks its argument`);
+}
+
+function found(name: string, value: Exact | null): Exact {
+  if (value === null) throw new Error(`the function ${name} has no value for its arguments`);
+  return value;
 }
 
 function tokenize(formula: string): string[] {

@@ -1,27 +1,15 @@
-import * as z from 'zod/mini';
 import { orRefusal, refuse } from '../settlement/refused.ts';
 import { EMPTY_OPENING } from '../settlement/settlement.ts';
-import { cents, centsSchema } from '../units/cents.ts';
-import { type Day, daySchema } from '../units/day.ts';
+import { cents } from '../units/cents.ts';
+import type { Day } from '../units/day.ts';
 import type { ProjectionBasis } from './basis.ts';
 import { settleAlone, settleSide } from './bill-side.ts';
 import { drawing } from './chance.ts';
 import { candidateAt, candidatesOf, completeCycles, drawnEnergy, type Urns, urnsOf } from './draws.ts';
+import type { Range } from './outlook.ts';
 import type { PeriodEnergy } from './periods.ts';
 import { evenOn, moneyOfProduction, type ProjectionParts, projectParts } from './project.ts';
 import { usageWithoutRoof, usageWithRoof } from './projected-bills.ts';
-
-/** What eight of ten resampled futures lie between, month by month as the projection's months stand, and when they come even. */
-export const rangeSchema = z.object({
-  resamples: z.int(),
-  months: z.array(z.object({ lowCents: centsSchema, highCents: centsSchema })),
-  /** The tenth and the ninetieth of a hundred, by the day they come even for good; null where that one does not within the horizon. */
-  evenEarliest: z.nullable(daySchema),
-  evenLatest: z.nullable(daySchema),
-  /** How many of the resamples come even within the horizon. */
-  evenWithin: z.int(),
-});
-export type Range = z.infer<typeof rangeSchema>;
 
 export type MadeRange = { ok: true; range: Range } | { ok: false; why: string };
 
