@@ -16,6 +16,7 @@ import { securityHeaders } from './http/security-headers.ts';
 import { creditRoutes } from './routes/credit-routes.ts';
 import { cyclesRoutes } from './routes/cycles-routes.ts';
 import { logRoutes } from './routes/log-routes.ts';
+import { moneyMortgageRoutes } from './routes/money-mortgage-routes.ts';
 import { moneyOtherRoutes } from './routes/money-other-routes.ts';
 import { moneyRoutes } from './routes/money-routes.ts';
 import { peopleRoutes } from './routes/people-routes.ts';
@@ -62,6 +63,7 @@ export function createApp(deps: Deps): App {
   positionRoutes(api, deps);
   logRoutes(api, deps);
   moneyRoutes(api, deps);
+  moneyMortgageRoutes(api, deps);
   moneyOtherRoutes(api, deps);
   creditRoutes(api, deps);
   peopleRoutes(api, deps, sessions, limits);

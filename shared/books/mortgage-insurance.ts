@@ -1,167 +1,15 @@
-import type { InsuranceEndRule, MortgageFacts } from '../facts/finance.ts';
-import { sayDate, sayMoney } from '../ledger/say.ts';
+import type { MortgageFacts } from '../facts/finance.ts';
+import { sayMoney } from '../ledger/say.ts';
+import type { Cents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { Working } from '../working.ts';
 import type { UnplacedEntry } from './book.ts';
 import { stated, usdInput } from './inputs.ts';
-import {
-  amortizationMidpoint,
-  lastPaymentBy,
-  mortgageBook,
-  mortgagePaymentDay,
-  paymentReaching,
-} from './mortgage-balance.ts';
+import { lastPaymentBy, mortgagePaymentDay } from './mortgage-balance.ts';
+import { governingEnd } from './mortgage-ends.ts';
+import { premiumOn } from './mortgage-premium.ts';
 
-/**
- * A day on which the insurance could have gone without the roof. `payment`: the last premium would have been due with this payment of the
- * mortgage; 0 when the insurance was never due. Null where the rule does not apply or its day is not known.
- */
-export type InsuranceEnd = {
-  rule: InsuranceEndRule;
-  on: Day | null;
-  payment: number | null;
-  /** What the day rests on: the schedule made at the start, or the payments as made. */
-  by: 'schedule' | 'actual payments' | 'initial schedule' | null;
-  words: string;
-};
-
-/** The end that counts; `rule` is null where the mortgage's own end, or none of the rules, decides. */
-export type GoverningEnd = { rule: InsuranceEndRule | null; on: Day | null; payment: number | null; words: string };
-
-/** FHA insurance of a loan at or under 90 % of the value ends after eleven years (from memory; ask the servicer). */
-const FHA_PERCENT = 90;
-const FHA_PAYMENTS = 132;
-
-/**
- * When each rule would have ended the insurance: 12 U.S.C. 4901(2) (balance first scheduled, or by actual payments, to reach 80 % of the original
- * value: on request), 4902(b) (78 % by the initial schedule: automatic; extra payments do not move it), 4902(c) (first of the month after the
- * midpoint of the amortization), and the owner's own day of appreciation. The Act covers conventional loans only.
- */
-export function insuranceEnds(mortgage: MortgageFacts): InsuranceEnd[] {
-  if (mortgage.kind !== 'conventional') return notCovered(mortgage.kind);
-  return [request80(mortgage), automatic78(mortgage), midpoint(mortgage), appreciation(mortgage)];
-}
-
-function request80(mortgage: MortgageFacts): InsuranceEnd {
-  const { initial, actual } = mortgageBook(mortgage);
-  const scheduled = paymentReaching(mortgage, initial, '0.80');
-  const paid = paymentReaching(mortgage, actual, '0.80');
-  const byPayments = paid !== null && (scheduled === null || paid < scheduled);
-  const how = byPayments ? 'by actual payments' : 'by the initial schedule';
-  return end(mortgage, 'request80', byPayments ? paid : scheduled, byPayments ? 'actual payments' : 'schedule', {
-    never: 'The balance never comes down to 80 % of the original value',
-    reached: `On request, when the balance reaches 80 % of the original value ${how}`,
-  });
-}
-
-function automatic78(mortgage: MortgageFacts): InsuranceEnd {
-  const payment = paymentReaching(mortgage, mortgageBook(mortgage).initial, '0.78');
-  return end(mortgage, 'automatic78', payment, 'initial schedule', {
-    never: 'The balance never comes down to 78 % of the original value',
-    reached: 'By itself, when the initial schedule reaches 78 % of the original value',
-  });
-}
-
-function midpoint(mortgage: MortgageFacts): InsuranceEnd {
-  const middle = amortizationMidpoint(mortgage);
-  return {
-    rule: 'midpoint',
-    on: middle.firstOfNextMonth,
-    payment: middle.payment,
-    by: 'initial schedule',
-    words: `In any case on ${sayDate(middle.firstOfNextMonth)}, the first of the month after the middle of the term`,
-  };
-}
-
-function appreciation(mortgage: MortgageFacts): InsuranceEnd {
-  const on = mortgage.insurance?.appreciationOn ?? null;
-  return {
-    rule: 'appreciation',
-    on,
-    payment: on === null ? null : lastPaymentBy(mortgage, on),
-    by: null,
-    words:
-      on === null
-        ? 'No day stated on which the home’s value alone, without the roof, would have been enough'
-        : `On ${sayDate(on)}, when the home’s value alone would have been enough, as you stated`,
-  };
-}
-
-function end(
-  mortgage: MortgageFacts,
-  rule: InsuranceEndRule,
-  payment: number | null,
-  by: 'schedule' | 'actual payments' | 'initial schedule',
-  words: { never: string; reached: string },
-): InsuranceEnd {
-  if (payment === null) return { rule, on: null, payment: null, by: null, words: words.never };
-  const on = mortgagePaymentDay(mortgage, payment);
-  const when = payment === 0 ? 'at the start' : `with payment ${payment} on ${sayDate(on)}`;
-  return { rule, on, payment, by, words: `${words.reached}: ${when}` };
-}
-
-function notCovered(kind: 'fha' | 'va'): InsuranceEnd[] {
-  const words =
-    kind === 'va'
-      ? 'A VA loan carries no monthly mortgage insurance'
-      : 'The law on cancelling mortgage insurance does not cover FHA loans';
-  const rules: InsuranceEndRule[] = ['request80', 'automatic78', 'midpoint', 'appreciation'];
-  return rules.map((rule) => ({
-    rule,
-    on: null,
-    payment: null,
-    by: null,
-    words:
-      kind === 'fha' && rule === 'appreciation'
-        ? 'An appraisal does not take FHA insurance off; a refinance does (from memory; ask the servicer)'
-        : words,
-  }));
-}
-
-/**
- * The day to which the insurance avoided is counted: the owner's rule, or the prudent one (the first of all that apply; also where the chosen rule
- * has no day), and never past a refinance, sale or payoff.
- */
-export function governingEnd(mortgage: MortgageFacts): GoverningEnd {
-  const byRule = ruleEnd(mortgage);
-  const endedOn = mortgage.endedOn;
-  if (endedOn === null) return byRule;
-  const payment = lastPaymentBy(mortgage, endedOn);
-  if (byRule.payment !== null && byRule.payment <= payment) return byRule;
-  return {
-    rule: null,
-    on: endedOn,
-    payment,
-    words: `The mortgage ended on ${sayDate(endedOn)}, and its insurance with it`,
-  };
-}
-
-function ruleEnd(mortgage: MortgageFacts): GoverningEnd {
-  if (mortgage.kind === 'va') {
-    return { rule: null, on: null, payment: 0, words: 'A VA loan carries no monthly mortgage insurance' };
-  }
-  if (mortgage.kind === 'fha') return fhaEnd(mortgage);
-  const chosen = mortgage.insurance?.endRule ?? 'prudent';
-  const ends = insuranceEnds(mortgage).filter((one) => one.payment !== null);
-  const picked = ends.find((one) => one.rule === chosen);
-  if (picked) return picked;
-  const first = [...ends].sort((a, b) => (a.payment ?? 0) - (b.payment ?? 0))[0];
-  if (!first) throw new Error('a conventional mortgage always has a midpoint');
-  return chosen === 'prudent' ? first : { ...first, words: `${first.words}. The rule you chose has no day yet` };
-}
-
-function fhaEnd(mortgage: MortgageFacts): GoverningEnd {
-  const atMost90 = mortgage.principalCents * 100 <= mortgage.originalValueCents * FHA_PERCENT;
-  const payment = atMost90 ? Math.min(FHA_PAYMENTS, mortgage.termMonths) : mortgage.termMonths;
-  return {
-    rule: null,
-    on: mortgagePaymentDay(mortgage, payment),
-    payment,
-    words: atMost90
-      ? 'FHA insurance on a loan that began at or under 90 % of the value ends after eleven years (from memory; ask the servicer)'
-      : 'FHA insurance on a loan that began over 90 % of the value stays for its whole term (from memory; ask the servicer)',
-  };
-}
+export { type GoverningEnd, governingEnd, type InsuranceEnd, insuranceEnds } from './mortgage-ends.ts';
 
 /**
  * Premiums not paid because of the roof, one on each payment's due date from the removal to the day the insurance could have gone anyway (the last
@@ -174,26 +22,35 @@ export function insuranceEntries(mortgage: MortgageFacts, through: Day): Unplace
   const last = Math.min(ending.payment ?? mortgage.termMonths, lastPaymentBy(mortgage, through));
   const paidBefore = lastPaymentBy(mortgage, insurance.removedOn);
   const firstNumber = mortgagePaymentDay(mortgage, paidBefore) === insurance.removedOn ? paidBefore : paidBefore + 1;
-  const premium = insurance.premiumMonthlyCents;
-  const working: Working = {
-    words: `${sayMoney(premium)} a month, not paid because of the roof. ${ending.words}`,
-    formula: 'premium',
-    inputs: [usdInput('premium', 'Premium a month', premium, stated('Mortgage insurance as entered'))],
-    unit: 'USD',
-    basis: 'computed',
+  const workings = new Map<number, Working>();
+  const workingOf = (premium: Cents): Working => {
+    const known = workings.get(premium);
+    if (known) return known;
+    const made: Working = {
+      words: `${sayMoney(premium)} a month, not paid because of the roof. ${ending.words}`,
+      formula: 'premium',
+      inputs: [usdInput('premium', 'Premium a month', premium, stated('Mortgage insurance as entered'))],
+      unit: 'USD',
+      basis: 'computed',
+    };
+    workings.set(premium, made);
+    return made;
   };
   const entries: UnplacedEntry[] = [];
   for (let number = Math.max(1, firstNumber); number <= last; number += 1) {
+    const date = mortgagePaymentDay(mortgage, number);
+    const premium = premiumOn(mortgage, date);
+    if (premium === 0) continue;
     entries.push({
       id: `insurance-${number}`,
-      date: mortgagePaymentDay(mortgage, number),
+      date,
       book: 'insurance',
       kind: 'premium',
       label: `Mortgage insurance not paid, with payment ${number}`,
       amountCents: premium,
       basis: 'avoided',
       estimated: false,
-      working,
+      working: workingOf(premium),
     });
   }
   return entries;
