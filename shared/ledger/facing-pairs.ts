@@ -1,58 +1,68 @@
 import type { PrintedLine } from '../facts/papers.ts';
 import { input, ownFigure } from '../metering/source.ts';
+import { matchParts, partKey } from '../reconcile/match-parts.ts';
 import { LINE_TOLERANCE_CENTS } from '../reconcile/tolerance.ts';
+import type { PriceOf } from '../settlement/price.ts';
 import type { SettledLine } from '../settlement/settlement.ts';
 import { type Cents, dollarsText, subtractCents, sumCents } from '../units/cents.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { FacingLine } from './cycle.ts';
 import type { SettledCycle } from './settle-cycle.ts';
 
-/** Billed lines and ours that face each other; either side may be empty. */
-export type Pair = { component: string | null; billed: PrintedLine[]; ours: SettledLine[] };
+/** Billed lines and ours that face each other, of one of the component's prices (`part`); either side may be empty. */
+export type Pair = { component: string | null; part: PriceOf | null; billed: PrintedLine[]; ours: SettledLine[] };
 
 /**
- * Pairs the printed lines with ours by component, in the order printed; ours that are not printed follow, where they come to anything. Where both
- * sides have as many parts (a price that changed inside the cycle) each faces its own; else the parts of a component stand together.
+ * Pairs the printed lines with ours by component, and by period and tier where its lines can be told apart, in the order printed; ours that are
+ * not printed follow, where they come to anything. Where both sides have as many parts (a price that changed inside the cycle) each faces its
+ * own; else the parts stand together.
  */
 export function pairUp(printed: readonly PrintedLine[], settled: SettledCycle): Pair[] {
   const ours = settled.ours?.settlement.lines ?? [];
+  const plan = settled.plan?.plan ?? null;
+  const parts = plan === null ? [] : matchParts(printed, settled.components, plan, ours);
+  const apart = new Set(settled.components.filter((_, at) => (parts[at] ?? null) !== null));
   const sides = new Map<string, Pair>();
-  printed.forEach((line, at) => {
+  const billedSide = (line: PrintedLine, at: number): Pair | null => {
     const component = settled.components[at] ?? null;
-    if (component !== null) sideOf(sides, component, line.kind).billed.push(line);
+    return component === null ? null : sideOf(sides, component, line.kind, parts[at] ?? null);
+  };
+  const ourSide = ({ component, kind, period, tier }: SettledLine): Pair =>
+    sideOf(sides, component, kind, apart.has(component) ? { period, tier } : null);
+  printed.forEach((line, at) => {
+    billedSide(line, at)?.billed.push(line);
   });
-  for (const line of ours) sideOf(sides, line.component, line.kind).ours.push(line);
+  for (const line of ours) ourSide(line).ours.push(line);
 
   const pairs: Pair[] = [];
   printed.forEach((line, at) => {
-    const component = settled.components[at] ?? null;
-    if (component === null) {
-      pairs.push({ component, billed: [line], ours: [] });
-      return;
-    }
-    const all = sideOf(sides, component, line.kind);
-    if (all.billed.length !== all.ours.length) {
+    const all = billedSide(line, at);
+    if (all === null) {
+      pairs.push({ component: null, part: null, billed: [line], ours: [] });
+    } else if (all.billed.length !== all.ours.length) {
       if (all.billed[0] === line) pairs.push(all);
     } else if (all.billed.length === 1) {
       pairs.push(all);
     } else {
-      const part = all.ours[all.billed.indexOf(line)];
-      pairs.push({ component, billed: [line], ours: part ? [part] : [] });
+      const own = all.ours[all.billed.indexOf(line)];
+      pairs.push({ ...all, billed: [line], ours: own ? [own] : [] });
     }
   });
   for (const line of ours) {
-    if (line.amountCents === 0 || sideOf(sides, line.component, line.kind).billed.length > 0) continue;
-    pairs.push({ component: line.component, billed: [], ours: [line] });
+    const side = ourSide(line);
+    if (line.amountCents === 0 || side.billed.length > 0) continue;
+    pairs.push({ ...side, ours: [line] });
   }
   return pairs;
 }
 
-/** Both sides of a component so far; its true-up stands apart from it. */
-function sideOf(sides: Map<string, Pair>, component: string, kind: string): Pair {
-  const key = kind === 'trueup' ? `${component} trueup` : component;
+/** Both sides of a component's price so far; its true-up stands apart from it. */
+function sideOf(sides: Map<string, Pair>, component: string, kind: string, part: PriceOf | null): Pair {
+  const own = partKey(component, part);
+  const key = kind === 'trueup' ? `${own} trueup` : own;
   let found = sides.get(key);
   if (!found) {
-    found = { component, billed: [], ours: [] };
+    found = { component, part, billed: [], ours: [] };
     sides.set(key, found);
   }
   return found;
@@ -68,7 +78,7 @@ export function facingLine(pair: Pair, at: number, judged: boolean): FacingLine 
   const oursCents = ours ? sumCents(pair.ours.map((line) => line.amountCents)) : null;
   const differenceCents = billedCents !== null && oursCents !== null ? subtractCents(billedCents, oursCents) : null;
   return {
-    key: pair.component === null ? `printed:${at}` : `line:${pair.component}:${at}`,
+    key: pair.component === null ? `printed:${at}` : `line:${partKey(pair.component, pair.part)}:${at}`,
     label,
     unit: billed?.unit ?? ours?.unit ?? null,
     billed:

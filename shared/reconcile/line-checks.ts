@@ -1,116 +1,106 @@
 import type { PrintedLine } from '../facts/papers.ts';
 import { sayMoney } from '../ledger/say.ts';
-import type { Charge, RatePlan } from '../settlement/plan.ts';
-import { priceAmount, priceQuantity } from '../settlement/price.ts';
-import { exactText, plus, type Qty, qtyOfText, sizeOf } from '../settlement/quantity.ts';
-import { type Cents, cents, dollarsText, sumCents } from '../units/cents.ts';
+import type { RatePlan } from '../settlement/plan.ts';
+import { cents, dollarsText, sumCents } from '../units/cents.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
 import { isCarried } from './electric-lines.ts';
+import { type LineGroup, priceOf } from './line-price.ts';
 import { compareCents, nothingToCompare } from './make-check.ts';
+import { wordsOf } from './match.ts';
+import { matchParts, partKey } from './match-parts.ts';
 import { LINE_TOLERANCE_CENTS } from './tolerance.ts';
-
-/** `words` says the price, and is asked for only where it differs. */
-type Priced = { amountCents: Cents; words: () => string | undefined } | { why: string };
 
 /**
  * Each printed line at the plan's price for its *billed* quantity, kept apart from the quantity's own check (ledger.md §4); taxes on their base of
- * billed lines. Lines of one component (a price that changes inside the cycle) are taken together, a cent for each.
+ * billed lines. A component priced by period or tier has a check for each; lines of one price (one that changes inside the cycle) are taken
+ * together, a cent for each. Where tiers are told apart and each is priced right, their sum says whether they end where the plan says.
  */
 export function linePriceChecks(context: CheckContext): Check[] {
   const { paper, settled } = context;
   if (settled.plan === null || paper.split !== null) return [];
   const { plan } = settled.plan;
-  const checks: Check[] = [];
-  const done = new Set<string>();
+  const parts = matchParts(paper.lines, settled.components, plan, settled.ours?.settlement.lines ?? []);
+  const groups = new Map<string, LineGroup>();
+  const made: (LineGroup | Check)[] = [];
   paper.lines.forEach((line, at) => {
     const component = settled.components[at] ?? null;
     if (component === null) {
-      if (!isCarried(line, null)) checks.push(unknownLine(line, at));
+      if (!isCarried(line, null)) made.push(unknownLine(line, at));
       return;
     }
-    if (done.has(component) || plan.banks.some((bank) => bank.id === component)) return;
-    done.add(component);
-    const same = paper.lines.filter((_, i) => settled.components[i] === component);
-    checks.push(priceCheck(context, plan, component, line.label, same));
+    if (plan.banks.some((bank) => bank.id === component)) return;
+    const part = parts[at] ?? null;
+    const key = partKey(component, part);
+    const known = groups.get(key);
+    if (known) {
+      known.lines.push(line);
+      return;
+    }
+    const group = { component, part, label: line.label, lines: [line] };
+    groups.set(key, group);
+    made.push(group);
   });
-  return checks;
+  const several = (component: string) => [...groups.values()].filter((one) => one.component === component).length > 1;
+  const checks = made.map((one) =>
+    'check' in one
+      ? one
+      : priceCheck(context, plan, several(one.component) ? partKey(one.component, one.part) : one.component, one),
+  );
+  return [...checks, ...tierSums(context, plan, [...groups.values()], checks)];
+}
+
+/** One check of the sum of a component's tiers, where each was found at its own price. */
+function tierSums(
+  context: CheckContext,
+  plan: RatePlan,
+  groups: readonly LineGroup[],
+  checks: readonly Check[],
+): Check[] {
+  return plan.charges.flatMap((charge) => {
+    const mine = groups.filter((one) => one.component === charge.id && one.part !== null && one.part.tier !== null);
+    if (mine.length < 2) return [];
+    const agree = mine.every((one) =>
+      checks.some((check) => check.about === partKey(charge.id, one.part) && check.verdict === 'agrees'),
+    );
+    if (!agree) return [];
+    const lines = mine.flatMap((one) => one.lines);
+    const whole = { component: charge.id, part: null, label: charge.label, lines };
+    return [priceCheck(context, plan, charge.id, whole, `Tiers of ${charge.label}`)];
+  });
 }
 
 function priceCheck(
   context: CheckContext,
   plan: RatePlan,
-  component: string,
-  label: string,
-  lines: readonly PrintedLine[],
+  about: string,
+  group: LineGroup,
+  title = `Price of ${labelOf(plan, group)}`,
 ): Check {
-  const title = `Price of ${label}`;
+  const { lines } = group;
+  const label = labelOf(plan, group);
   const stated = sumCents(lines.map((line) => line.amountCents));
-  const priced = priceOf(context, plan, component, lines);
+  const tolerance = cents(LINE_TOLERANCE_CENTS * lines.length);
+  const priced = priceOf(context, plan, group, stated, tolerance);
   if ('why' in priced) {
-    return nothingToCompare('linePrice', component, 'USD', { title, stated: dollarsText(stated), cause: priced.why });
+    return nothingToCompare('linePrice', about, 'USD', { title, stated: dollarsText(stated), cause: priced.why });
   }
-  const sides = { stated, found: priced.amountCents, tolerance: cents(LINE_TOLERANCE_CENTS * lines.length) };
-  return compareCents('linePrice', component, title, sides, () => ({
+  return compareCents('linePrice', about, title, { stated, found: priced.amountCents, tolerance }, () => ({
     cause: `${label} is billed at ${sayMoney(stated)}; by the rate plan it is ${[priced.words(), sayMoney(priced.amountCents)].join(', ')}.`,
     advice:
       'Compare the rate printed with the plan. If the utility changed it, add the new rate to the plan with its date.',
   }));
 }
 
-function priceOf(context: CheckContext, plan: RatePlan, component: string, lines: readonly PrintedLine[]): Priced {
-  const charge = plan.charges.find((one) => one.id === component) ?? null;
-  const quantity = quantityOf(context, charge, lines);
-  if (typeof quantity === 'string') {
-    const { from, to } = context.paper;
-    const amountCents = priceAmount(plan, component, from, to, quantity);
-    if (amountCents !== null) {
-      return { amountCents, words: () => priceQuantity(plan, component, from, to, quantity)?.working.words };
-    }
-  }
-  // What the plan prices only in its place among the other lines (a minimum, kWh by period, a tax after credits) is taken from the bill settled on
-  // the billed kWh.
-  const placed = context.settled.asBilled?.settlement.lines.filter((line) => line.component === component) ?? [];
-  if (placed.length > 0 && (quantity !== null || charge?.basis === 'floor' || charge?.afterCredits === true)) {
-    return {
-      amountCents: sumCents(placed.map((line) => line.amountCents)),
-      words: () => placed.map((line) => line.working.words).join(', '),
-    };
-  }
-  return { why: unpriced(charge, quantity) };
-}
-
-/** What is missing to price a line that neither the plan alone nor the settled bill says. */
-function unpriced(charge: Charge | null, quantity: string | null): string {
-  if (quantity !== null || charge?.basis === 'floor') return 'The rate plan cannot price this line by itself.';
-  if (charge?.basis === 'percent') return 'A line this percentage is taken on is not printed.';
-  return 'The statement prints no quantity for this line. Add it to check the price.';
-}
-
-/** The quantity to price: printed kWh, the cycle, its days, or for a percentage the billed lines it is taken on; null when not printed. */
-function quantityOf(context: CheckContext, charge: Charge | null, lines: readonly PrintedLine[]): string | null {
-  if (charge?.basis === 'cycle') return '1';
-  if (charge?.basis === 'day') return String(context.paper.days);
-  if (charge?.basis === 'percent') return charge.afterCredits ? null : billedBase(context, charge.on);
-  let sum: Qty = 0;
-  for (const line of lines) {
-    if (line.quantity === null) return null;
-    sum = plus(sum, sizeOf(qtyOfText(line.quantity)));
-  }
-  return exactText(sum);
-}
-
-/** USD of the billed lines of these components; null where one of them is not printed. */
-function billedBase({ paper, settled }: CheckContext, on: readonly string[]): string | null {
-  const found = new Set<string>();
-  const amounts: Cents[] = [];
-  paper.lines.forEach((line, at) => {
-    const component = settled.components[at] ?? null;
-    if (component === null || !on.includes(component)) return;
-    found.add(component);
-    amounts.push(line.amountCents);
-  });
-  return on.every((id) => found.has(id)) ? dollarsText(sumCents(amounts)) : null;
+/** The label as printed, with the period or tier it stands for where other lines have the same one. */
+function labelOf(plan: RatePlan, { label, lines, part }: LineGroup): string {
+  const period = plan.calendar.periods.find(({ id }) => id === part?.period);
+  const words = wordsOf(label);
+  const named = period === undefined || [...wordsOf(period.label)].every((word) => words.has(word));
+  const tier = part?.tier == null || lines.some((line) => /\d|first|over|tier/i.test(line.label)) ? null : part.tier;
+  return [label, named ? null : period.label || period.id, tier === null ? null : `tier ${tier}`]
+    .filter((word) => word !== null)
+    .join(', ');
 }
 
 function unknownLine(line: PrintedLine, at: number): Check {

@@ -65,7 +65,8 @@ function component(id: string, kind: string, label: string): Component {
   return { id, kind, words: wordsOf(label) };
 }
 
-function wordsOf(label: string): Set<string> {
+/** The words of a label, small letters, each once. */
+export function wordsOf(label: string): Set<string> {
   return new Set(label.toLowerCase().match(/[\p{L}]+/gu) ?? []);
 }
 

@@ -45,8 +45,9 @@ export function priceAmount(
   from: Day,
   to: Day,
   quantity: string | null,
+  of: PriceOf = ANY_PRICE,
 ): Cents | null {
-  return priceSaid(plan, component, from, to, quantity, ANY_PRICE, false)?.amountCents ?? null;
+  return priceSaid(plan, component, from, to, quantity, of, false)?.amountCents ?? null;
 }
 
 function priceSaid(
