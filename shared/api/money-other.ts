@@ -4,7 +4,6 @@ import { costSchema } from '../facts/house.ts';
 import { figureSchema } from '../position/position.ts';
 import { centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
-import { workingSchema } from '../working.ts';
 import { endpoint, HOUSEHOLD, OWNER } from './endpoint.ts';
 import { costBody, loanPaymentBody } from './money.ts';
 
@@ -16,8 +15,8 @@ export const costStanding = z.object({
   toDateCents: centsSchema,
   /** The next day it moves; null where it does not any more. */
   nextOn: z.nullable(daySchema),
-  /** The working of one of its entries; null before the first. */
-  working: z.nullable(workingSchema),
+  /** One of its entries, with its working; null before the first. */
+  each: z.nullable(figureSchema),
 });
 
 /** What a kind came to in a year, from its entries through today. */

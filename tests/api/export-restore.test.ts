@@ -8,6 +8,8 @@ import { creditApi } from '#shared/api/credit.ts';
 import { cyclesApi } from '#shared/api/cycles.ts';
 import { logApi } from '#shared/api/log.ts';
 import { moneyApi } from '#shared/api/money.ts';
+import { moneyOtherApi } from '#shared/api/money-other.ts';
+import { moneyPapersApi } from '#shared/api/money-papers.ts';
 import { peopleApi } from '#shared/api/people.ts';
 import { type HouseholdExport, householdExport, householdFacts } from '#shared/facts/household.ts';
 import { computeLedger } from '#shared/ledger/compute-ledger.ts';
@@ -86,12 +88,53 @@ beforeAll(async () => {
   (await owner.call(cyclesApi.accept, { params: { ...params, to: differing.to }, body: accept })).value;
   const pay = { on: '2025-09-01', amountCents: 50_000, extraPrincipalCents: 20_000, note: 'extra' };
   (await owner.call(moneyApi.addLoanPayment, { params, body: pay as never })).value;
+  const { documentId: paper } = (
+    await owner.call(moneyPapersApi.add, { params, file: { fileName: 'remittance.pdf', bytes: '%PDF-1.7 remittance' } })
+  ).value;
   (
     await owner.call(moneyApi.addReceipt, {
       params,
-      body: { on: '2025-10-02', amountCents: 9100, note: null } as never,
+      body: { on: '2025-10-02', amountCents: 9100, note: null, documentId: paper } as never,
     })
   ).value;
+  const care = {
+    on: '2025-07-31',
+    kind: 'upkeep',
+    label: 'Care',
+    amountCents: 1500,
+    every: 'month',
+    until: '2026-06-30',
+  };
+  (await owner.call(moneyApi.addCost, { params, body: { ...care, documentId: paper } as never })).value;
+  const share = {
+    kind: 'mortgageShare',
+    lender: 'Harbour Mortgage',
+    principalCents: 500_000,
+    dealerFeeCents: 0,
+    annualRate: '0.0425',
+    termMonths: 120,
+    fundedOn: '2025-05-20',
+    firstPaymentOn: '2025-07-01',
+    documentId: paper,
+  };
+  const { loans } = (await owner.call(moneyOtherApi.addLoan, { params, body: share as never })).value;
+  (
+    await owner.call(moneyOtherApi.addPayment, {
+      params: { ...params, id: loans[0]?.id ?? '' },
+      body: { ...pay, reamortize: false, documentId: paper } as never,
+    })
+  ).value;
+  const power = {
+    kind: 'powerPurchase',
+    company: 'Roof Lettings',
+    firstPaymentOn: '2025-07-01',
+    termMonths: 240,
+    monthlyCents: 0,
+    ratePerKwh: '0.1195',
+    yearlyRise: '0.02',
+    documentId: paper,
+  };
+  (await owner.call(moneyOtherApi.putLease, { params, body: power as never })).value;
   (
     await owner.call(moneyApi.addCost, {
       params,
@@ -121,6 +164,9 @@ describe('the full export', () => {
     }
     expect(facts.loan?.payments).toHaveLength(1);
     expect(facts.incentive?.received).toHaveLength(1);
+    expect(facts.incentive?.received[0]?.documentId).toBe(facts.lease?.documentId);
+    expect(facts.otherLoans[0]?.loan.payments).toHaveLength(1);
+    expect(facts.costs.map(({ every }) => every)).toContain('month');
     expect(facts.credit?.years).toHaveLength(1);
     expect(facts.intervals.some(({ values }) => values.includes(null))).toBe(true);
     expect(Object.keys(exported.documentBytes)).toHaveLength(facts.documents.length);

@@ -157,10 +157,10 @@ describe('fields that a caller cannot set', () => {
       'id',
     ],
     [
-      'the paper of a cost',
+      'the id of a cost',
       moneyApi.addCost,
-      { on: '2025-09-01', kind: 'repair', label: 'x', amountCents: 1, documentId: 'x' },
-      'documentId',
+      { on: '2025-09-01', kind: 'repair', label: 'x', amountCents: 1, id: 'x' },
+      'id',
     ],
     [
       'a revision of a statement',

@@ -38,12 +38,13 @@ function costsView({ facts, ledger, today }: HouseholdLedger): CostsView {
     costs: facts.costs,
     standings: facts.costs.map((cost) => {
       const own = costEntries([cost], today, facts.documents);
+      const [first] = own;
       return {
         id: cost.id,
         times: own.length,
         toDateCents: sumCents(own.map(({ amountCents }) => amountCents)),
         nextOn: nextDay(cost, today),
-        working: own[0]?.working ?? null,
+        each: first === undefined ? null : { amountCents: first.amountCents, working: first.working },
       };
     }),
     totals: [...byYear.values()].flatMap((group) => {

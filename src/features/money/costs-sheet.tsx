@@ -112,7 +112,7 @@ function CostRow({
         {COST_KINDS[cost.kind]}
       </td>
       <td data-label="Amount">
-        <MoneyFigure title={cost.label} cents={signedCents(cost)} working={standing?.working ?? null} />
+        <MoneyFigure title={cost.label} cents={signedCents(cost)} working={standing?.each?.working ?? null} />
       </td>
       <td data-label="So far">
         <span>
