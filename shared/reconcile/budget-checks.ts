@@ -27,7 +27,6 @@ export function budgetChainCheck({ paper: { statement, previous } }: CheckContex
   }
   const { instalmentCents, balanceCents } = budget;
   const settledCents = budget.settledCents ?? ZERO_CENTS;
-  // A plan that begins with this statement begins at nothing.
   const lastCents = previous === null ? null : last === null ? ZERO_CENTS : last.balanceCents;
   if (balanceCents === null || lastCents === null) {
     return nothingToCompare('budgetChain', '', 'USD', {
@@ -42,6 +41,15 @@ export function budgetChainCheck({ paper: { statement, previous } }: CheckContex
   const charges = electricCents(statement.lines);
   const found = cents(lastCents + charges - instalmentCents - settledCents);
   const tolerance = cents(totalToleranceCents(electricLines(statement.lines).length));
+  // A plan that begins here begins at nothing; whether it does, a statement before without budget figures does not say.
+  if (last === null && Math.abs(balanceCents - found) > tolerance) {
+    return nothingToCompare('budgetChain', '', 'USD', {
+      title: TITLE,
+      stated: dollarsText(balanceCents),
+      cause: `The statement before has no budget figures. Had the plan begun with this one, its balance would be ${sayMoney(found)}.`,
+      advice: 'Add the budget amount and balance to the earlier statement.',
+    });
+  }
   return compareCents('budgetChain', '', TITLE, { stated: balanceCents, found, tolerance }, () => {
     const figures = { instalment: instalmentCents, settled: settledCents, charges, balance: balanceCents };
     const settling = settledCents === 0 ? '' : ` − ${sayMoney(settledCents)} settled`;

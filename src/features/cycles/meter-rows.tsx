@@ -8,40 +8,42 @@ const CHANNEL_NAMES = { import: 'Bought', export: 'Sent out', production: 'Made'
 export function MeterRows({ cycle }: { cycle: Cycle }) {
   if (cycle.meters.length === 0) return null;
   return (
-    <table className="ruled ruled-stack mt-4 max-w-[620px]">
-      <caption className="text-left font-semibold">Meter by meter</caption>
-      <thead>
-        <tr>
-          <th scope="col" className="text">
-            Meter
-          </th>
-          <th scope="col" className="text">
-            Counts
-          </th>
-          <th scope="col">kWh</th>
-        </tr>
-      </thead>
-      <tbody>
-        {cycle.meters.map((one) => (
-          <tr key={`${one.channel} ${one.meter}`}>
-            <th scope="row">
-              {one.meter}
-              {noteOf(one) !== null && <span className="hint block font-normal">{noteOf(one)}</span>}
+    <section className="mt-5 max-w-[620px]" aria-labelledby="meter-by-meter">
+      <h3 id="meter-by-meter">Meter by meter</h3>
+      <table className="ruled ruled-stack">
+        <thead>
+          <tr>
+            <th scope="col" className="text">
+              Meter
             </th>
-            <td className="text" data-label="Counts">
-              {CHANNEL_NAMES[one.channel]}
-            </td>
-            <td data-label="kWh">
-              <FigureButton
-                title={`${CHANNEL_NAMES[one.channel]}, meter ${one.meter}`}
-                text={kwh(one.figure.wh)}
-                working={one.figure.working}
-              />
-            </td>
+            <th scope="col" className="text">
+              Counts
+            </th>
+            <th scope="col">kWh</th>
           </tr>
-        ))}
-      </tbody>
-    </table>
+        </thead>
+        <tbody>
+          {cycle.meters.map((one) => (
+            <tr key={`${one.channel} ${one.meter}`}>
+              <th scope="row">
+                {one.meter}
+                {noteOf(one) !== null && <span className="hint block font-normal">{noteOf(one)}</span>}
+              </th>
+              <td className="text" data-label="Counts">
+                {CHANNEL_NAMES[one.channel]}
+              </td>
+              <td data-label="kWh">
+                <FigureButton
+                  title={`${CHANNEL_NAMES[one.channel]}, meter ${one.meter}`}
+                  text={kwh(one.figure.wh)}
+                  working={one.figure.working}
+                />
+              </td>
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </section>
   );
 }
 

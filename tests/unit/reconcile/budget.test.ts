@@ -264,6 +264,15 @@ describe('a budget balance that cannot be followed', () => {
     expect(checksOf(facts, 0).some((one) => one.check === 'budgetChain')).toBe(false);
   });
 
+  test('says nothing of a balance that was there before its figures were kept', () => {
+    const facts = onBudget(buildHousehold(), (at) => (at === 0 ? { instalment: null } : PLAIN));
+    const older = withBudget((budget) => ({ balanceCents: cents((budget.balanceCents ?? 0) - 6412) }));
+    expect(check(changed(1, older, facts), 1, 'budgetChain:')).toMatchObject({
+      verdict: 'nothing-to-compare',
+      advice: 'Add the budget amount and balance to the earlier statement.',
+    });
+  });
+
   test('is asked after where the plan ends with a balance, by the statement’s day or its last', () => {
     const facts = onBudget(buildHousehold(), (at) => (at === 2 ? { instalment: null } : PLAIN));
     expect(check(facts, 2, 'budgetChain:').cause).toMatch(
@@ -321,5 +330,5 @@ describe('whatever else the bill carries', () => {
       }),
       { numRuns: PROPERTY_RUNS },
     );
-  });
+  }, 120_000);
 });
