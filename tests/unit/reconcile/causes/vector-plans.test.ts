@@ -1,11 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import type { CauseCycle } from '#shared/reconcile/causes/cause.ts';
-import type { Edit, Place } from '#shared/reconcile/causes/edit.ts';
 import { findCauses } from '#shared/reconcile/causes/find-causes.ts';
-import { HYPOTHESES } from '#shared/reconcile/causes/registry.ts';
-import { billedSums } from '#shared/reconcile/causes/reproduces.ts';
-import { type SettledCycle, settleCycle } from '#shared/settlement/settle.ts';
-import type { CycleUsage, Opening } from '#shared/settlement/settlement.ts';
+import { settleCycle } from '#shared/settlement/settle.ts';
 import { day } from '#shared/units/day.ts';
 import {
   readVectors,
@@ -16,14 +11,10 @@ import {
   vectorUsage,
 } from '#tests/support/netmetering-adapter.ts';
 import { statementOf } from './billed-house.ts';
+import { billedWith, everyEdit, type Given } from './plant.ts';
 
 /** Cycles to plant mistakes in: a roll-over of the dials in winter, a meter exchange in early summer. */
 const CYCLES = [3, 8];
-/** One ratio stands for all multipliers here: they differ in nothing but the number. */
-const MULTIPLIER = '10';
-
-type Given = { opening: Opening; cycle: CauseCycle; truth: SettledCycle };
-
 function cyclesOf(vector: Vector): Given[] {
   const plan = vectorPlan(vector.plan);
   let opening = vectorOpening(vector.opening);
@@ -38,50 +29,6 @@ function cyclesOf(vector: Vector): Given[] {
     opening = truth.closing;
     return given;
   });
-}
-
-/** Every way in which every mistake could be made in the cycle, whatever was billed. */
-function everyEdit({ opening, cycle, truth }: Given): { cause: string; edit: Edit }[] {
-  const silent = { ...cycle.billed, importWh: null, exportWh: null, productionWh: null };
-  const place: Place = {
-    index: 0,
-    cycle: { ...cycle, billed: silent },
-    opening,
-    truth,
-    sums: billedSums(silent),
-    differs: new Set(),
-    mayDiffer: () => true,
-    planBefore: null,
-  };
-  return HYPOTHESES.flatMap(({ cause, attempts }) =>
-    attempts({ places: [place], firstOff: 0, opening }).flatMap((attempt) =>
-      attempt.map((made) => ({ cause, edit: made.edit })),
-    ),
-  ).filter(({ edit }) => (edit.found.multiplier ?? MULTIPLIER) === MULTIPLIER);
-}
-
-/** The statement that comes of a mistake; null where it cannot be made, or changes nothing. */
-function billedWith(edit: Edit, { opening, cycle }: Given): CauseCycle['billed'] | null {
-  const usage: CycleUsage = edit.usage ?? cycle.usage;
-  const settled = settleCycle(edit.plan ?? cycle.plan, edit.opening ? edit.opening(opening) : opening, usage);
-  if (!settled.ok) return null;
-  const made = edit.after ? edit.after(settled.value) : settled.value;
-  if (made === null) return null;
-  const { days, banks, amountDueCents } = made.settlement;
-  const settlement = { ...settled.value.settlement, days, banks, amountDueCents };
-  const lines = made.settlement.lines.map((line) => ({ ...line }));
-  const payouts = made.settlement.payouts.map(({ component, amountCents }) => ({ component, amountCents }));
-  const statement = { ...statementOf(settlement, usage), lines, payouts };
-  const money = (one: CauseCycle['billed']) =>
-    JSON.stringify([
-      (one.lines ?? [])
-        .filter((line) => line.amountCents !== 0)
-        .map(({ component, quantity, amountCents }) => [component, quantity, amountCents]),
-      one.banks,
-      one.payouts,
-      one.amountDueCents,
-    ]);
-  return money(statement) === money(cycle.billed) ? null : statement;
 }
 
 /**
