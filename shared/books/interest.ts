@@ -8,18 +8,36 @@ import type { DecimalText } from '../units/rate-text.ts';
  * Source: the annuity formula as numpy-financial documents `pmt`.
  */
 export function levelPayment(principalCents: Cents, annualRate: DecimalText, months: number): Cents {
-  const monthly = exact(annualRate).div(12);
-  if (monthly.isZero()) return roundToCents(usdOf(principalCents).div(months));
-  const discount = new Exact(1).minus(monthly.plus(1).pow(-months));
-  return roundToCents(usdOf(principalCents).times(monthly).div(discount));
+  return levelPaymentAssuming(principalCents, annualRate, months, null);
 }
 
-/** Interest on a balance for whole months or days of a 360-day year, rounded half-up to the cent. Exact integers, since a schedule asks hundreds of times. */
+/** Principal that a contract takes for granted to be paid with one of its payments. */
+export type AssumedPrincipal = { amountCents: Cents; withPayment: number };
+
+/**
+ * The level payment that clears a loan over `months` if `assumed.amountCents` of principal is paid with payment `withPayment`: the annuity of what the
+ * loan is worth less the discounted prepayment, `(L − A·(1 + i)^−k)·i / (1 − (1 + i)^−n)`, rounded half-up. Never below zero.
+ */
+export function levelPaymentAssuming(
+  principalCents: Cents,
+  annualRate: DecimalText,
+  months: number,
+  assumed: AssumedPrincipal | null,
+): Cents {
+  const monthly = exact(annualRate).div(12);
+  const growth = monthly.plus(1);
+  const prepaid = assumed ? usdOf(assumed.amountCents).times(growth.pow(-assumed.withPayment)) : 0;
+  const owed = Exact.max(0, usdOf(principalCents).minus(prepaid));
+  if (monthly.isZero()) return roundToCents(owed.div(months));
+  return roundToCents(owed.times(monthly).div(new Exact(1).minus(growth.pow(-months))));
+}
+
+/** Interest on a balance, rounded half-up to the cent. Exact integers, since a schedule asks hundreds of times. */
 export type InterestRule = {
   /** One month: balance × rate / 12. */
   month(balance: Cents): Cents;
-  /** `days` of a 360-day year: balance × rate × days / 360. */
-  days(balance: Cents, days: number): Cents;
+  /** Days of a year that is counted as 360 or 365 days: balance × rate × days / year. */
+  days(balance: Cents, days: number, yearDays?: 360 | 365): Cents;
 };
 
 export function interestRule(annualRate: DecimalText): InterestRule {
@@ -31,7 +49,7 @@ export function interestRule(annualRate: DecimalText): InterestRule {
     cents(Number(roundedQuotient(BigInt(balance) * numerator * parts, denominator * partsOfYear)));
   return {
     month: (balance) => of(balance, 1n, 12n),
-    days: (balance, days) => of(balance, BigInt(days), 360n),
+    days: (balance, days, yearDays = 360) => of(balance, BigInt(days), BigInt(yearDays)),
   };
 }
 

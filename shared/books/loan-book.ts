@@ -1,57 +1,43 @@
-import type { LoanFacts, LoanPayment } from '../facts/finance.ts';
-import { type Cents, cents } from '../units/cents.ts';
-import { addMonths, type Day, monthsBetween } from '../units/day.ts';
-import { interestRule, levelPayment } from './interest.ts';
+import type { LoanFacts, Refinance } from '../facts/finance.ts';
+import { type Cents, cents, ZERO_CENTS } from '../units/cents.ts';
+import type { DecimalText } from '../units/rate-text.ts';
+import type { SegmentTerms } from './loan-happenings.ts';
+import { firstRate, SegmentRun } from './loan-segment.ts';
+import type { LoanLevel, LoanRow, LoanSegment, LoanStep } from './loan-step.ts';
 
-/** Months past the term that are looked at while a short last payment leaves something owing. */
-const MONTHS_PAST_TERM = 600;
+export type { LoanRow, LoanStep } from './loan-step.ts';
 
-/** One payment of the loan: recorded, or as the schedule has it. */
-export type LoanStep = {
-  /** Payment number, 1 for the first; 0 for money paid before the first payment's month. */
-  number: number;
-  dueOn: Day;
-  on: Day;
-  /** Without extra principal. */
-  regularCents: Cents;
-  extraPrincipalCents: Cents;
-  /** Interest this payment pays; the rest of the regular part is principal. */
-  interestCents: Cents;
-  principalCents: Cents;
-  /** Principal owed before and after. */
-  balanceBeforeCents: Cents;
-  balanceCents: Cents;
-  /** Interest due and not paid, before (this month's included) and after; it bears no interest itself. */
-  interestDueCents: Cents;
-  unpaidInterestCents: Cents;
-  record: LoanPayment | null;
+export type LoanBook = {
+  /** The first level payment; zero where there never is one. */
+  levelCents: Cents;
+  /** Every level payment in the order in which it came into force. */
+  levels: LoanLevel[];
+  /** The loan as first made, then each that refinanced it. */
+  segments: LoanSegment[];
+  /** The rate on the first day. */
+  firstRate: DecimalText;
+  /** All that happened and will happen, in order of days. */
+  steps: LoanStep[];
+  rows: LoanRow[];
 };
-
-/** A month of the loan. `paymentCents` = `interestCents` + `principalCents`, extra principal included. */
-export type LoanRow = {
-  number: number;
-  /** The day the month's last payment was made, or is due. */
-  on: Day;
-  dueOn: Day;
-  paymentCents: Cents;
-  interestCents: Cents;
-  principalCents: Cents;
-  extraPrincipalCents: Cents;
-  balanceCents: Cents;
-  unpaidInterestCents: Cents;
-  recorded: boolean;
-};
-
-export type LoanBook = { levelCents: Cents; steps: LoanStep[]; rows: LoanRow[] };
 
 const books = new WeakMap<LoanFacts, LoanBook>();
 
 /**
- * The loan month by month, 30/360, from the first payment to the one that clears it. Records replace the scheduled payment of their calendar
- * month; a month without one is taken as paid to schedule, and a month whose records are extra principal alone keeps its scheduled payment.
- * A payment pays interest due first. Interest that a short or missing payment leaves stays due, apart from principal and without interest
- * on it (as simple-interest loans do: common practice, no source), and the next payment pays it first. Extra principal goes to principal
- * whole; the level payment stays and the term shortens. A balance below zero is an overpayment the lender owes back.
+ * The loan month by month, from its funding to the payment that clears it. Remembered by facts object: a projection asks hundreds of times.
+ *
+ * Records replace the scheduled payment of their calendar month; a month without one is taken as paid to schedule, and a month whose records are extra
+ * principal alone keeps its scheduled payment. A payment pays interest due first. Interest that a short or missing payment leaves stays due, apart from
+ * principal and without interest on it (as simple-interest loans do), and the next payment pays it first. Extra principal goes to principal whole; the
+ * level payment stays and the term shortens, unless the payment says that the lender re-amortized. The last payment of the term clears the loan.
+ *
+ * Interest by 30/360 is a twelfth of a year from due day to due day, whenever in the month the payment was made, and 30/360 days up to a payment of principal
+ * alone; by actual days it runs from payment to payment. Interest from funding to a month before the first payment joins the principal then. When the
+ * payment is set anew (a promotion's end, an assumed prepayment's date, a re-amortization) interest that was left unpaid joins the principal. All of this is
+ * common practice, no source.
+ *
+ * A lender's balance stands in the place of ours from its day on. A refinance pays the old loan off on its day: what is dated before it, or recorded on it, is
+ * the old loan's; the payoff fee is that of the first contract alone. A balance below zero is an overpayment the lender owes back.
  */
 export function loanBook(loan: LoanFacts): LoanBook {
   const known = books.get(loan);
@@ -62,100 +48,101 @@ export function loanBook(loan: LoanFacts): LoanBook {
 }
 
 function buildLoanBook(loan: LoanFacts): LoanBook {
-  const interest = interestRule(loan.annualRate);
-  const levelCents = levelPayment(loan.principalCents, loan.annualRate, loan.termMonths);
-  const records = recordsByMonth(loan);
-  const lastRecorded = Math.max(-1, ...records.keys());
+  const all = segmentTerms(loan);
   const steps: LoanStep[] = [];
   const rows: LoanRow[] = [];
-  let balance: number = loan.principalCents;
-  let due = 0;
-
-  function pay(number: number, dueOn: Day, on: Day, regular: number, extra: number, record: LoanPayment | null): void {
-    const interestPaid = Math.max(0, Math.min(due, regular));
-    const principal = regular - interestPaid + extra;
-    steps.push({
-      number,
-      dueOn,
-      on,
-      regularCents: cents(regular),
-      extraPrincipalCents: cents(extra),
-      interestCents: cents(interestPaid),
-      principalCents: cents(principal),
-      balanceBeforeCents: cents(balance),
-      balanceCents: cents(balance - principal),
-      interestDueCents: cents(due),
-      unpaidInterestCents: cents(due - interestPaid),
-      record,
-    });
-    balance -= principal;
-    due -= interestPaid;
+  const levels: LoanLevel[] = [];
+  for (const terms of all) {
+    const run = new SegmentRun(terms).run();
+    const closing = steps.at(-1);
+    if (closing?.refinance) steps.push(openedBy(closing, terms.segment, closing.refinance));
+    steps.push(...run.steps);
+    rows.push(...run.rows);
+    levels.push(...run.levels);
   }
-
-  const firstMonth = Math.min(0, ...records.keys());
-  for (let month = firstMonth; month < loan.termMonths + MONTHS_PAST_TERM; month += 1) {
-    if (balance <= 0 && due === 0 && month > lastRecorded) break;
-    const number = Math.max(0, month + 1);
-    const dueOn = addMonths(loan.firstPaymentOn, month);
-    const made = records.get(month) ?? [];
-    const before = steps.length;
-    if (month >= 0 && balance > 0) due += interest.month(cents(balance));
-    let scheduled = month >= 0 && (balance > 0 || due > 0) && !made.some(replacesSchedule);
-    const payScheduled = () => {
-      scheduled = false;
-      const toClear = balance + due;
-      const amount = month >= loan.termMonths - 1 ? toClear : Math.min(levelCents, toClear);
-      if (amount > 0) pay(number, dueOn, dueOn, amount, 0, null);
-    };
-    for (const record of made) {
-      if (scheduled && dueOn <= record.on) payScheduled();
-      pay(
-        number,
-        dueOn,
-        record.on,
-        record.amountCents - record.extraPrincipalCents,
-        record.extraPrincipalCents,
-        record,
-      );
-    }
-    if (scheduled) payScheduled();
-    const ofMonth = steps.slice(before);
-    if (ofMonth.length > 0) rows.push(rowOf(ofMonth));
-  }
-  return { levelCents, steps, rows };
-}
-
-/** Wholly extra principal is paid beside the month's payment, not in its place; a record of nothing says that the month was missed. */
-function replacesSchedule(record: LoanPayment): boolean {
-  return record.amountCents !== record.extraPrincipalCents || record.amountCents === 0;
-}
-
-function recordsByMonth(loan: LoanFacts): Map<number, LoanPayment[]> {
-  const months = new Map<number, LoanPayment[]>();
-  const inOrder = [...loan.payments].sort((a, b) => (a.on < b.on ? -1 : a.on > b.on ? 1 : 0));
-  for (const record of inOrder) {
-    const month = monthsBetween(loan.firstPaymentOn, record.on);
-    const held = months.get(month);
-    if (held) held.push(record);
-    else months.set(month, [record]);
-  }
-  return months;
-}
-
-function rowOf(steps: readonly LoanStep[]): LoanRow {
-  const last = steps.at(-1);
-  if (last === undefined) throw new Error('a month of the loan has no payment');
-  const total = (part: (step: LoanStep) => number) => cents(steps.reduce((sum, step) => sum + part(step), 0));
   return {
-    number: last.number,
-    on: last.on,
-    dueOn: last.dueOn,
-    paymentCents: total((step) => step.regularCents + step.extraPrincipalCents),
-    interestCents: total((step) => step.interestCents),
-    principalCents: total((step) => step.principalCents),
-    extraPrincipalCents: total((step) => step.extraPrincipalCents),
-    balanceCents: last.balanceCents,
-    unpaidInterestCents: last.unpaidInterestCents,
-    recorded: steps.some((step) => step.record !== null),
+    levelCents: levels[0]?.paymentCents ?? ZERO_CENTS,
+    levels,
+    segments: all.map(({ segment }) => segment),
+    firstRate: firstRate(all[0]),
+    steps,
+    rows,
   };
+}
+
+/** The first loan and each that refinanced it, with the payments and balances of its own days. */
+function segmentTerms(loan: LoanFacts): [SegmentTerms, ...SegmentTerms[]] {
+  const refinances = [...loan.refinances].sort((a, b) => (a.on < b.on ? -1 : 1));
+  const within = (index: number) => {
+    const opened = refinances[index - 1] ?? null;
+    const refinance = refinances[index] ?? null;
+    return {
+      payments: loan.payments.filter(
+        ({ on }) => (opened === null || on > opened.on) && (refinance === null || on <= refinance.on),
+      ),
+      balances: loan.balances.filter(
+        ({ on }) => (opened === null || on >= opened.on) && (refinance === null || on < refinance.on),
+      ),
+      refinance,
+    };
+  };
+  const { lender, principalCents, annualRate, termMonths, fundedOn, firstPaymentOn, dayCount, payoffFeeCents } = loan;
+  const first: LoanSegment = {
+    index: 0,
+    lender,
+    principalCents,
+    annualRate,
+    termMonths,
+    fundedOn,
+    firstPaymentOn,
+    dayCount,
+    payoffFeeCents,
+  };
+  const rest = refinances.map((one, at): SegmentTerms => {
+    const index = at + 1;
+    return { segment: refinancedSegment(one, index, loan), promotion: null, assumed: null, ...within(index) };
+  });
+  return [{ segment: first, promotion: loan.promotion, assumed: loan.assumedPrepayment, ...within(0) }, ...rest];
+}
+
+function refinancedSegment(refinance: Refinance, index: number, { dayCount }: LoanFacts): LoanSegment {
+  const { lender, principalCents, annualRate, termMonths, on, firstPaymentOn } = refinance;
+  return {
+    index,
+    lender,
+    principalCents,
+    annualRate,
+    termMonths,
+    fundedOn: on,
+    firstPaymentOn,
+    dayCount,
+    payoffFeeCents: ZERO_CENTS,
+  };
+}
+
+/** The new loan's money pays the old one off; the household pays the rest and the costs, or keeps what is over. */
+function openedBy(closing: LoanStep, segment: LoanSegment, refinance: Refinance): LoanStep {
+  const { principalCents } = segment;
+  return {
+    ...closing,
+    kind: 'opened',
+    segment,
+    number: 0,
+    dueOn: segment.firstPaymentOn,
+    interestCents: ZERO_CENTS,
+    principalCents: ZERO_CENTS,
+    feeCents: ZERO_CENTS,
+    balanceBeforeCents: ZERO_CENTS,
+    balanceCents: principalCents,
+    interestDueCents: ZERO_CENTS,
+    unpaidInterestCents: ZERO_CENTS,
+    accruedTo: refinance.on,
+    rateAfter: segment.annualRate,
+    cashCents: cents(principalCents - payoffOf(closing) - refinance.costsCents),
+  };
+}
+
+/** What a refinance paid the old lender. */
+export function payoffOf(closing: LoanStep): Cents {
+  return cents(closing.principalCents + closing.interestCents + closing.feeCents);
 }

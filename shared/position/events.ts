@@ -1,9 +1,8 @@
 import { creditExpected } from '../books/credit-expected.ts';
-import { loanSchedule } from '../books/loan.ts';
+import { loanClearedOn } from '../books/loan.ts';
 import { governingEnd } from '../books/mortgage-insurance.ts';
 import { creditEntries } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
-import { cents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { PositionEvent } from './position.ts';
 
@@ -56,8 +55,8 @@ function insuranceEvents({ mortgage }: EventFacts, today: Day): PositionEvent[] 
 
 function loanEvents({ loan }: EventFacts, today: Day): PositionEvent[] {
   if (!loan) return [];
-  const clearing = loanSchedule(loan).find((row) => cents(row.balanceCents + row.unpaidInterestCents) <= 0);
-  return clearing ? [event(clearing.on, 'Loan paid off', 'loanEnd', today)] : [];
+  const clearedOn = loanClearedOn(loan);
+  return clearedOn === null ? [] : [event(clearedOn, 'Loan paid off', 'loanEnd', today)];
 }
 
 function planEvents({ plans }: EventFacts, today: Day): PositionEvent[] {

@@ -41,7 +41,7 @@ export function flowsAfter(
   if (owed > 0) addUntil(horizon, addDays(isLate ? close.on : today, 1), 'incentive', owed);
   const loans = loansOf(facts);
   for (const loan of loans) {
-    for (const step of loanBook(loan).steps) add(step.on, 'loan', -(step.regularCents + step.extraPrincipalCents));
+    for (const step of loanBook(loan).steps) add(step.on, 'loan', step.cashCents);
   }
   if (end < horizon) addUntil(horizon, end, 'loan', -owedOn(loans, end, 'before').payoffCents);
   if (facts.mortgage) {

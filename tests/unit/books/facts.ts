@@ -19,7 +19,7 @@ export function loanOf(changes: Partial<LoanFacts> = {}): LoanFacts {
     dealerFeeCents: cents(240_000),
     annualRate: '0.0699',
     termMonths: 240,
-    fundedOn: day('2024-06-10'),
+    fundedOn: day('2024-06-15'),
     firstPaymentOn: day('2024-07-15'),
     ...loanMore.parse({}),
     payments: [],
