@@ -14,7 +14,7 @@ const OWN = 'Your own figure';
 /** What the projection takes for granted, each with where it comes from. */
 export function assumptionsOf(facts: BasisFacts, energy: MonthlyEnergy, today: Day): Projection['assumptions'] {
   const { assumptions } = facts;
-  const isDefault = (name: 'degradation' | 'priceRise') =>
+  const isDefault = (name: 'degradation' | 'priceRise' | 'discountRate') =>
     exact(assumptions[name]).eq(exact(DEFAULT_ASSUMPTIONS[name]));
   const stated = [
     {
@@ -69,6 +69,20 @@ export function assumptionsOf(facts: BasisFacts, energy: MonthlyEnergy, today: D
       source: 'Rate plan in force',
     },
   ];
+  stated.push(
+    {
+      name: 'discountRate',
+      label: 'Discount rate each year, for the handbook figures alone',
+      value: percent(assumptions.discountRate),
+      source: isDefault('discountRate') ? 'A customary rate for savings in buildings; set your own' : OWN,
+    },
+    {
+      name: 'grid',
+      label: 'CO₂ of the grid a kWh takes the place of',
+      value: `${assumptions.grid.lbPerMwh} lb per MWh`,
+      source: `${assumptions.grid.region}, ${assumptions.grid.basis}, ${assumptions.grid.year}`,
+    },
+  );
   if (facts.incentive) {
     stated.push({
       name: 'incentive',

@@ -94,7 +94,6 @@ function linesOf(columns: Column[]): Line[] {
     line('creditToCome', 'Tax credit still to come', (column) => column.creditToCome),
     line('incentiveOwed', 'Incentive owed', (column) => column.incentiveOwed),
     line('bank', 'Utility bank', (column) => column.bank),
-    line('together', 'Interest accrued and sums owed', (column) => column.together),
   ].filter((one) => anything(one.of));
   return [
     ...booksShown(columns).map((book) =>

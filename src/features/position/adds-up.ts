@@ -16,8 +16,6 @@ export type Column = {
   creditToCome: Cell;
   incentiveOwed: Cell;
   bank: Cell;
-  /** The three above and the loan's accrued interest in one, where the projection gives only their sum. */
-  together: Cell;
   settled: Cell;
   withoutCredit: Cell;
 };
@@ -53,7 +51,6 @@ const NOTHING = {
   creditToCome: null,
   incentiveOwed: null,
   bank: null,
-  together: null,
   settled: null,
   withoutCredit: null,
 };
@@ -87,36 +84,38 @@ function evenColumn(position: Position): Column | null {
       ],
     );
   });
-  const { cashSoFarCents: cash, settledTodayCents: settled } = month;
-  const owed = cents(Math.abs(month.loanBalanceCents));
-  const cashInput = projected('cash', 'Cash so far by then', dollarsText(cash));
-  const settledInput = projected('settled', 'Settled today by then', dollarsText(settled));
-  const owedInput = projected('owed', 'Principal still owed by then, by the loan’s schedule', dollarsText(owed));
-  const together = cents(settled - cash + owed);
+  const part = (label: string, amount: Cents) =>
+    projectedCell(`${label} by then, in the projection`, 'part', amount, [
+      projected('part', label, dollarsText(amount)),
+    ]);
+  const parts = [
+    month.cashSoFarCents,
+    month.loanPayoffCents,
+    month.creditStillToComeCents,
+    month.incentiveOwedCents,
+    month.utilityBankCents,
+  ];
   return {
     ...NOTHING,
     key: 'even',
     head: `By ${monthYear(even)}`,
     books,
-    cash: projectedCell('Every book by then, added', 'sum(books)', cash, [
+    cash: projectedCell('Every book by then, added', 'sum(books)', month.cashSoFarCents, [
       projected(
         'books',
         'The books of this column',
         BOOKS.map((book) => dollarsText(books[book]?.cents ?? cents(0))),
       ),
     ]),
-    loan: projectedCell('What the schedule still owes by then', '-owed', -owed, [owedInput]),
-    together: projectedCell(
-      'Settled today by then, less cash so far and the principal: accrued interest, and what is still to come',
-      'settled - cash + owed',
-      together,
-      [settledInput, cashInput, owedInput],
-    ),
+    loan: part('Loan payoff by its schedule', month.loanPayoffCents),
+    creditToCome: part('Tax credit still to come', month.creditStillToComeCents),
+    incentiveOwed: part('Incentive owed', month.incentiveOwedCents),
+    bank: part('Utility bank', month.utilityBankCents),
     settled: projectedCell(
-      'Cash so far by then, less the principal, and the sums owed',
-      'cash - owed + sums',
-      settled,
-      [cashInput, owedInput, projected('sums', 'Interest accrued and sums owed', dollarsText(together))],
+      'Cash so far by then, the loan paid off and everything owed collected',
+      'sum(parts)',
+      month.settledTodayCents,
+      [projected('parts', 'Cash so far, loan payoff, tax credit, incentive, utility bank', parts.map(dollarsText))],
     ),
   };
 }

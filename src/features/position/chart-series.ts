@@ -1,10 +1,13 @@
 import { BOOKS, type BookId } from '#shared/books/book.ts';
+import type { Range } from '#shared/position/outlook.ts';
 import type { ByBook, Position, PositionEvent } from '#shared/position/position.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import { addMonths, type Day, dayNumber, yearOf } from '#shared/units/day.ts';
 
 /** One point of the running lines, at the close of a cycle or of a projected month. */
 export type RunningPoint = { on: Day; settledCents: Cents; cashCents: Cents; projected: boolean };
+/** What eight of ten resampled futures lie between. */
+export type BandPoint = { on: Day; lowCents: Cents; highCents: Cents };
 /** One bar: what a cycle or projected month added, by book, standing over the middle of its days. */
 export type CycleBar = { from: Day; on: Day; books: ByBook; addedCents: Cents; projected: boolean };
 export type Series = {
@@ -12,6 +15,8 @@ export type Series = {
   past: RunningPoint[];
   /** Starts with the last closed cycle, from which the projection was made. */
   projected: RunningPoint[];
+  /** The range of the projection, from the last close on; empty while there is none. */
+  band: BandPoint[];
   bars: CycleBar[];
   /** What was posted since the last cycle: no bar, since its bill is not here yet. */
   since: CycleBar | null;
@@ -31,7 +36,7 @@ const SHORTEST_MONTHS = 120;
  * What the two charts draw. The whole projection is shown with `whole`; else the chart ends two years after the day it comes even and the last
  * event, since twenty-five years would press the past into a corner.
  */
-export function chartSeries(position: Position, whole: boolean): Series | null {
+export function chartSeries(position: Position, whole: boolean, range: Range | null = null): Series | null {
   const closed = position.points.filter((point) => point.cycle !== 'since');
   const firstPoint = closed[0];
   const lastPoint = closed.at(-1);
@@ -71,9 +76,17 @@ export function chartSeries(position: Position, whole: boolean): Series | null {
     from = month.on;
   }
   const joint = past[closed.length - 1];
+  const drawn = shown.flatMap((month, at) => {
+    const between = range?.months[at];
+    return between ? [{ on: month.on, ...between }] : [];
+  });
   return {
     past,
     projected: joint && ahead.length > 0 ? [joint, ...ahead] : [],
+    band:
+      joint && drawn.length > 0
+        ? [{ on: joint.on, lowCents: joint.settledCents, highCents: joint.settledCents }, ...drawn]
+        : [],
     bars,
     since: sincePoint && {
       from: lastPoint.on,

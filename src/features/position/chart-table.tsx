@@ -2,7 +2,7 @@ import { BOOKS } from '#shared/books/book.ts';
 import { fullDate } from '#src/lib/format.ts';
 import { BOOK_NAMES } from '#src/ui/book-key.tsx';
 import { Money } from '#src/ui/money.tsx';
-import type { Series } from './chart-series.ts';
+import type { BandPoint, Series } from './chart-series.ts';
 
 /** The figures the charts draw, cycle by cycle and month by month. */
 export function ChartTable({ series }: { series: Series }) {
@@ -11,6 +11,7 @@ export function ChartTable({ series }: { series: Series }) {
   const ahead = new Map(series.projected.map((point) => [point.on, point]));
   const past = series.bars.filter((bar) => !bar.projected);
   const rows = [...past, ...(series.since ? [series.since] : []), ...series.bars.filter((bar) => bar.projected)];
+  const banded = new Map(series.band.slice(1).map((point) => [point.on, point]));
   const books = BOOKS.filter((book) => series.bars.some((bar) => bar.books[book] !== 0));
   return (
     <section
@@ -25,6 +26,7 @@ export function ChartTable({ series }: { series: Series }) {
           <tr>
             <th scope="col">To</th>
             <th scope="col">Settled today</th>
+            {banded.size > 0 && <th scope="col">8 of 10 futures between</th>}
             <th scope="col">Cash so far</th>
             {books.map((book) => (
               <th key={book} scope="col">
@@ -40,6 +42,7 @@ export function ChartTable({ series }: { series: Series }) {
               <td>
                 <Money cents={start.settledCents} />
               </td>
+              {banded.size > 0 && <td />}
               <td>
                 <Money cents={start.cashCents} />
               </td>
@@ -60,6 +63,7 @@ export function ChartTable({ series }: { series: Series }) {
                 <td>
                   <Money cents={point?.settledCents ?? null} />
                 </td>
+                {banded.size > 0 && <td>{bar.projected && <Between point={banded.get(bar.on)} />}</td>}
                 <td>
                   <Money cents={point?.cashCents ?? null} />
                 </td>
@@ -74,5 +78,14 @@ export function ChartTable({ series }: { series: Series }) {
         </tbody>
       </table>
     </section>
+  );
+}
+
+function Between({ point }: { point: BandPoint | undefined }) {
+  if (point === undefined) return null;
+  return (
+    <>
+      <Money cents={point.lowCents} /> to <Money cents={point.highCents} />
+    </>
   );
 }

@@ -16,6 +16,7 @@ const RunningSheet = lazy(async () => {
   void import('./charts.tsx');
   return { default: (await import('./running-sheet.tsx')).RunningSheet };
 });
+const OutlookSheets = lazy(async () => ({ default: (await import('./outlook-sheets.tsx')).OutlookSheets }));
 const FirstUse = lazy(async () => ({ default: (await import('./first-use.tsx')).FirstUse }));
 
 /** Position: is the roof paying for itself, and can every figure be proved? */
@@ -86,6 +87,9 @@ function Standing({
           {!nothingLeft && <NeedsList needs={listed} unfinished={unfinished} base={base} />}
         </div>
       </div>
+      <Suspense fallback={<div className="sheet bone h-[320px]" aria-busy="true" />}>
+        <OutlookSheets position={position} />
+      </Suspense>
       <p className="foot">
         Figures come from your own documents. They are not tax, legal or lending advice; confirm with your preparer,
         servicer and utility.

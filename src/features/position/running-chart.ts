@@ -11,7 +11,10 @@ import type { RunningPoint, Series } from './chart-series.ts';
 /** Settled today and cash so far: past solid, projection dashed. The phone's has settled today alone, without flags. */
 export function runningChart(series: Series, tokens: ChartTokens, phone: boolean): ChartConfiguration<'line'> {
   const lines = [...series.past, ...series.projected];
-  const values = lines.flatMap((point) => (phone ? [point.settledCents] : [point.settledCents, point.cashCents]));
+  const values = [
+    ...lines.flatMap((point) => (phone ? [point.settledCents] : [point.settledCents, point.cashCents])),
+    ...series.band.flatMap((point) => [point.lowCents, point.highCents]),
+  ];
   const low = Math.min(0, ...values) / 100;
   const high = Math.max(0, ...values) / 100;
   const step = niceStep(high - low, 4);
@@ -96,7 +99,8 @@ function datasets(series: Series, tokens: ChartTokens, phone: boolean): ChartDat
       borderWidth: 2.2,
     },
   ];
-  if (phone) return settledLines;
+  const band = bandLines(series, tokens);
+  if (phone) return [...settledLines, ...band];
   return [
     { ...cash, label: 'cash so far', data: points(series.past, 'cashCents'), borderWidth: 1.8 },
     {
@@ -107,5 +111,24 @@ function datasets(series: Series, tokens: ChartTokens, phone: boolean): ChartDat
       borderWidth: 1.6,
     },
     ...settledLines,
+    ...band,
+  ];
+}
+
+/** What eight of ten futures lie between: a shade from the lower line to the upper, drawn under the others. */
+function bandLines(series: Series, tokens: ChartTokens): ChartDataset<'line'>[] {
+  if (series.band.length === 0) return [];
+  const plain = { pointRadius: 0, pointHitRadius: 0, pointHoverRadius: 0, borderWidth: 0, order: 1 };
+  const points = (key: 'lowCents' | 'highCents') =>
+    series.band.map((point) => ({ x: dayNumber(point.on), y: point[key] / 100 }));
+  return [
+    { ...plain, label: 'nine of ten futures above', data: points('lowCents'), fill: false },
+    {
+      ...plain,
+      label: 'nine of ten futures below',
+      data: points('highCents'),
+      fill: '-1',
+      backgroundColor: tokens.tint('--color-ink', 0.16),
+    },
   ];
 }

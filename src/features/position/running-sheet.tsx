@@ -1,11 +1,14 @@
+import { useQuery } from '@tanstack/react-query';
 import { lazy, Suspense, useMemo, useState } from 'react';
 import type { Position } from '#shared/position/position.ts';
+import { useHousehold } from '#src/lib/household.ts';
 import { Prose } from '#src/ui/prose.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { usePhone } from '#src/ui/use-media.ts';
 import { chartSeries, type Series } from './chart-series.ts';
 import { ChartTable } from './chart-table.tsx';
-import { chartSummary } from './chart-words.ts';
+import { chartSummary, rangeMethod, rangeSentence } from './chart-words.ts';
+import { outlookQuery } from './outlook-queries.ts';
 
 const Charts = lazy(() => import('./charts.tsx'));
 
@@ -14,12 +17,17 @@ export function RunningSheet({ position }: { position: Position }) {
   const phone = usePhone();
   const [whole, setWhole] = useState(false);
   const [table, setTable] = useState(false);
-  const series = useMemo(() => chartSeries(position, whole), [position, whole]);
+  const outlook = useQuery(outlookQuery(useHousehold().id)).data ?? null;
+  const range = outlook?.range ?? null;
+  const series = useMemo(() => chartSeries(position, whole, range), [position, whole, range]);
   if (!series) return null;
-  const summary = chartSummary(position, series);
+  const years = Math.round((position.projection?.months.length ?? 0) / 12);
+  const summary = range
+    ? `${chartSummary(position, series)} ${rangeSentence(range, years)}`
+    : chartSummary(position, series);
   const height = phone ? 'h-[230px]' : 'h-[520px]';
   return (
-    <Sheet title="Running net position" actions={phone ? undefined : <LineKey />}>
+    <Sheet title="Running net position" actions={phone ? undefined : <LineKey isBanded={series.band.length > 0} />}>
       {!phone && (
         <p className="hint mt-0.5">
           Cash so far is every dollar kept or received less every dollar paid. Settled today also pays off the loan and
@@ -54,12 +62,14 @@ export function RunningSheet({ position }: { position: Position }) {
         </p>
       </div>
       {position.whyNoProjection && <p className="hint mt-2">{position.whyNoProjection}</p>}
+      {range && <p className="hint mt-2">{rangeMethod(range)}</p>}
+      {outlook?.whyNoRange && position.projection && <p className="hint mt-2">{outlook.whyNoRange}</p>}
       {table && <ChartTable series={series} />}
     </Sheet>
   );
 }
 
-function LineKey() {
+function LineKey({ isBanded }: { isBanded: boolean }) {
   return (
     <span className="hint flex gap-7" aria-hidden="true">
       <span className="whitespace-nowrap">
@@ -70,6 +80,11 @@ function LineKey() {
         <i className="mr-2 inline-block h-[2px] w-[30px] bg-credit align-middle" />
         cash so far
       </span>
+      {isBanded && (
+        <span className="whitespace-nowrap">
+          <i className="mr-2 inline-block h-[12px] w-[30px] bg-ink/16 align-middle" />8 of 10 futures
+        </span>
+      )}
     </span>
   );
 }

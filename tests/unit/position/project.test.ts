@@ -286,6 +286,8 @@ describe('the projection', () => {
       'use',
       'export',
       'rules',
+      'discountRate',
+      'grid',
       'incentive',
       'credit',
     ]);
