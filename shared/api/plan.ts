@@ -72,6 +72,11 @@ export const trialView = z.object({
   /** What the trial plan's banks hold after the last cycle, as `$31.77` cents or kWh text. */
   left: z.array(z.object({ label: z.string(), unit: z.enum(['kWh', 'USD']), amount: z.string() })),
   pricesTakenBack: z.boolean(),
+  /**
+   * The trial plan's riders whose price is read from bills: on how many of the cycles settled each was at the price printed for the house's own
+   * rider; on the others at the trial plan's own price.
+   */
+  riders: z.array(z.object({ label: z.string(), asPrinted: z.int(), cycles: z.int() })),
 });
 export type TrialView = z.infer<typeof trialView>;
 

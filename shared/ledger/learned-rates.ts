@@ -49,13 +49,14 @@ function rateOfLine(line: PrintedLine): string | null {
 
 /** The plan with the prices learned in force from a day on; the same object where none of its riders has one. */
 export function withLearnedRates(inForce: PlanInForce, learned: LearnedRates, from: Day): PlanInForce {
-  const plan = priced(inForce.plan, learned, from);
-  const withoutRoof = inForce.withoutRoof === null ? null : priced(inForce.withoutRoof, learned, from);
+  const plan = pricedAsLearned(inForce.plan, learned, from);
+  const withoutRoof = inForce.withoutRoof === null ? null : pricedAsLearned(inForce.withoutRoof, learned, from);
   if (plan === inForce.plan && withoutRoof === inForce.withoutRoof) return inForce;
   return { ...inForce, plan, withoutRoof };
 }
 
-function priced(plan: RatePlan, learned: LearnedRates, from: Day): RatePlan {
+/** One plan with the prices learned for its riders in force from a day on; the same object where it has none of them. */
+export function pricedAsLearned(plan: RatePlan, learned: LearnedRates, from: Day): RatePlan {
   if (!plan.charges.some((charge) => charge.learned && learned[charge.id] !== undefined)) return plan;
   return { ...plan, charges: plan.charges.map((charge) => pricedCharge(charge, learned[charge.id], from)) };
 }

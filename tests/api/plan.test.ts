@@ -17,6 +17,7 @@ import {
   type TestHousehold,
   type TestServer,
 } from '#tests/support/test-server.ts';
+import { FUEL, withFuel } from '#tests/support/with-fuel.ts';
 
 failOnConsole();
 
@@ -201,6 +202,53 @@ describe('a trial of another plan', () => {
       body: { plan: presentPlan(), cycles: 'all' },
     });
     expect(answer.value).toMatchObject({ rows: [], totals: null });
+  });
+});
+
+describe('a trial where a rider is read from the bills', () => {
+  const fuelled = withFuel();
+  const own = fuelled.plans[0]?.plan;
+  let house: TestHousehold;
+  beforeAll(async () => {
+    house = await newHousehold(server, 'Orla', '9 Knot Row');
+    setUpFrom(server, house, fuelled);
+    await house.owner.call(logApi.addStatementFile, {
+      params: house.params,
+      file: { fileName: 'all.csv', bytes: statementFile(fuelled.statements) },
+    });
+    await house.owner.call(logApi.post, { params: house.params, body: { replaceReadings: false } });
+  });
+  const tried = async (change: (charge: RatePlan['charges'][number]) => RatePlan['charges'][number]) => {
+    if (!own) throw new Error('the household has a plan');
+    const plan = { ...own, charges: own.charges.map((charge) => (charge.id === 'fuel' ? change(charge) : charge)) };
+    return (await house.owner.call(planApi.trial, { params: house.params, body: { plan, cycles: 'all' } })).value;
+  };
+
+  it('of the present plan comes to what was billed, each cycle at its own printed price', async () => {
+    const seen = await tried((charge) => charge);
+    expect(seen.rows.map((row) => row.trial?.amountCents)).toEqual(seen.rows.map((row) => row.billedCents));
+    expect(seen.riders).toEqual([{ label: 'Fuel rider', asPrinted: FUEL.length, cycles: FUEL.length }]);
+  });
+
+  it('of a plan whose rider has another id takes the rider of the same name', async () => {
+    const seen = await tried((charge) => ({ ...charge, id: 'powerCost', label: 'Fuel Rider' }));
+    expect(seen.totals?.difference.amountCents).toBe(0);
+    expect(seen.riders[0]?.asPrinted).toBe(FUEL.length);
+  });
+
+  it('of a plan whose rider no bill prints uses the price written in it, and says so', async () => {
+    const seen = await tried((charge) => ({ ...charge, id: 'powerCost', label: 'Power cost' }));
+    expect(seen.riders).toEqual([{ label: 'Power cost', asPrinted: 0, cycles: FUEL.length }]);
+    const kwh = fuelled.statements.map((statement) => Number(statement.importWh) / 1000);
+    const own = (price: number) => kwh.map((one, at) => Math.round((one * (price || (FUEL[at] ?? 0))) / 100));
+    const sum = (parts: number[]) => parts.reduce((all, one) => all + one, 0);
+    expect(seen.totals?.difference.amountCents).toBe(sum(own(100)) - sum(own(0)));
+  });
+
+  it('of a plan that fixes the price keeps to it, and speaks of no rider', async () => {
+    const seen = await tried((charge) => ({ ...charge, learned: false }));
+    expect(seen.riders).toEqual([]);
+    expect(seen.rows.map((row) => row.trial?.amountCents)).not.toEqual(seen.rows.map((row) => row.billedCents));
   });
 });
 

@@ -12,12 +12,13 @@ import type { Deps } from '../../deps.ts';
 import { ledgerOf } from '../ledger-of.ts';
 import { type HouseCycle, houseCycles } from './house-usages.ts';
 import { pricesTakenBack } from './prices-taken-back.ts';
+import { ridersOf, saidOf, withRiders } from './riders.ts';
 
 const YEAR = 12;
 
 /**
  * The house's last twelve cycles, or all, settled on another plan, cycle after cycle with banks that begin empty, beside the present plan and the
- * bill. A cycle without what the plan asks for is left out and says why. Stores nothing.
+ * bill. Riders that are read from the bill are at the price each bill printed. A cycle without what the plan asks for is left out and says why. Stores nothing.
  */
 export function tryPlan(
   deps: Deps,
@@ -30,23 +31,33 @@ export function tryPlan(
   const all = houseCycles(facts);
   const chosen = body.cycles === 'all' ? all : all.slice(-YEAR);
   const first = chosen[0];
-  if (first === undefined) return succeed({ rows: [], totals: null, left: [], pricesTakenBack: false });
+  if (first === undefined) return succeed({ rows: [], totals: null, left: [], pricesTakenBack: false, riders: [] });
   const { plan, moved } = pricesTakenBack(parsed.value, first.from);
   const byEnd = new Map(ledger.cycles.map((cycle) => [cycle.to, cycle]));
+  const riders = ridersOf(plan, facts.plans);
+  const asPrinted: string[][] = [];
   const rows: TrialRow[] = [];
   let opening: Opening = EMPTY_OPENING;
   let last: Settlement | null = null;
   for (const cycle of chosen) {
     const known = byEnd.get(cycle.to);
     if (known === undefined) continue;
-    const settled = settleOn(plan, opening, cycle);
+    const priced = withRiders(plan, riders, cycle.learned, cycle.from);
+    const settled = settleOn(priced.plan, opening, cycle);
     if (typeof settled !== 'string') {
       opening = settled.closing;
       last = settled.settlement;
+      asPrinted.push(priced.asPrinted);
     }
     rows.push(rowOf(known, settled));
   }
-  return succeed({ rows, totals: totalsOf(rows), left: leftIn(last), pricesTakenBack: moved });
+  return succeed({
+    rows,
+    totals: totalsOf(rows),
+    left: leftIn(last),
+    pricesTakenBack: moved,
+    riders: saidOf(riders, asPrinted),
+  });
 }
 
 function settleOn(

@@ -24,6 +24,7 @@ export function TrialResult({ view }: { view: TrialView }) {
           ({ label, unit, amount }) =>
             `${label}: ${unit === 'USD' ? `$${decimal(amount)}` : `${decimal(amount)} kWh`} left at the end. `,
         )}
+        {view.riders.map((rider) => `${riderSentence(rider)} `)}
       </p>
       {unsettled.length > 0 && (
         <div className="margin-note mt-4">
@@ -130,4 +131,12 @@ export function trialSentence(totals: NonNullable<TrialView['totals']>): string 
   const cents = difference.amountCents;
   if (cents === 0) return `${these} would have cost the same on this plan: ${money(trial.amountCents)}.`;
   return `${these} would have cost ${dollarsSize(cents)} ${cents < 0 ? 'less' : 'more'} on this plan: ${money(trial.amountCents)} instead of ${money(present.amountCents)}.`;
+}
+
+/** What is assumed of a rider whose price comes with each bill. */
+export function riderSentence({ label, asPrinted, cycles }: TrialView['riders'][number]): string {
+  if (asPrinted === 0)
+    return `${label}: no bill of yours prints its price, so the price written in the plan is used; real bills would differ.`;
+  if (asPrinted === cycles) return `${label}: at the price your bill printed for each cycle.`;
+  return `${label}: at the price your bills printed for ${asPrinted} of ${cycles} cycles, and at the plan’s own before the first.`;
 }
