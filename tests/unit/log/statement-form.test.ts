@@ -5,6 +5,7 @@ import { type Cents, cents, dollarsText } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
 import { wh } from '#shared/units/energy.ts';
 import { emptyStatementForm } from '#src/features/log/next-statement.ts';
+import { exchangedReads } from '#src/ui/statement-form/exchange-reads.ts';
 import { runningSum } from '#src/ui/statement-form/running-sum.ts';
 import { formOfStatement, statementOfForm } from '#src/ui/statement-form/statement-of-form.ts';
 import { emptyLine, emptyRead, isUntouched, statementForm } from '#src/ui/statement-form/statement-values.ts';
@@ -176,5 +177,66 @@ describe('a statement as a form', () => {
       due: '',
     });
     expect(sum).toEqual({ linesCents: 0, dueCents: null, unread: 1 });
+  });
+});
+
+describe('a statement on a budget plan, typed', () => {
+  const filled = () => formOfStatement({ ...BODY });
+  const changedBy = (changes: Partial<ReturnType<typeof filled>>) => ({ ...filled(), ...changes });
+
+  it('comes back as it was typed, settlement and credit sent on with it', () => {
+    const budget = { instalmentCents: cents(11_800), balanceCents: cents(-6412), settledCents: null };
+    const banks = BODY.banks.map((bank) => ({ ...bank, sentOut: '4.5', sentValueCents: cents(431) }));
+    const stated = { ...BODY, budget, banks };
+    const made = statementOfForm(formOfStatement(stated));
+    expect([made.budget, made.banks]).toEqual([budget, banks]);
+    expect(statementOfForm(filled()).budget).toBeNull();
+  });
+
+  it('asks for the budget amount where only its balance is typed, and for the real charges', () => {
+    const messages = (form: ReturnType<typeof filled>) =>
+      statementForm.safeParse(form).error?.issues.map((one) => one.message);
+    expect(messages(changedBy({ budgetBalance: '-64.12' }))).toEqual(['Write the budget amount of this bill too.']);
+    expect(messages(changedBy({ budget: '118.00', lines: [] }))).toEqual([
+      'Add the real charges as lines above: the amount due does not say them.',
+    ]);
+    expect(messages(changedBy({ budget: '118.00', budgetSettled: '-12.50' }))).toBeUndefined();
+  });
+
+  it('adds the budget amount, its settlement and what is no electricity, and not the real charges', () => {
+    const line = (kind: 'import' | 'otherService', amount: string) => ({ ...emptyLine(), kind, label: kind, amount });
+    const sum = runningSum({
+      lines: [line('import', '104.24'), line('otherService', '41.15')],
+      previousBalance: '10.00',
+      payments: '-10.00',
+      due: '146.65',
+      budget: '118.00',
+      budgetSettled: '-12.50',
+    });
+    expect(sum).toEqual({ linesCents: 14_665, dueCents: 14_665, unread: 0 });
+  });
+});
+
+describe('a meter that was exchanged, typed', () => {
+  it('splits every register of the old meter at the day and lays out the new one’s', () => {
+    const reads = exchangedReads(
+      [
+        { ...emptyRead({ meter: 'A', dials: '5', multiplier: '40' }), previous: '100' },
+        { ...emptyRead({ meter: 'P', dials: '6', multiplier: '1' }), channel: 'production', previous: '7' },
+        { ...emptyRead({ meter: 'A', dials: '5', multiplier: '40' }), channel: 'export', previous: '200' },
+      ],
+      'A',
+      'B',
+      '2026-09-23',
+    );
+    expect(reads.map((read) => [read.meter, read.channel, read.from, read.to, read.previous, read.multiplier])).toEqual(
+      [
+        ['A', 'import', '', '2026-09-23', '100', '40'],
+        ['B', 'import', '2026-09-23', '', '', '40'],
+        ['P', 'production', '', '', '7', '1'],
+        ['A', 'export', '', '2026-09-23', '200', '40'],
+        ['B', 'export', '2026-09-23', '', '', '40'],
+      ],
+    );
   });
 });

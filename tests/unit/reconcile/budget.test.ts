@@ -3,11 +3,13 @@ import { describe, expect, test } from 'vitest';
 import { type HouseholdFacts, householdFacts } from '#shared/facts/household.ts';
 import type { PrintedBudget, Statement } from '#shared/facts/papers.ts';
 import { computeLedger } from '#shared/ledger/compute-ledger.ts';
+import type { Cycle } from '#shared/ledger/cycle.ts';
 import { assembleCycles } from '#shared/ledger/cycles.ts';
 import { owedOf } from '#shared/ledger/owed.ts';
+import { billSentence } from '#shared/ledger/sentences.ts';
 import { cents } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
-import { type BudgetMonth, onBudget } from '#tests/support/budget-household.ts';
+import { type BudgetMonth, onBudget, serviceLine } from '#tests/support/budget-household.ts';
 import { BUILT_TODAY, buildHousehold } from '#tests/support/build-household.ts';
 import { everyWorking } from '#tests/support/every-working.ts';
 import { PROPERTY_RUNS } from '#tests/support/property-runs.ts';
@@ -97,6 +99,31 @@ describe('a bill on a budget plan', () => {
     expect(check(facts, 1, 'amountDue:').verdict).toBe('agrees');
     const owed = owedOf(compute(facts).cycles);
     expect(owed.rows.map((row) => row.dueCents)).toEqual([900]);
+  });
+
+  test('has the mistake in its charges found by settling again, as any bill', () => {
+    const short = buildHousehold({
+      exportTo: 'bill',
+      intervals: { channels: ['import', 'export'], minutes: 60 },
+      change: (cycle, at) => (at === 2 ? { ...cycle, creditedKwh: cycle.exportKwh - 44 } : cycle),
+    });
+    const services = { Water: 4115 };
+    const fuel = serviceLine('Fuel, June to August', 212, 'adjustment');
+    const withFuel = { ...short, statements: short.statements.map((one) => ({ ...one, lines: [...one.lines, fuel] })) };
+    for (const facts of [short, withFuel]) {
+      const cycle = compute(onBudget(facts, () => ({ ...PLAIN, services }))).cycles[2];
+      expect(cycle?.causes).toEqual([
+        { cause: 'exportShort', words: 'It credits 44 kWh less than your meter saw leave.' },
+      ]);
+      expect(cycle?.checks.find((one) => one.key === 'amountDue:electric')).toMatchObject({
+        verdict: 'differs',
+        difference: '4.18',
+        cause: 'It credits 44 kWh less than your meter saw leave.',
+      });
+      expect(billSentence(cycle as Cycle)).toBe(
+        'The bill is $4.18 too high: it credits 44 kWh less than your meter saw leave.',
+      );
+    }
   });
 
   test('is refused without its real charges: the amount due does not say them', () => {
