@@ -224,7 +224,7 @@ describe('a lease', () => {
     const { lease } = (await home.owner.call(moneyOtherApi.putLease, { params: home.params, body })).value;
     const made = facts.statements.map(({ productionWh }) => productionWh ?? 0);
     // The cycles end after the first of July, so that each is paid: kWh × $0.12 to the cent.
-    expect(lease?.paid.amountCents).toBe(-made.reduce((sum, wh) => sum + Math.round((wh * 12) / 1000), 0));
+    expect(lease?.paid.amountCents).toBe(-made.reduce<number>((sum, wh) => sum + Math.round((wh * 12) / 1000), 0));
     expect(lease).toMatchObject({ next: null, missing: [] });
     expect((await home.owner.call(moneyOtherApi.removeLease, { params: home.params })).value.lease).toBeNull();
     expect((await home.owner.call(moneyOtherApi.removeLease, { params: home.params })).status).toBe(404);
