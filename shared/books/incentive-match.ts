@@ -8,7 +8,7 @@ export type EarnedCycle = { from: Day; to: Day; earnedCents: Cents };
 /** A part of a receipt that pays a part of a cycle. `stated`: the receipt says that it covers the cycle; else it was matched oldest first. */
 export type IncentivePart = { receipt: string; on: Day; cycle: Day; amountCents: Cents; stated: boolean };
 
-export type MatchedCycle = EarnedCycle & { parts: IncentivePart[]; owedCents: Cents };
+export type Matched<T> = T & { parts: IncentivePart[]; owedCents: Cents };
 export type MatchedReceipt = {
   id: string;
   on: Day;
@@ -19,7 +19,11 @@ export type MatchedReceipt = {
   /** What pays no earned cycle: paid ahead, too much, or a correction downwards. */
   unmatchedCents: Cents;
 };
-export type IncentiveMatch = { cycles: MatchedCycle[]; receipts: MatchedReceipt[]; unmatchedCents: Cents };
+export type IncentiveMatch<T = EarnedCycle> = {
+  cycles: Matched<T>[];
+  receipts: MatchedReceipt[];
+  unmatchedCents: Cents;
+};
 
 /** A payer may print the read day or the day before it. */
 const SNAP_DAYS = 1;
@@ -29,12 +33,12 @@ const SNAP_DAYS = 1;
  * Amounts against the programme's sign (a cycle that earned nothing, a correction) match nothing. Σ parts + unmatched = Σ received, and
  * Σ owed = Σ earned − Σ parts. Cycles in order of their dates, receipts in any.
  */
-export function matchIncentive(
-  earned: readonly EarnedCycle[],
+export function matchIncentive<T extends EarnedCycle>(
+  earned: readonly T[],
   received: readonly Pick<IncentiveReceipt, 'id' | 'on' | 'amountCents' | 'from' | 'to'>[],
-): IncentiveMatch {
+): IncentiveMatch<T> {
   const sign = sumCents(earned.map((cycle) => cycle.earnedCents)) < 0 ? -1 : 1;
-  const cycles = earned.map((cycle) => ({ ...cycle, parts: [] as IncentivePart[], left: sign * cycle.earnedCents }));
+  const cycles = earned.map((cycle) => ({ cycle, parts: [] as IncentivePart[], left: sign * cycle.earnedCents }));
   const order = [...received].sort((a, b) => (a.on < b.on ? -1 : a.on > b.on ? 1 : a.id < b.id ? -1 : 1));
   const receipts = order.map((receipt) => ({
     id: receipt.id,
@@ -48,21 +52,22 @@ export function matchIncentive(
     for (const receipt of receipts) {
       const { cover } = receipt;
       if ((cover !== null) !== stated) continue;
-      for (const cycle of cycles) {
-        if (cover !== null && (cycle.to <= cover.from || cycle.from >= cover.to)) continue;
-        const paid = Math.min(receipt.left, cycle.left);
+      for (const row of cycles) {
+        const { from, to } = row.cycle;
+        if (cover !== null && (to <= cover.from || from >= cover.to)) continue;
+        const paid = Math.min(receipt.left, row.left);
         if (paid <= 0) continue;
         const amountCents = cents(sign * paid);
-        const part = { receipt: receipt.id, on: receipt.on, cycle: cycle.to, amountCents, stated };
+        const part = { receipt: receipt.id, on: receipt.on, cycle: to, amountCents, stated };
         receipt.parts.push(part);
-        cycle.parts.push(part);
+        row.parts.push(part);
         receipt.left -= paid;
-        cycle.left -= paid;
+        row.left -= paid;
       }
     }
   }
   return {
-    cycles: cycles.map(({ left, ...cycle }) => ({ ...cycle, owedCents: cents(sign * left) })),
+    cycles: cycles.map(({ cycle, parts, left }) => ({ ...cycle, parts, owedCents: cents(sign * left) })),
     receipts: receipts.map(({ left, ...receipt }) => ({ ...receipt, unmatchedCents: cents(sign * left) })),
     unmatchedCents: cents(sign * receipts.reduce((sum, receipt) => sum + receipt.left, 0)),
   };

@@ -10,7 +10,7 @@ import {
   monthOf,
   yearOf,
 } from '../units/day.ts';
-import { type Wh, wh } from '../units/energy.ts';
+import { sumWh, type Wh, wh } from '../units/energy.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { DecimalText } from '../units/rate-text.ts';
 
@@ -47,7 +47,7 @@ export function expectedWh(estimate: ProductionEstimate, from: Day, to: Day): Wh
     const years = wholeYears(estimate.switchOn, at);
     const until = earliestDay(to, nextMonth(at), addMonths(estimate.switchOn, (years + 1) * MONTHS_PER_YEAR));
     const month = monthOf(at);
-    const perDay = new Exact(estimate.monthlyWh[month - 1] ?? 0).div(daysInMonth(yearOf(at), month));
+    const perDay = new Exact(sumWh(estimate.monthlyWh.slice(month - 1, month))).div(daysInMonth(yearOf(at), month));
     sum = sum.plus(perDay.times(daysBetween(at, until)).times(kept.pow(years)));
     at = until;
   }

@@ -4,9 +4,12 @@ import { plus, type Qty, qtyOfText, sizeOf, whOfQty } from '../settlement/quanti
 import { kwhText, type Wh, wh } from '../units/energy.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
-import { guessWords, incentiveGuesses, type Made } from './incentive-guess.ts';
+import { guessWords, incentiveGuesses } from './incentive-guess.ts';
 import { compareWh, type Difference, nothingToCompare } from './make-check.ts';
-import { cycleOfEnd, shareOf, spanOf } from './programme.ts';
+import { cycleOfEnd, type Span, spanOf } from './programme.ts';
+
+/** The kWh a payment should have been made on, and the cycles they were made in. */
+type Paid = Pick<Span, 'cycles' | 'eligibleWh' | 'productionWh'>;
 
 /** A whole-kWh register is right to ±1 kWh per difference (net-metering.md §5), and each cycle is one. */
 const STEP_WH = 1000;
@@ -39,8 +42,7 @@ function lineChecks(context: CheckContext): Check[] {
     const billed = whOfQty(quantity);
     const own = programme?.cycles[paper.index];
     if (component === null && own === undefined) return [];
-    const inTerm = own === undefined ? null : shareOf(made, own.eligible, own.days);
-    const found = component === null ? inTerm : plannedWh(context, component);
+    const found = component === null ? (own?.made?.eligibleWh ?? null) : plannedWh(context, component);
     if (made === null || found === null) return [unknown(about, billed)];
     const span = { cycles: [paper.index], eligibleWh: found, productionWh: made };
     return [quantityCheck(context, about, billed, span, TITLE)];
@@ -59,9 +61,9 @@ function plannedWh({ settled }: CheckContext, component: string): Wh | null {
 function receiptChecks(context: CheckContext): Check[] {
   const { paper, programme, index } = context;
   if (programme === null || programme.terms.paidAs !== 'separate') return [];
-  return programme.match.receipts.flatMap(({ id, on, cover }) => {
+  return programme.receipts.flatMap(({ id, on, cover }) => {
     const quantity = programme.terms.received.find((receipt) => receipt.id === id)?.quantityWh ?? null;
-    if (cover === null || quantity === null || cycleOfEnd(programme, cover.to) !== paper.index) return [];
+    if (cover === null || quantity === null || cycleOfEnd(programme, cover.to)?.index !== paper.index) return [];
     const title = `${TITLE}, receipt of ${sayDate(on)}`;
     const span = spanOf(programme, index, cover.from, cover.to);
     if (typeof span === 'string') {
@@ -71,14 +73,14 @@ function receiptChecks(context: CheckContext): Check[] {
   });
 }
 
-function quantityCheck(context: CheckContext, about: string, stated: Wh, span: Made, title: string): Check {
+function quantityCheck(context: CheckContext, about: string, stated: Wh, span: Paid, title: string): Check {
   const tolerance = wh(STEP_WH * Math.max(1, span.cycles.length));
   return compareWh('incentiveQuantity', about, title, { stated, found: span.eligibleWh, tolerance }, () =>
     quantityTexts(context, stated, span),
   );
 }
 
-function quantityTexts(context: CheckContext, stated: Wh, span: Made): Difference {
+function quantityTexts(context: CheckContext, stated: Wh, span: Paid): Difference {
   const gap = wh(stated - span.eligibleWh);
   const size = `It was paid on ${sayGap(gap)} kWh ${gap < 0 ? 'less' : 'more'} than the production meter’s ${sayKwh(span.eligibleWh)}.`;
   // A quantity printed in whole kWh says no more than that.

@@ -1,20 +1,19 @@
 import { dcWattsOf } from '../facts/dc-rating.ts';
-import type { HouseFacts } from '../facts/house.ts';
 import { sayCount, sayDate, sayKwh } from '../ledger/say.ts';
 import { intervalDayOf, intervalEnergy } from '../metering/interval-index.ts';
 import { hoursFromUtc, type Light, lightsBetween, midnights, type Place, placeOf, sunIsUp } from '../metering/sun.ts';
-import { addDays, type Day, daysBetween } from '../units/day.ts';
+import { addDays, type Day } from '../units/day.ts';
 import { type Wh, wh, ZERO_WH } from '../units/energy.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
 import { compareWh, type Difference, nothingToCompare } from './make-check.ts';
 
 const CHANNELS = ['production', 'monitor'] as const;
-type Channel = (typeof CHANNELS)[number];
 const FILES = { production: 'production file', monitor: 'monitoring file' } as const;
 
 const MS_PER_MINUTE = 60_000;
 const MS_PER_HOUR = 3_600_000;
+const MS_PER_DAY = 86_400_000;
 /** Steps longer than this hold both night and day. */
 const LONGEST_STEP_MINUTES = 60;
 const MOST_HOURS_OFF = 12;
@@ -43,57 +42,39 @@ export function productionAtNightChecks({ paper, index, facts: { house } }: Chec
         'Enter the house’s place in set-up.',
       );
     }
-    const days = filledDays(index, channel, paper.from, paper.to);
+    const starts = midnights(paper.from, paper.to, house.timeZone);
+    const days = starts.flatMap((start, at): FilledDay[] => {
+      const date = addDays(paper.from, at);
+      const row = intervalDayOf(index, channel, date);
+      return row === null ? [] : [{ start, date, minutes: row.minutes, values: row.values }];
+    });
     if (days.some(({ minutes }) => minutes > LONGEST_STEP_MINUTES)) {
       return missing(`The ${FILES[channel]} has steps longer than an hour, which hold both night and day.`, null);
     }
-    const starts = midnights(paper.from, paper.to, house.timeZone);
-    const counted = days.map(({ at, date, minutes, values }) => ({
-      date,
-      steps: countedSteps(values, starts[at] ?? 0, minutes, house, days),
-    }));
-    const dark = counted.map(({ date, steps }) => ({ date, wh: darkWh(steps, place) })).filter((day) => day.wh > 0);
+    const watts = dcWattsOf(house.arrays) || (house.inverterAcWatts ?? highestWatts(days));
+    const counted = days.map((one) => ({ date: one.date, steps: countedSteps(one, watts) }));
+    const dark = counted.map(({ date, steps }) => ({ date, wh: darkWh(steps, place) })).filter((one) => one.wh > 0);
     const sides = { stated: sumOf(dark), found: ZERO_WH, tolerance: ZERO_WH };
-    return compareWh('productionAtNight', channel, title, sides, () =>
-      clockTexts(
-        dark,
-        counted.flatMap(({ steps }) => steps),
-        place,
-        [-hoursFromUtc(paper.from, house.timeZone), -hoursFromUtc(paper.to, house.timeZone)],
-      ),
-    );
+    return compareWh('productionAtNight', channel, title, sides, () => {
+      const steps = counted.flatMap((one) => one.steps);
+      const reach = MOST_HOURS_OFF * MS_PER_HOUR;
+      const lights = lightsBetween(place, Math.min(...starts) - reach, Math.max(...starts) + MS_PER_DAY + reach);
+      const utc = [paper.from, paper.to].map((date) => -hoursFromUtc(date, house.timeZone));
+      return clockTexts(dark, hoursAhead(steps, lights), utc);
+    });
   });
 }
 
-type FilledDay = { at: number; date: Day; minutes: number; values: readonly (number | null)[] };
-
-function filledDays(index: CheckContext['index'], channel: Channel, from: Day, to: Day): FilledDay[] {
-  const days: FilledDay[] = [];
-  for (let at = 0; at < daysBetween(from, to); at += 1) {
-    const date = addDays(from, at);
-    const row = intervalDayOf(index, channel, date);
-    if (row !== null) days.push({ at, date, minutes: row.minutes, values: row.values });
-  }
-  return days;
-}
+type FilledDay = { start: number; date: Day; minutes: number; values: readonly (number | null)[] };
 
 /** The steps of a day that are more than a sensor's idle count, in order. */
-function countedSteps(
-  values: FilledDay['values'],
-  start: number,
-  minutes: number,
-  house: HouseFacts,
-  days: readonly FilledDay[],
-): Step[] {
-  const watts = dcWattsOf(house.arrays) || (house.inverterAcWatts ?? highestWatts(days));
+function countedSteps({ start, minutes, values }: FilledDay, watts: number): Step[] {
   const length = minutes * MS_PER_MINUTE;
-  const steps: Step[] = [];
-  values.forEach((value, at) => {
-    if (value !== null && value > 0 && value * MINUTES_PER_HOUR * IDLE_PARTS >= watts * minutes) {
-      steps.push({ at: start + at * length, length, wh: value });
-    }
-  });
-  return steps;
+  return values.flatMap((value, at) =>
+    value !== null && value > 0 && value * MINUTES_PER_HOUR * IDLE_PARTS >= watts * minutes
+      ? [{ at: start + at * length, length, wh: value }]
+      : [],
+  );
 }
 
 function highestWatts(days: readonly FilledDay[]): number {
@@ -108,14 +89,13 @@ function highestWatts(days: readonly FilledDay[]): number {
 function darkWh(steps: readonly Step[], place: Place): number {
   let dark = 0;
   let first = 0;
-  for (; first < steps.length; first += 1) {
-    const step = steps[first];
-    if (!step || sunIsUp(place, step.at + 2 * step.length) || sunIsUp(place, step.at - step.length)) break;
+  for (const step of steps) {
+    if (sunIsUp(place, step.at + 2 * step.length) || sunIsUp(place, step.at - step.length)) break;
     dark += step.wh;
+    first += 1;
   }
-  for (let last = steps.length - 1; last > first; last -= 1) {
-    const step = steps[last];
-    if (!step || sunIsUp(place, step.at - step.length) || sunIsUp(place, step.at + 2 * step.length)) break;
+  for (const step of steps.slice(first).reverse()) {
+    if (sunIsUp(place, step.at - step.length) || sunIsUp(place, step.at + 2 * step.length)) break;
     dark += step.wh;
   }
   return dark;
@@ -125,23 +105,29 @@ function sumOf(days: readonly { wh: number }[]): Wh {
   return wh(days.reduce((sum, day) => sum + day.wh, 0));
 }
 
-/** The cause by trying: every whole number of hours by which the file's clock must be off for all of it to have been made by day. */
-function clockTexts(
-  dark: readonly { date: Day; wh: number }[],
-  steps: readonly Step[],
-  place: Place,
-  utcHours: readonly number[],
-): Difference {
-  const first = dark[0]?.date;
-  const what = `${sayKwh(sumOf(dark))} kWh in the dark on ${sayCount(dark.length, 'day', 'days')}${first ? `, the first ${sayDate(first)}` : ''}.`;
-  const begin = (steps[0]?.at ?? 0) - MOST_HOURS_OFF * MS_PER_HOUR;
-  const end = (steps.at(-1)?.at ?? 0) + MOST_HOURS_OFF * MS_PER_HOUR;
-  const lights = lightsBetween(place, begin, end);
+/** Every whole number of hours the file's clock may be ahead (below zero: behind) so that all of it was made in the light, the smallest first. */
+function hoursAhead(steps: readonly Step[], lights: readonly Light[]): number[] {
   const found: number[] = [];
   for (let hours = 1; hours <= MOST_HOURS_OFF; hours += 1) {
-    for (const ahead of [-hours, hours]) if (allInTheLight(steps, lights, ahead * MS_PER_HOUR)) found.push(ahead);
+    for (const ahead of [-hours, hours]) {
+      const inTheLight = steps.every((step) => {
+        const at = step.at - ahead * MS_PER_HOUR;
+        return lights.some(({ rise, set }) => rise < at + 2 * step.length && set > at - step.length);
+      });
+      if (inTheLight) found.push(ahead);
+    }
   }
-  if (found.length === 0) {
+  return found;
+}
+
+function clockTexts(
+  dark: readonly { date: Day; wh: number }[],
+  ahead: readonly number[],
+  utc: readonly number[],
+): Difference {
+  const since = dark.slice(0, 1).map(({ date }) => sayDate(date));
+  const what = `${sayKwh(sumOf(dark))} kWh in the dark on ${sayCount(dark.length, 'day', 'days')}, the first ${since.join('')}.`;
+  if (ahead.length === 0) {
     return {
       cause: `${what} No whole number of hours by which its clock could be off puts it all by day.`,
       advice:
@@ -149,20 +135,9 @@ function clockTexts(
     };
   }
   return {
-    cause: `${what} ${found.map((ahead) => clockWords(ahead, utcHours)).join(' Or: ')}`,
+    cause: `${what} ${ahead.map((hours) => clockWords(hours, utc)).join(' Or: ')}`,
     advice: 'Find out which time its stamps are in, and upload the file again with that time.',
   };
-}
-
-/** Whether every step, put back by so much, touches daylight or lies within one step of it. */
-function allInTheLight(steps: readonly Step[], lights: readonly Light[], ahead: number): boolean {
-  let at = 0;
-  return steps.every((step) => {
-    const begin = step.at - ahead - step.length;
-    const end = step.at - ahead + 2 * step.length;
-    while ((lights[at]?.set ?? Number.POSITIVE_INFINITY) <= begin) at += 1;
-    return (lights[at]?.rise ?? Number.POSITIVE_INFINITY) < end;
-  });
 }
 
 function clockWords(ahead: number, utcHours: readonly number[]): string {

@@ -1,5 +1,5 @@
 import { eligibleDays, incentiveFor } from '../books/incentive.ts';
-import { type IncentiveMatch, matchIncentive } from '../books/incentive-match.ts';
+import { type Matched, type MatchedReceipt, matchIncentive } from '../books/incentive-match.ts';
 import type { IncentiveFacts } from '../facts/finance.ts';
 import type { CyclePaper } from '../ledger/cycle-papers.ts';
 import { isComplete, type MeteredCycle } from '../metering/cycle-energy.ts';
@@ -9,23 +9,26 @@ import { addDays, type Day, earliestDay, latestDay } from '../units/day.ts';
 import { sumWh, type Wh, wh, ZERO_WH } from '../units/energy.ts';
 import { Exact } from '../units/rate.ts';
 
-/** A cycle as the incentive's checks see it. */
-export type ProgrammeCycle = {
+/** What was made, what of it within the term, and what that earned. */
+export type Made = { productionWh: Wh; eligibleWh: Wh; earnedCents: Cents };
+
+/** A cycle as the incentive's checks see it, with the receipts that pay it; `made` is null where the production is not known. */
+export type ProgrammeCycle = Matched<{
+  index: number;
   from: Day;
   to: Day;
   days: number;
   eligible: number;
-  productionWh: Wh | null;
-  /** Null where the production is not known. */
-  earnedCents: Cents | null;
-};
+  made: Made | null;
+  earnedCents: Cents;
+}>;
 
 /** What the incentive earned in every cycle, and which receipt pays which. */
 export type Programme = {
   terms: IncentiveFacts;
   cycles: ProgrammeCycle[];
-  match: IncentiveMatch;
-  /** The latest day the record speaks of; ages are counted from it, since the ledger's checks read no clock. */
+  receipts: MatchedReceipt[];
+  /** The latest day the record speaks of; ages are counted from it, since checks read no clock. */
   through: Day;
 };
 
@@ -37,76 +40,76 @@ export function programmeOf(
 ): Programme | null {
   const last = papers.at(-1);
   if (terms === null || last === undefined) return null;
-  const cycles = papers.map(({ from, to, days }, at): ProgrammeCycle => {
-    const production = meters[at]?.energy.production ?? null;
-    const productionWh = isComplete(production) ? production.wh : null;
-    const eligible = eligibleDays(terms, from, to);
-    const earnedCents = productionWh === null ? null : incentiveFor(terms, productionWh, eligible, days);
-    return { from, to, days, eligible, productionWh, earnedCents };
-  });
-  const earned = cycles.map(({ from, to, earnedCents }) => ({ from, to, earnedCents: earnedCents ?? ZERO_CENTS }));
+  const cycles = meters.flatMap(({ energy: { production } }, at) =>
+    papers.slice(at, at + 1).map(({ index, from, to, days }) => {
+      const eligible = eligibleDays(terms, from, to);
+      const made = isComplete(production) ? madeOf(terms, production.wh, eligible, days) : null;
+      return { index, from, to, days, eligible, made, earnedCents: made?.earnedCents ?? ZERO_CENTS };
+    }),
+  );
   const received = terms.paidAs === 'separate' ? terms.received : [];
+  const match = matchIncentive(cycles, received);
   const through = latestDay(last.to, ...received.map(({ on }) => on));
-  return { terms, cycles, match: matchIncentive(earned, received), through };
+  return { terms, cycles: match.cycles, receipts: match.receipts, through };
 }
 
-/** What was made and earned over the days a payment covers. */
-export type Span = {
-  /** Places of the cycles it is made of; empty where it is read from the file instead. */
-  cycles: number[];
-  /** kWh within the term, and of the whole span. */
-  eligibleWh: Wh;
-  productionWh: Wh;
-  earnedCents: Cents;
-};
+function madeOf(terms: IncentiveFacts, productionWh: Wh, eligible: number, days: number): Made {
+  return {
+    productionWh,
+    eligibleWh: shareOf(productionWh, eligible, days),
+    earnedCents: incentiveFor(terms, productionWh, eligible, days),
+  };
+}
+
+/** The kWh of a cycle that lie within the term, by days. */
+function shareOf(production: Wh, eligible: number, days: number): Wh {
+  return wh(new Exact(production).times(eligible).div(days).toDecimalPlaces(0, Exact.ROUND_HALF_UP).toNumber());
+}
+
+/** What was made over the days a payment covers, and the places of the cycles they are; none where it is read from the file instead. */
+export type Span = Made & { cycles: number[] };
 
 /**
  * The span `[from, to)` as the sum of its cycles where it begins and ends with one; else from a production file without a gap. A text says why neither is
  * possible.
  */
 export function spanOf({ terms, cycles }: Programme, index: IntervalIndex, from: Day, to: Day): Span | string {
-  const first = cycles[0];
-  const within = cycles.flatMap((cycle, at) => (cycle.from >= from && cycle.to <= to ? [{ ...cycle, at }] : []));
-  const begins = within[0]?.from;
-  const whole =
-    within.at(-1)?.to === to &&
-    (begins === from || (first !== undefined && begins === first.from && from < first.from)) &&
-    within.every((cycle, at) => at === 0 || within[at - 1]?.to === cycle.from);
-  const made = within.flatMap(({ productionWh }) => productionWh ?? []);
+  const within = cycles.filter((cycle) => cycle.from >= from && cycle.to <= to);
+  const made = within.flatMap((cycle) => cycle.made ?? []);
+  const whole = isWhole(within, from, to);
   if (whole && made.length === within.length) {
     return {
-      cycles: within.map(({ at }) => at),
-      eligibleWh: sumWh(within.map(({ productionWh, eligible, days }) => shareOf(productionWh, eligible, days))),
-      productionWh: sumWh(made),
-      earnedCents: sumCents(within.flatMap(({ earnedCents }) => earnedCents ?? [])),
+      cycles: within.map((cycle) => cycle.index),
+      productionWh: sumWh(made.map((one) => one.productionWh)),
+      eligibleWh: sumWh(made.map((one) => one.eligibleWh)),
+      earnedCents: sumCents(made.map((one) => one.earnedCents)),
     };
   }
   const file = intervalEnergy(index, 'production', from, to);
   if (file?.complete) {
     const begin = latestDay(from, terms.firstDay);
     const end = earliestDay(to, addDays(terms.lastDay, 1));
-    const eligible = intervalEnergy(index, 'production', begin, end)?.figure.wh ?? ZERO_WH;
-    return {
-      cycles: [],
-      eligibleWh: eligible,
-      productionWh: file.figure.wh,
-      earnedCents: incentiveFor(terms, eligible, 1, 1),
-    };
+    const eligibleWh = intervalEnergy(index, 'production', begin, end)?.figure.wh ?? ZERO_WH;
+    const earnedCents = incentiveFor(terms, eligibleWh, 1, 1);
+    return { cycles: [], productionWh: file.figure.wh, eligibleWh, earnedCents };
   }
   return whole
     ? 'The production of these days is not completely known.'
     : 'It begins or ends inside a cycle, and no production file covers its days without a gap.';
 }
 
-/** The kWh of a cycle that lie within the term, by days. */
-export function shareOf(production: Wh | null, eligible: number, days: number): Wh {
-  if (production === null) return ZERO_WH;
-  if (eligible === days) return production;
-  return wh(new Exact(production).times(eligible).div(days).toDecimalPlaces(0, Exact.ROUND_HALF_UP).toNumber());
+/** Whether cycles follow one another from the first of some days (or from where the record begins) to the last. */
+function isWhole(within: readonly ProgrammeCycle[], from: Day, to: Day): boolean {
+  let reached: Day | null = null;
+  for (const cycle of within) {
+    const begins = reached ?? (cycle.index === 0 ? cycle.from : from);
+    if (cycle.from !== begins) return false;
+    reached = cycle.to;
+  }
+  return reached === to;
 }
 
-/** The cycle a cover ends in; null while no statement reaches its end. */
-export function cycleOfEnd({ cycles }: Programme, to: Day): number | null {
-  const at = cycles.findIndex((cycle) => cycle.from < to && to <= cycle.to);
-  return at === -1 ? null : at;
+/** The cycle some days end in; null while no statement reaches their end. */
+export function cycleOfEnd({ cycles }: Programme, to: Day): ProgrammeCycle | null {
+  return cycles.find((cycle) => cycle.from < to && to <= cycle.to) ?? null;
 }

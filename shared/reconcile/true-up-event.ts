@@ -3,7 +3,7 @@ import { sumCents } from '../units/cents.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
-import { compareDecimals, nothingToCompare } from './make-check.ts';
+import { nothingToCompare } from './make-check.ts';
 
 /**
  * At a true-up, or where credit runs out, what left the bank is what the plan says leaves it. Where the statement prints the bank's close that is the bank's own check: this
@@ -29,9 +29,8 @@ export function trueUpChecks({ settled, paper }: CheckContext, others: readonly 
     const cheque = apart === 0 ? null : `${sayMoney(apart)} should come apart from the bill.`;
     const close = others.find((check) => check.key === `bankChain:${bank.id}.close`);
     if (close?.verdict === 'differs') return [];
-    if (close?.verdict === 'agrees' && close.stated !== null && close.found !== null) {
-      const sides = { stated: close.stated, found: close.found, tolerance: close.tolerance ?? '0', unit: bank.unit };
-      const check = compareDecimals('nothingLost', about, title, sides, () => ({ cause: null, advice: null }));
+    if (close?.verdict === 'agrees') {
+      const check = { ...close, check: 'nothingLost' as const, about, key: `nothingLost:${about}`, title };
       return [
         {
           ...check,

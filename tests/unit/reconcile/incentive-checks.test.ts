@@ -11,7 +11,7 @@ import { BUILT_TODAY, type BuildOptions, buildHousehold } from '#tests/support/b
 import { check, checksOf } from './built-checks.ts';
 
 /** The built house makes 1,420, 1,450 and 1,310 kWh in its first three cycles and sends out 430, 390 and 256: $63.90, $65.25 and $58.95 at $0.045. */
-type Receipt = Partial<IncentiveReceipt> & { on: string; amountCents: number };
+type Receipt = Partial<Omit<IncentiveReceipt, 'on' | 'amountCents'>> & { on: string; amountCents: number };
 
 function household(
   receipts: readonly Receipt[],
@@ -25,6 +25,7 @@ function household(
     from: null,
     to: null,
     quantityWh: null,
+    documentId: null,
     ...one,
     on: day(one.on),
     amountCents: cents(one.amountCents),
@@ -147,6 +148,19 @@ describe('the kWh an incentive was paid on', () => {
     expect(check(wrong, 0, PAID('r0')).cause).toMatch(
       /^\$31\.95 more than \$31\.95 earned on 710 kWh\. It is exactly all the production/,
     );
+  });
+
+  test('is not tried on an export that is not known', () => {
+    const facts = household([{ on: '2025-08-01', amountCents: 1935, ...FIRST, quantityWh: wh(430_000) }]);
+    const blind = {
+      ...facts,
+      statements: facts.statements.map((one) => ({
+        ...one,
+        exportWh: null,
+        reads: one.reads.filter((read) => read.channel !== 'export'),
+      })),
+    };
+    expect(check(blind, 0, QUANTITY()).cause).not.toMatch(/exactly/);
   });
 
   test('to a fraction of a kWh must be that very quantity to be called exactly it', () => {

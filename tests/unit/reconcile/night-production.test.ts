@@ -91,6 +91,7 @@ describe('production while the sun is down', () => {
     // The brightest quarter-hour makes a little under 2,160 Wh; 0.5 % of it is more than 10.
     expect(found(withStep(neither, 2, 10)).verdict).toBe('agrees');
     expect(found(withStep(neither, 2, 11)).verdict).toBe('differs');
+    expect(found(withStep(neither, 2, null)).verdict).toBe('agrees');
   });
 
   test('a step counts from one step after the sun is down: 20:28 on 14 June, so from a quarter to nine', () => {

@@ -92,6 +92,34 @@ describe('production against the estimate', () => {
     expect(found(silent).cause).toMatch(/No day of the file stands out/);
   });
 
+  test('the monitoring’s count is told beside it only where its file is complete', () => {
+    const facts = making(
+      600,
+      buildHousehold({
+        intervals: { channels: ['production'], minutes: 60 },
+        change: (cycle) => ({ ...cycle, productionKwh: 600 }),
+      }),
+    );
+    expect(found(facts).cause).toMatch(/No day of the file stands out.*one string or inverter less\.$/);
+  });
+
+  test('a single day that stood still is named by itself', () => {
+    const facts = making(
+      600,
+      buildHousehold({
+        intervals: { channels: ['production'], minutes: 60 },
+        change: (cycle) => ({ ...cycle, productionKwh: 600 }),
+      }),
+    );
+    const dead = {
+      ...facts,
+      intervals: facts.intervals.map((one) =>
+        one.day === '2025-06-20' ? { ...one, values: one.values.map(() => 0) } : one,
+      ),
+    };
+    expect(found(dead).cause).toMatch(/Next to nothing on 1 day: 20 Jun\.$/);
+  });
+
   test('too much points at the multiplier and at the estimate', () => {
     expect(found(making(2000)).cause).toMatch(
       /^Made 100 % above the estimate of 1,000 kWh\. A production meter’s multiplier/,
