@@ -1,0 +1,89 @@
+import type { LoanFacts, LoanPayment } from '../facts/finance.ts';
+import type { Figure } from '../position/position.ts';
+import { type Cents, cents, sumCents, ZERO_CENTS } from '../units/cents.ts';
+import { addMonths, type Day, yearOf } from '../units/day.ts';
+import { stated, usdListInput } from './inputs.ts';
+import { loanBook } from './loan-book.ts';
+import type { LoanLevel, LoanStep } from './loan-step.ts';
+
+/** What becomes of a loan whose payment takes a prepayment for granted, if so much of it is paid. */
+export type PrepaymentOutcome = {
+  prepaid: 'whole' | 'part' | 'nothing';
+  prepaidCents: Cents;
+  /** The level payment from the next payment on. */
+  level: LoanLevel;
+  /** All interest from funding to the end, what joined the principal included. */
+  interest: Figure;
+  clearedOn: Day;
+};
+
+/**
+ * Three ways the assumed prepayment can go: paid whole, in part (half of it unless `partCents` says how much), or not at all. Regular payments are as recorded
+ * through that day; extra principal, lender's balances and refinances are left out, so that the three differ in the prepayment alone. It is paid with the
+ * payment it is due by. None where the contract takes no prepayment for granted.
+ */
+export function prepaymentOutcomes(loan: LoanFacts, partCents: Cents | null = null): PrepaymentOutcome[] {
+  const { assumedPrepayment: assumed } = loan;
+  if (assumed === null) return [];
+  const part = partCents ?? cents(Math.floor(assumed.amountCents / 2));
+  return [
+    outcomeOf(loan, 'whole', assumed.amountCents, assumed.byPayment),
+    outcomeOf(loan, 'part', part, assumed.byPayment),
+    outcomeOf(loan, 'nothing', ZERO_CENTS, assumed.byPayment),
+  ];
+}
+
+function outcomeOf(
+  loan: LoanFacts,
+  prepaid: PrepaymentOutcome['prepaid'],
+  prepaidCents: Cents,
+  byPayment: number,
+): PrepaymentOutcome {
+  const dueOn = addMonths(loan.firstPaymentOn, byPayment - 1);
+  const regular = loan.payments
+    .filter((payment) => payment.amountCents !== payment.extraPrincipalCents)
+    .map((payment): LoanPayment => {
+      const amountCents = cents(payment.amountCents - payment.extraPrincipalCents);
+      return { ...payment, amountCents, extraPrincipalCents: ZERO_CENTS, reamortize: false };
+    });
+  const prepayment: LoanPayment = {
+    id: `assumed-${prepaid}`,
+    on: dueOn,
+    amountCents: prepaidCents,
+    extraPrincipalCents: prepaidCents,
+    note: null,
+    reamortize: false,
+    documentId: null,
+  };
+  const payments = prepaidCents === 0 ? regular : [...regular, prepayment];
+  const { levels, steps } = loanBook({ ...loan, payments, balances: [], refinances: [] });
+  const level = levels.findLast(({ fromNumber }) => fromNumber === byPayment + 1) ?? levels.at(-1);
+  const last = steps.at(-1);
+  if (level === undefined || last === undefined) throw new Error('a loan with an assumed prepayment has no payments');
+  return {
+    prepaid,
+    prepaidCents,
+    level,
+    interest: interestOf(steps),
+    clearedOn: last.on,
+  };
+}
+
+function interestOf(steps: readonly LoanStep[]): Figure {
+  const years = new Map<number, Cents>();
+  for (const step of steps) {
+    const year = yearOf(step.on);
+    years.set(year, cents((years.get(year) ?? 0) + step.interestCents + step.capitalisedCents));
+  }
+  const amounts = [...years.values()];
+  return {
+    amountCents: sumCents(amounts),
+    working: {
+      words: `Interest of every payment, from ${Math.min(...years.keys())} to ${Math.max(...years.keys())}`,
+      formula: 'sum(interest)',
+      inputs: [usdListInput('interest', 'Interest by year', amounts, stated('Loan schedule'))],
+      unit: 'USD',
+      basis: 'computed',
+    },
+  };
+}
