@@ -1,50 +1,152 @@
-import type { MoneyView } from '#shared/api/money.ts';
+import { useQuery } from '@tanstack/react-query';
+import type { MortgageView } from '#shared/api/money-mortgage.ts';
 import { fullDate, money } from '#src/lib/format.ts';
-import { Missing } from '#src/ui/money.tsx';
+import { errorWords } from '#src/lib/problem-words.ts';
+import { percentWords } from '#src/lib/typed-values.ts';
+import { MoneyFigure } from '#src/ui/figure.tsx';
+import { Fold } from '#src/ui/fold.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { FactsList } from './facts-list.tsx';
-import { END_RULES, insuranceStanding } from './money-words.ts';
+import { InsuranceAsks, InsuranceChecklist } from './insurance-asks.tsx';
+import { InsuranceEnds } from './insurance-ends.tsx';
+import { LoanToValue } from './insurance-ltv.tsx';
+import { InsurancePremiums } from './insurance-premiums.tsx';
+import type { InsuranceProps } from './insurance-props.ts';
+import { mortgageQuery } from './insurance-queries.ts';
+import { InsuranceBalances, InsuranceValues } from './insurance-records.tsx';
+import { InsuranceSchedule } from './insurance-schedule.tsx';
+import { insuranceStanding } from './insurance-words.ts';
 
-/** Mortgage insurance: what the roof avoided, and the days on which it could have gone anyway. */
-export function InsuranceSheet({ insurance }: { insurance: NonNullable<MoneyView['insurance']> }) {
-  const paid = insurance.facts.insurance;
+/** Mortgage insurance: what the roof avoided, loan-to-value, when it could have gone anyway, and what a request to take it off rests on. */
+export function InsuranceSheet({
+  householdId,
+  canEdit,
+  today,
+}: {
+  householdId: string;
+  canEdit: boolean;
+  today: string;
+}) {
+  const answer = useQuery(mortgageQuery(householdId));
+  if (answer.isPending) {
+    return (
+      <Sheet title="Mortgage insurance">
+        <div className="bone h-64" aria-busy="true" />
+      </Sheet>
+    );
+  }
+  if (answer.isError) {
+    return (
+      <Sheet title="Mortgage insurance">
+        <p className="neg">{errorWords(answer.error)}</p>
+        <button type="button" className="link min-h-11" onClick={() => answer.refetch()}>
+          Try again
+        </button>
+      </Sheet>
+    );
+  }
+  const view = answer.data.mortgage;
+  return view === null ? null : <InsuranceBody view={view} householdId={householdId} canEdit={canEdit} today={today} />;
+}
+
+function InsuranceBody(props: InsuranceProps) {
+  const { view } = props;
+  const { facts } = view;
+  const gone = facts.insurance !== null && facts.insurance.removedOn !== null;
   return (
-    <Sheet title="Mortgage insurance" hint={insuranceStanding(insurance)}>
-      {paid && (
-        <>
-          <FactsList
-            rows={[
-              { label: 'Premium', value: money(paid.premiumMonthlyCents), hint: 'each month' },
-              { label: 'Avoided so far', value: money(insurance.avoidedCents) },
-            ]}
-          />
-          <h3 className="mt-6">When it could have gone without the roof</h3>
-          <ul className="mt-1 border-t border-rule">
-            {insurance.ends.map((end) => {
-              const governs = end.rule === insurance.governs;
-              return (
-                <li key={end.rule} className="flex items-baseline justify-between gap-x-5 border-b border-rule py-2">
-                  <span className={governs ? 'font-semibold' : undefined}>
-                    {capital(END_RULES[end.rule])}
-                    <span className="hint block font-normal">
-                      {end.words}
-                      {governs && '. This is the day that counts'}.
-                    </span>
-                  </span>
-                  <span className={governs ? 'whitespace-nowrap font-semibold' : 'whitespace-nowrap'}>
-                    {end.on ? fullDate(end.on) : <Missing reason="Never, or not known" />}
-                  </span>
-                </li>
-              );
-            })}
-          </ul>
-          <p className="hint mt-2">Ask the servicer before relying on a day; its records decide.</p>
-        </>
+    <Sheet title="Mortgage insurance" hint={insuranceStanding(view)}>
+      {view.warnings.map((warning) => (
+        <p key={warning.id} className="margin-note mt-2 mb-3">
+          {warning.words}
+        </p>
+      ))}
+      <div className="grid gap-x-[26px] gap-y-6 lg:grid-cols-2">
+        <div className="min-w-0">
+          <Standing view={view} />
+        </div>
+        {view.schedule.length > 0 && <LoanToValue view={view} />}
+        {facts.insurance !== null && (
+          <>
+            <InsuranceEnds {...props} />
+            <InsuranceAsks view={view} />
+          </>
+        )}
+      </div>
+      {facts.insurance !== null && (
+        <Fold title="Toward the request" summary={checklistSummary(view, gone)} open={!gone}>
+          <InsuranceChecklist {...props} />
+        </Fold>
       )}
+      <Fold
+        title="Values and balances"
+        summary={`${countWords(facts.appraisals.length, 'value', 'values')}, ${countWords(facts.balances.length, 'statement balance', 'statement balances')}`}
+      >
+        <div className="grid gap-x-[26px] gap-y-6 lg:grid-cols-2">
+          <InsuranceValues {...props} />
+          <InsuranceBalances {...props} />
+        </div>
+      </Fold>
+      {facts.insurance !== null && <InsurancePremiums {...props} />}
+      <InsuranceSchedule view={view} householdId={props.householdId} />
+      <p className="hint mt-3">Not lending advice. Ask the servicer before relying on a day; its records decide.</p>
     </Sheet>
   );
 }
 
-function capital(text: string): string {
-  return text.charAt(0).toUpperCase() + text.slice(1);
+function Standing({ view }: { view: MortgageView }) {
+  const { facts } = view;
+  return (
+    <>
+      <h3>The mortgage</h3>
+      <FactsList
+        rows={[
+          {
+            label: facts.lender === '' ? 'Principal' : facts.lender,
+            value: money(facts.principalCents),
+            hint: `at ${percentWords(facts.annualRate)} over ${facts.termMonths} months, ${money(view.paymentCents)} a month`,
+          },
+          {
+            label: `Balance on ${fullDate(view.balanceOn)}`,
+            value: (
+              <MoneyFigure
+                title={`Mortgage balance on ${fullDate(view.balanceOn)}`}
+                cents={view.balance.amountCents}
+                working={view.balance.working}
+              />
+            ),
+          },
+          {
+            label: 'Original value',
+            value: money(facts.originalValueCents),
+            hint: `the balance is ${view.originalPercent} % of it`,
+          },
+          ...(view.latest
+            ? [
+                {
+                  label: `Value on ${fullDate(view.latest.on)}`,
+                  value: money(view.latest.valueCents),
+                  hint: `the balance is ${view.latest.percent} % of it`,
+                },
+              ]
+            : []),
+          ...(view.premiumCents === null
+            ? []
+            : [
+                { label: 'Premium', value: money(view.premiumCents), hint: 'each month, as it is or would be today' },
+                { label: 'Avoided so far', value: money(view.avoidedCents), total: true },
+              ]),
+        ]}
+      />
+    </>
+  );
+}
+
+function checklistSummary(view: MortgageView, gone: boolean): string {
+  if (gone) return 'for the record: the insurance is gone';
+  const ready = view.checklist.filter((line) => line.state === 'ready').length;
+  return `${ready} of ${view.checklist.length} ready`;
+}
+
+function countWords(count: number, one: string, many: string): string {
+  return `${count === 0 ? 'no' : count} ${count === 1 ? one : many}`;
 }

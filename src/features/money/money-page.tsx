@@ -38,13 +38,6 @@ function Money({ view, household }: { view: MoneyView; household: HouseholdConte
               A loan that pays for the roof is not entered. Paid in cash? Then the cash stands under costs.
             </NotEntered>
           )}
-          {view.insurance ? (
-            <InsuranceSheet insurance={view.insurance} />
-          ) : (
-            <NotEntered title="Mortgage insurance" step="mortgage" base={base} canEdit={household.canEdit}>
-              No mortgage is entered, so no insurance is counted.
-            </NotEntered>
-          )}
         </div>
         <div className="min-w-0">
           {view.incentive ? (
@@ -56,6 +49,13 @@ function Money({ view, household }: { view: MoneyView; household: HouseholdConte
           )}
         </div>
       </div>
+      {view.insurance ? (
+        <InsuranceSheet {...given} />
+      ) : (
+        <NotEntered title="Mortgage insurance" step="mortgage" base={base} canEdit={household.canEdit}>
+          No mortgage is entered, so no insurance is counted.
+        </NotEntered>
+      )}
       <OtherParts {...given} />
       <p className="foot">
         Computed from what was entered; not lending or tax advice. The servicer’s statements and quotes decide.
