@@ -47,7 +47,7 @@ export type OtherLoanView = z.infer<typeof otherLoanView>;
 
 export const leaseView = z.object({
   facts: leaseSchema,
-  /** Paid through today, negative. */
+  /** Paid through today, positive. */
   paid: figureSchema,
   /** The next payment of a lease, by its schedule; null for a power-purchase agreement and after the term. */
   next: z.nullable(z.object({ on: daySchema, amountCents: centsSchema })),

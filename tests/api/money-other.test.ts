@@ -210,11 +210,11 @@ describe('a lease', () => {
   it('is paid as it runs, with nothing to pay off', async () => {
     const before = await position();
     const { lease } = (await home.owner.call(moneyOtherApi.putLease, { params: home.params, body: LEASE })).value;
-    expect(lease?.paid.amountCents).toBeLessThan(0);
+    expect(lease?.paid.amountCents).toBeGreaterThan(0);
     expect(lease?.next?.on.slice(8)).toBe('01');
     expect(lease?.endsOn).toBe('2045-07-01');
     const after = await position();
-    expect(after.settledToday.amountCents).toBe(before.settledToday.amountCents + (lease?.paid.amountCents ?? 0));
+    expect(after.settledToday.amountCents).toBe(before.settledToday.amountCents - (lease?.paid.amountCents ?? 0));
     expect(after.settledParts.loanPayoff).toEqual(before.settledParts.loanPayoff);
     expect(everyWorking([lease, after]).filter((one) => !one.agrees)).toEqual([]);
   });
@@ -224,7 +224,7 @@ describe('a lease', () => {
     const { lease } = (await home.owner.call(moneyOtherApi.putLease, { params: home.params, body })).value;
     const made = facts.statements.map(({ productionWh }) => productionWh ?? 0);
     // The cycles end after the first of July, so that each is paid: kWh × $0.12 to the cent.
-    expect(lease?.paid.amountCents).toBe(-made.reduce<number>((sum, wh) => sum + Math.round((wh * 12) / 1000), 0));
+    expect(lease?.paid.amountCents).toBe(made.reduce<number>((sum, wh) => sum + Math.round((wh * 12) / 1000), 0));
     expect(lease).toMatchObject({ next: null, missing: [] });
     expect((await home.owner.call(moneyOtherApi.removeLease, { params: home.params })).value.lease).toBeNull();
     expect((await home.owner.call(moneyOtherApi.removeLease, { params: home.params })).status).toBe(404);

@@ -9,6 +9,7 @@ import { isOfOtherLoan } from '#shared/books/other-money.ts';
 import type { LeaseFacts, OtherLoan } from '#shared/facts/finance.ts';
 import { type CostFacts, costKind, INCOME_KINDS } from '#shared/facts/house.ts';
 import { productionOf } from '#shared/ledger/compute-ledger.ts';
+import type { Figure } from '#shared/position/position.ts';
 import { sumOfEntries } from '#shared/position/sums.ts';
 import { negateCents, sumCents } from '#shared/units/cents.ts';
 import { addDays, addMonths, type Day, yearOf } from '#shared/units/day.ts';
@@ -85,14 +86,21 @@ function otherLoanView({ ledger, today }: HouseholdLedger, { id, kind, loan }: O
   };
 }
 
+/** What went out, as a positive sum. */
+function asPaid({ amountCents, working }: Figure): Figure {
+  return { amountCents: negateCents(amountCents), working: { ...working, formula: `-(${working.formula})` } };
+}
+
 function leaseView({ ledger, today }: HouseholdLedger, lease: LeaseFacts): LeaseView {
   const endsOn = addMonths(lease.firstPaymentOn, lease.termMonths);
   const [next] = leaseFlows(lease, addDays(today, 1), endsOn);
   return {
     facts: lease,
-    paid: sumOfEntries(
-      lease.kind === 'lease' ? 'Lease payments' : 'Power bought',
-      ledger.entries.filter(({ id }) => id.startsWith('lease-')),
+    paid: asPaid(
+      sumOfEntries(
+        lease.kind === 'lease' ? 'Lease payments' : 'Power bought',
+        ledger.entries.filter(({ id }) => id.startsWith('lease-')),
+      ),
     ),
     next: next === undefined ? null : { on: next.on, amountCents: negateCents(next.amountCents) },
     endsOn,
