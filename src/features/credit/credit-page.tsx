@@ -2,19 +2,23 @@ import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { type CreditView, creditApi } from '#shared/api/credit.ts';
 import { addressOf } from '#src/lib/api.ts';
-import { dollars } from '#src/lib/format.ts';
+import { dollars, money } from '#src/lib/format.ts';
 import { type HouseholdContext, useHousehold } from '#src/lib/household.ts';
 import { Button, ButtonLink } from '#src/ui/button.tsx';
 import { Sentence } from '#src/ui/sentence.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { EmptyState, ErrorState, PageSkeleton } from '#src/ui/states.tsx';
 import { usePhone } from '#src/ui/use-media.ts';
+import { BasisSheet } from './basis-sheet.tsx';
+import { CarriedInDialog } from './carried-in-dialog.tsx';
+import { ChecksSheet } from './checks-sheet.tsx';
 import { CostSheet } from './cost-sheet.tsx';
 import { CreditBars } from './credit-bars.tsx';
 import { creditQuery } from './credit-queries.ts';
-import { creditLede } from './credit-words.ts';
+import { creditLede, limitSource } from './credit-words.ts';
 import { FormBlocks, FormTable } from './form-table.tsx';
 import { Papers } from './papers.tsx';
+import { PlanSheet } from './plan-sheet.tsx';
 import { YearDialog } from './year-dialog.tsx';
 
 /** Tax credit: how it goes through the returns, and the papers behind it. A preparer sees exactly this, to read. */
@@ -32,11 +36,13 @@ export function CreditPage() {
 
 function Credit({ view, household }: { view: CreditView; household: HouseholdContext }) {
   const [editing, setEditing] = useState<number | 'new' | null>(null);
+  const [carrying, setCarrying] = useState(false);
   const phone = usePhone();
   const change = household.canEdit ? setEditing : null;
   const years = view.credit?.years ?? [];
   const lastYear = view.lines.at(-1)?.taxYear;
   const notes = view.forms.flatMap((form) => (form.note ? [`${form.taxYear}: ${form.note}`] : []));
+  const sources = years.flatMap((year) => limitSource(year, view));
   const carry = view.stillToCarryCents;
   return (
     <div className="page">
@@ -52,40 +58,62 @@ function Credit({ view, household }: { view: CreditView; household: HouseholdCon
         title="Form 5695, Part I, year by year"
         hint="Line numbers are each year’s own. The limit comes from your return; we never guess it."
         actions={
-          <a
-            className="no-print underline underline-offset-3"
-            href={addressOf(creditApi.summaryCsv, { householdId: household.id })}
-            download
-          >
-            Summary for the preparer, CSV
-          </a>
+          <span className="no-print flex flex-wrap gap-x-4">
+            <Download
+              endpoint={creditApi.summaryPdf}
+              householdId={household.id}
+              words="Summary for the preparer, PDF"
+            />
+            <Download endpoint={creditApi.summaryCsv} householdId={household.id} words="CSV" />
+          </span>
         }
       >
         {phone ? <FormBlocks view={view} change={change} /> : <FormTable view={view} change={change} />}
         <CreditBars view={view} />
         {household.canEdit && (
-          <p className="no-print mt-5">
+          <p className="no-print mt-5 flex flex-wrap items-center gap-x-5">
             <Button look="plain" onClick={() => setEditing('new')}>
               Add a tax year
             </Button>
+            <button type="button" className="link min-h-11" onClick={() => setCarrying(true)}>
+              {view.credit?.carriedIn ? 'Change what was carried in' : 'Carried in from before this record'}
+            </button>
           </p>
         )}
+        {view.credit?.carriedIn && (
+          <p className="hint mt-2">
+            Carried in from before this record: line 16 of {view.credit.carriedIn.taxYear},{' '}
+            {money(view.credit.carriedIn.amountCents)}.
+          </p>
+        )}
+        {sources.map((source) => (
+          <p key={source} className="hint mt-2">
+            {source}
+          </p>
+        ))}
         {notes.map((note) => (
           <p key={note} className="hint mt-2">
             {note}
           </p>
         ))}
       </Sheet>
-      <div className="grid gap-x-[26px] lg:grid-cols-2">
-        <CostSheet view={view} />
+      <PlanSheet view={view} addYear={household.canEdit ? () => setEditing('new') : null} />
+      <div className="grid items-start gap-x-[26px] lg:grid-cols-2">
+        <div className="min-w-0">
+          <CostSheet view={view} householdId={household.id} canEdit={household.canEdit} />
+          <BasisSheet view={view} />
+        </div>
         <Papers view={view} householdId={household.id} canEdit={household.canEdit} />
       </div>
-      <Checks view={view} />
+      <ChecksSheet view={view} />
       <p className="foot">
         This repeats figures {household.canEdit ? 'you' : 'the owner'} entered and the arithmetic printed on the form.
         It is not tax advice and does not decide whether you qualify. Carryforward shown is unused, not guaranteed.
         Check every figure against the form and instructions of its year, or ask a tax professional, before filing.
       </p>
+      {carrying && view.credit && (
+        <CarriedInDialog credit={view.credit} householdId={household.id} onClose={() => setCarrying(false)} />
+      )}
       {editing !== null && (
         <YearDialog
           year={editing === 'new' ? null : (years.find((year) => year.taxYear === editing) ?? blankYear(editing))}
@@ -95,6 +123,26 @@ function Credit({ view, household }: { view: CreditView; household: HouseholdCon
         />
       )}
     </div>
+  );
+}
+
+function Download({
+  endpoint,
+  householdId,
+  words,
+}: {
+  endpoint: { path: string };
+  householdId: string;
+  words: string;
+}) {
+  return (
+    <a
+      className="inline-flex min-h-11 items-center underline underline-offset-3 sm:min-h-6"
+      href={addressOf(endpoint, { householdId })}
+      download
+    >
+      {words}
+    </a>
   );
 }
 
@@ -111,23 +159,6 @@ function blankYear(taxYear: number) {
     limitFrom: null,
     documentId: null,
   };
-}
-
-function Checks({ view }: { view: CreditView }) {
-  if (view.checks.length === 0) return null;
-  return (
-    <Sheet title="Checks">
-      <ul className="mt-2 border-t-2 border-ink">
-        {view.checks.map((check) => (
-          <li key={check.label} className="flex flex-wrap items-baseline gap-x-5 border-b border-rule py-2">
-            <span className="grow">{check.label}</span>
-            <span className="hint">{check.detail}</span>
-            <CheckMark agrees={check.agrees} />
-          </li>
-        ))}
-      </ul>
-    </Sheet>
-  );
 }
 
 function FirstUse({ household }: { household: HouseholdContext }) {
@@ -153,9 +184,4 @@ function FirstUse({ household }: { household: HouseholdContext }) {
       </EmptyState>
     </div>
   );
-}
-
-function CheckMark({ agrees }: { agrees: boolean | null }) {
-  if (agrees === null) return <span className="mark-wait">nothing to compare</span>;
-  return <span className={agrees ? 'mark-ok' : 'mark-no'}>{agrees ? 'agrees' : 'differs'}</span>;
 }

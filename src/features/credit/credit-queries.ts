@@ -1,9 +1,18 @@
 import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type * as z from 'zod/mini';
-import { type CreditView, creditApi, type creditYearBody } from '#shared/api/credit.ts';
+import {
+  type CreditView,
+  type carriedInBody,
+  creditApi,
+  type creditCostBody,
+  type creditYearBody,
+} from '#shared/api/credit.ts';
+import type { CreditPaperKind } from '#shared/books/credit-paper.ts';
 import { call } from '#src/lib/api.ts';
 
 export type CreditYearBody = z.infer<typeof creditYearBody>;
+export type CreditCostBody = z.infer<typeof creditCostBody>;
+export type CarriedInBody = z.infer<typeof carriedInBody>;
 
 export const creditQuery = (householdId: string) =>
   queryOptions({
@@ -35,9 +44,33 @@ export function useRemoveYear(householdId: string) {
   });
 }
 
+export function usePutCost(householdId: string) {
+  return useMutation({
+    mutationFn: ({ id, body }: { id: string; body: CreditCostBody }) =>
+      call(creditApi.putCost, { params: { householdId, id }, body }),
+    onSuccess: useKept(householdId),
+  });
+}
+
+export function usePutCarriedIn(householdId: string) {
+  return useMutation({
+    mutationFn: (body: CarriedInBody) => call(creditApi.putCarriedIn, { params: { householdId }, body }),
+    onSuccess: useKept(householdId),
+  });
+}
+
 export function useAddPaper(householdId: string) {
   return useMutation({
-    mutationFn: (file: File) => call(creditApi.addPaper, { params: { householdId }, file }),
+    mutationFn: ({ file, kind }: { file: File; kind: CreditPaperKind | null }) =>
+      call(creditApi.addPaper, { params: { householdId }, file, fields: kind === null ? {} : { kind } }),
+    onSuccess: useKept(householdId),
+  });
+}
+
+export function usePutPaperKind(householdId: string) {
+  return useMutation({
+    mutationFn: ({ documentId, kind }: { documentId: string; kind: CreditPaperKind }) =>
+      call(creditApi.putPaperKind, { params: { householdId, documentId }, body: { kind } }),
     onSuccess: useKept(householdId),
   });
 }

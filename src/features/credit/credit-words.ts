@@ -25,6 +25,16 @@ export function returnWords(year: CreditYear | undefined): string {
   return parts.join(', ');
 }
 
+/** "Limit of 2025: line 14 worksheet, 2025 return; typed by Priya; return 2025.pdf." Nothing where no limit is typed. */
+export function limitSource(year: CreditYear, view: CreditView): string[] {
+  if (year.limitCents === null) return [];
+  const paper = view.papers.find(({ id }) => id === year.documentId);
+  const parts = [year.limitFrom, year.typedBy && `typed by ${year.typedBy}`, paper?.fileName].filter(
+    (part) => typeof part === 'string' && part !== '',
+  );
+  return parts.length === 0 ? [] : [`Limit of ${year.taxYear}: ${parts.join('; ')}.`];
+}
+
 const NUMBER_WORDS = ['no', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine', 'ten'];
 
 /** "The credit for a roof completed in 2024, on its way through three returns. The last of it is planned for tax year 2026." */

@@ -141,10 +141,14 @@ export function FormBlocks({ view, change }: { view: CreditView; change: ((taxYe
 }
 
 function formLines(view: CreditView): FormLine[] {
-  const rate = view.lines.find((line) => line.rate !== null)?.rate ?? null;
+  const rates = [...new Set(view.lines.flatMap((line) => (line.rate === null ? [] : [line.rate])))];
   return [
     { key: 'line1', label: 'Qualified solar electric cost', of: (line) => line.line1Cents },
-    { key: 'line6b', label: rate ? `Credit at ${ratePercent(rate)}` : 'Credit', of: (line) => line.line6bCents },
+    {
+      key: 'line6b',
+      label: rates.length > 0 ? `Credit at ${rates.map(ratePercent).join(' and ')}` : 'Credit',
+      of: (line) => line.line6bCents,
+    },
     { key: 'line12', label: 'Carried in', of: (line) => line.line12Cents },
     { key: 'line13', label: 'Available', of: (line) => line.line13Cents },
     { key: 'line14', label: 'Limit, from the worksheet', of: (line) => line.line14Cents },
