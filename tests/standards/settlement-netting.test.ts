@@ -88,7 +88,7 @@ describe('a flat plan', () => {
       }),
       runs,
     );
-  });
+  }, 60_000);
 
   test('netted over the cycle bills the net to half a cent, and nothing for a house that sends out more', () => {
     fc.assert(
@@ -101,7 +101,7 @@ describe('a flat plan', () => {
       }),
       runs,
     );
-  });
+  }, 60_000);
 
   test('split by a row with the same price costs the same, to a cent for each part', () => {
     const days = ['2025-01-01', '2026-06-20', '2026-07-03'];
@@ -116,7 +116,7 @@ describe('a flat plan', () => {
       }),
       runs,
     );
-  });
+  }, 60_000);
 
   test('with a kWh bank that is never cut bills over the cycles what the running net asks for', () => {
     const bank = { id: 'kWhBank', label: 'kWh bank', unit: 'kWh', offsets: ['energy'] };
