@@ -3,7 +3,7 @@ import type { Locator, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { SetupView } from '#shared/api/setup.ts';
 import { ratePlanSchema } from '#shared/settlement/plan.ts';
-import { samePlan } from '#src/ui/plan-form/read-plan.ts';
+import { samePlan } from '#src/ui/plan-form/same-plan.ts';
 import {
   closeBrowser,
   PHONE,

@@ -3,7 +3,7 @@ import type { RatePlan, RateRow } from '#shared/settlement/plan.ts';
 import type { Day } from '#shared/units/day.ts';
 import { decimal } from '#src/lib/format.ts';
 import { percentOfFraction } from '#src/lib/typed-values.ts';
-import { seasonName } from '#src/ui/plan-form/plan-of.ts';
+import { seasonName } from '#src/ui/plan-form/season-ids.ts';
 
 /** A day on which the rules or the prices change. `index` is the plan's place in the list. */
 export type TimelineRow = {

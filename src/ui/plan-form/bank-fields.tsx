@@ -3,14 +3,15 @@ import { Fold } from '../fold.tsx';
 import { AddRow, Columns, FormRow } from '../rows.tsx';
 import { Tick, Ticks } from '../ticks.tsx';
 import { changed, toggled, usePlanEdit, without } from './edit.ts';
-import { type BankForm, newTrueUp, type TrueUpForm } from './plan-form.ts';
+import { newTrueUp } from './new-parts.ts';
+import type { BankForm, TrueUpForm } from './plan-form.ts';
 import { TickList, WordSelect } from './small-fields.tsx';
 import { TrueUpFields } from './true-up-fields.tsx';
 import { NETTING_WORDS } from './words.ts';
 
 /** Where unused credit is kept: what it pays, when, and what becomes of the rest. */
 export function BankFields({ bank, at }: { bank: BankForm; at: number }) {
-  const { form, set, text, name } = usePlanEdit();
+  const { form, set, text, error, name } = usePlanEdit();
   const path = `banks.${at}`;
   const put = (changes: Partial<BankForm>) => set({ banks: changed(form.banks, at, changes) });
   const kwh = bank.unit === 'kWh';
@@ -21,6 +22,9 @@ export function BankFields({ bank, at }: { bank: BankForm; at: number }) {
         : charge.basis !== 'floor' && !(charge.basis === 'percent' && charge.afterCredits),
     )
     .map(({ id, label }) => ({ value: id, label }));
+  const paidWords = bank.offsets
+    .map((id) => form.charges.find((charge) => charge.id === id)?.label || id)
+    .join(', then ');
   const floors = form.charges.filter(({ basis }) => basis === 'floor');
   const trueUp = (index: number, changes: Partial<TrueUpForm>) =>
     put({ trueUps: changed(bank.trueUps, index, changes) });
@@ -42,6 +46,8 @@ export function BankFields({ bank, at }: { bank: BankForm; at: number }) {
       </Columns>
       <TickList
         legend="What may the credit pay?"
+        hint={bank.offsets.length > 1 ? `Paid in this order: ${paidWords}.` : undefined}
+        error={error(`${path}.offsets`)}
         options={[
           ...payable,
           // What the plan names and cannot pay is shown, so that it can be taken out.
@@ -103,6 +109,7 @@ export function BankFields({ bank, at }: { bank: BankForm; at: number }) {
           {kwh && (
             <WordSelect
               label="What you buy is taken off first"
+              error={error(`${path}.netting`)}
               value={bank.netting}
               words={[['', 'as said above'], ...(Object.entries(NETTING_WORDS) as [BankForm['netting'], string][])]}
               onChange={(netting) => put({ netting })}
@@ -111,6 +118,7 @@ export function BankFields({ bank, at }: { bank: BankForm; at: number }) {
           {!kwh && floors.length > 0 && (
             <WordSelect
               label="Credit stops where the bill would fall below"
+              error={error(`${path}.keepMinimum`)}
               value={bank.keepMinimum}
               words={[
                 ['', 'nothing: it is spent, and the minimum tops up'],

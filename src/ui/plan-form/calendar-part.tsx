@@ -4,7 +4,8 @@ import { AddRow, Columns, FormRow } from '../rows.tsx';
 import { Tick } from '../ticks.tsx';
 import { changed, usePlanEdit, without } from './edit.ts';
 import { Hours, hoursLike } from './hours-fields.tsx';
-import { freeId, type PeriodForm, type PlanForm } from './plan-form.ts';
+import { freeId } from './new-parts.ts';
+import type { PeriodForm, PlanForm } from './plan-form.ts';
 import { WordSelect, YearlyDay } from './small-fields.tsx';
 
 /** Seasons, times of day and holidays, as the sheet sets them out before its prices. */

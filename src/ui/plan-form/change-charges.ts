@@ -1,4 +1,5 @@
-import { type ChargeForm, freeId, newCharge, type PlanForm, partIds } from './plan-form.ts';
+import { freeId, newCharge, partIds } from './new-parts.ts';
+import type { ChargeForm, PlanForm } from './plan-form.ts';
 
 type CommonKind = 'customer' | 'gross' | 'tax' | 'minimum' | 'capacity';
 

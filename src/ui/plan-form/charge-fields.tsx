@@ -3,6 +3,7 @@ import { Columns } from '../rows.tsx';
 import { Tick, Ticks } from '../ticks.tsx';
 import { withoutCharge } from './change-charges.ts';
 import { changed, toggled, usePlanEdit, without } from './edit.ts';
+import { minimumTaxOf, taxesOn, withMinimumTax } from './minimum-tax.ts';
 import type { ChargeForm } from './plan-form.ts';
 import { TickList, WordSelect } from './small-fields.tsx';
 import { Tiers } from './tier-fields.tsx';
@@ -33,18 +34,24 @@ export function ChargeFields({ charge, at }: { charge: ChargeForm; at: number })
           label="It is charged on"
           value={charge.basis}
           words={wordsOf(BASIS_WORDS)}
+          error={error(`${path}.basis`)}
           onChange={(basis) =>
-            put({
-              basis,
-              per: basis === 'floor' ? charge.per || 'cycle' : '',
-              kWOf: basis === 'kW' ? charge.kWOf || 'dc' : '',
-              ...(ENERGY.includes(basis) ? {} : { byPeriod: false, tiers: [] }),
+            set({
+              charges: changed(form.charges, at, {
+                basis,
+                per: basis === 'floor' ? charge.per || 'cycle' : '',
+                kWOf: basis === 'kW' ? charge.kWOf || 'dc' : '',
+                ...(ENERGY.includes(basis) ? {} : { byPeriod: false, tiers: [] }),
+              }),
+              // All the house uses has to be known from something.
+              ...(basis === 'load' && form.load === 'none' ? { load: 'computed' as const } : {}),
             })
           }
         />
         {(charge.basis === 'import' || charge.basis === 'export') && (
           <WordSelect
             label="What you send out reduces it"
+            error={error(`${path}.netting`)}
             value={charge.netting}
             words={[['', 'as the plan says below'], ...wordsOf(NETTING_WORDS)]}
             onChange={(netting) => put({ netting })}
@@ -97,6 +104,18 @@ export function ChargeFields({ charge, at }: { charge: ChargeForm; at: number })
           onChange={(id, on) => put({ on: inOrder(toggled(charge.on, id, on), before) })}
         />
       )}
+      {charge.basis === 'floor' && taxesOn(form, charge).length > 0 && (
+        <Choices
+          legend="Is tax on top of it?"
+          name={name(`${path}.minimumTax`)}
+          value={minimumTaxOf(form, charge) ?? ''}
+          onChange={(value) => set({ charges: withMinimumTax(form, charge, value === 'after' ? 'after' : 'before') })}
+          options={[
+            { value: 'before', label: 'Yes: the bill before tax comes to at least this, and is taxed' },
+            { value: 'after', label: 'No: the bill with its tax comes to at least this' },
+          ]}
+        />
+      )}
       {charge.basis === 'percent' && (
         <Choices
           legend="It is worked out"
@@ -147,6 +166,7 @@ export function ChargeFields({ charge, at }: { charge: ChargeForm; at: number })
         )}
       </Ticks>
       {charge.tiers.length > 0 && <Tiers charge={charge} path={path} put={put} />}
+      {error(`${path}.tiers`) && <span className="field-error">{error(`${path}.tiers`)}</span>}
       <p className="mt-3 flex flex-wrap gap-x-5">
         {at > 0 && (
           <button

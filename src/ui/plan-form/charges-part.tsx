@@ -6,12 +6,15 @@ import { COMMON, commonCharge, likeEnergy, withCharge, withoutCharge } from './c
 import { ChargeFields } from './charge-fields.tsx';
 import { usePlanEdit } from './edit.ts';
 import { Faults } from './faults.tsx';
-import { type ChargeForm, freeId, newCharge, partIds } from './plan-form.ts';
+import { freeId, newCharge, partIds } from './new-parts.ts';
+import type { ChargeForm } from './plan-form.ts';
+import { useKeptAnswers } from './undo.ts';
 import { chargeWords } from './words.ts';
 
 /** The charges of the sheet: common ones by a tick, each with its own questions. */
 export function ChargesPart({ faultsOf }: { faultsOf: (path: string) => string[] }) {
   const { form, set } = usePlanEdit();
+  const answers = useKeptAnswers(form);
   const add = (charge: ChargeForm) => set({ charges: withCharge(form, charge) });
   return (
     <Part
@@ -30,8 +33,11 @@ export function ChargesPart({ faultsOf }: { faultsOf: (path: string) => string[]
               onChange={(on) =>
                 set(
                   on
-                    ? { charges: withCharge(form, commonCharge(kind, form)) }
-                    : held.reduce((rest, { id }) => withoutCharge(rest, id), form),
+                    ? (answers.kept(kind) ?? { charges: withCharge(form, commonCharge(kind, form)) })
+                    : answers.keep(
+                        kind,
+                        held.reduce((rest, { id }) => withoutCharge(rest, id), form),
+                      ),
                 )
               }
             />

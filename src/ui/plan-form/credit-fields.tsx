@@ -10,7 +10,7 @@ import { NETTING_WORDS } from './words.ts';
 
 /** What earns, at what price, and where it goes: a credit for energy, or an incentive on the bill. */
 export function CreditFields({ credit, at }: { credit: CreditForm; at: number }) {
-  const { form, set, text, name } = usePlanEdit();
+  const { form, set, text, error, name } = usePlanEdit();
   const path = `credits.${at}`;
   const put = (changes: Partial<CreditForm>) => set({ credits: changed(form.credits, at, changes) });
   const banks = form.banks.filter(({ unit }) => unit === 'USD').map(({ id, label }) => [id, `into ${label}`] as const);
@@ -33,6 +33,7 @@ export function CreditFields({ credit, at }: { credit: CreditForm; at: number })
         />
         <WordSelect
           label="It goes"
+          error={error(`${path}.to`)}
           value={credit.to}
           words={[...banks, ['bill', 'off this bill'], ['separate', 'to you, paid apart from the bill']]}
           onChange={(to) => put({ to })}
@@ -40,6 +41,7 @@ export function CreditFields({ credit, at }: { credit: CreditForm; at: number })
         {credit.basis === 'export' && (
           <WordSelect
             label="What you buy is taken off first"
+            error={error(`${path}.netting`)}
             value={credit.netting}
             words={[
               ['', `${NETTING_WORDS[form.netting].split(':')[0]}, as said above`],

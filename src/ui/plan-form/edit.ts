@@ -1,4 +1,5 @@
 import { createContext, useContext, useMemo, useState } from 'react';
+import { withPricesCarried } from './carry-prices.ts';
 import type { PlanForm } from './plan-form.ts';
 
 /** A fault of a field, by its path in the form. */
@@ -31,23 +32,27 @@ export function usePlanEdit(): PlanEdit {
   return edit;
 }
 
-/** Faults are shown once a field has been left, or all of them after a try to save. `prefix` makes field names unique on a page. */
+/**
+ * Faults are shown once a field has been left, or all of them after a try to save; what the plan's language refuses (`refused`, by the plan's own
+ * paths, which are the form's) at once. `prefix` makes field names unique on a page.
+ */
 export function useMakeEdit(
   form: PlanForm,
   onChange: (form: PlanForm) => void,
   faults: readonly FormFault[],
+  refused: readonly FormFault[],
   showAll: boolean,
   prefix: string,
 ): PlanEdit {
   const [left, setLeft] = useState<ReadonlySet<string>>(new Set());
   return useMemo(() => {
-    const error = (path: string) =>
-      showAll || left.has(path) ? faults.find((fault) => fault.path === path)?.message : undefined;
+    const at = (list: readonly FormFault[], path: string) => list.find((fault) => fault.path === path)?.message;
+    const error = (path: string) => (showAll || left.has(path) ? at(faults, path) : undefined) ?? at(refused, path);
     return {
       form,
       error,
       name: (path) => `${prefix}.${path}`,
-      set: (changes) => onChange({ ...form, ...changes }),
+      set: (changes) => onChange(withPricesCarried(form, { ...form, ...changes })),
       text: (path, value, set) => ({
         name: `${prefix}.${path}`,
         value,
@@ -56,7 +61,7 @@ export function useMakeEdit(
         onBlur: () => setLeft((before) => (before.has(path) ? before : new Set(before).add(path))),
       }),
     };
-  }, [form, onChange, faults, showAll, prefix, left]);
+  }, [form, onChange, faults, refused, showAll, prefix, left]);
 }
 
 /** The list with one item changed. */

@@ -7,14 +7,16 @@ import { CreditFields } from './credit-fields.tsx';
 import { usePlanEdit, without } from './edit.ts';
 import { EXPORT_RULES, exportRuleOf, withExportRule } from './export-rule.ts';
 import { Faults } from './faults.tsx';
-import { freeId, newBank, newCredit, partIds } from './plan-form.ts';
+import { freeId, newBank, newCredit, partIds } from './new-parts.ts';
 import { WordSelect } from './small-fields.tsx';
+import { useKeptAnswers } from './undo.ts';
 import { NETTING_WORDS } from './words.ts';
 
 /** What happens to what the roof sends out: one question, then its price and where the credit is kept. */
 export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] }) {
   const { form, set, name } = usePlanEdit();
   const rule = exportRuleOf(form);
+  const answers = useKeptAnswers(form);
   const nettings = (Object.entries(NETTING_WORDS) as [typeof form.netting, string][]).filter(
     ([netting]) => netting !== 'period' || form.periods.length > 0 || form.netting === 'period',
   );
@@ -25,6 +27,11 @@ export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] 
       credits: form.credits.map((credit) => (credit.to === gone?.id ? { ...credit, to: 'bill' } : credit)),
     });
   };
+  const moveUp = (at: number) => {
+    const banks = without(form.banks, at);
+    banks.splice(at - 1, 0, ...form.banks.slice(at, at + 1));
+    set({ banks });
+  };
   return (
     <>
       <Part title="What you send out">
@@ -34,7 +41,7 @@ export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] 
           value={rule}
           onChange={(value) => {
             const chosen = EXPORT_RULES.find((one) => one.value === value);
-            if (chosen) set(withExportRule(form, chosen.value));
+            if (chosen) set(answers.kept(chosen.value) ?? answers.keep(rule, withExportRule(form, chosen.value)));
           }}
           options={
             rule === 'other'
@@ -71,14 +78,18 @@ export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] 
           </div>
         ))}
         <p className="mt-4 flex flex-wrap gap-3">
-          {rule !== 'nothing' && rule !== 'carried' && (
+          {rule !== 'nothing' && (
             <Button
               look="plain"
               onClick={() =>
                 set({
                   credits: [
                     ...form.credits,
-                    newCredit(freeId(partIds(form), 'exportCredit'), 'Credit', form.banks[0]?.id ?? 'bill'),
+                    newCredit(
+                      freeId(partIds(form), 'exportCredit'),
+                      'Credit',
+                      form.banks.find(({ unit }) => unit === 'USD')?.id ?? 'bill',
+                    ),
                   ],
                 })
               }
@@ -104,13 +115,20 @@ export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] 
           </Button>
         </p>
       </Part>
-      {form.banks.length > 0 && (
+      {(form.banks.length > 0 || form.credits.length > 0) && (
         <Part title="Unused credit" hint="The utility keeps it until it is used, paid or lapses.">
           {form.banks.map((bank, at) => {
             const body = (
               <>
                 <Faults messages={faultsOf(`banks.${at}`)} />
                 <BankFields bank={bank} at={at} />
+                {at > 0 && (
+                  <p className="mt-3">
+                    <button type="button" className="link hint min-h-11" onClick={() => moveUp(at)}>
+                      Use {bank.label || 'this credit'} before {form.banks[at - 1]?.label || 'the one above'}
+                    </button>
+                  </p>
+                )}
               </>
             );
             return form.banks.length === 1 ? (
@@ -128,12 +146,16 @@ export function ExportPart({ faultsOf }: { faultsOf: (path: string) => string[] 
                 set({
                   banks: [
                     ...form.banks,
-                    newBank(freeId(partIds(form), 'bank'), 'Second credit', form.banks[0]?.unit ?? 'USD'),
+                    newBank(
+                      freeId(partIds(form), 'bank'),
+                      form.banks.length === 0 ? 'Credit kept' : 'Second credit',
+                      form.banks[0]?.unit ?? 'USD',
+                    ),
                   ],
                 })
               }
             >
-              Keep another credit apart
+              {form.banks.length === 0 ? 'Keep credit until it is paid' : 'Keep another credit apart'}
             </Button>
           </p>
         </Part>

@@ -1,4 +1,5 @@
-import { type ChargeForm, freeId, newBank, newCredit, type PlanForm, partIds } from './plan-form.ts';
+import { freeId, newBank, newCredit, partIds } from './new-parts.ts';
+import type { ChargeForm, PlanForm } from './plan-form.ts';
 
 /** What happens to energy sent out, as one question asks it. `other`: the plan says something no single answer does. */
 export type ExportRule = 'priced' | 'pricedAfterNetting' | 'carried' | 'soldAll' | 'nothing' | 'other';
@@ -27,12 +28,25 @@ export const EXPORT_RULES: { value: Exclude<ExportRule, 'other'>; label: string;
   { value: 'nothing', label: 'Nothing is credited', hint: 'What you send out is given away.' },
 ];
 
+/** Money kept for an incentive alone, until it is paid: it has nothing to do with what is sent out. */
+function incentiveBanks(form: PlanForm): PlanForm['banks'] {
+  return form.banks.filter(
+    ({ id, unit, offsets }) =>
+      unit === 'USD' &&
+      offsets.length === 0 &&
+      form.credits.some((credit) => credit.to === id) &&
+      form.credits.every((credit) => credit.to !== id || credit.kind === 'incentive'),
+  );
+}
+
 export function exportRuleOf(form: PlanForm): ExportRule {
   const exported = form.credits.filter(({ kind }) => kind === 'export');
-  const kwhBanks = form.banks.filter(({ unit }) => unit === 'kWh');
+  const apart = incentiveBanks(form);
+  const banks = form.banks.filter((bank) => !apart.includes(bank));
+  const kwhBanks = banks.filter(({ unit }) => unit === 'kWh');
   if (exported.length === 0) {
-    if (form.banks.length === 0) return 'nothing';
-    return kwhBanks.length === form.banks.length ? 'carried' : 'other';
+    if (banks.length === 0) return 'nothing';
+    return kwhBanks.length === banks.length ? 'carried' : 'other';
   }
   if (kwhBanks.length > 0) return 'other';
   if (exported.some(({ basis }) => basis === 'production')) return 'soldAll';
@@ -57,24 +71,27 @@ export function withExportRule(form: PlanForm, rule: Exclude<ExportRule, 'other'
   const energy = charges.filter(({ kind, netting }) => kind === 'import' && netting === '').map(({ id }) => id);
   const byPeriod = charges.some((charge) => charge.byPeriod);
   const base: PlanForm = { ...form, charges, load: whole ? 'computed' : 'none' };
-  const taken = [...partIds(base).filter((id) => !form.banks.some((bank) => bank.id === id))];
-  const bankId = form.banks[0]?.id ?? freeId(taken, 'creditBank');
-  const label = form.banks[0]?.label ?? 'Credit bank';
-  const money = form.banks.find(({ unit }) => unit === 'USD');
+  const apart = incentiveBanks(form);
+  const banks = form.banks.filter((bank) => !apart.includes(bank));
+  const taken = [...partIds(base).filter((id) => !banks.some((bank) => bank.id === id))];
+  const bankId = banks[0]?.id ?? freeId(taken, 'creditBank');
+  const label = banks[0]?.label ?? 'Credit bank';
+  const money = banks.find(({ unit }) => unit === 'USD');
+  const apartIds = apart.map(({ id }) => id);
   const paidFrom = (ids: string[]) =>
     incentives.map((credit) =>
-      credit.to === 'bill' || credit.to === 'separate' || ids.includes(credit.to)
+      credit.to === 'bill' || credit.to === 'separate' || [...ids, ...apartIds].includes(credit.to)
         ? credit
         : { ...credit, to: 'separate' },
     );
   switch (rule) {
     case 'nothing':
-      return { ...base, netting: 'none', credits: paidFrom([]), banks: [] };
+      return { ...base, netting: 'none', credits: paidFrom([]), banks: apart };
     case 'carried': {
       const bank =
-        form.banks.find(({ unit }) => unit === 'kWh') ??
+        banks.find(({ unit }) => unit === 'kWh') ??
         newBank(bankId, label, 'kWh', { offsets: energy, sameCycle: false, byPeriod });
-      return { ...base, netting: byPeriod ? 'period' : 'cycle', credits: paidFrom([]), banks: [bank] };
+      return { ...base, netting: byPeriod ? 'period' : 'cycle', credits: paidFrom([]), banks: [bank, ...apart] };
     }
     default: {
       const offsets = whole
@@ -93,7 +110,7 @@ export function withExportRule(form: PlanForm, rule: Exclude<ExportRule, 'other'
       }));
       const netting =
         rule === 'pricedAfterNetting' ? 'cycle' : rule === 'priced' && form.netting !== 'cycle' ? form.netting : 'none';
-      return { ...base, netting, credits: [...exported, ...paidFrom([bank.id])], banks: [bank] };
+      return { ...base, netting, credits: [...exported, ...paidFrom([bank.id])], banks: [bank, ...apart] };
     }
   }
 }

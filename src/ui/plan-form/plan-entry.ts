@@ -3,7 +3,8 @@ import { type RatePlan, ratePlanSchema } from '#shared/settlement/plan.ts';
 import { type Day, parseDay } from '#shared/units/day.ts';
 import type { FormFault } from './edit.ts';
 import { planFormFaults } from './form-faults.ts';
-import { emptyPlanForm, type PlanForm } from './plan-form.ts';
+import { emptyPlanForm } from './new-parts.ts';
+import type { PlanForm } from './plan-form.ts';
 import { planInput, planOf } from './plan-of.ts';
 import { planFormOf } from './read-plan.ts';
 

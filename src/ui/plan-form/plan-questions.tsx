@@ -5,10 +5,13 @@ import { CalendarPart } from './calendar-part.tsx';
 import { ChargesPart } from './charges-part.tsx';
 import { type FormFault, PlanEditProvider, useMakeEdit, usePlanEdit } from './edit.ts';
 import { ExportPart } from './export-part.tsx';
+import { Faults } from './faults.tsx';
 import type { PlanForm } from './plan-form.ts';
 import { PricesPart } from './prices-part.tsx';
 import { WordSelect } from './small-fields.tsx';
 import { CHANGE_WORDS } from './words.ts';
+
+const NONE: readonly FormFault[] = [];
 
 /**
  * A whole rate plan asked in the order of a rate sheet. `refused` are the server's faults by their path in the plan: each is said beside the
@@ -29,18 +32,19 @@ export function PlanQuestions({
   showAll: boolean;
   prefix: string;
 }) {
-  const edit = useMakeEdit(form, onChange, faults, showAll, prefix);
   // While a field is empty the server refuses for that alone; the field says so itself.
-  const faultsOf = (path: string) =>
-    faults.length > 0
-      ? []
-      : refused
-          .filter((fault) => fault.path === path || fault.path.startsWith(`${path}.`))
-          .map(({ message }) => message);
+  const held = faults.length > 0 ? NONE : refused;
+  const edit = useMakeEdit(form, onChange, faults, held, showAll, prefix);
+  const faultsOf = (path: string) => [
+    ...new Set(
+      held.filter((fault) => fault.path === path || fault.path.startsWith(`${path}.`)).map(({ message }) => message),
+    ),
+  ];
   return (
     <PlanEditProvider value={edit}>
       <Field label="Its name, as the rate sheet says" {...edit.text('name', form.name, (name) => edit.set({ name }))} />
       <CalendarPart />
+      <Faults messages={faultsOf('calendar')} />
       <ChargesPart faultsOf={faultsOf} />
       <ExportPart faultsOf={faultsOf} />
       <PricesPart />
@@ -53,7 +57,10 @@ function RulesPart() {
   const { form, set } = usePlanEdit();
   const usual = form.rounding.money === 'halfUp' && form.rounding.limits === 'whole' && form.rounding.kWh === 'exact';
   const change = Object.entries(CHANGE_WORDS) as [typeof form.seasonBy, string][];
-  const byLoad = form.load !== 'none' || form.charges.some(({ basis }) => basis === 'load');
+  const keptByLoad = form.banks.some(({ trueUps }) =>
+    trueUps.some(({ keep, keepUsage }) => keep === 'average' && keepUsage === 'load'),
+  );
+  const byLoad = form.load !== 'none' || keptByLoad || form.charges.some(({ basis }) => basis === 'load');
   return (
     <div className="mt-8">
       <Fold title="When a price changes inside a billing cycle" summary={CHANGE_WORDS[form.rateChangeBy]}>

@@ -6,7 +6,8 @@ import { type PricedItem, pricedItems } from './price-cells.ts';
 
 /** The prices of a plan by date: a complete first row, then what changed. */
 export function PricesPart() {
-  const { form, set, text } = usePlanEdit();
+  const { form, set, text, error } = usePlanEdit();
+  const refusedOf = (item: PricedItem) => error(ratesPath(form, item.key));
   const items = pricedItems(form);
   const single = items.filter(({ cells }) => cells.length === 1);
   const several = items.filter(({ cells }) => cells.length > 1);
@@ -45,6 +46,7 @@ export function PricesPart() {
             {several.map((item) => (
               <fieldset key={item.key} className="mt-5 min-w-0">
                 <legend className="font-semibold">{item.label}</legend>
+                {place === 0 && refusedOf(item) && <span className="field-error">{refusedOf(item)}</span>}
                 <div
                   className={`grid items-end gap-x-6 ${item.cells.length % 3 === 0 ? 'sm:grid-cols-3' : 'sm:grid-cols-2'}`}
                 >
@@ -58,6 +60,13 @@ export function PricesPart() {
       <AddRow onClick={() => set({ prices: [...prices, { from: '', cells: {} }] })}>Add prices from a later day</AddRow>
     </Part>
   );
+}
+
+/** Where the plan keeps an item's prices: `charges.0.rates`. */
+function ratesPath(form: PlanForm, key: string): string {
+  const charge = form.charges.findIndex(({ id }) => id === key);
+  const credit = form.credits.findIndex(({ id }) => id === key);
+  return charge >= 0 ? `charges.${charge}.rates` : `credits.${credit}.rates`;
 }
 
 /** The only energy charge and the only credit are called by what they are; others by their names. */

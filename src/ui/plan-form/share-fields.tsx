@@ -21,7 +21,7 @@ export function ShareFields({
     <>
       <TickList
         legend="The price is taken from"
-        error={error(`${path}.shareOf`)}
+        error={error(`${path}.shareOf`) ?? error(`${path}.ratesOf`)}
         options={byKwh.map(({ id, label }) => ({ value: id, label }))}
         ticked={part.shareOf}
         onChange={(id, on) => put({ shareOf: toggled(part.shareOf, id, on) })}

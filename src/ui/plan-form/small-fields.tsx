@@ -1,7 +1,8 @@
 import { type ReactNode, useId } from 'react';
+import { MONTH_NAMES } from '#shared/units/words.ts';
 import { SelectField } from '../field.tsx';
 import { Tick, Ticks } from '../ticks.tsx';
-import { hourWords, MONTHS } from './words.ts';
+import { hourWords } from './words.ts';
 
 /** A select over words by value. */
 export function WordSelect<T extends string>({
@@ -65,7 +66,7 @@ export function YearlyDay({
           value={month}
           onChange={(event) => onChange(`${event.target.value}-${day}`)}
         >
-          {MONTHS.map((name, index) => (
+          {MONTH_NAMES.map((name, index) => (
             <option key={name} value={String(index + 1).padStart(2, '0')}>
               {name}
             </option>

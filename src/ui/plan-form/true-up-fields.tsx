@@ -1,3 +1,4 @@
+import { MONTH_NAMES } from '#shared/units/words.ts';
 import { Field } from '../field.tsx';
 import { Columns } from '../rows.tsx';
 import { Tick, Ticks } from '../ticks.tsx';
@@ -5,7 +6,6 @@ import { toggled, usePlanEdit } from './edit.ts';
 import type { BankForm, TrueUpForm } from './plan-form.ts';
 import { ShareFields } from './share-fields.tsx';
 import { TickList, WordSelect, YearlyDay } from './small-fields.tsx';
-import { MONTHS } from './words.ts';
 
 /** When unused credit lapses or is paid, what may stay, and what is kept back. */
 export function TrueUpFields({
@@ -44,20 +44,27 @@ export function TrueUpFields({
         />
         <WordSelect
           label="When"
-          value={trueUp.at}
+          value={trueUp.at === 'months' && trueUp.months.length !== 1 ? 'several' : trueUp.at}
           words={[
             ['months', 'once a year, with the bill of a month'],
+            ['several', 'with the bills of several months'],
             ['date', 'on a day of the year'],
             ['everyCycle', 'with every bill'],
             ['finalBill', 'with the last bill, when you leave'],
           ]}
-          onChange={(at) => put({ at })}
+          onChange={(at) =>
+            put(
+              at === 'several'
+                ? { at: 'months', months: trueUp.months.length > 1 ? trueUp.months : halfYearly(trueUp.months[0]) }
+                : { at, ...(at === 'months' ? { months: trueUp.months.slice(0, 1) } : {}) },
+            )
+          }
         />
         {trueUp.at === 'months' && month !== null && month !== undefined && (
           <WordSelect
             label="With the bill that ends in"
             value={month}
-            words={MONTHS.map((name, index) => [String(index + 1), name] as const)}
+            words={MONTH_NAMES.map((name, index) => [String(index + 1), name] as const)}
             onChange={(chosen) => put({ months: [chosen] })}
           />
         )}
@@ -65,6 +72,7 @@ export function TrueUpFields({
         {pays && (
           <WordSelect
             label="It is paid"
+            error={error(`${path}.to`)}
             value={trueUp.to || 'separate'}
             words={[
               ['separate', 'by cheque, apart from the bill'],
@@ -85,28 +93,38 @@ export function TrueUpFields({
           />
         )}
       </Columns>
-      {trueUp.at === 'months' && month === null && (
+      {trueUp.at === 'months' && trueUp.months.length !== 1 && (
         <TickList
           legend="With the bills that end in"
           error={error(`${path}.months`)}
-          options={MONTHS.map((label, index) => ({ value: String(index + 1), label }))}
+          options={MONTH_NAMES.map((label, index) => ({ value: String(index + 1), label }))}
           ticked={trueUp.months}
           onChange={(value, on) => put({ months: toggled(trueUp.months, value, on) })}
         />
       )}
       {pays && trueUp.priced === 'share' && <ShareFields part={trueUp} path={path} put={put} />}
-      {pays && trueUp.priced === 'own' && form.seasons.length > 0 && (
+      {pays && trueUp.priced === 'own' && (
         <Ticks>
-          <Tick
-            label="That price differs by season"
-            checked={trueUp.bySeason}
-            onChange={(bySeason) => put({ bySeason })}
-          />
+          {form.seasons.length > 0 && (
+            <Tick
+              label="That price differs by season"
+              checked={trueUp.bySeason}
+              onChange={(bySeason) => put({ bySeason })}
+            />
+          )}
+          {bank.byPeriod && (
+            <Tick
+              label="That price differs by time of day"
+              checked={trueUp.byPeriod}
+              onChange={(byPeriod) => put({ byPeriod })}
+            />
+          )}
         </Ticks>
       )}
       <Columns>
         <WordSelect
           label="What may be kept"
+          error={error(`${path}.keep`)}
           value={trueUp.keep}
           words={[
             ['none', 'nothing'],
@@ -159,4 +177,10 @@ export function TrueUpFields({
       </Columns>
     </>
   );
+}
+
+/** A month and the one half a year from it, as a sheet that settles twice a year has them. */
+function halfYearly(month: string | undefined): string[] {
+  const first = Number(month ?? '4');
+  return [first, ((first + 5) % 12) + 1].sort((a, b) => a - b).map(String);
 }

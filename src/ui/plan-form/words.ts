@@ -53,21 +53,6 @@ export function chargeWords(charge: ChargeForm): string {
   return by.length === 0 ? basis : `${basis}, by ${by.join(' and ')}`;
 }
 
-export const MONTHS = [
-  'January',
-  'February',
-  'March',
-  'April',
-  'May',
-  'June',
-  'July',
-  'August',
-  'September',
-  'October',
-  'November',
-  'December',
-];
-
 /** "16:00" as people say it: "4 pm". */
 export function hourWords(clock: string): string {
   if (clock === '24:00' || clock === '00:00') return 'midnight';

@@ -1,9 +1,11 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { emptyPlanForm, newBank, newCharge, newCredit, newTrueUp, type PlanForm } from '#src/ui/plan-form/plan-form.ts';
+import { emptyPlanForm, newBank, newCharge, newCredit, newTrueUp } from '#src/ui/plan-form/new-parts.ts';
+import type { PlanForm } from '#src/ui/plan-form/plan-form.ts';
 import { planOf } from '#src/ui/plan-form/plan-of.ts';
 import { pricedItems } from '#src/ui/plan-form/price-cells.ts';
-import { planFormOf, samePlan } from '#src/ui/plan-form/read-plan.ts';
+import { planFormOf } from '#src/ui/plan-form/read-plan.ts';
+import { samePlan } from '#src/ui/plan-form/same-plan.ts';
 
 const ZONE = 'America/Chicago';
 const netting = fc.constantFrom('none', '15min', 'hour', 'period', 'cycle' as const);

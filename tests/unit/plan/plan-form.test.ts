@@ -3,10 +3,12 @@ import { parsePlan } from '#shared/settlement/parse-plan.ts';
 import { withoutCharge } from '#src/ui/plan-form/change-charges.ts';
 import { EXPORT_RULES, exportRuleOf, withExportRule } from '#src/ui/plan-form/export-rule.ts';
 import { planFormFaults } from '#src/ui/plan-form/form-faults.ts';
+import { emptyPlanForm, newCharge, newTrueUp } from '#src/ui/plan-form/new-parts.ts';
 import { entryFaults, entryOf, holdingFrom, planOfEntry } from '#src/ui/plan-form/plan-entry.ts';
-import { emptyPlanForm, newCharge, newTrueUp, type PlanForm } from '#src/ui/plan-form/plan-form.ts';
-import { camelId, planOf, seasonName } from '#src/ui/plan-form/plan-of.ts';
+import type { PlanForm } from '#src/ui/plan-form/plan-form.ts';
+import { planOf } from '#src/ui/plan-form/plan-of.ts';
 import { cellKey, limitsOf, pricedItems } from '#src/ui/plan-form/price-cells.ts';
+import { camelId, seasonName } from '#src/ui/plan-form/season-ids.ts';
 
 const ZONE = 'America/Denver';
 const FROM = '2026-01-01';

@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { ratePlanSchema } from '#shared/settlement/plan.ts';
 import { planOf } from '#src/ui/plan-form/plan-of.ts';
-import { planFormOf, samePlan } from '#src/ui/plan-form/read-plan.ts';
+import { planFormOf } from '#src/ui/plan-form/read-plan.ts';
+import { samePlan } from '#src/ui/plan-form/same-plan.ts';
 import { readVectors } from '#tests/support/netmetering-adapter.ts';
 
 describe('every plan of the vectors', () => {
