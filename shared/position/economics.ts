@@ -5,9 +5,9 @@ import { Exact } from '../units/rate.ts';
  * numpy-financial's `npv`).
  */
 export function presentValue(rate: Exact, flows: readonly Exact[]): Exact {
-  const growth = rate.plus(1);
+  const factor = new Exact(1).div(rate.plus(1));
   let value = new Exact(0);
-  for (let n = flows.length - 1; n >= 0; n -= 1) value = value.div(growth).plus(flows[n] ?? 0);
+  for (let n = flows.length - 1; n >= 0; n -= 1) value = value.times(factor).plus(flows[n] ?? 0);
   return value;
 }
 

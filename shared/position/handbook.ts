@@ -2,7 +2,7 @@ import type { Entry } from '../books/book.ts';
 import { plainInput, stated } from '../books/inputs.ts';
 import { sayKwh } from '../ledger/say.ts';
 import { cents, dollarsText } from '../units/cents.ts';
-import { addDays, addMonths, type Day } from '../units/day.ts';
+import { addDays, addMonths, type Day, monthsBetween } from '../units/day.ts';
 import { kwhText, type Wh, wh } from '../units/energy.ts';
 import { Exact, exact, roundToCents, usdOf } from '../units/rate.ts';
 import type { DecimalText } from '../units/rate-text.ts';
@@ -62,9 +62,9 @@ export function handbookOf(input: HandbookInput): Handbook | null {
 
 /** Which year a day lies in: 0 before the start, n in the n-th twelve months. */
 function yearOfDay(start: Day, on: Day): number {
-  let year = 0;
-  while (on >= addMonths(start, 12 * year)) year += 1;
-  return year;
+  if (on < start) return 0;
+  const years = Math.floor(monthsBetween(start, on) / 12);
+  return addMonths(start, 12 * years) <= on ? years + 1 : years;
 }
 
 function addTo(years: Year[], at: number, allCents: number, costCents: number): void {

@@ -1,6 +1,6 @@
 import type { Cents } from '#shared/units/cents.ts';
 import type { Wh } from '#shared/units/energy.ts';
-import { kwhOf, usdOf } from '#shared/units/rate.ts';
+import { type Exact, exact, kwhOf, usdOf } from '#shared/units/rate.ts';
 import { type Working, workingSchema } from '#shared/working.ts';
 import { evaluateWorking } from '#shared/working-formula.ts';
 
@@ -8,7 +8,7 @@ import { evaluateWorking } from '#shared/working-formula.ts';
 export type WorkedFigure = { path: string; figure: string; evaluated: string; agrees: boolean; words: string };
 
 /**
- * Walks any value and re-evaluates every working that stands beside a figure (`amountCents` in USD, `wh` in kWh). Returns all of them, so that a test can
+ * Walks any value and re-evaluates every working that stands beside a figure (`amountCents` in USD, `wh` in kWh, `value` as decimal text). Returns all of them, so that a test can
  * show that it looked at some. A working beside neither is returned as not agreeing: nothing says what it works out.
  */
 export function everyWorking(root: unknown): WorkedFigure[] {
@@ -33,10 +33,15 @@ export function everyWorking(root: unknown): WorkedFigure[] {
   return found;
 }
 
+/** The figure a working stands beside: money, energy, or decimal text in the working's own unit. */
+function figureOf({ amountCents, wh, value }: Record<string, unknown>): Exact | null {
+  if (typeof amountCents === 'number') return usdOf(amountCents as Cents);
+  if (typeof wh === 'number') return kwhOf(wh as Wh);
+  return typeof value === 'string' ? exact(value) : null;
+}
+
 function check(record: Record<string, unknown>, working: Working, path: string): WorkedFigure {
-  const { amountCents, wh } = record;
-  const figure =
-    typeof amountCents === 'number' ? usdOf(amountCents as Cents) : typeof wh === 'number' ? kwhOf(wh as Wh) : null;
+  const figure = figureOf(record);
   let evaluated = '';
   let agrees = false;
   try {

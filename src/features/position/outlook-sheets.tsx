@@ -28,7 +28,7 @@ export function OutlookSheets({ position }: { position: Position }) {
         hint="What the projection, the range and the figures above take for granted. Changing one changes nothing of the record."
         actions={
           household.canEdit && (
-            <button type="button" className="link min-h-11 no-print" onClick={() => setEditing(true)}>
+            <button type="button" className="link no-print min-h-11 sm:min-h-0" onClick={() => setEditing(true)}>
               Change the assumptions
             </button>
           )
@@ -81,7 +81,7 @@ function HandbookSheet({ handbook }: { handbook: Handbook }) {
       <p className="hint mt-2">
         As bought counts the payments to the lender as they fall.
         {handbook.asCash &&
-          ' As if cash puts the loan’s principal less the dealer’s fee at the start and no payments after it.'}
+          ' With a loan little is paid at the start, so payback and rate of return as bought say more of the loan than of the roof. As if cash puts the loan’s principal less the dealer’s fee at the start and no payments after it.'}
         {handbook.estimatedCycles > 0 &&
           ` Production of ${handbook.estimatedCycles} ${handbook.estimatedCycles === 1 ? 'cycle is' : 'cycles are'} not known and estimated in the cost per kWh.`}
       </p>

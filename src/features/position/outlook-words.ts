@@ -10,10 +10,16 @@ export function plainWords(figure: PlainFigure): string {
     case 'fraction':
       return percentWords(figure.value);
     case 'USD/kWh':
-      return `$${figure.value}`;
+      return `$${fourDecimals(figure.value)}`;
     default:
       return `${decimal(figure.value)} ${figure.working.unit}`;
   }
+}
+
+/** A price to a hundredth of a cent, its zeros kept so that a column lines up. */
+function fourDecimals(text: string): string {
+  const [whole = '0', rest = ''] = text.split('.');
+  return `${whole}.${rest.padEnd(4, '0')}`;
 }
 
 export type HandbookRow = {
