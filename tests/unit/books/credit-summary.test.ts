@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
+import { creditChecks } from '#shared/books/credit-checks.ts';
 import { creditFormOf } from '#shared/books/credit-forms.ts';
-import { creditChecks, creditSummary } from '#shared/books/credit-summary.ts';
+import { creditSummary } from '#shared/books/credit-summary.ts';
 import { creditLinesOf } from '#shared/books/tax-credit.ts';
 import { cents } from '#shared/units/cents.ts';
 import { creditOf, creditYear } from './facts.ts';
@@ -35,20 +36,17 @@ describe('the preparer’s summary', () => {
       documentId: null,
     });
     const summary = creditSummary(credit);
-    expect(summary).toMatchObject({
-      originYear: 2024,
-      originRate: '0.30',
-      grossCostCents: 3_690_000,
-      countedShare: '1',
-    });
-    expect(summary.reductions.map((cost) => cost.reason)).toEqual(['Paid by the utility, not income']);
-    expect(summary.leftOut.map((cost) => cost.label)).toEqual(['Dealer fee']);
+    expect(summary.vintages).toMatchObject([
+      { year: 2024, rate: '0.30', grossCents: 3_690_000, reductionCents: 150_000, share: '1' },
+    ]);
+    expect(summary.vintages[0]?.costs.map((cost) => cost.reason)).toContain('Paid by the utility, not income');
     expect(summary.years.map((year) => [year.taxYear, year.status, year.limitTypedBy])).toEqual([
       [2024, 'filed', 'Priya'],
       [2025, 'filed', 'Priya'],
       [2026, 'planned', 'Priya'],
     ]);
-    expect(summary.basisReductionCents).toBe(415_000 + 505_000);
+    expect(summary.years.map((year) => year.basisReductionCents)).toEqual([415_000, 920_000, 920_000]);
+    expect(summary.carriedIn).toBeNull();
     expect(summary.checks.map((check) => check.agrees)).toEqual([true, true, true]);
     expect(summary.cautions.at(-1)).toBe('Carryforward shown is unused, not guaranteed.');
   });
