@@ -3,9 +3,12 @@ import { sayCount, sayDate } from '../ledger/say.ts';
 import type { Figure } from '../position/position.ts';
 import { sumCents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
+import type { Source, Working } from '../working.ts';
 import type { Entry, UnplacedEntry } from './book.ts';
 import { stated, usdListInput } from './inputs.ts';
 import { loanEntries, loanPayoff, type PaymentsOfTheDay } from './loan.ts';
+import { LOAN_TERMS } from './loan-workings.ts';
+import { type PaperName, sourceOfPaper } from './paper-source.ts';
 
 /** What each kind of other solar money is called. */
 export const OTHER_LOAN_NAMES: Record<OtherLoan['kind'], string> = {
@@ -14,10 +17,31 @@ export const OTHER_LOAN_NAMES: Record<OtherLoan['kind'], string> = {
   other: 'Second loan',
 };
 
+/** The entries of a loan through a day, the terms behind them taken from its contract where that is kept. */
+export function loanEntriesWithPapers(
+  loan: LoanFacts,
+  through: Day,
+  papers: readonly PaperName[] = [],
+): UnplacedEntry[] {
+  const entries = loanEntries(loan, through, papers);
+  const contract = sourceOfPaper(loan.documentId, papers, LOAN_TERMS);
+  if (contract === LOAN_TERMS) return entries;
+  return entries.map((entry) => ({ ...entry, working: fromContract(entry.working, contract) }));
+}
+
+function fromContract(working: Working, contract: Source): Working {
+  const inputs = working.inputs.map((input) => (input.source === LOAN_TERMS ? { ...input, source: contract } : input));
+  return { ...working, inputs };
+}
+
 /** The entries of the other loans through a day, each by the loan book's own rules, its ids set apart by the loan's id. */
-export function otherLoanEntries(others: readonly OtherLoan[], through: Day): UnplacedEntry[] {
+export function otherLoanEntries(
+  others: readonly OtherLoan[],
+  through: Day,
+  papers: readonly PaperName[] = [],
+): UnplacedEntry[] {
   return others.flatMap((other) =>
-    loanEntries(other.loan, through).map((entry) => ({
+    loanEntriesWithPapers(other.loan, through, papers).map((entry) => ({
       ...entry,
       id: `${prefixOf(other.id)}${entry.id}`,
       label: `${OTHER_LOAN_NAMES[other.kind]}: ${entry.label}`,

@@ -3,9 +3,8 @@ import type { Entry, UnplacedEntry } from '../books/book.ts';
 import { costEntries } from '../books/costs.ts';
 import { type IncentiveCycle, incentiveEarned, incentiveReceived } from '../books/incentive.ts';
 import { leaseEntries } from '../books/lease.ts';
-import { loanEntries } from '../books/loan.ts';
 import { insuranceEntries } from '../books/mortgage-insurance.ts';
-import { otherLoanEntries } from '../books/other-money.ts';
+import { loanEntriesWithPapers, otherLoanEntries } from '../books/other-money.ts';
 import { creditEntries, creditLinesOf } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
 import { isComplete } from '../metering/cycle-energy.ts';
@@ -111,8 +110,8 @@ function unplacedEntries(facts: HouseholdFacts, assembled: readonly AssembledCyc
       ...incentiveReceived(facts.incentive, seen, today, facts.documents),
     );
   }
-  if (facts.loan !== null) entries.push(...loanEntries(facts.loan, today));
-  entries.push(...otherLoanEntries(facts.otherLoans, today));
+  if (facts.loan !== null) entries.push(...loanEntriesWithPapers(facts.loan, today, facts.documents));
+  entries.push(...otherLoanEntries(facts.otherLoans, today, facts.documents));
   if (facts.lease !== null) {
     entries.push(...leaseEntries(facts.lease, assembled.map(productionOf), today, facts.documents));
   }

@@ -77,13 +77,13 @@ describe('a cost that comes again', () => {
   });
 
   const recurring = fc.record({
-    on: fc.integer({ min: 0, max: 15_000 }).map((number) => addDays(day('2000-01-01'), number)),
+    on: fc.integer({ min: 0, max: 3_000 }).map((number) => addDays(day('2000-01-01'), number)),
     kind: fc.constantFrom(...costKind.options),
     amountCents: fc.integer({ min: 1, max: 10_000_000 }).map(cents),
     every: fc.constantFrom('month' as const, 'quarter' as const, 'year' as const, null),
     span: fc.option(fc.integer({ min: 0, max: 4_000 }), { nil: null }),
-    through: fc.integer({ min: 0, max: 20_000 }).map((number) => addDays(day('2000-01-01'), number)),
-    cut: fc.integer({ min: 0, max: 20_000 }).map((number) => addDays(day('2000-01-01'), number)),
+    through: fc.integer({ min: 0, max: 6_000 }).map((number) => addDays(day('2000-01-01'), number)),
+    cut: fc.integer({ min: 0, max: 6_000 }).map((number) => addDays(day('2000-01-01'), number)),
   });
   const months = { month: 1, quarter: 3, year: 12 };
 
@@ -94,11 +94,9 @@ describe('a cost that comes again', () => {
         const cost = costOf({ ...given, until });
         const entries = costEntries([cost], through);
         const last = until !== null && until < through ? until : through;
-        for (const { date } of entries) {
-          expect(date >= cost.on && date <= last).toBe(true);
-          const wanted = dayOfMonth(cost.on);
-          expect(dayOfMonth(date)).toBe(Math.min(wanted, daysInMonth(yearOf(date), monthOf(date))));
-        }
+        const wanted = dayOfMonth(cost.on);
+        const onItsDay = (date: Day) => dayOfMonth(date) === Math.min(wanted, daysInMonth(yearOf(date), monthOf(date)));
+        expect(entries.every(({ date }) => date >= cost.on && date <= last && onItsDay(date))).toBe(true);
         const step = cost.every === null ? null : months[cost.every];
         const next: Day = step === null ? cost.on : addMonths(cost.on, entries.length * step);
         if (step !== null || entries.length === 0) expect(next > last).toBe(true);

@@ -63,7 +63,7 @@ describe('a lease', () => {
     fc.assert(
       fc.property(
         fc.record({
-          term: fc.integer({ min: 1, max: 60 }),
+          term: fc.integer({ min: 1, max: 30 }),
           rise: fc.constantFrom('0', '0.029', '-0.01'),
           first: fc.integer({ min: 0, max: 2_000 }),
           today: fc.integer({ min: 0, max: 4_000 }),

@@ -1,6 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { loanEntries, loanPayoff } from '#shared/books/loan.ts';
-import { isOfOtherLoan, isOfSolarLoan, otherLoanEntries, payoffOfLoans } from '#shared/books/other-money.ts';
+import {
+  isOfOtherLoan,
+  isOfSolarLoan,
+  loanEntriesWithPapers,
+  otherLoanEntries,
+  payoffOfLoans,
+} from '#shared/books/other-money.ts';
 import { cents } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
 import { usdOf } from '#shared/units/rate.ts';
@@ -32,6 +38,24 @@ describe('money for the roof that came from elsewhere', () => {
       expect(entry.book).toBe('loan');
       expect(evaluateWorking(entry.working).eq(usdOf(entry.amountCents))).toBe(true);
     }
+  });
+
+  it('names its papers: the contract behind its terms, the statement behind a payment', () => {
+    const papers = [
+      { id: 'deal', fileName: 'contract.pdf' },
+      { id: 'slip', fileName: 'payment.pdf' },
+    ];
+    const payment = { ...paymentOf('2024-08-15', 300, 50), documentId: 'slip' };
+    const loan = loanOf({ documentId: 'deal', payments: [payment] });
+    const entries = loanEntriesWithPapers(loan, TODAY, papers);
+    const files = entries.map(({ working }) =>
+      working.inputs.map(({ source }) => (source.kind === 'document' ? source.fileName : null)),
+    );
+    expect(files[0]).toEqual(['contract.pdf', 'contract.pdf', 'contract.pdf']);
+    expect(files[1]).toEqual(['payment.pdf', 'payment.pdf']);
+    const bare = (one: (typeof entries)[number]) => ({ ...one, working: one.working.formula });
+    expect(entries.map(bare)).toEqual(loanEntries(loan, TODAY).map(bare));
+    expect(otherLoanEntries([{ ...share, loan }], TODAY, papers)[0]?.working).toEqual(entries[0]?.working);
   });
 
   it('takes the sum of the payoffs to pay off', () => {
