@@ -1,7 +1,7 @@
 import type { IntervalChannel } from '../facts/papers.ts';
 import { sayCount, sayDay } from '../ledger/say.ts';
 import { asksForIntervals } from '../metering/cycle-intervals.ts';
-import { type IntervalReading, intervalEnergy } from '../metering/interval-index.ts';
+import type { IntervalReading } from '../metering/interval-index.ts';
 import { addDays, type Day } from '../units/day.ts';
 import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
@@ -27,9 +27,9 @@ export function fileGapsChecks(context: CheckContext): Check[] {
 }
 
 function gapsCheck(context: CheckContext, channel: IntervalChannel): Check | null {
-  const { paper, index } = context;
+  const { paper, index, metered } = context;
   const title = `No gaps in the ${FILES[channel]}`;
-  const seen = intervalEnergy(index, channel, paper.from, paper.to);
+  const seen = channel === 'monitor' ? metered.monitor : metered.witnesses[channel].intervals;
   const need = needOf(context, channel);
   if (seen === null) {
     if (need === null || (channel === 'monitor' && index.byChannel.get('monitor') === undefined)) return null;
@@ -60,7 +60,7 @@ function gapsCheck(context: CheckContext, channel: IntervalChannel): Check | nul
 }
 
 /** Why a figure of the cycle hangs on the file, as the end of a sentence; null where none does. */
-function needOf({ paper, index, settled, metered, facts }: CheckContext, channel: IntervalChannel): string | null {
+function needOf({ settled, metered, facts }: CheckContext, channel: IntervalChannel): string | null {
   if (channel === 'import' || channel === 'export') {
     return settled.plan !== null && asksForIntervals(settled.plan.plan)
       ? 'the rate plan nets or prices inside the cycle'
@@ -69,14 +69,10 @@ function needOf({ paper, index, settled, metered, facts }: CheckContext, channel
   const { register, printed, intervals } = metered.witnesses.production;
   if (register !== null || printed !== null) return null;
   const fileHere = intervals !== null;
-  if (channel === 'monitor' ? fileHere : !fileHere && hasMonitor(index, paper.from, paper.to)) return null;
+  if (channel === 'monitor' ? fileHere : !fileHere && metered.monitor !== null) return null;
   return facts.incentive === null
     ? 'self-use is worked out from it'
     : 'self-use and the incentive are worked out from it';
-}
-
-function hasMonitor(index: CheckContext['index'], from: Day, to: Day): boolean {
-  return intervalEnergy(index, 'monitor', from, to) !== null;
 }
 
 /** The days on which a reading is missing. */

@@ -1,6 +1,6 @@
 import { dcWattsOf } from '../facts/dc-rating.ts';
 import { sayCount, sayDate, sayKwh } from '../ledger/say.ts';
-import { intervalDayOf, intervalEnergy } from '../metering/interval-index.ts';
+import { intervalDayOf } from '../metering/interval-index.ts';
 import { hoursFromUtc, type Light, lightsBetween, midnights, type Place, placeOf, sunIsUp } from '../metering/sun.ts';
 import { addDays, type Day } from '../units/day.ts';
 import { type Wh, wh, ZERO_WH } from '../units/energy.ts';
@@ -29,9 +29,10 @@ type Step = { at: number; length: number; wh: number };
  * A step counts as made in the dark if the sun is down from one step before it begins to one step after it ends, and its mean power is at least 0.5 %
  * of the DC rating (failing that, of the inverters' AC rating; failing that, of the cycle's highest step).
  */
-export function productionAtNightChecks({ paper, index, facts: { house } }: CheckContext): Check[] {
+export function productionAtNightChecks({ paper, index, metered, facts: { house } }: CheckContext): Check[] {
   const place = placeOf(house);
-  const held = CHANNELS.filter((channel) => intervalEnergy(index, channel, paper.from, paper.to) !== null);
+  const seen = { production: metered.witnesses.production.intervals, monitor: metered.monitor };
+  const held = CHANNELS.filter((channel) => seen[channel] !== null);
   return held.map((channel) => {
     const title = `Production while the sun is down, ${FILES[channel]}`;
     const missing = (cause: string, advice: string | null) =>
@@ -52,11 +53,10 @@ export function productionAtNightChecks({ paper, index, facts: { house } }: Chec
       return missing(`The ${FILES[channel]} has steps longer than an hour, which hold both night and day.`, null);
     }
     const watts = dcWattsOf(house.arrays) || (house.inverterAcWatts ?? highestWatts(days));
-    const counted = days.map((one) => ({ date: one.date, steps: countedSteps(one, watts) }));
-    const dark = counted.map(({ date, steps }) => ({ date, wh: darkWh(steps, place) })).filter((one) => one.wh > 0);
+    const dark = days.map((one) => ({ date: one.date, wh: darkWh(one, watts, place) })).filter((one) => one.wh > 0);
     const sides = { stated: sumOf(dark), found: ZERO_WH, tolerance: ZERO_WH };
     return compareWh('productionAtNight', channel, title, sides, () => {
-      const steps = counted.flatMap((one) => one.steps);
+      const steps = days.flatMap((one) => countedSteps(one, watts));
       const reach = MOST_HOURS_OFF * MS_PER_HOUR;
       const lights = lightsBetween(place, Math.min(...starts) - reach, Math.max(...starts) + MS_PER_DAY + reach);
       const utc = [paper.from, paper.to].map((date) => -hoursFromUtc(date, house.timeZone));
@@ -71,10 +71,12 @@ type FilledDay = { start: number; date: Day; minutes: number; values: readonly (
 function countedSteps({ start, minutes, values }: FilledDay, watts: number): Step[] {
   const length = minutes * MS_PER_MINUTE;
   return values.flatMap((value, at) =>
-    value !== null && value > 0 && value * MINUTES_PER_HOUR * IDLE_PARTS >= watts * minutes
-      ? [{ at: start + at * length, length, wh: value }]
-      : [],
+    counts(value, minutes, watts) ? [{ at: start + at * length, length, wh: value }] : [],
   );
+}
+
+function counts(value: number | null, minutes: number, watts: number): value is number {
+  return value !== null && value > 0 && value * MINUTES_PER_HOUR * IDLE_PARTS >= watts * minutes;
 }
 
 function highestWatts(days: readonly FilledDay[]): number {
@@ -85,20 +87,15 @@ function highestWatts(days: readonly FilledDay[]): number {
   return highest;
 }
 
-/** What a day holds before its first step in the light and after its last: there is one daylight in a day. */
-function darkWh(steps: readonly Step[], place: Place): number {
-  let dark = 0;
-  let first = 0;
-  for (const step of steps) {
-    if (sunIsUp(place, step.at + 2 * step.length) || sunIsUp(place, step.at - step.length)) break;
-    dark += step.wh;
-    first += 1;
-  }
-  for (const step of steps.slice(first).reverse()) {
-    if (sunIsUp(place, step.at - step.length) || sunIsUp(place, step.at + 2 * step.length)) break;
-    dark += step.wh;
-  }
-  return dark;
+/** What a day holds before its first step in the light and after its last: there is one daylight in a day, and only its ends are looked at. */
+function darkWh({ start, minutes, values }: FilledDay, watts: number, place: Place): number {
+  const length = minutes * MS_PER_MINUTE;
+  const begins = (at: number) => sunIsUp(place, start + (at - 1) * length);
+  const ends = (at: number) => sunIsUp(place, start + (at + 2) * length);
+  const first = values.findIndex((value, at) => counts(value, minutes, watts) && (ends(at) || begins(at)));
+  const last = values.findLastIndex((value, at) => counts(value, minutes, watts) && (begins(at) || ends(at)));
+  const outside = first === -1 ? values : [...values.slice(0, first), ...values.slice(last + 1)];
+  return outside.reduce<number>((sum, value) => (counts(value, minutes, watts) ? sum + value : sum), 0);
 }
 
 function sumOf(days: readonly { wh: number }[]): Wh {
