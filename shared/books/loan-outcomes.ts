@@ -2,16 +2,18 @@ import type { LoanFacts, LoanPayment } from '../facts/finance.ts';
 import type { Figure } from '../position/position.ts';
 import { type Cents, cents, sumCents, ZERO_CENTS } from '../units/cents.ts';
 import { addMonths, type Day, yearOf } from '../units/day.ts';
+import type { Working } from '../working.ts';
 import { stated, usdListInput } from './inputs.ts';
 import { loanBook } from './loan-book.ts';
-import type { LoanLevel, LoanStep } from './loan-step.ts';
+import type { LoanStep } from './loan-step.ts';
+import { levelWorking, restWorking } from './loan-workings.ts';
 
 /** What becomes of a loan whose payment takes a prepayment for granted, if so much of it is paid. */
 export type PrepaymentOutcome = {
   prepaid: 'whole' | 'part' | 'nothing';
   prepaidCents: Cents;
-  /** The level payment from the next payment on. */
-  level: LoanLevel;
+  /** The payment after the one it is due by; null where none is left. */
+  next: Figure | null;
   /** All interest from funding to the end, what joined the principal included. */
   interest: Figure;
   clearedOn: Day;
@@ -56,17 +58,19 @@ function outcomeOf(
     documentId: null,
   };
   const payments = prepaidCents === 0 ? regular : [...regular, prepayment];
-  const { levels, steps } = loanBook({ ...loan, payments, balances: [], refinances: [] });
-  const level = levels.findLast(({ fromNumber }) => fromNumber === byPayment + 1) ?? levels.at(-1);
-  const last = steps.at(-1);
-  if (level === undefined || last === undefined) throw new Error('a loan with an assumed prepayment has no payments');
+  const { steps } = loanBook({ ...loan, payments, balances: [], refinances: [] });
+  const next = steps.find((step) => step.kind === 'payment' && step.number > byPayment);
   return {
     prepaid,
     prepaidCents,
-    level,
+    next: next === undefined ? null : { amountCents: next.regularCents, working: workingOf(next) },
     interest: interestOf(steps),
-    clearedOn: last.on,
+    clearedOn: steps.at(-1)?.on ?? dueOn,
   };
+}
+
+function workingOf(step: LoanStep): Working {
+  return step.level === null ? restWorking(step) : levelWorking(step.level);
 }
 
 function interestOf(steps: readonly LoanStep[]): Figure {

@@ -1,5 +1,5 @@
 import type { DayCount, LoanPayment, Refinance } from '../facts/finance.ts';
-import { type Cents, cents, ZERO_CENTS } from '../units/cents.ts';
+import { type Cents, cents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { DecimalText } from '../units/rate-text.ts';
 import { type AssumedPrincipal, levelPaymentAssuming } from './interest.ts';
@@ -78,21 +78,6 @@ export function levelFrom(facts: Omit<LoanLevel, 'paymentCents'>): LoanLevel {
   return { ...facts, paymentCents: levelPaymentAssuming(balanceCents, annualRate, months, assumed) };
 }
 
-/** What a step that moves nothing holds. */
-export const NO_STEP = {
-  regularCents: ZERO_CENTS,
-  extraPrincipalCents: ZERO_CENTS,
-  interestCents: ZERO_CENTS,
-  principalCents: ZERO_CENTS,
-  capitalisedCents: ZERO_CENTS,
-  driftCents: ZERO_CENTS,
-  feeCents: ZERO_CENTS,
-  cashCents: ZERO_CENTS,
-  level: null,
-  record: null,
-  refinance: null,
-} satisfies Partial<LoanStep>;
-
 /** A month of the loan. `paymentCents` = `interestCents` + `principalCents`, extra principal included. */
 export type LoanRow = {
   segment: number;
@@ -116,22 +101,32 @@ export type LoanRow = {
 export function rowOf(steps: readonly LoanStep[]): LoanRow {
   const last = steps.at(-1);
   if (last === undefined) throw new Error('a month of the loan has no step');
-  const total = (part: (step: LoanStep) => number) => cents(steps.reduce((sum, step) => sum + part(step), 0));
-  const paid = steps.findLast((step) => step.kind === 'payment');
+  const sums = { interest: 0, principal: 0, extra: 0, capitalised: 0, drift: 0 };
+  let on = last.on;
+  let recorded = false;
+  for (const step of steps) {
+    sums.interest += step.interestCents;
+    sums.principal += step.principalCents;
+    sums.extra += step.extraPrincipalCents;
+    sums.capitalised += step.capitalisedCents;
+    sums.drift += step.driftCents;
+    recorded ||= step.record !== null;
+    if (step.kind === 'payment') on = step.on;
+  }
   return {
     segment: last.segment.index,
     number: last.number,
-    on: (paid ?? last).on,
+    on,
     dueOn: last.dueOn,
-    paymentCents: total((step) => step.interestCents + step.principalCents),
-    interestCents: total((step) => step.interestCents),
-    principalCents: total((step) => step.principalCents),
-    extraPrincipalCents: total((step) => step.extraPrincipalCents),
-    capitalisedCents: total((step) => step.capitalisedCents),
-    driftCents: total((step) => step.driftCents),
+    paymentCents: cents(sums.interest + sums.principal),
+    interestCents: cents(sums.interest),
+    principalCents: cents(sums.principal),
+    extraPrincipalCents: cents(sums.extra),
+    capitalisedCents: cents(sums.capitalised),
+    driftCents: cents(sums.drift),
     balanceCents: last.balanceCents,
     unpaidInterestCents: last.unpaidInterestCents,
-    recorded: steps.some((step) => step.record !== null),
+    recorded,
     refinanced: last.kind === 'paidOff',
   };
 }

@@ -1,11 +1,16 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { loanEntries, loanPayoff, loanSchedule, loanStateOn } from '#shared/books/loan.ts';
+import { loanClearedOn, loanEntries, loanPayoff, loanSchedule, loanStateOn } from '#shared/books/loan.ts';
 import { loanBook } from '#shared/books/loan-book.ts';
+import { prepaymentOutcomes } from '#shared/books/loan-outcomes.ts';
+import type { LoanStep } from '#shared/books/loan-step.ts';
+import type { LoanFacts } from '#shared/facts/finance.ts';
 import { cents, sumCents } from '#shared/units/cents.ts';
 import { addDays, addMonths, day } from '#shared/units/day.ts';
 import { usdOf } from '#shared/units/rate.ts';
 import { evaluateWorking } from '#shared/working-formula.ts';
+import { PROPERTY_RUNS } from '#tests/support/property-runs.ts';
+import { anyContract, anyRecordedLoan } from './arbitrary-loan.ts';
 import { loanOf, paymentOf } from './facts.ts';
 
 describe('the loan', () => {
@@ -94,74 +99,206 @@ describe('the loan', () => {
   });
 });
 
-const anyLoan = fc
-  .record({
-    principal: fc.integer({ min: 100_000, max: 9_000_000 }),
-    rate: fc.integer({ min: 0, max: 1_500 }),
-    months: fc.integer({ min: 12, max: 300 }),
-    payments: fc.array(
-      fc.record({
-        month: fc.integer({ min: 0, max: 60 }),
-        late: fc.integer({ min: 0, max: 12 }),
-        regular: fc.integer({ min: 0, max: 90_000 }),
-        extra: fc.integer({ min: 0, max: 60_000 }),
-      }),
-      { maxLength: 8 },
-    ),
-  })
-  .map(({ principal, rate, months, payments }) =>
-    loanOf({
-      principalCents: cents(principal),
-      annualRate: `0.${String(rate).padStart(4, '0')}`,
-      termMonths: months,
-      payments: payments.map((one, index) => ({
-        id: `p${index}`,
-        on: addDays(addMonths(day('2024-07-15'), one.month), one.late),
-        amountCents: cents(one.regular + one.extra),
-        extraPrincipalCents: cents(one.extra),
-        note: null,
-        reamortize: false,
-        documentId: null,
-      })),
-    }),
+/** A schedule of hundreds of months is worth many small examples, and slower than they are. */
+const RUNS = Math.ceil(PROPERTY_RUNS / 4);
+const FEW_RUNS = Math.ceil(PROPERTY_RUNS / 20);
+const LONG = 60_000;
+
+describe('for any contract, kept to schedule', () => {
+  it(
+    'the payments bring the principal, with the interest that joined it, to nothing within the term',
+    () => {
+      fc.assert(
+        fc.property(anyContract, (loan) => {
+          const rows = loanSchedule(loan);
+          const joined = sumCents(rows.map((row) => row.capitalisedCents));
+          expect(sumCents(rows.map((row) => row.principalCents))).toBe(loan.principalCents + joined);
+          expect(rows.at(-1)).toMatchObject({ balanceCents: 0, unpaidInterestCents: 0 });
+          expect(rows.at(-1)?.number).toBeLessThanOrEqual(loan.termMonths);
+          expect(loanClearedOn(loan)).toBe(rows.at(-1)?.on);
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
   );
 
-describe('for any loan and any payments', () => {
-  it('the principal of the schedule comes to the loan, less what is overpaid', () => {
-    fc.assert(
-      fc.property(anyLoan, (loan) => {
-        const rows = loanSchedule(loan);
-        const left = rows.at(-1)?.balanceCents ?? loan.principalCents;
-        expect(sumCents(rows.map((row) => row.principalCents)) + left).toBe(loan.principalCents);
-        expect(left).toBeLessThanOrEqual(0);
-        for (const row of rows) expect(row.interestCents + row.principalCents).toBe(row.paymentCents);
-      }),
-    );
-  });
+  it(
+    'level payments never raise the balance',
+    () => {
+      fc.assert(
+        fc.property(anyContract, (contract) => {
+          const balances = loanSchedule({ ...contract, dayCount: '30/360', promotion: null, assumedPrepayment: null })
+            .filter(({ number }) => number > 0)
+            .map(({ balanceCents }) => balanceCents);
+          expect(balances).toEqual([...balances].sort((a, b) => b - a));
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
+  );
 
-  it('the principal in a payoff and the principal paid come to the loan on every day, and its working evaluates to it', () => {
-    fc.assert(
-      fc.property(anyLoan, fc.integer({ min: 0, max: 3_000 }), (loan, after) => {
-        const on = addDays(loan.fundedOn, after);
-        const state = loanStateOn(loan, on);
-        const payoff = loanPayoff(loan, on);
-        const made = loanBook(loan).steps.filter((step) => step.on <= on);
-        const paid = sumCents(made.map((step) => step.principalCents));
-        expect(payoff.amountCents - state.accruedCents - state.unpaidInterestCents + paid).toBe(loan.principalCents);
-        expect(evaluateWorking(payoff.working).eq(usdOf(payoff.amountCents))).toBe(true);
-      }),
-    );
-  });
+  it(
+    'actual days of 365 cost what 30/360 costs, to what a month’s odd days can do',
+    () => {
+      fc.assert(
+        fc.property(anyContract, (contract) => {
+          const funded = { fundedOn: addMonths(contract.firstPaymentOn, -1), promotion: null, assumedPrepayment: null };
+          const interest = (dayCount: LoanFacts['dayCount']) =>
+            sumCents(loanSchedule({ ...contract, ...funded, dayCount }).map((row) => row.interestCents));
+          const [by30, by365, by360] = [interest('30/360'), interest('actual/365'), interest('actual/360')];
+          // A year is 360 of 360, 365.25 of 365 or 365.25 of 360 days; what a payment lacks is lent at the loan's own rate to the end of the term.
+          const growth = (1 + Number(contract.annualRate) / 12) ** contract.termMonths;
+          expect(Math.abs(by365 - by30)).toBeLessThanOrEqual(by30 * 0.01 * growth + contract.termMonths);
+          expect(by360).toBeGreaterThanOrEqual(by365);
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
+  );
 
-  it('entries add up to what the schedule pays, and every working evaluates to its entry', () => {
-    fc.assert(
-      fc.property(anyLoan, (loan) => {
-        const entries = loanEntries(loan, day('2100-01-01'));
-        const paid = sumCents(loanSchedule(loan).map((row) => row.paymentCents));
-        expect(-sumCents(entries.map((entry) => entry.amountCents))).toBe(paid);
-        for (const entry of entries) expect(evaluateWorking(entry.working).eq(usdOf(entry.amountCents))).toBe(true);
-      }),
-      { numRuns: 20 },
-    );
-  });
+  it(
+    'the more of an assumed prepayment is paid, the less the payment is afterwards',
+    () => {
+      fc.assert(
+        fc.property(anyContract, (contract) => {
+          const outcomes = prepaymentOutcomes(contract);
+          expect(outcomes).toHaveLength(contract.assumedPrepayment === null ? 0 : 3);
+          const next = outcomes.map((outcome) => outcome.next?.amountCents ?? 0);
+          expect(next).toEqual([...next].sort((a, b) => a - b));
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
+  );
+});
+
+describe('for any loan and any record', () => {
+  it(
+    'what is owed, with the principal paid, less what joined it and what the lender’s balances changed, is what was lent; on every day',
+    () => {
+      fc.assert(
+        fc.property(anyRecordedLoan, fc.integer({ min: 0, max: 3_000 }), (loan, after) => {
+          const on = addDays(loan.fundedOn, after);
+          const state = loanStateOn(loan, on);
+          const payoff = loanPayoff(loan, on);
+          const made = loanBook(loan).steps.filter((step) => step.on <= on && step.segment === state.segment);
+          const total = (part: (step: LoanStep) => number) => made.reduce((sum, step) => sum + part(step), 0);
+          const beside = state.accruedCents + state.unpaidInterestCents + state.feeCents;
+          expect(payoff.amountCents - beside).toBe(state.balanceCents);
+          expect(
+            state.balanceCents +
+              total((step) => step.principalCents) -
+              total((step) => step.capitalisedCents) -
+              total((step) => step.driftCents),
+          ).toBe(state.segment.principalCents);
+          expect(evaluateWorking(payoff.working).eq(usdOf(payoff.amountCents))).toBe(true);
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
+  );
+
+  it(
+    'steps follow one another by day and by balance, and come to an end',
+    () => {
+      fc.assert(
+        fc.property(anyRecordedLoan, (loan) => {
+          const { steps, rows } = loanBook(loan);
+          const [first] = steps;
+          if (first?.kind !== 'paidOff') expect(first?.balanceBeforeCents).toBe(loan.principalCents);
+          for (const [at, step] of steps.entries()) {
+            const before = steps[at - 1];
+            if (before) {
+              expect(step.on >= before.on).toBe(true);
+              if (step.kind !== 'opened') expect(step.balanceBeforeCents).toBe(before.balanceCents);
+            }
+            expect(step.regularCents + step.extraPrincipalCents).toBe(
+              step.kind === 'payment' ? step.interestCents + step.principalCents : 0,
+            );
+            expect(step.unpaidInterestCents).toBeGreaterThanOrEqual(0);
+          }
+          for (const row of rows) expect(row.interestCents + row.principalCents).toBe(row.paymentCents);
+          expect(steps.at(-1)?.balanceCents).toBeLessThanOrEqual(0);
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
+  );
+
+  it(
+    'entries add up to the money that moved, each has an id of its own, and every working evaluates to its entry',
+    () => {
+      fc.assert(
+        fc.property(anyRecordedLoan, (loan) => {
+          const entries = loanEntries(loan, day('2200-01-01'));
+          const moved = sumCents(loanBook(loan).steps.map((step) => step.cashCents));
+          expect(sumCents(entries.map((entry) => entry.amountCents))).toBe(moved);
+          expect(new Set(entries.map(({ id }) => id)).size).toBe(entries.length);
+          for (const entry of entries) expect(evaluateWorking(entry.working).eq(usdOf(entry.amountCents))).toBe(true);
+        }),
+        { numRuns: FEW_RUNS },
+      );
+    },
+    LONG,
+  );
+
+  it(
+    'a refinance moves what is owed and cash alike: the day’s cash less the day’s payoff is changed by its costs and fee alone',
+    () => {
+      fc.assert(
+        fc.property(anyRecordedLoan, (loan) => {
+          for (const [at, opened] of loanBook(loan).steps.entries()) {
+            const closing = loanBook(loan).steps[at - 1];
+            if (opened.kind !== 'opened' || closing === undefined) continue;
+            const owedBefore = closing.balanceBeforeCents + closing.interestDueCents;
+            const costs = opened.refinance?.costsCents ?? 0;
+            expect(opened.cashCents - opened.balanceCents).toBe(-owedBefore - closing.feeCents - costs);
+          }
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
+  );
+
+  it(
+    'the same loan gives the same book',
+    () => {
+      fc.assert(
+        fc.property(anyRecordedLoan, (loan) => {
+          expect(loanBook({ ...loan })).toEqual(loanBook(loan));
+          expect(loanBook(loan)).toBe(loanBook(loan));
+        }),
+        { numRuns: FEW_RUNS },
+      );
+    },
+    LONG,
+  );
+
+  it(
+    'a re-amortized loan never runs past its term',
+    () => {
+      fc.assert(
+        fc.property(anyRecordedLoan, (recorded) => {
+          const payments = recorded.payments.map((one) => ({
+            ...one,
+            amountCents: one.extraPrincipalCents,
+            reamortize: true,
+          }));
+          const rows = loanSchedule({ ...recorded, payments, balances: [], refinances: [] });
+          expect(Math.max(...rows.filter((row) => !row.recorded).map(({ number }) => number))).toBeLessThanOrEqual(
+            recorded.termMonths,
+          );
+        }),
+        { numRuns: RUNS },
+      );
+    },
+    LONG,
+  );
 });
