@@ -56,7 +56,7 @@ function lotsLessBy(lots: readonly Lot[], amount: string, unit: 'kWh' | 'USD'): 
 
 function difference(from: string, less: string, unit: 'kWh' | 'USD'): string {
   const rest = exactText(minus(qtyOfText(from), qtyOfText(less)));
-  if (unit === 'kWh') return rest;
-  const cents = parseDollars(rest);
+  // A bank in dollars is written to the cent; what is not whole cents stays as it was stated.
+  const cents = unit === 'USD' ? parseDollars(rest) : null;
   return cents === null ? rest : dollarsText(cents);
 }

@@ -16,7 +16,10 @@ const CHANNELS: readonly ReadChannel[] = ['import', 'export', 'production'];
 export function closesEstimated(reads: readonly RegisterRead[], channel: ReadChannel): boolean | null {
   const own = reads.filter((read) => read.channel === channel);
   if (own.length === 0) return null;
-  const end = own.reduce((latest, { to }) => (to > latest ? to : latest), own[0]?.to ?? '');
+  const end = own
+    .map((read) => read.to)
+    .sort()
+    .at(-1);
   return own.some((read) => read.to === end && read.type === 'estimated');
 }
 

@@ -91,7 +91,10 @@ function metersOf(reads: readonly RegisterRead[]): string[] {
 
 /** Whether a meter is read to the last day that any of these reads has. */
 function readToTheEnd(reads: readonly RegisterRead[], meter: string): boolean {
-  const end = reads.reduce((latest, { to }) => (to > latest ? to : latest), '');
+  const end = reads
+    .map((read) => read.to)
+    .sort()
+    .at(-1);
   return reads.some((read) => read.meter === meter && read.to === end);
 }
 

@@ -3,6 +3,7 @@ import type { Aggregation, MeterFacts } from '#shared/facts/house.ts';
 import type { HouseholdFacts } from '#shared/facts/household.ts';
 import type { PrintedBank, Statement } from '#shared/facts/papers.ts';
 import { computeLedger } from '#shared/ledger/compute-ledger.ts';
+import { assembleCycles } from '#shared/ledger/cycles.ts';
 import { cents } from '#shared/units/cents.ts';
 import { serviceLine } from '#tests/support/budget-household.ts';
 import { BUILT_TODAY, buildHousehold } from '#tests/support/build-household.ts';
@@ -43,16 +44,17 @@ function withBarn(
 }
 
 const compute = (facts: HouseholdFacts) => computeLedger(facts, { today: BUILT_TODAY });
+const cyclesOf = (facts: HouseholdFacts) => assembleCycles(facts).cycles.map((one) => one.cycle);
 const differing = (facts: HouseholdFacts) =>
-  compute(facts).cycles.map((cycle) => cycle.checks.filter((one) => one.verdict === 'differs').map((one) => one.key));
-const importOf = (facts: HouseholdFacts) => compute(facts).cycles.map((cycle) => cycle.energy.import?.wh ?? 0);
+  cyclesOf(facts).map((cycle) => cycle.checks.filter((one) => one.verdict === 'differs').map((one) => one.key));
+const importOf = (facts: HouseholdFacts) => cyclesOf(facts).map((cycle) => cycle.energy.import?.wh ?? 0);
 
 describe('a meter that serves another place', () => {
   test('billed by itself: its reads are kept and kept apart', () => {
     const facts = withBarn('none');
     expect(importOf(facts)).toEqual(importOf(buildHousehold()));
     expect(differing(facts)).toEqual([[], [], []]);
-    const rows = compute(facts).cycles[1]?.meters ?? [];
+    const rows = cyclesOf(facts)[1]?.meters ?? [];
     expect(rows.map((one) => [one.meter, one.servicePoint, one.counted, one.figure.wh])).toEqual([
       ['net', null, true, importOf(facts)[1]],
       ['barn', 'Barn', false, BARN_KWH * 1000],
@@ -81,7 +83,7 @@ describe('a meter that serves another place', () => {
   test('netted together: its kWh are in the import that is settled; the interval file is no witness of them', () => {
     const facts = withBarn('netTogether');
     expect(importOf(facts)).toEqual(importOf(buildHousehold()).map((wh) => wh + BARN_KWH * 1000));
-    const cycle = compute(facts).cycles[1];
+    const cycle = cyclesOf(facts)[1];
     // Billed without the barn, as the built statement is: the missing kWh show.
     expect(cycle?.checks.find((one) => one.key === 'amountDue:')?.verdict).toBe('differs');
     expect(cycle?.checks.find((one) => one.key === 'importAgainstIntervals:')?.title).toBe(
@@ -107,7 +109,7 @@ describe('a share of the surplus sent to another place', () => {
 
   test('lowers the close by what was sent, and the chain goes on from there', () => {
     const facts = sharing();
-    const [, second, third] = compute(facts).cycles;
+    const [, second, third] = cyclesOf(facts);
     const chain = (cycle: typeof second) =>
       cycle?.checks.filter((one) => one.check === 'bankChain').map((one) => one.verdict);
     expect(chain(second)).toEqual(['agrees', 'agrees']);
@@ -123,7 +125,7 @@ describe('a share of the surplus sent to another place', () => {
   });
 
   test('differs where the bank closes lower and nothing says that credit was sent', () => {
-    const second = compute(sharing({ sentOut: null })).cycles[1];
+    const second = cyclesOf(sharing({ sentOut: null }))[1];
     expect(second?.checks.find((one) => one.key === 'bankChain:creditBank.close')).toMatchObject({
       verdict: 'differs',
       difference: '-10',

@@ -195,6 +195,25 @@ describe('what is wrong with an amount due on a budget plan is found by trying',
     ).toBe('With the budget amount it comes to $118.00; the statement asks for $118.77.');
   });
 
+  test('is named where the bill prints no budget balance, too', () => {
+    const unprinted = changed(
+      1,
+      withBudget(() => ({ balanceCents: null })),
+      plain(),
+    );
+    expect(
+      check(
+        changed(
+          1,
+          dueHigher(() => 11_800),
+          unprinted,
+        ),
+        1,
+        'linesAddUp:',
+      ).cause,
+    ).toBe('The budget amount of $118.00 is charged twice.');
+  });
+
   test('asks for what is owed: the amount due over its parts', () => {
     const owed = owedOf(
       compute(
