@@ -146,10 +146,10 @@ function CostName({
         <button
           type="button"
           className="link no-print ml-3 min-h-11 text-[15px] font-normal text-soft sm:min-h-6"
-          aria-label={`Day and paper of ${cost.label}`}
           onClick={() => change(cost)}
         >
           {cost.documentId ? 'Day, paper' : 'Add day or paper'}
+          <span className="visually-hidden"> of {cost.label}</span>
         </button>
       )}
     </>

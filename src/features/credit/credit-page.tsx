@@ -86,11 +86,7 @@ function Credit({ view, household }: { view: CreditView; household: HouseholdCon
             {money(view.credit.carriedIn.amountCents)}.
           </p>
         )}
-        {sources.map((source) => (
-          <p key={source} className="hint mt-2">
-            {source}
-          </p>
-        ))}
+        {sources.length > 0 && <p className="hint mt-2">{sources.join(' ')}</p>}
         {notes.map((note) => (
           <p key={note} className="hint mt-2">
             {note}

@@ -69,13 +69,9 @@ function Paper({
       </a>
       <span className="ml-auto flex flex-wrap items-baseline gap-x-4 text-soft">
         {canEdit && !asking && (
-          <button
-            type="button"
-            className="link no-print min-h-11 sm:min-h-7"
-            aria-label={`Say what ${paper.fileName} is`}
-            onClick={() => setAsking(true)}
-          >
-            What is it
+          <button type="button" className="link no-print min-h-11 sm:min-h-7" onClick={() => setAsking(true)}>
+            Say what it is
+            <span className="visually-hidden">: {paper.fileName}</span>
           </button>
         )}
         {asking && (

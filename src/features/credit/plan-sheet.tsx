@@ -42,7 +42,7 @@ export function PlanSheet({ view, addYear }: { view: CreditView; addYear: (() =>
               <th scope="row">No year plans for</th>
               <td />
               <td />
-              <td data-label="No year plans for">
+              <td>
                 {plan.unplannedCents === null ? (
                   <Missing reason="Not known without every limit" />
                 ) : (
