@@ -46,7 +46,8 @@ export function InsuranceAsks({ view }: { view: MortgageView }) {
   );
 }
 
-function outcome({ currentValue }: MortgageView): string {
+function outcome({ currentValue, facts }: MortgageView): string {
+  if (facts.insurance?.removedOn) return 'For the record: the insurance is gone already.';
   switch (currentValue.state) {
     case 'met':
       return 'By what is entered, all of it is met. The servicer decides.';

@@ -47,5 +47,5 @@ export function ltvSummary(view: MortgageView): string {
       `Of the last value stated, ${money(view.latest.valueCents)} on ${fullDate(view.latest.on)}, it is ${view.latest.percent} %.`,
     );
   }
-  return parts.join(' ');
+  return parts.join(' ').replaceAll(' %', '\u00a0%');
 }
