@@ -91,10 +91,22 @@ export function projectFrom(basis: ProjectionBasis, changes: Changes = NO_CHANGE
   };
 }
 
-export function projectParts(
-  basis: ProjectionBasis,
-  changes: Changes = NO_CHANGES,
-): ProjectionParts | { ok: false; why: string } {
+type MadeParts = ProjectionParts | { ok: false; why: string };
+
+/** The base projection's parts, once per basis: range, handbook figures and carbon all start from them. */
+const baseParts = new WeakMap<ProjectionBasis, MadeParts>();
+
+/** A projection in its parts (`projectFrom`); what it gives must not be changed in place. */
+export function projectParts(basis: ProjectionBasis, changes: Changes = NO_CHANGES): MadeParts {
+  if (changes !== NO_CHANGES) return makeParts(basis, changes);
+  const known = baseParts.get(basis);
+  if (known) return known;
+  const made = makeParts(basis, changes);
+  baseParts.set(basis, made);
+  return made;
+}
+
+function makeParts(basis: ProjectionBasis, changes: Changes): MadeParts {
   const facts: BasisFacts = { ...basis.facts, ...changes.facts };
   const { assumptions } = facts;
   const energy = monthlyEnergy({
