@@ -1,15 +1,18 @@
 import { useQuery } from '@tanstack/react-query';
 import { useEffect, useMemo, useState } from 'react';
+import type { ExampleView } from '#shared/api/plan.ts';
 import type { SetupView } from '#shared/api/setup.ts';
 import { refusalLines } from '#src/lib/form.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { Button } from '#src/ui/button.tsx';
 import { ErrorSummary } from '#src/ui/field.tsx';
-import { entryFaults, type PlanEntry, planOfEntry, planSoFar } from '#src/ui/plan-form/plan-entry.ts';
+import { entryFaults, type PlanEntry, planOfEntry } from '#src/ui/plan-form/plan-entry.ts';
 import { PlanEntryFields } from '#src/ui/plan-form/plan-entry-fields.tsx';
+import { textSoFar } from '#src/ui/plan-form/plan-text.ts';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { ExampleAside } from './example-aside.tsx';
 import { exampleQuery, useSavePlans } from './plan-queries.ts';
+import { planLabel } from './timeline.ts';
 import { TrialSheet } from './trial-sheet.tsx';
 import { useDebounced } from './use-debounced.ts';
 
@@ -33,14 +36,29 @@ export function PlanEditor({
   const [to, setTo] = useState<string | null>(null);
   const save = useSavePlans(id);
   const { timeZone } = view.house;
-  const faults = useMemo(() => entryFaults(entry), [entry]);
-  const plan = useMemo(() => planSoFar(entry, timeZone), [entry, timeZone]);
-  const asText = useDebounced(
-    useMemo(() => JSON.stringify(plan), [plan]),
-    WAIT,
+  const others = useMemo(
+    () =>
+      view.plans.flatMap((one, at) =>
+        at === index ? [] : [{ label: planLabel(one), from: one.from, plan: one.plan }],
+      ),
+    [view.plans, index],
   );
-  const example = useQuery({ ...exampleQuery(id, asText, to), enabled: faults.length === 0 });
-  const refused = (example.data?.faults ?? []).map(({ field, message }) => ({ path: field ?? '', message }));
+  const faults = useMemo(
+    () =>
+      entryFaults(
+        entry,
+        others.map(({ from }) => from),
+      ),
+    [entry, others],
+  );
+  const plan = useMemo(() => textSoFar(entry, timeZone), [entry, timeZone]);
+  const other = useMemo(
+    () => (entry.withoutRoof === 'other' && entry.other ? textSoFar(entry.other, timeZone) : null),
+    [entry, timeZone],
+  );
+  const reads = faults.length === 0;
+  const example = useQuery({ ...exampleQuery(id, useStillText(plan), to), enabled: reads });
+  const without = useQuery({ ...exampleQuery(id, useStillText(other), to), enabled: reads && other !== null });
   const periods = useMemo(() => new Map(entry.form.periods.map((one) => [one.id, one.label])), [entry.form.periods]);
 
   // What was typed is not lost by closing the window unasked.
@@ -86,7 +104,9 @@ export function PlanEditor({
                 entry={entry}
                 onChange={setEntry}
                 timeZone={timeZone}
-                refused={refused}
+                refused={refusedIn(example.data)}
+                refusedWithoutRoof={other === null ? [] : refusedIn(without.data)}
+                others={others}
                 showAll={tried}
                 prefix="plan"
               />
@@ -115,6 +135,18 @@ export function PlanEditor({
       <TrialSheet plans={view.plans} edited={faults.length === 0 ? plan : null} />
     </>
   );
+}
+
+/** A plan as text once it has stood still for a while. */
+function useStillText(plan: unknown): string {
+  return useDebounced(
+    useMemo(() => JSON.stringify(plan), [plan]),
+    WAIT,
+  );
+}
+
+function refusedIn(example: ExampleView | undefined): { path: string; message: string }[] {
+  return (example?.faults ?? []).map(({ field, message }) => ({ path: field ?? '', message }));
 }
 
 function unique<T extends { text: string }>(errors: T[]): T[] {

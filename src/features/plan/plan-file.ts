@@ -1,10 +1,11 @@
-import { planInForce } from '#shared/facts/household.ts';
+import { type PlanInForce, planInForce } from '#shared/facts/household.ts';
 import type { RatePlan } from '#shared/settlement/plan.ts';
-import { emptyEntry, entryOf, type PlanEntry, readPlanJson } from '#src/ui/plan-form/plan-entry.ts';
+import { emptyEntry, entryOf, type PlanEntry } from '#src/ui/plan-form/plan-entry.ts';
+import { readPlanJson } from '#src/ui/plan-form/plan-text.ts';
 
-/** A plan as a file of its own. */
-export function planText(plan: RatePlan): string {
-  return `${JSON.stringify(plan, null, 2)}\n`;
+/** A plan as a file of its own; with its day and the plan without a roof where one is stated, so that neither is lost. */
+export function planText(one: PlanInForce): string {
+  return `${JSON.stringify(one.withoutRoof === null ? one.plan : one, null, 2)}\n`;
 }
 
 export function planFileName(plan: RatePlan, from: string): string {

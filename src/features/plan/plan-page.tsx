@@ -11,6 +11,7 @@ import { PlanEditor } from './plan-editor.tsx';
 import { plansQuery } from './plan-queries.ts';
 import { PlanTimeline } from './plan-timeline.tsx';
 import { TakeInPlan } from './take-in-plan.tsx';
+import { currentPlan, planLabel } from './timeline.ts';
 import { TrialSheet } from './trial-sheet.tsx';
 
 /** Rate plan: what the house pays for energy and since when, an example month, and a trial of another plan. */
@@ -33,15 +34,18 @@ function Plans({ view }: { view: SetupView }) {
     setKeys(keys + 1);
     setOpen({ index, start, key: keys });
   };
-  const current = view.plans.at(-1) ?? null;
-  const { switchOn } = view.house;
+  const { switchOn, timeZone } = view.house;
+  const today = dayNow(timeZone);
+  const current = currentPlan(view.plans, today);
+  const later = view.plans.filter(({ from }) => from > today && from !== current?.from);
   const close = () => setOpen(null);
   useEffect(() => {
     if (open) document.getElementById('plan-editor')?.scrollIntoView();
   }, [open]);
   const addLater = () => {
     // A later plan is mostly the one before it with a few things changed.
-    const start = current ? { ...entryOf(current), from: '', withoutRoof: '' } : emptyEntry(switchOn ?? '');
+    const last = view.plans.at(-1);
+    const start = last ? { ...entryOf(last), from: '' } : emptyEntry(switchOn ?? '');
     show(null, start);
   };
   return (
@@ -52,7 +56,9 @@ function Plans({ view }: { view: SetupView }) {
       >
         {current ? (
           <>
-            You are on <b>{current.plan.name || 'a rate plan without a name'}</b> since {fullDate(current.from)}.
+            You are on <b>{current.plan.name || 'a rate plan without a name'}</b>{' '}
+            {current.from > today ? 'from' : 'since'} {fullDate(current.from)}.
+            {later.map((one) => ` ${planLabel(one)}, is to follow.`)}
           </>
         ) : (
           <b>No rate plan yet.</b>
@@ -61,6 +67,7 @@ function Plans({ view }: { view: SetupView }) {
       {current ? (
         <PlanTimeline
           view={view}
+          today={today}
           edit={(index) => {
             const one = view.plans[index];
             if (one) show(index, entryOf(one));
@@ -97,4 +104,9 @@ function Plans({ view }: { view: SetupView }) {
       </div>
     </div>
   );
+}
+
+/** Today as a civil day of the house. */
+function dayNow(timeZone: string): string {
+  return new Intl.DateTimeFormat('en-CA', { timeZone, year: 'numeric', month: '2-digit', day: '2-digit' }).format();
 }

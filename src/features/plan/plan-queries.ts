@@ -1,4 +1,5 @@
 import { keepPreviousData, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
+import { cyclesApi } from '#shared/api/cycles.ts';
 import { planApi } from '#shared/api/plan.ts';
 import { setupApi } from '#shared/api/setup.ts';
 import type { PlanInForce } from '#shared/facts/household.ts';
@@ -11,6 +12,14 @@ export function plansQuery(householdId: string) {
   return queryOptions({
     queryKey: ['household', householdId, 'setup'],
     queryFn: ({ signal }) => call(setupApi.view, { params: { householdId }, signal }),
+  });
+}
+
+/** The household's cycles, under their own key: what a change of plans would settle again. */
+export function cyclesQuery(householdId: string) {
+  return queryOptions({
+    queryKey: ['household', householdId, 'cycles'],
+    queryFn: ({ signal }) => call(cyclesApi.list, { params: { householdId }, signal }),
   });
 }
 

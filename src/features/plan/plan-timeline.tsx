@@ -5,23 +5,25 @@ import { refusalLines } from '#src/lib/form.ts';
 import { fullDate } from '#src/lib/format.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { Button } from '#src/ui/button.tsx';
-import { Dialog } from '#src/ui/dialog.tsx';
 import { ErrorSummary } from '#src/ui/field.tsx';
 import type { PlanEntry } from '#src/ui/plan-form/plan-entry.ts';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { planFileName, planText } from './plan-file.ts';
 import { useSavePlans } from './plan-queries.ts';
+import { RemovePlan } from './remove-plan.tsx';
 import { TakeInPlan } from './take-in-plan.tsx';
 import { timelineOf } from './timeline.ts';
 
 /** Plans and prices by date: from when, and what changed. */
 export function PlanTimeline({
   view,
+  today,
   edit,
   addLater,
   takeIn,
 }: {
   view: SetupView;
+  today: string;
   edit: (index: number) => void;
   addLater: () => void;
   takeIn: (start: PlanEntry) => void;
@@ -29,7 +31,6 @@ export function PlanTimeline({
   const { id, canEdit } = useHousehold();
   const save = useSavePlans(id);
   const [removing, setRemoving] = useState<number | null>(null);
-  const leaving = removing === null ? null : (view.plans[removing] ?? null);
   return (
     <Sheet title="Plans and prices by date" hint="New prices stand inside a plan. Other rules are a plan of their own.">
       <ErrorSummary title="Not removed" errors={save.isError ? refusalLines(save.error) : []} />
@@ -55,6 +56,7 @@ export function PlanTimeline({
                 <td className="text" data-label="What changed">
                   <span className="min-w-0 [overflow-wrap:anywhere]">
                     {row.kind === 'plan' ? <b>{row.title}</b> : row.title}
+                    {row.from > today && <span className="hint"> begins later</span>}
                     {row.changes.map((change) => (
                       <span key={change} className="hint block">
                         {change}
@@ -72,9 +74,7 @@ export function PlanTimeline({
                       <button
                         type="button"
                         className="link min-h-11"
-                        onClick={() =>
-                          saveText(planFileName(one.plan, one.from), planText(one.plan), 'application/json')
-                        }
+                        onClick={() => saveText(planFileName(one.plan, one.from), planText(one), 'application/json')}
                       >
                         Save as JSON
                         <span className="visually-hidden">, {row.title}</span>
@@ -101,27 +101,7 @@ export function PlanTimeline({
           <TakeInPlan from="" take={takeIn} />
         </p>
       )}
-      {leaving && removing !== null && (
-        <Dialog title={`Remove ${leaving.plan.name || 'this plan'}?`} onClose={() => setRemoving(null)}>
-          <p className="mt-3">
-            Cycles that began under it are settled on the plan before it, or on the first one left. Statements and
-            readings stay.
-          </p>
-          <p className="mt-5">
-            <Button
-              busy={save.isPending}
-              onClick={() =>
-                save.mutate(
-                  { plans: view.plans.filter((_, at) => at !== removing), opening: view.opening },
-                  { onSettled: () => setRemoving(null) },
-                )
-              }
-            >
-              Remove it
-            </Button>
-          </p>
-        </Dialog>
-      )}
+      {removing !== null && <RemovePlan view={view} index={removing} save={save} onClose={() => setRemoving(null)} />}
     </Sheet>
   );
 }

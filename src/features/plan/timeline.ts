@@ -1,7 +1,8 @@
 import type { PlanInForce } from '#shared/facts/household.ts';
 import type { RatePlan, RateRow } from '#shared/settlement/plan.ts';
+import { planFor } from '#shared/settlement/plan-in-force.ts';
 import type { Day } from '#shared/units/day.ts';
-import { decimal } from '#src/lib/format.ts';
+import { decimal, fullDate } from '#src/lib/format.ts';
 import { percentOfFraction } from '#src/lib/typed-values.ts';
 import { seasonName } from '#src/ui/plan-form/season-ids.ts';
 
@@ -46,6 +47,33 @@ export function timelineOf(plans: readonly PlanInForce[]): TimelineRow[] {
         })),
     ];
   });
+}
+
+/** "R-7 Residential time of day, from 1 January 2026" */
+export function planLabel({ plan, from }: PlanInForce): string {
+  return `${plan.name || 'Rate plan'}, from ${fullDate(from)}`;
+}
+
+/** The plan that holds on a day; before the first begins, the first. Null where there is none. */
+export function currentPlan(plans: readonly PlanInForce[], today: string): PlanInForce | null {
+  return planFor(plans, today as Day);
+}
+
+/** What removing a plan changes: the cycles it settles, and the plan each would be settled on instead (null: none is left). */
+export function resettledWithout(
+  plans: readonly PlanInForce[],
+  index: number,
+  cycles: readonly { from: Day; to: Day }[],
+): { cycles: { from: Day; to: Day }[]; on: PlanInForce | null }[] {
+  const leaving = plans[index];
+  const rest = plans.filter((_, at) => at !== index);
+  const moved = new Map<PlanInForce | null, { from: Day; to: Day }[]>();
+  for (const { from, to } of cycles) {
+    if (planFor(plans, from) !== leaving) continue;
+    const on = planFor(rest, from);
+    moved.set(on, [...(moved.get(on) ?? []), { from, to }]);
+  }
+  return [...moved].map(([on, held]) => ({ on, cycles: held }));
 }
 
 type Part = { label: string; rates: readonly RateRow[]; percent: boolean };

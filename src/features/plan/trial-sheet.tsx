@@ -1,13 +1,13 @@
 import { useState } from 'react';
 import type { PlanInForce } from '#shared/facts/household.ts';
 import { refusalLines } from '#src/lib/form.ts';
-import { fullDate } from '#src/lib/format.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { Button } from '#src/ui/button.tsx';
 import { ErrorSummary, SelectField, TextArea } from '#src/ui/field.tsx';
 import { Columns } from '#src/ui/rows.tsx';
 import { Sheet } from '#src/ui/sheet.tsx';
 import { useTrial } from './plan-queries.ts';
+import { planLabel } from './timeline.ts';
 import { TrialResult } from './trial-result.tsx';
 
 const PASTED = 'pasted';
@@ -44,7 +44,7 @@ export function TrialSheet({ plans, edited }: { plans: readonly PlanInForce[]; e
           {edited !== null && <option value={EDITED}>the plan being written above</option>}
           {plans.map((one, index) => (
             <option key={one.from} value={String(index)}>
-              {one.plan.name || 'Rate plan'}, from {fullDate(one.from)}
+              {planLabel(one)}
             </option>
           ))}
           <option value={PASTED}>a plan I paste here</option>

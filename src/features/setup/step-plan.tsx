@@ -4,7 +4,7 @@ import { type SetupView, setupApi } from '#shared/api/setup.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { fieldValue, textOf } from '#src/lib/typed-values.ts';
 import { Field } from '#src/ui/field.tsx';
-import { emptyEntry, entryOf, planOfEntry } from '#src/ui/plan-form/plan-entry.ts';
+import { emptyEntry, entryOf, ordinaryPlan, planOfEntry } from '#src/ui/plan-form/plan-entry.ts';
 import { PlanEntryFields } from '#src/ui/plan-form/plan-entry-fields.tsx';
 import { AddRow, Columns, FormRow, Part } from '#src/ui/rows.tsx';
 import { openingWith, type PlanEntries, planEntries } from './plan-entries.ts';
@@ -53,6 +53,10 @@ export function PlanStep({ view }: { view: SetupView }) {
               form.setValue(`plans.${index}`, entry, { shouldDirty: true, shouldValidate: form.formState.isSubmitted })
             }
             timeZone={timeZone}
+            others={watched.flatMap((other, at) => {
+              const plan = at === index ? null : ordinaryPlan(other, timeZone)?.plan;
+              return plan ? [{ label: plan.name || `Plan ${at + 1}`, from: other.from, plan }] : [];
+            })}
             showAll={form.formState.submitCount > 0}
             prefix={`plans.${index}`}
           />

@@ -1,30 +1,37 @@
 import { useState } from 'react';
-import { Field, TextArea } from '../field.tsx';
+import { Field } from '../field.tsx';
 import type { FormFault } from './edit.ts';
-import { entryFaults, holdingFrom, type PlanEntry, questionsCanSay, writtenAs } from './plan-entry.ts';
-import { PlanQuestions } from './plan-questions.tsx';
+import { entryFaults, holdingFrom, type PlanEntry } from './plan-entry.ts';
+import { PlanTextFields, within } from './plan-text-fields.tsx';
+import { type OtherPlan, WithoutRoofPart } from './without-roof-part.tsx';
 
-/** A plan of a household: since when, and what it says. Used wherever a plan is written. */
+/** A plan of a household: since when, what it says, and what would hold without a roof. Used wherever a plan is written. */
 export function PlanEntryFields({
   entry,
   onChange,
   timeZone,
+  others = [],
   refused = [],
+  refusedWithoutRoof = [],
   showAll,
   prefix,
 }: {
   entry: PlanEntry;
   onChange: (entry: PlanEntry) => void;
   timeZone: string;
-  /** The server's faults, by path in the plan. */
+  /** The household's other plans: to begin one with, and whose days are taken. */
+  others?: readonly OtherPlan[];
+  /** The server's faults, by path in the plan and in the plan without a roof. */
   refused?: readonly FormFault[];
+  refusedWithoutRoof?: readonly FormFault[];
   showAll: boolean;
   prefix: string;
 }) {
-  const [left, setLeft] = useState<string[]>([]);
-  const faults = entryFaults(entry);
-  const error = (path: string) =>
-    showAll || left.includes(path) ? faults.find((fault) => fault.path === path)?.message : undefined;
+  const [left, setLeft] = useState(false);
+  const faults = entryFaults(
+    entry,
+    others.map(({ from }) => from),
+  );
   return (
     <>
       <Field
@@ -34,51 +41,29 @@ export function PlanEntryFields({
         className="max-w-[220px]"
         name={`${prefix}.from`}
         value={entry.from}
-        error={error('from')}
+        error={showAll || left ? faults.find(({ path }) => path === 'from')?.message : undefined}
         onChange={(event) => onChange(holdingFrom(entry, event.target.value))}
-        onBlur={() => setLeft([...left, 'from'])}
+        onBlur={() => setLeft(true)}
       />
-      {entry.written === 'questions' ? (
-        <PlanQuestions
-          form={entry.form}
-          onChange={(form) => onChange({ ...entry, form })}
-          faults={faults
-            .filter(({ path }) => path.startsWith('form.'))
-            .map(({ path, message }) => ({ path: path.slice('form.'.length), message }))}
-          refused={refused}
-          showAll={showAll}
-          prefix={`${prefix}.form`}
-        />
-      ) : (
-        <TextArea
-          label="The plan, written as JSON"
-          hint={
-            questionsCanSay(entry.json)
-              ? 'Change or paste it here.'
-              : 'This plan says more than the questions can. It is kept as it is; change or paste it here.'
-          }
-          rows={16}
-          spellCheck={false}
-          style={{ fontFamily: 'ui-monospace, monospace', fontSize: '14px' }}
-          name={`${prefix}.json`}
-          value={entry.json}
-          error={error('json')}
-          onChange={(event) => onChange({ ...entry, json: event.target.value })}
-          onBlur={() => setLeft([...left, 'json'])}
-        />
-      )}
-      <p className="mt-4">
-        <button
-          type="button"
-          className="link hint min-h-11"
-          onClick={() => onChange(writtenAs(entry, entry.written === 'questions' ? 'json' : 'questions', timeZone))}
-        >
-          {entry.written === 'questions' ? 'Write this plan as JSON instead' : 'Answer questions instead'}
-        </button>
-      </p>
-      {entry.withoutRoof !== '' && (
-        <p className="hint">The plan this house would have without a roof is stated too, and kept.</p>
-      )}
+      <PlanTextFields
+        text={entry}
+        onChange={onChange}
+        timeZone={timeZone}
+        faults={faults}
+        refused={refused}
+        showAll={showAll}
+        prefix={prefix}
+      />
+      <WithoutRoofPart
+        entry={entry}
+        onChange={onChange}
+        timeZone={timeZone}
+        others={others}
+        faults={within(faults, 'other.')}
+        refused={refusedWithoutRoof}
+        showAll={showAll}
+        prefix={prefix}
+      />
     </>
   );
 }

@@ -24,6 +24,7 @@ export function PlanQuestions({
   refused = [],
   showAll,
   prefix,
+  bare = false,
 }: {
   form: PlanForm;
   onChange: (form: PlanForm) => void;
@@ -31,6 +32,8 @@ export function PlanQuestions({
   refused?: readonly FormFault[];
   showAll: boolean;
   prefix: string;
+  /** A plan for a house without a roof: what is sent out is asked about only where the plan speaks of it. */
+  bare?: boolean;
 }) {
   // While a field is empty the server refuses for that alone; the field says so itself.
   const held = faults.length > 0 ? NONE : refused;
@@ -46,7 +49,7 @@ export function PlanQuestions({
       <CalendarPart />
       <Faults messages={faultsOf('calendar')} />
       <ChargesPart faultsOf={faultsOf} />
-      <ExportPart faultsOf={faultsOf} />
+      {(!bare || form.credits.length > 0 || form.banks.length > 0) && <ExportPart faultsOf={faultsOf} />}
       <PricesPart />
       <RulesPart />
     </PlanEditProvider>

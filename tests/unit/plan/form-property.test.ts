@@ -1,11 +1,16 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import type { RatePlan } from '#shared/settlement/plan.ts';
+import { day } from '#shared/units/day.ts';
 import { emptyPlanForm, newBank, newCharge, newCredit, newTrueUp } from '#src/ui/plan-form/new-parts.ts';
+import { entryFaults, entryOf, planOfEntry } from '#src/ui/plan-form/plan-entry.ts';
 import type { PlanForm } from '#src/ui/plan-form/plan-form.ts';
 import { planOf } from '#src/ui/plan-form/plan-of.ts';
 import { pricedItems } from '#src/ui/plan-form/price-cells.ts';
 import { planFormOf } from '#src/ui/plan-form/read-plan.ts';
 import { samePlan } from '#src/ui/plan-form/same-plan.ts';
+import { PROPERTY_RUNS } from '#tests/support/property-runs.ts';
+import { intervalPlans, wholeCyclePlans } from '#tests/unit/settlement/arbitrary-plan.ts';
 
 const ZONE = 'America/Chicago';
 const netting = fc.constantFrom('none', '15min', 'hour', 'period', 'cycle' as const);
@@ -141,7 +146,23 @@ describe('whatever the form can say', () => {
         expect(read).not.toBeNull();
         expect(read && samePlan(planOf(read, ZONE), plan)).toBe(true);
       }),
-      { numRuns: 300 },
+      { numRuns: PROPERTY_RUNS },
     );
-  }, 60_000);
+  }, 120_000);
+});
+
+describe('whatever the language can say', () => {
+  it('a plan opened in the form and saved is the same plan, and most are opened as questions', () => {
+    let asked = 0;
+    const seen = (plan: RatePlan) => {
+      const entry = entryOf({ from: day('2026-01-01'), plan, withoutRoof: null });
+      if (entry.written === 'questions') asked += 1;
+      expect(entryFaults(entry)).toEqual([]);
+      const saved = planOfEntry(entry, plan.timeZone);
+      expect(samePlan(saved.plan, plan)).toBe(true);
+      expect(saved.withoutRoof).toBeNull();
+    };
+    fc.assert(fc.property(fc.oneof(wholeCyclePlans, intervalPlans), seen), { numRuns: PROPERTY_RUNS });
+    expect(asked).toBeGreaterThan(PROPERTY_RUNS / 2);
+  }, 120_000);
 });

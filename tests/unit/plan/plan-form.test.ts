@@ -4,7 +4,14 @@ import { withoutCharge } from '#src/ui/plan-form/change-charges.ts';
 import { EXPORT_RULES, exportRuleOf, withExportRule } from '#src/ui/plan-form/export-rule.ts';
 import { planFormFaults } from '#src/ui/plan-form/form-faults.ts';
 import { emptyPlanForm, newCharge, newTrueUp } from '#src/ui/plan-form/new-parts.ts';
-import { entryFaults, entryOf, holdingFrom, planOfEntry } from '#src/ui/plan-form/plan-entry.ts';
+import {
+  emptyEntry,
+  entryFaults,
+  entryOf,
+  holdingFrom,
+  ordinaryPlan,
+  planOfEntry,
+} from '#src/ui/plan-form/plan-entry.ts';
 import type { PlanForm } from '#src/ui/plan-form/plan-form.ts';
 import { planOf } from '#src/ui/plan-form/plan-of.ts';
 import { cellKey, limitsOf, pricedItems } from '#src/ui/plan-form/price-cells.ts';
@@ -171,7 +178,7 @@ describe('a plan being written', () => {
   });
 
   it('first prices move with the day the plan holds from, while they are the same day', () => {
-    const entry = { from: '', written: 'questions' as const, form: emptyPlanForm(''), json: '', withoutRoof: '' };
+    const entry = emptyEntry('');
     const dated = holdingFrom(entry, '2026-03-01');
     expect(dated.form.prices[0]?.from).toBe('2026-03-01');
     const own = { ...dated, form: { ...dated.form, prices: [{ from: '2025-01-01', cells: {} }] } };
@@ -200,5 +207,40 @@ describe('a plan being written', () => {
     expect(entryFaults(entry)).toEqual([]);
     expect(planOfEntry(entry, ZONE).plan).toEqual(plan);
     expect(entryFaults({ ...entry, written: 'json', json: '{' })[0]?.path).toBe('json');
+  });
+
+  it('begins on a day no other plan begins on', () => {
+    const entry = { ...entryOf({ from: FROM as never, plan: planOf(priced(timeOfUse()), ZONE), withoutRoof: null }) };
+    expect(entryFaults(entry, ['2025-01-01'])).toEqual([]);
+    expect(entryFaults(entry, [FROM])).toEqual([
+      { path: 'from', message: 'Another plan begins on this day. Change that one, or choose another day.' },
+    ]);
+  });
+});
+
+describe('the plan without the roof', () => {
+  const access = newCharge('gridAccess', 'Grid access', 'demand', 'kW', { kWOf: 'dc', solarOnly: true });
+  const form = emptyPlanForm(FROM);
+  const plan = planOf(priced({ ...form, charges: [...form.charges, access] }), ZONE);
+
+  it('is the same one by default, and says what is left out of it', () => {
+    const entry = entryOf({ from: FROM as never, plan, withoutRoof: null });
+    expect(entry.withoutRoof).toBe('same');
+    expect(planOfEntry(entry, ZONE).withoutRoof).toBeNull();
+    expect(ordinaryPlan(entry, ZONE)?.leftOut).toEqual(['Grid access', 'Export credit', 'Credit bank']);
+    expect(ordinaryPlan({ ...entry, written: 'json', json: '{' }, ZONE)).toBeNull();
+  });
+
+  it('is another one as stated, opened and saved unchanged, its own faults under its own fields', () => {
+    const ordinary = ordinaryPlan(entryOf({ from: FROM as never, plan, withoutRoof: null }), ZONE)?.plan ?? plan;
+    const dearer = { ...ordinary, name: 'R-1 Ordinary', charges: ordinary.charges.slice(0, 1) };
+    const entry = entryOf({ from: FROM as never, plan, withoutRoof: dearer });
+    expect(entry.withoutRoof).toBe('other');
+    expect(planOfEntry(entry, ZONE)).toEqual({ from: FROM, plan, withoutRoof: dearer });
+    const broken = { ...entry, other: entry.other && { ...entry.other, written: 'json' as const, json: '{' } };
+    expect(entryFaults(broken).map(({ path }) => path)).toEqual(['other.json']);
+    // Choosing “the same” again keeps what was written, and says it no longer.
+    expect(planOfEntry({ ...entry, withoutRoof: 'same' }, ZONE).withoutRoof).toBeNull();
+    expect(entryFaults({ ...broken, withoutRoof: 'same' })).toEqual([]);
   });
 });
