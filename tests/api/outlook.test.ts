@@ -10,6 +10,7 @@ import { everyWorking } from '#tests/support/every-working.ts';
 import { statementFile } from '#tests/support/paper-files.ts';
 import { setUpFrom } from '#tests/support/set-up.ts';
 import {
+  anotherHousehold,
   failOnConsole,
   newHousehold,
   startTestServer,
@@ -37,7 +38,7 @@ const position = async () => (await home.owner.call(positionApi.view, { params: 
 
 describe('the outlook', () => {
   it('says why there is none before the first cycle', async () => {
-    const empty = await newHousehold(server);
+    const empty = await anotherHousehold(server, home);
     const made = (await empty.owner.call(outlookApi.view, { params: empty.params })).value;
     expect(made).toMatchObject({ range: null, handbook: null, carbon: null, assumptions: DEFAULT_ASSUMPTIONS });
     expect(made.whyNoRange).toBe('Post the first cycle to see a projection.');

@@ -2,6 +2,8 @@ import { performance } from 'node:perf_hooks';
 import type { HouseholdFacts } from '#shared/facts/household.ts';
 import { computeLedger, postLedger } from '#shared/ledger/compute-ledger.ts';
 import { assembleCycles } from '#shared/ledger/cycles.ts';
+import { projectFrom } from '#shared/position/project.ts';
+import { rangeOf } from '#shared/position/range.ts';
 import { addMonths, day } from '#shared/units/day.ts';
 import { buildHousehold } from '#tests/support/build-household.ts';
 
@@ -37,7 +39,61 @@ export async function benchPosition(): Promise<BenchLine[]> {
       () => postLedger(facts, assembled, today),
       () => JSON.stringify(posted),
     ),
+    ...benchProjection(),
   ];
+}
+
+const MONTHS = 300;
+const RESAMPLES = 200;
+
+/** What the projection and its range cost: the base as one step, then with 200 resampled futures, as ratios to a loop that only prices and adds the same months. */
+function benchProjection(): BenchLine[] {
+  const start = day('2024-06-14');
+  const facts = buildHousehold({ cycles: 26, start });
+  const { plans } = longHousehold();
+  const { basis } = computeLedger({ ...facts, plans }, { today: addMonths(start, 26) });
+  if (basis === null || basis.facts.assumptions.horizonMonths !== MONTHS) throw new Error('there is no projection');
+  // A basis of its own each time: the parts of a basis are kept.
+  const step = medianOf(() => projectFrom({ ...basis }));
+  const range = medianOf(() => {
+    const made = rangeOf({ ...basis });
+    if (!made.ok || made.range.resamples !== RESAMPLES) throw new Error('the range is not whole');
+    return made.range;
+  });
+  return [
+    {
+      name: `one projection of ${MONTHS} months`,
+      value: step,
+      unit: 'ms',
+      ratio: step / medianOf(() => bareMonths(1)),
+      aim: 'at most 50 ms',
+    },
+    {
+      name: `range of ${MONTHS} months, ${RESAMPLES} resamples`,
+      value: range,
+      unit: 'ms',
+      ratio: range / medianOf(() => bareMonths(RESAMPLES)),
+      aim: 'at most 400 ms',
+    },
+  ];
+}
+
+/** The floor: both bills of as many months in whole numbers, with a bank carried on. */
+function bareMonths(futures: number): number {
+  let total = 0;
+  for (let future = 0; future < futures; future += 1) {
+    let bank = 0;
+    for (let month = 0; month < MONTHS; month += 1) {
+      const bought = 400_000 + ((month * 37 + future * 11) % 211) * 1000;
+      const sent = 200_000 + ((month * 53 + future * 7) % 409) * 1000;
+      const energy = Math.round((bought * 1684) / 100_000);
+      const used = Math.min(bank, energy);
+      bank += Math.round((sent * 950) / 100_000) - used;
+      const tax = Math.round((energy + 1450) * 0.031);
+      total += Math.round(((bought + sent) * 1684) / 100_000) - (energy + 1450 + tax - used);
+    }
+  }
+  return total;
 }
 
 function line(name: string, compute: () => unknown, print: () => string): BenchLine {
