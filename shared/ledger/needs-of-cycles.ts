@@ -1,4 +1,4 @@
-import type { Check } from '../reconcile/check.ts';
+import type { Check, CheckId } from '../reconcile/check.ts';
 import { cents, subtractCents } from '../units/cents.ts';
 import { parseKwh, ZERO_WH } from '../units/energy.ts';
 import type { Cycle } from './cycle.ts';
@@ -25,6 +25,16 @@ export function differingCycles({ assembled }: NeedsInput): Need[] {
     });
 }
 
+/** Checks of what the house made and was paid for it, which no statement is to blame for. */
+const NOT_THE_STATEMENT: ReadonlySet<CheckId> = new Set([
+  'fileGaps',
+  'productionAgainstMonitor',
+  'productionAtNight',
+  'productionExpected',
+  'incentiveQuantity',
+  'incentivePaid',
+]);
+
 /** "October’s export is credited 13 kWh short", or the name of the check that differs. */
 function checkTitle(cycle: Cycle, check: Check | undefined): string {
   if (!check) return `${possessive(cycle)} statement differs`;
@@ -33,7 +43,8 @@ function checkTitle(cycle: Cycle, check: Check | undefined): string {
   if (gap !== null && (check.check === 'exportAgainstIntervals' || check.check === 'importAgainstIntervals')) {
     return `${possessive(cycle)} ${named[check.check]} ${sayGap(gap)} kWh ${gap < 0 ? 'short' : 'over'}`;
   }
-  return `${possessive(cycle)} statement differs: ${check.title.charAt(0).toLowerCase()}${check.title.slice(1)}`;
+  const what = NOT_THE_STATEMENT.has(check.check) ? 'record' : 'statement';
+  return `${possessive(cycle)} ${what} differs: ${check.title.charAt(0).toLowerCase()}${check.title.slice(1)}`;
 }
 
 /** "Billed 212 kWh exported; your meter and interval data agree on 256." Null where no billed quantity differs. */

@@ -4,9 +4,6 @@ import type { Check } from './check.ts';
 import type { CheckContext } from './check-context.ts';
 import { compareText, nothingToCompare } from './make-check.ts';
 
-/** A billing cycle outside these is worth a second look at its dates (net-metering.md §4 "days"). */
-const USUAL_DAYS = { least: 27, most: 35 };
-
 /** This statement begins on the day the last one ended (net-metering.md §4 "read continuity"). */
 export function datesChainCheck({ paper }: CheckContext): Check {
   const title = 'Dates follow on from the last cycle';
@@ -37,21 +34,16 @@ function chainTexts(ended: Day, begins: Day): { cause: string; advice: string } 
   };
 }
 
-/** The printed number of days is `to − from`; a length outside 27–35 days is pointed out, not held against the bill. */
+/** The printed number of days is `to − from`; whether so many are usual is a check of its own. */
 export function daysCheck({ paper }: CheckContext): Check {
   const title = 'Days match the dates';
   const { statement } = paper;
   const days = daysBetween(statement.from, statement.to);
-  const unusual =
-    days < USUAL_DAYS.least || days > USUAL_DAYS.most
-      ? `${days} days is unusual for a billing cycle; look at the service dates.`
-      : null;
   if (statement.printedDays === null) {
     return nothingToCompare('days', '', 'days', {
       title,
       found: String(days),
       cause: 'The statement prints no number of days.',
-      advice: unusual,
     });
   }
   const sides = {
@@ -60,9 +52,8 @@ export function daysCheck({ paper }: CheckContext): Check {
     difference: String(statement.printedDays - days),
     unit: 'days' as const,
   };
-  const check = compareText('days', '', title, sides, () => ({
+  return compareText('days', '', title, sides, () => ({
     cause: `The dates make ${days} days; the statement counts ${statement.printedDays}.`,
     advice: 'Charges by the day may be wrong with it. Compare the dates with the meter reads.',
   }));
-  return unusual !== null && check.verdict === 'agrees' ? { ...check, advice: unusual } : check;
 }

@@ -60,6 +60,20 @@ describe('the sample’s ledger', () => {
     expect(without).toEqual(['2025-12-15']);
   });
 
+  it('made what was expected of it, by day, and was paid for all of it but the last cycle', () => {
+    const of = (id: string) => ledger.cycles.flatMap((cycle) => cycle.checks.filter(({ check }) => check === id));
+    for (const id of ['daysInRange', 'productionAtNight', 'productionExpected', 'incentiveQuantity', 'incentivePaid']) {
+      expect([id, of(id).filter(({ verdict }) => verdict === 'differs')]).toEqual([id, []]);
+    }
+    expect(of('productionAtNight').filter(({ verdict }) => verdict === 'agrees').length).toBe(52);
+    expect(of('incentivePaid').filter(({ verdict }) => verdict === 'agrees').length).toBe(9);
+    expect(of('incentiveQuantity').filter(({ verdict }) => verdict === 'agrees').length).toBe(9);
+    const gaps = ledger.cycles.flatMap((cycle) =>
+      cycle.checks.filter(({ check, verdict }) => check === 'fileGaps' && verdict !== 'agrees').map(() => cycle.to),
+    );
+    expect(gaps).toEqual(['2025-12-15']);
+  });
+
   it('balances the cycle left to log, once logged', () => {
     const logged = computeLedger(sampleFacts({ withNext: true }), { today: day('2026-12-01') });
     expect(logged.cycles.length).toBe(27);
