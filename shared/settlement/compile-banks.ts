@@ -5,6 +5,7 @@ import { type CompiledEnergy, compileEnergy, energyCents } from './compile-energ
 import { type CompiledState, type Slots, slotOf } from './compile-state.ts';
 import type { Cycle } from './cycle-flows.ts';
 import { floorCents } from './floors.ts';
+import { keptAt, knownAs } from './place.ts';
 import type { PreparedBank, PreparedTrueUp } from './prepare.ts';
 import {
   compare,
@@ -66,19 +67,17 @@ export function compileBank(
   const charges: CompiledEnergy[] = [];
   if (bank.unit === 'kWh') {
     for (const id of bank.offsets) {
-      const of = cycle.prepared.charge.get(id);
-      const made = of
-        ? compileEnergy(
-            cycle,
-            { label: of.charge.label, basis: 'import', netting: of.netting, pricing: of.pricing, lessBank: null },
-            null,
-          )
-        : null;
+      const { charge, netting, pricing } = knownAs(cycle.prepared.charge, id);
+      const made = compileEnergy(
+        cycle,
+        { label: charge.label, basis: 'import', netting, pricing, lessBank: null },
+        null,
+      );
       if (made === null) return null;
       charges.push(made);
     }
   }
-  const placesOf = (ids: readonly string[]) => ids.map((id) => places.get(id) ?? -1);
+  const placesOf = (ids: readonly string[]) => ids.map((id) => knownAs(places, id));
   const floorOn = floor?.charge.on ?? [];
   const fed = plan.credits.filter((credit) => credit.to === bank.id);
   return {
@@ -112,18 +111,18 @@ export function moveCompiledKwh(
   const imported = sideOf(bank.netsCycle, usage, 'import');
   const earned = earnedKwh(cycle, prepared, sideOf(bank.netsCycle, usage, 'export'));
   let waiting: Qty = 0;
-  if (prepared.bank.sameCycle) state.balances[at] = plus(state.balances[at] ?? 0, earned);
+  if (prepared.bank.sameCycle) state.balances[at] = plus(keptAt(state.balances, at), earned);
   else waiting = earned;
   if (bank.offsets.length === 0) {
     // Below zero without a charge to pay it still takes the import.
-    if (prepared.bank.belowZero) state.balances[at] = minus(state.balances[at] ?? 0, greater(imported, 0));
+    if (prepared.bank.belowZero) state.balances[at] = minus(keptAt(state.balances, at), greater(imported, 0));
     return waiting;
   }
   let open: Qty = imported;
   for (const place of bank.offsets) open = lesser(open, minus(imported, taken[place] ?? 0));
-  const used = greater(prepared.bank.belowZero ? open : lesser(state.balances[at] ?? 0, open), 0);
+  const used = greater(prepared.bank.belowZero ? open : lesser(keptAt(state.balances, at), open), 0);
   if (compare(used, 0) === 0) return waiting;
-  state.balances[at] = minus(state.balances[at] ?? 0, used);
+  state.balances[at] = minus(keptAt(state.balances, at), used);
   for (const place of bank.offsets) taken[place] = plus(taken[place] ?? 0, used);
   return waiting;
 }
@@ -145,8 +144,8 @@ export function moveCompiledUsd(
 ): { off: number; waiting: number } {
   const { at, floor } = bank;
   const { belowZero, sameCycle } = bank.prepared.bank;
-  const held = Number(state.balances[at] ?? 0) / 10 + (sameCycle ? earned : 0);
-  const owes = (place: number) => (amounts[place] ?? 0) - (paid[place] ?? 0);
+  const held = Number(keptAt(state.balances, at)) / 10 + (sameCycle ? earned : 0);
+  const owes = (place: number) => keptAt(amounts, place) - keptAt(paid, place);
   let left = belowZero ? Number.POSITIVE_INFINITY : Math.max(held, 0);
   let room = Number.POSITIVE_INFINITY;
   if (floor) {
@@ -156,13 +155,13 @@ export function moveCompiledUsd(
   }
   let used = 0;
   for (let index = 0; index < bank.offsets.length; index += 1) {
-    const place = bank.offsets[index] ?? -1;
-    const counted = bank.counted[index] === true;
+    const place = keptAt(bank.offsets, index);
+    const counted = keptAt(bank.counted, index);
     const owed = owes(place);
     const payable = Math.min(belowZero ? owed : Math.max(owed, 0), counted ? room : Number.POSITIVE_INFINITY);
     const pays = Math.min(payable, left);
     if (pays === 0) continue;
-    paid[place] = (paid[place] ?? 0) + pays;
+    paid[place] = keptAt(paid, place) + pays;
     used += pays;
     left -= pays;
     if (counted) room -= pays;
@@ -180,11 +179,14 @@ export function closeCompiled(
   state: CompiledState,
 ): number {
   const { at, prepared } = bank;
-  let balance = plus(state.balances[at] ?? 0, waiting);
+  let balance = plus(keptAt(state.balances, at), waiting);
   const averages = prepared.averages;
   const counted =
     averages && 'averageCycles' in averages
-      ? { cycles: (state.usageCycles[at] ?? 0) + 1, kWh: plus(state.usageKwh[at] ?? 0, usedOf(averages.usage, usage)) }
+      ? {
+          cycles: keptAt(state.usageCycles, at) + 1,
+          kWh: plus(keptAt(state.usageKwh, at), usedOf(averages.usage, usage)),
+        }
       : null;
   let due = 0;
   let happened = false;
@@ -219,7 +221,7 @@ function usedOf(of: 'import' | 'load' | 'net', usage: CompiledUsage): number {
 
 /** What a bank is worth after a cycle: dollars at face where they can be spent, kWh at what they will offset, else at what a true-up pays. */
 export function bankCentsOf(bank: CompiledBank, state: CompiledState): number {
-  const held = state.balances[bank.at] ?? 0;
+  const held = keptAt(state.balances, bank.at);
   if (bank.isIncentiveOnly || compare(held, 0) === 0) return 0;
   if (bank.prepared.bank.unit === 'USD') {
     const { offsets, trueUps } = bank.prepared.bank;

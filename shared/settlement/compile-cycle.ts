@@ -19,6 +19,7 @@ import { type Cycle, openCycle } from './cycle-flows.ts';
 import type { Basis } from './energy-figures.ts';
 import { mustPrice } from './energy-share.ts';
 import { splitCycle } from './parts.ts';
+import { keptAt, knownAs } from './place.ts';
 import type { RatePlan } from './plan.ts';
 import { type PreparedCharge, type PreparedCredit, preparePlan } from './prepare.ts';
 import { compare, minus, priced, type Qty, qtyOfText, type Rate, rateOf, times } from './quantity.ts';
@@ -27,16 +28,21 @@ import type { CycleUsage } from './settlement.ts';
 
 type Side = { basis: Basis; netsCycle: boolean };
 
+type EnergyCharge = { kind: 'energy'; place: number; side: Side; energy: CompiledEnergy };
+
 type CompiledCharge =
-  | { kind: 'energy'; place: number; side: Side; energy: CompiledEnergy }
+  | EnergyCharge
   | { kind: 'fixed'; place: number; amount: number }
   | { kind: 'percent'; place: number; on: readonly number[]; parts: readonly { days: number; rate: Rate }[] }
   | {
       kind: 'floor';
       place: number;
       on: readonly number[];
-      parts: readonly { days: number; rate: Rate; times: number }[];
+      parts: readonly FloorPart[];
     };
+
+/** `int`: the rate's digits without its point. */
+type FloorPart = { days: number; rate: Rate; int: Qty; times: number };
 
 type CompiledCredit = {
   side: Side;
@@ -51,6 +57,8 @@ type CompiledCredit = {
 export type CompiledCycle = {
   cycle: Cycle;
   early: readonly CompiledCharge[];
+  /** Those of them by the kWh: what kWh banks pay. */
+  energies: readonly EnergyCharge[];
   late: readonly CompiledCharge[];
   credits: readonly CompiledCredit[];
   /** In the plan's order. */
@@ -93,6 +101,7 @@ function compile({ plan, from, to, kW, incentiveApart, slots }: CompileInput): C
   return {
     cycle,
     early,
+    energies: early.filter((charge) => charge.kind === 'energy'),
     late,
     credits,
     banks,
@@ -137,8 +146,8 @@ function sideFor(basis: Basis, netting: PreparedCharge['netting']): Side | null 
 function compileCharge(cycle: Cycle, item: PreparedCharge, places: ReadonlyMap<string, number>): CompiledCharge | null {
   const { charge, netting, pricing } = item;
   const { label, basis } = charge;
-  const place = places.get(charge.id) ?? -1;
-  const on = charge.on.map((id) => places.get(id) ?? -1);
+  const place = knownAs(places, charge.id);
+  const on = charge.on.map((id) => knownAs(places, id));
   switch (basis) {
     case 'cycle':
     case 'day':
@@ -148,11 +157,12 @@ function compileCharge(cycle: Cycle, item: PreparedCharge, places: ReadonlyMap<s
     }
     case 'percent':
     case 'floor': {
-      const parts: { days: number; rate: Rate; times: number }[] = [];
+      const parts: FloorPart[] = [];
       for (const part of splitCycle(cycle, pricing, false)) {
         const { rate } = mustPrice(item, label, part, null, null);
-        if (rate.int === null) return null;
-        parts.push({ days: part.days, rate, times: charge.per === 'day' ? cycle.days : 1 });
+        const { int } = rate;
+        if (int === null) return null;
+        parts.push({ days: part.days, rate, int, times: charge.per === 'day' ? cycle.days : 1 });
       }
       return basis === 'percent' ? { kind: 'percent', place, on, parts } : { kind: 'floor', place, on, parts };
     }
@@ -181,7 +191,7 @@ function compileCredit(
     side,
     energy,
     cap: cap ? { at: slotOf(slots.caps, capName(credit.id, key)), amount: centsOfQty(qtyOfText(cap.amount)) } : null,
-    to: credit.to === 'bill' || credit.to === 'separate' ? credit.to : (banks.get(credit.to) ?? -1),
+    to: credit.to === 'bill' || credit.to === 'separate' ? credit.to : knownAs(banks, credit.to),
     counts: !(incentiveApart && credit.kind === 'incentive'),
   };
 }
@@ -199,8 +209,8 @@ export function dueOf(compiled: CompiledCycle, usage: CompiledUsage, state: Comp
   let due = 0;
 
   for (let index = 0; index < banks.length; index += 1) {
-    const bank = banks[index];
-    if (bank?.prepared.bank.unit === 'kWh') waiting[index] = moveCompiledKwh(cycle, bank, usage, state, taken);
+    const bank = keptAt(banks, index);
+    if (bank.prepared.bank.unit === 'kWh') waiting[index] = moveCompiledKwh(cycle, bank, usage, state, taken);
   }
   for (const charge of compiled.early) {
     const amount = amountOf(compiled, charge, usage, amounts, paid, taken, true);
@@ -210,24 +220,24 @@ export function dueOf(compiled: CompiledCycle, usage: CompiledUsage, state: Comp
   const earned = banks.length === 0 ? NO_CENTS : banks.map(() => 0);
   for (const credit of compiled.credits) {
     const amount = creditOf(credit, usage, state);
-    if (typeof credit.to === 'number') earned[credit.to] = (earned[credit.to] ?? 0) + amount;
+    if (typeof credit.to === 'number') earned[credit.to] = keptAt(earned, credit.to) + amount;
     else if (credit.counts) due -= amount;
   }
   for (let index = 0; index < banks.length; index += 1) {
-    const bank = banks[index];
-    if (bank?.prepared.bank.unit !== 'USD') continue;
-    const moved = moveCompiledUsd(bank, earned[index] ?? 0, state, amounts, paid);
+    const bank = keptAt(banks, index);
+    if (bank.prepared.bank.unit !== 'USD') continue;
+    const moved = moveCompiledUsd(bank, keptAt(earned, index), state, amounts, paid);
     due -= moved.off;
     waiting[index] = moved.waiting;
   }
   for (const charge of compiled.late) {
+    // No bank may take what is worked out only after credits, so that all of it is due.
     const amount = amountOf(compiled, charge, usage, amounts, paid, taken, false);
     amounts[charge.place] = amount;
-    if (inDue[charge.place]) due += amount;
+    due += amount;
   }
   for (let index = 0; index < banks.length; index += 1) {
-    const bank = banks[index];
-    if (bank) due += closeCompiled(cycle, bank, waiting[index] ?? 0, usage, state);
+    due += closeCompiled(cycle, keptAt(banks, index), keptAt(waiting, index), usage, state);
   }
   return due;
 }
@@ -255,7 +265,7 @@ function energyOf({ basis, netsCycle }: Side, usage: CompiledUsage): number {
 }
 
 function amountOf(
-  { cycle, early }: CompiledCycle,
+  { cycle, energies }: CompiledCycle,
   charge: CompiledCharge,
   usage: CompiledUsage,
   amounts: readonly number[],
@@ -274,8 +284,8 @@ function amountOf(
     case 'percent': {
       let base = 0;
       for (const place of charge.on) {
-        base += isEarly && taken[place] ? unbanked(early, place, usage) : (amounts[place] ?? 0);
-        if (!isEarly) base -= paid[place] ?? 0;
+        base += isEarly && taken[place] ? unbanked(energies, place, usage) : keptAt(amounts, place);
+        if (!isEarly) base -= keptAt(paid, place);
       }
       let sum = 0;
       const { money } = cycle.prepared.plan.rounding;
@@ -287,7 +297,7 @@ function amountOf(
     }
     case 'floor': {
       let base = 0;
-      for (const place of charge.on) base += (amounts[place] ?? 0) - (paid[place] ?? 0);
+      for (const place of charge.on) base += keptAt(amounts, place) - keptAt(paid, place);
       let sum = 0;
       for (const part of charge.parts) sum += missingTo(cycle, part, base);
       return sum;
@@ -296,17 +306,20 @@ function amountOf(
 }
 
 /** A charge as it would be had no kWh bank paid: what a percent before credits goes by. */
-function unbanked(early: readonly CompiledCharge[], place: number, usage: CompiledUsage): number {
-  const charge = early.find((one) => one.place === place);
-  return charge?.kind === 'energy' ? energyCents(charge.energy, energyOf(charge.side, usage)) : 0;
+function unbanked(energies: readonly EnergyCharge[], place: number, usage: CompiledUsage): number {
+  let sum = 0;
+  for (const charge of energies) {
+    if (charge.place === place) sum += energyCents(charge.energy, energyOf(charge.side, usage));
+  }
+  return sum;
 }
 
 const ONE = rateOf('1');
 
 /** What is missing to a floor over a part's days: (rate × days × times − base × days) / all days, rounded once. */
-function missingTo(cycle: Cycle, part: { days: number; rate: Rate; times: number }, base: number): number {
+function missingTo(cycle: Cycle, part: FloorPart, base: number): number {
   const power = 10 ** part.rate.scale;
-  const least = times(times(part.rate.int ?? 0, part.days * part.times), 1000);
+  const least = times(times(part.int, part.days * part.times), 1000);
   const missing = minus(least, times(times(base * 10, part.days), power));
   if (compare(missing, 0) <= 0) return 0;
   return priced(missing, times(cycle.days, power), ONE, cycle.prepared.plan.rounding.money);
@@ -316,7 +329,7 @@ function creditOf(credit: CompiledCredit, usage: CompiledUsage, state: CompiledS
   const n = energyOf(credit.side, usage);
   const { cap } = credit;
   if (cap === null) return energyCents(credit.energy, n);
-  const used = state.capUsed[cap.at] ?? 0;
+  const used = keptAt(state.capUsed, cap.at);
   let left = cap.amount - used;
   let earned = 0;
   energyCents(credit.energy, n, (full) => {

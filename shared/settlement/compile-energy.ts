@@ -3,6 +3,7 @@ import type { Cycle } from './cycle-flows.ts';
 import { canUseIntervals } from './energy-figures.ts';
 import type { EnergyItem } from './energy-share.ts';
 import { type Part, splitCycle } from './parts.ts';
+import { keptAt } from './place.ts';
 import { minus, priced, type Qty, type Rate, roundToWhole, times } from './quantity.ts';
 import { limitsAt, priceAt } from './rates-in-force.ts';
 import { daysInBoth } from './term-pieces.ts';
@@ -50,7 +51,7 @@ export function compileEnergy(cycle: Cycle, item: EnergyItem, term: Term | null)
   const isFlat = only && compiled.length === 1 && only.bounds === null && only.termDays === null;
   return {
     parts: compiled,
-    flat: isFlat ? (only.rates[0] ?? null) : null,
+    flat: isFlat ? keptAt(only.rates, 0) : null,
     allDays: cycle.days,
     wholeKwh: plan.rounding.kWh === 'whole',
     rounding: plan.rounding.money,

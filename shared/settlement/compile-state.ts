@@ -1,6 +1,5 @@
-import { dollarsText } from '../units/cents.ts';
-import { centsOfQty, wholeBalance } from './bank-state.ts';
-import { type Qty, qtyOfText, qtyText } from './quantity.ts';
+import { wholeBalance } from './bank-state.ts';
+import { type Qty, qtyOfText } from './quantity.ts';
 import type { Opening } from './settlement.ts';
 
 /**
@@ -46,9 +45,4 @@ export function stateOf(slots: Slots, opening: Opening): CompiledState {
     state.capUsed[at] = Number(qtyOfText(opening.capUsed[credit]?.[key] ?? '0')) / 10;
   }
   return state;
-}
-
-/** A balance as a settlement would say it at the close. */
-export function balanceText(unit: 'kWh' | 'USD', balance: Qty): string {
-  return unit === 'USD' ? dollarsText(centsOfQty(balance)) : qtyText(balance);
 }
