@@ -16,6 +16,7 @@ import { securityHeaders } from './http/security-headers.ts';
 import { creditRoutes } from './routes/credit-routes.ts';
 import { cyclesRoutes } from './routes/cycles-routes.ts';
 import { logRoutes } from './routes/log-routes.ts';
+import { moneyLoanRoutes } from './routes/money-loan-routes.ts';
 import { moneyMortgageRoutes } from './routes/money-mortgage-routes.ts';
 import { moneyOtherRoutes } from './routes/money-other-routes.ts';
 import { moneyRoutes } from './routes/money-routes.ts';
@@ -24,6 +25,7 @@ import { planRoutes } from './routes/plan-routes.ts';
 import { positionRoutes } from './routes/position-routes.ts';
 import { sessionRoutes } from './routes/session-routes.ts';
 import { setupRoutes } from './routes/setup-routes.ts';
+import { tryRoutes } from './routes/try-routes.ts';
 
 export type App = { express: Express; sessions: Sessions; mounted: readonly Route[]; stopping(): void };
 
@@ -63,9 +65,11 @@ export function createApp(deps: Deps): App {
   positionRoutes(api, deps);
   logRoutes(api, deps);
   moneyRoutes(api, deps);
+  moneyLoanRoutes(api, deps);
   moneyMortgageRoutes(api, deps);
   moneyOtherRoutes(api, deps);
   creditRoutes(api, deps);
+  tryRoutes(api, deps);
   peopleRoutes(api, deps, sessions, limits);
   app.use(api.router);
 
