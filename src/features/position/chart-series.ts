@@ -2,7 +2,7 @@ import { BOOKS, type BookId } from '#shared/books/book.ts';
 import type { Range } from '#shared/position/outlook.ts';
 import type { ByBook, Position, PositionEvent } from '#shared/position/position.ts';
 import type { Cents } from '#shared/units/cents.ts';
-import { addMonths, type Day, dayNumber, yearOf } from '#shared/units/day.ts';
+import { addMonths, type Day, dayNumber } from '#shared/units/day.ts';
 
 /** One point of the running lines, at the close of a cycle or of a projected month. */
 export type RunningPoint = { on: Day; settledCents: Cents; cashCents: Cents; projected: boolean };
@@ -153,16 +153,4 @@ function ordinaryMax(heights: number[]): number {
   if (sorted.length === 0) return 0;
   const usual = sorted[Math.floor((sorted.length - 1) * 0.95)] ?? 0;
   return Math.min(sorted.at(-1) ?? 0, usual * ORDINARY);
-}
-
-/** The years whose middle lies in the chart, thinned to at most `most`; none within `edge` (a share of the width) of the end. */
-export function yearTicks(first: Day, last: Day, most: number, edge: number): { year: number; x: number }[] {
-  const years: { year: number; x: number }[] = [];
-  const end = dayNumber(last) - (dayNumber(last) - dayNumber(first)) * edge;
-  for (let year = yearOf(first); year <= yearOf(last); year += 1) {
-    const x = dayNumber(`${year}-07-01` as Day);
-    if (x >= dayNumber(first) && x <= end) years.push({ year, x });
-  }
-  const step = Math.max(1, Math.ceil(years.length / most));
-  return years.filter((_, index) => index % step === (step > 1 ? 1 : 0));
 }

@@ -3,10 +3,10 @@ import type { BookId } from '#shared/books/book.ts';
 import type { Cents } from '#shared/units/cents.ts';
 import { fullDate, money } from '#src/lib/format.ts';
 import { BOOK_NAMES, BOOK_TOKENS } from '#src/ui/book-key.tsx';
+import { AXIS_WIDTH, dayAxis, moneyAxis, niceStep, RIGHT_EDGE, tooltipLook } from '#src/ui/chart/axes.ts';
 import { hatch } from '#src/ui/chart/hatch.ts';
 import { zeroLinePlugin } from '#src/ui/chart/marks.ts';
 import type { ChartTokens } from '#src/ui/chart/tokens.ts';
-import { AXIS_WIDTH, dayAxis, moneyAxis, niceStep, RIGHT_EDGE, tooltipLook } from './chart-options.ts';
 import { BAR_BOOKS, barHeights, barMiddle, barScale, type CycleBar, type Series } from './chart-series.ts';
 
 /** What each cycle added by book: above zero kept or received, below it paid. Past solid, projected hatched, tax credits as triangles. */

@@ -2,10 +2,10 @@ import type { ChartConfiguration, ChartDataset } from 'chart.js';
 import type { Cents } from '#shared/units/cents.ts';
 import { dayNumber } from '#shared/units/day.ts';
 import { money, monthYear } from '#src/lib/format.ts';
+import { AXIS_WIDTH, dateOfTick, dayAxis, moneyAxis, niceStep, RIGHT_EDGE, tooltipLook } from '#src/ui/chart/axes.ts';
 import { flagsPlugin } from '#src/ui/chart/flags.ts';
 import { marksPlugin, zeroLinePlugin } from '#src/ui/chart/marks.ts';
 import type { ChartTokens } from '#src/ui/chart/tokens.ts';
-import { AXIS_WIDTH, dateOfTick, dayAxis, moneyAxis, niceStep, RIGHT_EDGE, tooltipLook } from './chart-options.ts';
 import type { RunningPoint, Series } from './chart-series.ts';
 
 /** Settled today and cash so far: past solid, projection dashed. The phone's has settled today alone, without flags. */

@@ -5,9 +5,9 @@ import { cents, dollarsText, sumCents } from '#shared/units/cents.ts';
 import { addMonths, day } from '#shared/units/day.ts';
 import { evaluateWorking } from '#shared/working-formula.ts';
 import { addsUp, booksShown } from '#src/features/position/adds-up.ts';
-import { niceStep } from '#src/features/position/chart-options.ts';
-import { barScale, chartSeries, yearTicks } from '#src/features/position/chart-series.ts';
+import { barScale, chartSeries } from '#src/features/position/chart-series.ts';
 import { standing } from '#src/features/position/position-words.ts';
+import { niceStep, yearTicks } from '#src/ui/chart/axes.ts';
 
 const NONE: ByBook = {
   billAvoided: cents(0),

@@ -1,22 +1,26 @@
 import type { ChartOptions } from 'chart.js';
-import { dayFromNumber, dayNumber } from '#shared/units/day.ts';
+import { type Day, dayFromNumber, dayNumber, yearOf } from '#shared/units/day.ts';
 import { fullDate } from '#src/lib/format.ts';
-import type { ChartTokens } from '#src/ui/chart/tokens.ts';
-import { type Series, yearTicks } from './chart-series.ts';
+import type { ChartTokens } from './tokens.ts';
 
-/** Both charts give their amounts the same room at the left, so that a day stands at the same place in both. */
+/** Charts that stand one under the other give their amounts the same room at the left, so that a day stands at the same place in both. */
 export const AXIS_WIDTH = 64;
 export const RIGHT_EDGE = 14;
 
 type LinearOptions = NonNullable<NonNullable<ChartOptions<'line'>['scales']>[string]>;
 
 /** The days, with a year under the middle of each year. */
-export function dayAxis(series: Series, tokens: ChartTokens, labels: 'years' | 'none', most: number): LinearOptions {
-  const ticks = yearTicks(series.first, series.last, most, most < 10 ? 0.07 : 0.01);
+export function dayAxis(
+  span: { first: Day; last: Day },
+  tokens: ChartTokens,
+  labels: 'years' | 'none',
+  most: number,
+): LinearOptions {
+  const ticks = yearTicks(span.first, span.last, most, most < 10 ? 0.07 : 0.01);
   return {
     type: 'linear',
-    min: dayNumber(series.first),
-    max: dayNumber(series.last),
+    min: dayNumber(span.first),
+    max: dayNumber(span.last),
     display: labels === 'years',
     // A label at the edge may hang over it; it must not push the days out of line with the other chart.
     afterFit: (scale) => {
@@ -111,4 +115,16 @@ export function tooltipLook(tokens: ChartTokens) {
 
 export function dateOfTick(value: number): string {
   return fullDate(dayFromNumber(Math.round(value)));
+}
+
+/** The years whose middle lies in the chart, thinned to at most `most`; none within `edge` (a share of the width) of the end. */
+export function yearTicks(first: Day, last: Day, most: number, edge: number): { year: number; x: number }[] {
+  const years: { year: number; x: number }[] = [];
+  const end = dayNumber(last) - (dayNumber(last) - dayNumber(first)) * edge;
+  for (let year = yearOf(first); year <= yearOf(last); year += 1) {
+    const x = dayNumber(`${year}-07-01` as Day);
+    if (x >= dayNumber(first) && x <= end) years.push({ year, x });
+  }
+  const step = Math.max(1, Math.ceil(years.length / most));
+  return years.filter((_, index) => index % step === (step > 1 ? 1 : 0));
 }
