@@ -100,17 +100,27 @@ describe('what a tax preparer is given', () => {
     const preparer = await ours.person('Marisol', 'preparer');
     const { value } = await preparer.call(creditApi.view, { params: ours.params });
     expect(Object.keys(value).sort()).toEqual([
+      'basis',
       'checks',
       'credit',
       'earnedCents',
       'forms',
       'lines',
       'papers',
+      'plan',
       'receivedCents',
       'stillToCarryCents',
+      'undated',
       'usedCents',
+      'vintages',
     ]);
-    expect(Object.keys(value.credit ?? {}).sort()).toEqual(['costs', 'homeShare', 'placedInServiceOn', 'years']);
+    expect(Object.keys(value.credit ?? {}).sort()).toEqual([
+      'carriedIn',
+      'costs',
+      'homeShare',
+      'placedInServiceOn',
+      'years',
+    ]);
     expect(value.papers.map(({ fileName }) => fileName)).toEqual(['Priya.pdf']);
     const paper = await preparer.call(creditApi.paper, {
       params: { ...ours.params, documentId: value.papers[0]?.id ?? '' },
@@ -124,6 +134,7 @@ describe('what a tax preparer is given', () => {
     expect((await preparer.call(creditApi.paper, { params: { ...ours.params, documentId } })).status).toBe(404);
     expect((await ours.owner.call(creditApi.paper, { params: { ...ours.params, documentId } })).status).toBe(200);
     expect((await preparer.call(creditApi.summaryCsv, { params: ours.params })).status).toBe(200);
+    expect((await preparer.call(creditApi.summaryPdf, { params: ours.params })).status).toBe(200);
     const session = (await preparer.call(sessionApi.current)).value;
     expect(session?.households).toEqual([{ id: ours.id, name: '12 Tern Lane', role: 'preparer' }]);
   });
