@@ -69,7 +69,8 @@ export function ltvChart(view: MortgageView, tokens: ChartTokens, phone: boolean
               size: 14,
               weight: isThreshold(context.tick?.value) ? 600 : 400,
             }),
-            callback: (value) => `${value} %`,
+            // Where both thresholds would stand on each other, the upper one is named.
+            callback: (value) => (value === 78 && (phone || max - min > 34) ? '' : `${value} %`),
           },
         },
       },

@@ -27,7 +27,8 @@ export function LoanToValue({ view }: { view: MortgageView }) {
         <ol className="hint mt-1 flex flex-wrap gap-x-5">
           {flags.map((flag) => (
             <li key={flag.number}>
-              <b className="text-ink">{flag.number}</b> {flag.words}, {fullDate(flag.on)}
+              {!phone && <b className="text-ink">{flag.number} </b>}
+              {flag.words}, {fullDate(flag.on)}
             </li>
           ))}
         </ol>

@@ -5,6 +5,7 @@ import { pdfPen } from '#server/pdf/pdf-pen.ts';
 import { type Drawn, PAGE, recorded } from '#server/pdf/pen.ts';
 import { table } from '#server/pdf/table.ts';
 import { wrapText } from '#server/pdf/wrap.ts';
+import { pdfTexts } from '#tests/support/pdf-text.ts';
 
 const INFO = { title: 'A paper', madeOn: '2026-12-01' };
 const textsOf = (drawn: readonly Drawn[]) => drawn.filter((one) => one.kind === 'text');
@@ -103,6 +104,21 @@ describe('the file', () => {
       expect(width(letter), letter).not.toBe(width('?'));
     }
     expect(width('\u4e2d')).toBe(width('?'));
+  });
+
+  it('holds every text that was drawn, as letters that can be copied, on its page', async () => {
+    const file = pdfPen(INFO);
+    const { pen, drawn } = recorded(file.pen);
+    const flow = flowOn(pen);
+    flow.paragraph('Priya Łukaszewicz: −$12.40 of “office” tax, 30 %');
+    flow.newPage();
+    table(flow, [{ share: 1, align: 'right' }], ['Amount'], [{ cells: ['−$1,204.50'], kind: 'total' }]);
+    flow.finish({ head: 'Head', headRight: 'right', foot: 'Foot' });
+    const pages = pdfTexts(await file.end());
+    for (const page of [1, 2]) {
+      const said = textsOf(drawn).filter((one) => one.page === page);
+      expect(pages[page - 1]?.join('')).toBe(said.map(({ text }) => text).join(''));
+    }
   });
 
   it('is the same for the same content and day', async () => {
