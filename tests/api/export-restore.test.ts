@@ -94,7 +94,15 @@ beforeAll(async () => {
   (
     await owner.call(moneyApi.addReceipt, {
       params,
-      body: { on: '2025-10-02', amountCents: 9100, note: null, documentId: paper } as never,
+      body: {
+        on: '2025-10-02',
+        amountCents: 9100,
+        note: null,
+        from: '2025-06-14',
+        to: '2025-09-14',
+        quantityWh: 4_180_000,
+        documentId: paper,
+      } as never,
     })
   ).value;
   const care = {
