@@ -50,9 +50,9 @@ function rangeFrom(settled: readonly Float64Array[], evens: readonly (Day | null
   const high = Math.ceil(count * 0.9) - 1;
   const column = new Float64Array(count);
   const months = Array.from(settled[0] ?? [], (_, month) => {
-    for (const [at, line] of settled.entries()) column[at] = line[month] ?? 0;
+    for (const [at, line] of settled.entries()) column[at] = Number(line[month]);
     column.sort();
-    return { lowCents: cents(column[low] ?? 0), highCents: cents(column[high] ?? 0) };
+    return { lowCents: cents(Number(column[low])), highCents: cents(Number(column[high])) };
   });
   // A future that does not come even within the horizon comes after all that do.
   const inOrder = [...evens].sort((a, b) => (a === b ? 0 : a === null ? 1 : b === null ? -1 : a < b ? -1 : 1));
@@ -67,7 +67,7 @@ function rangeFrom(settled: readonly Float64Array[], evens: readonly (Day | null
 
 /** Draws one future after another: what is settled at the end of each month, in cents. Refuses where a plan refuses a drawn month. */
 function futures(basis: ProjectionBasis, parts: ProjectionParts, draw: (below: number) => number): () => Float64Array {
-  const { sides, months, energies, periods } = parts;
+  const { sides, months, periods } = parts;
   const fixed = fixedOf(parts);
   const table = drawTable(parts, urnsOf(basis));
   const opening = { ...basis.opening, balanceCents: null };
@@ -82,11 +82,10 @@ function futures(basis: ProjectionBasis, parts: ProjectionParts, draw: (below: n
     if (plain && !plain.ok) return refuse(plain.why);
     const settled = new Float64Array(months.length);
     let running = 0;
-    for (const at of energies.keys()) {
-      const drawn = chosen[at];
-      const without = plain ? plain.value.dueCents[at] : drawn?.plainCents;
-      running += (without ?? 0) - (roof.value.dueCents[at] ?? 0) + (drawn?.madeCents ?? 0);
-      settled[at] = (fixed[at] ?? 0) + running + (roof.value.bankCents[at] ?? 0);
+    for (const [at, drawn] of chosen.entries()) {
+      const without = plain ? plain.value.dueCents[at] : drawn.plainCents;
+      running += Number(without) - Number(roof.value.dueCents[at]) + drawn.madeCents;
+      settled[at] = Number(fixed[at]) + running + Number(roof.value.bankCents[at]);
     }
     return settled;
   };
@@ -96,10 +95,8 @@ function futures(basis: ProjectionBasis, parts: ProjectionParts, draw: (below: n
 function fixedOf({ months, bills, made }: ProjectionParts): number[] {
   let running = 0;
   return months.map((month, at) => {
-    const bill = bills[at];
-    const money = made[at];
-    running += (bill?.avoidedCents ?? 0) + (money?.incentiveCents ?? 0) + (money?.purchaseCents ?? 0);
-    return month.settledTodayCents - running - (bill?.bankCents ?? 0);
+    running += Number(bills[at]?.avoidedCents) + Number(made[at]?.incentiveCents) + Number(made[at]?.purchaseCents);
+    return month.settledTodayCents - running - Number(bills[at]?.bankCents);
   });
 }
 
