@@ -4,18 +4,24 @@ import { type Day, dayFromNumber, dayNumber, yearOf } from '#shared/units/day.ts
 import { fullDate } from '#src/lib/format.ts';
 import { flagsPlugin } from '#src/ui/chart/flags.ts';
 import type { ChartTokens } from '#src/ui/chart/tokens.ts';
-import { ltvFlags, ltvRows } from './insurance-days.ts';
+import type { LtvFlag } from './insurance-days.ts';
+
+/** What is drawn: put together by the page, so that the chart's own chunk needs nothing of the page's. */
+export type LtvDrawn = { view: MortgageView; rows: MortgageScheduleRow[]; flags: LtvFlag[] };
 
 /** Loan-to-value over time: of the original value, by the initial schedule, and of the last value stated, under the two thresholds. */
-export function ltvChart(view: MortgageView, tokens: ChartTokens, phone: boolean): ChartConfiguration<'line'> {
-  const rows = ltvRows(view);
+export function ltvChart(
+  { view, rows, flags: given }: LtvDrawn,
+  tokens: ChartTokens,
+  phone: boolean,
+): ChartConfiguration<'line'> {
   const first = rows[0];
   const last = rows.at(-1);
   const percents = rows.map((row) => (row.balanceCents / view.facts.originalValueCents) * 100);
   const latest = view.latest;
   const ofLatest = latest ? rows.filter((row) => row.on >= latest.on) : [];
   const all = [...percents, ...ofLatest.map((row) => (row.balanceCents / (latest?.valueCents ?? 1)) * 100), 80, 78];
-  const flags = phone ? [] : ltvFlags(view);
+  const flags = phone ? [] : given;
   const min = Math.floor((Math.min(...all) - 1) / 5) * 5;
   const max = Math.ceil((Math.max(...all) + 1) / 5) * 5;
   return {

@@ -1,4 +1,4 @@
-import { lazy, Suspense, useState } from 'react';
+import { lazy, Suspense, useMemo, useState } from 'react';
 import type { MortgageView } from '#shared/api/money-mortgage.ts';
 import { fullDate, money } from '#src/lib/format.ts';
 import { usePhone } from '#src/ui/use-media.ts';
@@ -12,7 +12,8 @@ export function LoanToValue({ view }: { view: MortgageView }) {
   const phone = usePhone();
   const [table, setTable] = useState(false);
   const summary = ltvSummary(view);
-  const flags = ltvFlags(view);
+  const drawn = useMemo(() => ({ view, rows: ltvRows(view), flags: ltvFlags(view) }), [view]);
+  const { flags } = drawn;
   return (
     <div className="min-w-0">
       <h3>Loan-to-value over time</h3>
@@ -34,7 +35,7 @@ export function LoanToValue({ view }: { view: MortgageView }) {
         </ol>
       )}
       <Suspense fallback={<div className="bone h-[300px]" aria-busy="true" />}>
-        <LtvChart view={view} summary={summary} phone={phone} />
+        <LtvChart drawn={drawn} summary={summary} phone={phone} />
       </Suspense>
       <p className="hint mt-1">{summary} Dashed: to come, if every payment is made as scheduled.</p>
       <p className="no-print">
