@@ -27,10 +27,9 @@ export function dueCauses({ instalment, settled, charges, balance }: BudgetFigur
     },
     { gives: settled, words: `The settlement of ${sayMoney(settled)} is counted twice.` },
     { gives: -settled, words: `The settlement of ${sayMoney(settled)} is left out.` },
-    {
-      gives: balance ?? 0,
-      words: `The budget balance of ${sayMoney(balance ?? difference)} is charged as if it were due.`,
-    },
+    ...(balance === null
+      ? []
+      : [{ gives: balance, words: `The budget balance of ${sayMoney(balance)} is charged as if it were due.` }]),
   ]);
 }
 

@@ -96,11 +96,10 @@ function priceCheck(
 function labelOf(plan: RatePlan, { label, lines, part }: LineGroup): string {
   const period = plan.calendar.periods.find(({ id }) => id === part?.period);
   const words = wordsOf(label);
-  const named = period === undefined || [...wordsOf(period.label)].every((word) => words.has(word));
+  const name = period?.label === '' ? period.id : period?.label;
+  const named = name === undefined || [...wordsOf(name)].every((word) => words.has(word));
   const tier = part?.tier == null || lines.some((line) => /\d|first|over|tier/i.test(line.label)) ? null : part.tier;
-  return [label, named ? null : period.label || period.id, tier === null ? null : `tier ${tier}`]
-    .filter((word) => word !== null)
-    .join(', ');
+  return [label, named ? null : name, tier === null ? null : `tier ${tier}`].filter((word) => word !== null).join(', ');
 }
 
 function unknownLine(line: PrintedLine, at: number): Check {

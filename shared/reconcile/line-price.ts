@@ -69,7 +69,8 @@ function placedPrice(
 function isPrintedOf(printed: string, lines: readonly PrintedLine[], kWh: string | null): boolean {
   if (kWh === null) return false;
   const off = exact(printed).minus(exact(kWh).abs()).abs();
-  const rounded = lines.reduce((sum, line) => sum.plus(lastDigit(line.quantity ?? '0')), new Exact(0));
+  const texts = lines.map((line) => line.quantity).filter((quantity) => quantity !== null);
+  const rounded = texts.reduce((sum, text) => sum.plus(lastDigit(text)), new Exact(0));
   return off.lte(rounded);
 }
 

@@ -1,5 +1,6 @@
 import type { PrintedLine } from '../facts/papers.ts';
-import type { Charge, RatePlan, RateRow, TierRow } from '../settlement/plan.ts';
+import { keptAt } from '../settlement/place.ts';
+import type { RatePlan, RateRow, TierRow } from '../settlement/plan.ts';
 import type { PriceOf } from '../settlement/price.ts';
 import { compare, qtyOfText } from '../settlement/quantity.ts';
 import type { SettledLine } from '../settlement/settlement.ts';
@@ -52,9 +53,10 @@ function pricesOf(plan: RatePlan, component: string): Prices | null {
   if (charge) return { rates: charge.rates, tiers: charge.tiers, words: wordsOf(charge.label) };
   const credit = plan.credits.find((one) => one.id === component);
   if (!credit) return null;
-  const shared = (id: string): Charge['rates'] => plan.charges.find((one) => one.id === id)?.rates ?? [];
+  const taken = credit.ratesOf?.charges ?? [];
+  const shared = plan.charges.filter((one) => taken.includes(one.id)).flatMap((one) => one.rates);
   return {
-    rates: credit.rates ?? credit.ratesOf?.charges.flatMap(shared) ?? [],
+    rates: credit.rates ?? shared,
     tiers: [],
     words: wordsOf(credit.label),
   };
@@ -95,21 +97,19 @@ function tiersOf(
   const last = Math.max(...prices.tiers.map((row) => row.limits.length)) + 1;
   const tiers: (number | null)[] = mine.map(() => null);
   for (const period of new Set(periods)) {
-    const places = mine.flatMap((_, index) => (periods[index] === period ? [index] : []));
+    const here = mine.map(({ line }, index) => ({ line, index })).filter(({ index }) => periods[index] === period);
     const rates = prices.rates.filter((row) => row.period === undefined || row.period === period);
-    const told = places.map((index) => {
-      const line = mine[index]?.line;
-      if (!line) return null;
-      return tierNamed(line.label, last) ?? only(atRate(rates, line).map((row) => row.tier));
-    });
+    const told = here.map(
+      ({ line }) => tierNamed(line.label, last) ?? only(atRate(rates, line).map((row) => row.tier)),
+    );
     const of = ours.filter((line) => line.period === period);
     const all = complete(
       told,
       placed(of, ({ tier }) => tier),
     );
     if (all === null) return null;
-    places.forEach((index, at) => {
-      tiers[index] = all[at] ?? null;
+    here.forEach(({ index }, at) => {
+      tiers[index] = keptAt(all, at);
     });
   }
   return new Set(tiers).size > 1 ? tiers : null;

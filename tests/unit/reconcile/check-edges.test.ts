@@ -53,6 +53,38 @@ describe('the bank’s opening', () => {
   });
 });
 
+describe('a mistake beside credit sent to another place', () => {
+  test('is found all the same: what was sent is no part of it', () => {
+    const sent = (at: number) => (s: Statement) => ({
+      ...s,
+      banks: s.banks.map((bank) => {
+        const lower = (text: string | null) => (text === null ? null : (Number(text) - 10).toFixed(2));
+        if (at === 1) return { ...bank, close: lower(bank.close), sentOut: '10.00' };
+        return { ...bank, open: lower(bank.open), close: lower(bank.close) };
+      }),
+    });
+    const built = buildHousehold();
+    const share = { ...built, house: { ...built.house, aggregation: 'share' as const } };
+    const facts = changed(2, sent(2), changed(1, sent(1), share));
+    expect(differing(facts, 1)).toEqual([]);
+    const doubled = changed(
+      1,
+      (s) => due(withLine('benefits', (line) => ({ ...line, amountCents: cents(line.amountCents * 10) }))(s)),
+      facts,
+    );
+    expect(check(doubled, 1, 'amountDue:').verdict).toBe('differs');
+    const lost = changed(
+      1,
+      (s) => ({
+        ...due(withLine('creditBank', (line) => ({ ...line, amountCents: cents(0) }))(s)),
+        banks: s.banks.map((bank) => ({ ...bank, open: '0.00', close: '27.05' })),
+      }),
+      facts,
+    );
+    expect(check(lost, 1, 'amountDue:').cause).toMatch(/^Credit brought in opens with nothing/);
+  });
+});
+
 describe('the account', () => {
   test('a previous balance is told by the last statement’s date, else by the last day it bills', () => {
     const facts = changed(1, (s) => ({ ...s, previousBalanceCents: cents((s.previousBalanceCents ?? 0) + 100) }));
@@ -112,6 +144,30 @@ describe('energy', () => {
     const short = { ...facts, intervals: facts.intervals.filter((one) => one.day !== '2025-06-20') };
     expect(check(short, 0, 'importAgainstIntervals:')).toMatchObject({ cause, found: null });
     expect(check(facts, 0, 'exportAgainstIntervals:')).toMatchObject({ cause, found: null });
+  });
+
+  test('billed in another unit is no kWh: then those beside the registers stand', () => {
+    const daily = changed(1, (s) => ({
+      ...withLine('energy', (line) => ({ ...line, unit: 'day', quantity: '31' }))(s),
+      reads: [],
+    }));
+    expect(check(daily, 1, 'importAgainstIntervals:').stated).toBe('520');
+    const parted = (unit: 'kWh' | 'day') =>
+      changed(1, (s) => ({
+        ...s,
+        importWh: null,
+        reads: [],
+        lines: s.lines.flatMap((line) =>
+          line.component === 'energy' || line.component === 'benefits'
+            ? [
+                { ...line, quantity: '300' },
+                { ...line, quantity: '220', unit },
+              ]
+            : [line],
+        ),
+      }));
+    expect(check(parted('kWh'), 1, 'importAgainstIntervals:').stated).toBe('520');
+    expect(check(parted('day'), 1, 'importAgainstIntervals:').stated).toBeNull();
   });
 
   test('readings missing on days that have others are counted apart from whole days', () => {

@@ -101,6 +101,18 @@ describe('a charge priced by time of day', () => {
     ]);
   });
 
+  test('is named by the period’s id where the plan gives it no label', () => {
+    const plain = planWith({
+      calendar: { periods: PERIODS.map(({ label: _, ...period }) => period) },
+      charges: [{ ...ENERGY, rates: BY_PERIOD }],
+    });
+    const facts = printed(plain, [line('Energy', '220', '0.300', 6600), line('Energy', '300', '0.1', 3000)]);
+    expect(prices(facts).map(([key, title]) => [key, title])).toEqual([
+      ['linePrice:energy:peak', 'Price of Energy, peak'],
+      ['linePrice:energy:off', 'Price of Energy, off'],
+    ]);
+  });
+
   test('takes its lines together where one of them cannot be told', () => {
     const facts = printed(TIME_OF_USE, [line('Energy, on-peak', '220', null, 6600), line('Energy', '300', null, 3000)]);
     expect(prices(facts).map(([key]) => key)).toEqual(['linePrice:energy']);

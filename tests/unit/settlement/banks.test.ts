@@ -216,6 +216,26 @@ describe('a USD bank', () => {
     ]);
   });
 
+  test.each([
+    // 15 days at $0.53 and 15 at $0.63: $17.40; of two monthly minimums half each: $17.50.
+    ['day', '0.53', '0.63', '-15.10'],
+    ['cycle', '15.00', '20.00', '-15.00'],
+  ])(
+    'keeps a minimum by the %s whose amount changes inside the cycle for the days of each',
+    (per, before, after, credit) => {
+      const rates = [
+        { from: '2025-01-01', rate: before },
+        { from: '2026-07-01', rate: after },
+      ];
+      const floor = { id: 'least', label: 'Minimum bill', kind: 'minimum', basis: 'floor', per, on: ['energy'], rates };
+      const { lines } = settled(
+        banked({ keepMinimum: 'least' }, [ENERGY, floor]),
+        usage({ import: 325, export: 234.1 }),
+      ).settlement;
+      expect(said(lines)).toContain(`dollars = ${credit}`);
+    },
+  );
+
   test('under belowZero takes its lines whole, has no credit line, and is billed at a true-up when it owes', () => {
     const of = banked({ belowZero: true, trueUps: [{ at: { months: [7] }, action: 'expire' }] });
     const result = settled(of, usage({ import: 300, export: 100 }));
