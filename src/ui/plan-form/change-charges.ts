@@ -56,12 +56,20 @@ export function withoutCharge(form: PlanForm, id: string): PlanForm {
   };
 }
 
-/** A charge put before the taxes and minimums that may be worked out on it. */
+/** A charge put before the taxes and minimums that may be worked out on it; a tax that was on every charge is on this one too. */
 export function withCharge(form: PlanForm, charge: ChargeForm): ChargeForm[] {
-  if (charge.basis === 'percent' || charge.basis === 'floor') return [...form.charges, charge];
-  const at = form.charges.findIndex((one) => one.basis === 'percent' || one.basis === 'floor');
-  const place = at < 0 ? form.charges.length : at;
-  return [...form.charges.slice(0, place), charge, ...form.charges.slice(place)];
+  if (isWorkedOut(charge)) return [...form.charges, charge];
+  const bare = form.charges.filter((one) => !isWorkedOut(one)).map(({ id }) => id);
+  const onAll = ({ basis, on }: ChargeForm) =>
+    basis === 'percent' && bare.length > 0 && bare.every((id) => on.includes(id));
+  const charges = form.charges.map((one) => (onAll(one) ? { ...one, on: [...one.on, charge.id] } : one));
+  const at = charges.findIndex(isWorkedOut);
+  const place = at < 0 ? charges.length : at;
+  return [...charges.slice(0, place), charge, ...charges.slice(place)];
+}
+
+function isWorkedOut({ basis }: ChargeForm): boolean {
+  return basis === 'percent' || basis === 'floor';
 }
 
 /** Another price on each kWh is counted as the first is. */

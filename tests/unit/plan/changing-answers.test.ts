@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { parsePlan } from '#shared/settlement/parse-plan.ts';
 import { withPricesCarried } from '#src/ui/plan-form/carry-prices.ts';
+import { withCharge } from '#src/ui/plan-form/change-charges.ts';
 import { exportRuleOf, withExportRule } from '#src/ui/plan-form/export-rule.ts';
 import { minimumTaxOf, taxesOn, withMinimumTax } from '#src/ui/plan-form/minimum-tax.ts';
 import { emptyPlanForm, newBank, newCharge, newCredit } from '#src/ui/plan-form/new-parts.ts';
@@ -135,6 +136,26 @@ describe('a minimum bill and its tax', () => {
     const apart = form([tax, floor]);
     expect(taxesOn(apart, found(apart)).map(({ id }) => id)).toEqual(['tax']);
     expect(minimumTaxOf(apart, found(apart))).toBeNull();
+  });
+});
+
+describe('a charge added later', () => {
+  const added = (on: string[]) => {
+    const form = emptyPlanForm(FROM);
+    const tax = newCharge('tax', 'Tax', 'tax', 'percent', { on });
+    const charges = withCharge(
+      { ...form, charges: [...form.charges, tax] },
+      newCharge('wires', 'Wires', 'import', 'import'),
+    );
+    return { ids: charges.map(({ id }) => id), on: charges.at(-1)?.on };
+  };
+
+  it('stands above the tax, which is on it too where it was on everything', () => {
+    expect(added(['energy', 'customer'])).toEqual({
+      ids: ['energy', 'customer', 'wires', 'tax'],
+      on: ['energy', 'customer', 'wires'],
+    });
+    expect(added(['energy']).on).toEqual(['energy']);
   });
 });
 
