@@ -1,10 +1,11 @@
 import type { Opening } from '../settlement/settlement.ts';
 import type { Wh } from '../units/energy.ts';
-import { basisOf, type ProjectionBasis } from './basis.ts';
+import type { ProjectionBasis } from './basis.ts';
 import { positionEvents } from './events.ts';
 import { marginFigures, paceFigure, settledFigures } from './figures.ts';
 import { type FoldInput, foldPosition, type PositionCycle } from './fold.ts';
 import { loansOf } from './loans.ts';
+import { basisOf } from './make-basis.ts';
 import type { Position } from './position.ts';
 import { type ProjectionFacts, projectFrom } from './project.ts';
 import { sumsByBook } from './sums.ts';
