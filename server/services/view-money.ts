@@ -1,13 +1,15 @@
 import type { MoneyView } from '#shared/api/money.ts';
 import type { BookId, Entry } from '#shared/books/book.ts';
 import { costToDate } from '#shared/books/costs.ts';
-import { levelPayment, loanPayoff, loanSchedule } from '#shared/books/loan.ts';
+import { loanClearedOn, loanPayoff } from '#shared/books/loan.ts';
+import { loanBook } from '#shared/books/loan-book.ts';
 import { governingEnd, insuranceEnds } from '#shared/books/mortgage-insurance.ts';
 import { isOfSolarLoan } from '#shared/books/other-money.ts';
 import { type CostFacts, INCOME_KINDS } from '#shared/facts/house.ts';
-import { type Cents, negateCents, sumCents } from '#shared/units/cents.ts';
+import { type Cents, negateCents, sumCents, ZERO_CENTS } from '#shared/units/cents.ts';
 import type { Deps } from '../deps.ts';
 import { type HouseholdLedger, ledgerOf } from './ledger-of.ts';
+import { nextPayment } from './money/loan-view.ts';
 import { viewIncentive } from './view-incentive.ts';
 
 function sumOf(entries: readonly Entry[], book: BookId, counted: boolean): Cents {
@@ -21,27 +23,18 @@ function sumOf(entries: readonly Entry[], book: BookId, counted: boolean): Cents
 function loanView({ facts, ledger, today }: HouseholdLedger): MoneyView['loan'] {
   const { loan } = facts;
   if (loan === null) return null;
-  const schedule = loanSchedule(loan).map((row) => ({
-    number: row.number,
-    on: row.on,
-    paymentCents: row.paymentCents,
-    interestCents: row.interestCents,
-    principalCents: row.principalCents,
-    balanceCents: row.balanceCents,
-    recorded: row.recorded,
-    past: row.on <= today,
-  }));
+  const book = loanBook(loan);
   const payoff = loanPayoff(loan, today);
+  const paid = book.steps.filter(({ on }) => on <= today);
   return {
     facts: loan,
-    paymentCents: levelPayment(loan.principalCents, loan.annualRate, loan.termMonths),
+    paymentCents: nextPayment(book, today)?.payment.amountCents ?? ZERO_CENTS,
     payoffCents: payoff.amountCents,
     payoff,
     payoffOn: today,
     paidCents: negateCents(sumOf(ledger.entries.filter(isOfSolarLoan), 'loan', true)),
-    interestPaidCents: sumCents(schedule.filter((row) => row.past).map((row) => row.interestCents)),
-    lastPaymentOn: schedule.at(-1)?.on ?? null,
-    schedule,
+    interestPaidCents: sumCents(paid.map(({ interestCents }) => interestCents)),
+    lastPaymentOn: loanClearedOn(loan),
   };
 }
 

@@ -15,23 +15,11 @@ import { daySchema } from '../units/day.ts';
 import { whSchema } from '../units/energy.ts';
 import { endpoint, HOUSEHOLD, OWNER } from './endpoint.ts';
 
-export const scheduleRow = z.object({
-  number: z.int(),
-  on: daySchema,
-  paymentCents: centsSchema,
-  interestCents: centsSchema,
-  principalCents: centsSchema,
-  balanceCents: centsSchema,
-  /** True where a recorded payment stands in for the scheduled one. */
-  recorded: z.boolean(),
-  past: z.boolean(),
-});
-export type ScheduleRow = z.infer<typeof scheduleRow>;
-
 export const moneyView = z.object({
   loan: z.nullable(
     z.object({
       facts: loanSchema,
+      /** The next payment to schedule; zero once none is left. */
       paymentCents: centsSchema,
       payoffCents: centsSchema,
       /** The same with its working. */
@@ -40,7 +28,6 @@ export const moneyView = z.object({
       paidCents: centsSchema,
       interestPaidCents: centsSchema,
       lastPaymentOn: z.nullable(daySchema),
-      schedule: z.array(scheduleRow),
     }),
   ),
   insurance: z.nullable(

@@ -64,7 +64,7 @@ function outcomeOf(
     prepaid,
     prepaidCents,
     next: next === undefined ? null : { amountCents: next.regularCents, working: workingOf(next) },
-    interest: interestOf(steps),
+    interest: loanInterest(steps),
     clearedOn: steps.at(-1)?.on ?? dueOn,
   };
 }
@@ -73,7 +73,8 @@ function workingOf(step: LoanStep): Working {
   return step.level === null ? restWorking(step) : levelWorking(step.level);
 }
 
-function interestOf(steps: readonly LoanStep[]): Figure {
+/** All interest of a loan, what joined the principal included, by calendar year. */
+export function loanInterest(steps: readonly LoanStep[]): Figure {
   const years = new Map<number, Cents>();
   for (const step of steps) {
     const year = yearOf(step.on);

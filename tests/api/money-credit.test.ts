@@ -3,6 +3,7 @@ import { csvText } from '#server/services/csv-text.ts';
 import { creditApi } from '#shared/api/credit.ts';
 import { logApi } from '#shared/api/log.ts';
 import { moneyApi } from '#shared/api/money.ts';
+import { moneyLoanApi } from '#shared/api/money-loan.ts';
 import { peopleApi } from '#shared/api/people.ts';
 import { positionApi } from '#shared/api/position.ts';
 import { setupApi } from '#shared/api/setup.ts';
@@ -70,8 +71,9 @@ describe('money', () => {
       ...PLAIN,
     };
     const paid = (await home.owner.call(moneyApi.addLoanPayment, { params: home.params, body })).value;
-    expect(paid.loan?.schedule.filter(({ recorded }) => recorded)).toMatchObject([
-      { on: '2025-09-02', paymentCents: 100_000 },
+    const { loan } = (await home.owner.call(moneyLoanApi.view, { params: home.params })).value;
+    expect(loan?.schedule.filter(({ recorded }) => recorded)).toMatchObject([
+      { on: '2025-09-02', payment: { amountCents: 100_000 } },
     ]);
     expect(paid.loan?.payoffCents).toBeLessThan(before.loan?.payoffCents ?? 0);
     const id = paid.loan?.facts.payments[0]?.id ?? '';

@@ -1,6 +1,6 @@
 import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type * as z from 'zod/mini';
-import { type loanPaymentBody, type MoneyView, moneyApi, type receiptBody } from '#shared/api/money.ts';
+import { type MoneyView, moneyApi, type receiptBody } from '#shared/api/money.ts';
 import { call } from '#src/lib/api.ts';
 
 export const moneyQuery = (householdId: string) =>
@@ -11,9 +11,8 @@ export const moneyQuery = (householdId: string) =>
 
 /** What can be recorded or taken back on the Money screen. */
 export type MoneyChange =
-  | { kind: 'loanPayment'; body: z.infer<typeof loanPaymentBody> }
   | { kind: 'receipt'; body: z.infer<typeof receiptBody> }
-  | { kind: 'removeLoanPayment' | 'removeReceipt'; id: string };
+  | { kind: 'removeReceipt'; id: string };
 
 /** Makes one change and keeps the answered view; every other screen of the household asks again. */
 export function useMoneyChange(householdId: string) {
@@ -22,12 +21,8 @@ export function useMoneyChange(householdId: string) {
     mutationFn: (change: MoneyChange): Promise<MoneyView> => {
       const params = { householdId };
       switch (change.kind) {
-        case 'loanPayment':
-          return call(moneyApi.addLoanPayment, { params, body: change.body });
         case 'receipt':
           return call(moneyApi.addReceipt, { params, body: change.body });
-        case 'removeLoanPayment':
-          return call(moneyApi.removeLoanPayment, { params: { householdId, id: change.id } });
         case 'removeReceipt':
           return call(moneyApi.removeReceipt, { params: { householdId, id: change.id } });
       }

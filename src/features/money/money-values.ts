@@ -1,5 +1,5 @@
 import type * as z from 'zod/mini';
-import type { loanPaymentBody, receiptBody } from '#shared/api/money.ts';
+import type { receiptBody } from '#shared/api/money.ts';
 import { type Cents, cents, parseDollars } from '#shared/units/cents.ts';
 import { addDays, type Day, parseDay } from '#shared/units/day.ts';
 import { parseKwh, type Wh } from '#shared/units/energy.ts';
@@ -8,31 +8,6 @@ import { FaultList, type Reading } from '#src/lib/form.ts';
 const NO_DATE = 'Write a date that exists.';
 const NO_AMOUNT = 'Write an amount such as 244.93.';
 const SOME_DAY = '1970-01-01' as Day;
-
-export type LoanPaymentValues = {
-  on: string;
-  amountCents: string;
-  extraPrincipalCents: string;
-  note: string;
-  documentId: string;
-};
-
-export function readLoanPayment(values: LoanPaymentValues): Reading<z.infer<typeof loanPaymentBody>> {
-  const list = new FaultList();
-  const amountCents = list.needed(values.amountCents, aboveZero, 'amountCents', NO_AMOUNT, cents(1));
-  const extra = list.optional(values.extraPrincipalCents, zeroOrMore, 'extraPrincipalCents', NO_AMOUNT) ?? cents(0);
-  if (extra > amountCents) {
-    list.add('extraPrincipalCents', 'The extra principal is a part of the payment and cannot be more than it.');
-  }
-  return list.reading({
-    on: list.needed(values.on, parseDay, 'on', NO_DATE, SOME_DAY),
-    amountCents,
-    extraPrincipalCents: extra,
-    note: noteOf(values.note),
-    reamortize: false,
-    documentId: paperOf(values.documentId),
-  });
-}
 
 /** `from` and `to` are the first and the last day paid for, as people write them; the body's `to` is the day after. */
 export type ReceiptValues = {
@@ -68,14 +43,9 @@ export function readReceipt(values: ReceiptValues): Reading<z.infer<typeof recei
   });
 }
 
-function aboveZero(text: string): Cents | null {
+function _aboveZero(text: string): Cents | null {
   const amount = parseDollars(text);
   return amount !== null && amount > 0 ? amount : null;
-}
-
-function zeroOrMore(text: string): Cents | null {
-  const amount = parseDollars(text);
-  return amount !== null && amount >= 0 ? amount : null;
 }
 
 function kwhFromZero(text: string): Wh | null {
