@@ -19,7 +19,12 @@ const householdRoutes: RouteObject[] = [
     path: 'cycles/:to',
     lazy: async () => ({ Component: (await import('#src/features/cycles/cycle-page.tsx')).CyclePage }),
   },
+  {
+    path: 'money/loan',
+    lazy: async () => ({ Component: (await import('#src/features/money/loan-page.tsx')).LoanPage }),
+  },
   { path: 'money', lazy: async () => ({ Component: (await import('#src/features/money/money-page.tsx')).MoneyPage }) },
+  { path: 'try', lazy: async () => ({ Component: (await import('#src/features/try/try-page.tsx')).TryPage }) },
   {
     path: 'credit',
     lazy: async () => ({ Component: (await import('#src/features/credit/credit-page.tsx')).CreditPage }),
