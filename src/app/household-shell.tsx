@@ -128,7 +128,7 @@ function BottomBar({ base, owner, places }: { base: string; owner: boolean; plac
           More
         </summary>
         <ul className="absolute right-0 bottom-full mb-2 min-w-44 rounded-md border border-rule bg-sheet py-2 shadow-lg">
-          {[...rest, { to: 'account', label: 'Account' }].map((place) => (
+          {[...rest, { to: 'try', label: 'Try a change' }, { to: 'account', label: 'Account' }].map((place) => (
             <li key={place.to}>
               <Link to={`${base}/${place.to}`} className="flex min-h-11 items-center px-5 no-underline">
                 {place.label}

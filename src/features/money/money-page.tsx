@@ -29,6 +29,11 @@ function Money({ view, household }: { view: MoneyView; household: HouseholdConte
       <Sentence title="Money" lede={<Lede view={view} />}>
         <Headline view={view} />
       </Sentence>
+      <p className="no-print mt-4">
+        <ButtonLink to={`${base}/try`} look="plain">
+          Try a change
+        </ButtonLink>
+      </p>
       <div className="grid items-start gap-x-[26px] lg:grid-cols-2">
         <div className="min-w-0">
           {view.loan ? (

@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { lazy, Suspense, useMemo, useState } from 'react';
+import { Link } from 'react-router-dom';
 import type { Position } from '#shared/position/position.ts';
 import { useHousehold } from '#src/lib/household.ts';
 import { Prose } from '#src/ui/prose.tsx';
@@ -45,7 +46,12 @@ export function RunningSheet({ position }: { position: Position }) {
         <p className="hint grow basis-[560px]">
           <Prose text={summary} />
         </p>
-        <p className="no-print flex flex-wrap gap-x-5 text-[15px]">
+        <p className="no-print flex flex-wrap items-baseline gap-x-5 text-[15px]">
+          {position.projection && (
+            <Link to="try" className="inline-flex min-h-11 items-center sm:min-h-0">
+              Try a change
+            </Link>
+          )}
           {(series.cut || whole) && (
             <button type="button" className="link min-h-11 sm:min-h-0" onClick={() => setWhole(!whole)}>
               {whole ? 'Show less of it' : 'Show the whole projection'}
