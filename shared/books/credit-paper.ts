@@ -35,6 +35,5 @@ export function creditPaperKind(fileName: string): CreditPaperKind {
 export function namedAs(fileName: string, kind: CreditPaperKind): string {
   const { rest } = split(fileName);
   if (creditPaperKind(rest) === kind) return rest;
-  const known = CREDIT_PAPER_KINDS.find((one) => one.kind === kind);
-  return known ? `${known.in}, ${rest}` : rest;
+  return CREDIT_PAPER_KINDS.filter((one) => one.kind === kind).reduce((name, one) => `${one.in}, ${name}`, rest);
 }

@@ -1,6 +1,6 @@
 import type { LenderBalance, MortgageFacts } from '../facts/finance.ts';
 import { addCents, type Cents, cents, subtractCents, ZERO_CENTS } from '../units/cents.ts';
-import { addDays, addMonths, type Day, dayOf, monthOf, yearOf } from '../units/day.ts';
+import { addDays, addMonths, type Day, dayOf, daysBetween, monthOf, yearOf } from '../units/day.ts';
 import { exact } from '../units/rate.ts';
 import { type AmortizedRow, amortize } from './amortize.ts';
 import { interestRule } from './interest.ts';
@@ -35,7 +35,7 @@ export function mortgageBook(mortgage: MortgageFacts): MortgageBook {
 
 function actualRows(mortgage: MortgageFacts, level: Cents): MortgageRow[] {
   const interest = interestRule(mortgage.annualRate);
-  const stated = [...mortgage.balances].sort((a, b) => (a.on < b.on ? -1 : a.on > b.on ? 1 : 0));
+  const stated = [...mortgage.balances].sort((a, b) => daysBetween(b.on, a.on));
   /** The last balance stated from one payment to the next. */
   const statedIn = (number: number) =>
     stated.findLast(
@@ -77,11 +77,11 @@ export function mostCents(valueCents: Cents, share: string): Cents {
   return cents(exact(share).times(valueCents).floor().toNumber());
 }
 
-/** The first payment after which the balance is at or below the share; 0 when it begins there, null when it never is. */
-export function paymentReaching(mortgage: MortgageFacts, rows: readonly AmortizedRow[], share: string): number | null {
+/** The first payment after which the balance is at or below the share of the original value; 0 when it begins there. Every schedule comes to zero. */
+export function paymentReaching(mortgage: MortgageFacts, rows: readonly AmortizedRow[], share: string): number {
   const most = mostCents(mortgage.originalValueCents, share);
   if (mortgage.principalCents <= most) return 0;
-  return rows.find((row) => row.balanceCents <= most)?.number ?? null;
+  return rows.findIndex((row) => row.balanceCents <= most) + 1;
 }
 
 /** The last payment due on or before a day; 0 when none is. */

@@ -30,7 +30,7 @@ export type InsuranceEnd = {
 };
 
 /** The end that counts; `rule` is null where the mortgage's own end, or none of the rules, decides. */
-export type GoverningEnd = { rule: InsuranceEndRule | null; on: Day | null; payment: number | null; words: string };
+export type GoverningEnd = { rule: InsuranceEndRule | null; on: Day | null; payment: number; words: string };
 
 /** FHA insurance of a loan at or under 90 % of the value ends after eleven years (from memory; ask the servicer). */
 const FHA_PERCENT = 90;
@@ -50,20 +50,18 @@ function request80(mortgage: MortgageFacts): InsuranceEnd {
   const { initial, actual } = mortgageBook(mortgage);
   const scheduled = paymentReaching(mortgage, initial, '0.80');
   const paid = paymentReaching(mortgage, actual, '0.80');
-  const byPayments = paid !== null && (scheduled === null || paid < scheduled);
+  const byPayments = paid < scheduled;
   const how = byPayments ? 'by actual payments' : 'by the initial schedule';
-  return end(mortgage, 'request80', byPayments ? paid : scheduled, byPayments ? 'actual payments' : 'schedule', {
-    never: 'The balance never comes down to 80 % of the original value',
-    reached: `On request, when the balance reaches 80 % of the original value ${how}`,
-  });
+  const words = `On request, when the balance reaches 80 % of the original value ${how}`;
+  return byPayments
+    ? end(mortgage, 'request80', paid, 'actual payments', words)
+    : end(mortgage, 'request80', scheduled, 'schedule', words);
 }
 
 function automatic78(mortgage: MortgageFacts): InsuranceEnd {
   const payment = paymentReaching(mortgage, mortgageBook(mortgage).initial, '0.78');
-  return end(mortgage, 'automatic78', payment, 'initial schedule', {
-    never: 'The balance never comes down to 78 % of the original value',
-    reached: 'By itself, when the initial schedule reaches 78 % of the original value',
-  });
+  const words = 'By itself, when the initial schedule reaches 78 % of the original value';
+  return end(mortgage, 'automatic78', payment, 'initial schedule', words);
 }
 
 function midpoint(mortgage: MortgageFacts): InsuranceEnd {
@@ -103,30 +101,29 @@ const SHARES: Record<ShareRule, { share: string; source: string }> = {
   automatic78: { share: '0.78', source: '12 U.S.C. 4902(b)' },
 };
 
-function end(
-  mortgage: MortgageFacts,
-  ruleId: ShareRule,
-  payment: number | null,
-  by: Basis,
-  words: { never: string; reached: string },
-): InsuranceEnd {
-  const { source } = SHARES[ruleId];
-  const most = mostFigure(mortgage, ruleId, payment, by);
-  if (payment === null) return { rule: ruleId, on: null, payment: null, by: null, words: words.never, source, most };
+function end(mortgage: MortgageFacts, ruleId: ShareRule, payment: number, by: Basis, reached: string): InsuranceEnd {
   const on = mortgagePaymentDay(mortgage, payment);
   const when = payment === 0 ? 'at the start' : `with payment ${payment} on ${sayDate(on)}`;
-  return { rule: ruleId, on, payment, by, words: `${words.reached}: ${when}`, source, most };
+  return {
+    rule: ruleId,
+    on,
+    payment,
+    by,
+    words: `${reached}: ${when}`,
+    source: SHARES[ruleId].source,
+    most: mostFigure(mortgage, ruleId, payment, by),
+  };
 }
 
 /** The threshold in dollars, with the balances around it: whole cents not above the share of the original value. */
-function mostFigure(mortgage: MortgageFacts, ruleId: ShareRule, payment: number | null, by: Basis): Figure {
+function mostFigure(mortgage: MortgageFacts, ruleId: ShareRule, payment: number, by: Basis): Figure {
   const { share, source } = SHARES[ruleId];
   const value = mortgage.originalValueCents;
   const amountCents = mostCents(value, share);
   const rows = by === 'actual payments' ? mortgageBook(mortgage).actual : mortgageBook(mortgage).initial;
   const after = (number: number) => rows[number - 1]?.balanceCents ?? mortgage.principalCents;
   const around =
-    payment === null || payment === 0
+    payment === 0
       ? ''
       : `. The balance is ${sayMoney(after(payment - 1))} before payment ${payment} and ${sayMoney(after(payment))} after it`;
   return {
@@ -138,9 +135,7 @@ function mostFigure(mortgage: MortgageFacts, ruleId: ShareRule, payment: number 
       inputs: [
         usdInput('value', 'Original value', value, stated('Mortgage as entered')),
         plainInput('share', 'Share', share, 'fraction', rule('Homeowners Protection Act', source)),
-        ...(payment === null
-          ? []
-          : [usdInput('after', `Balance after payment ${payment}`, after(payment), stated('Mortgage schedule'))]),
+        usdInput('after', `Balance after payment ${payment}`, after(payment), stated('Mortgage schedule')),
       ],
       unit: 'USD',
       basis: 'computed',
@@ -177,7 +172,7 @@ export function governingEnd(mortgage: MortgageFacts): GoverningEnd {
   const endedOn = mortgage.endedOn;
   if (endedOn === null) return byRule;
   const payment = lastPaymentBy(mortgage, endedOn);
-  if (byRule.payment !== null && byRule.payment <= payment) return byRule;
+  if (byRule.payment <= payment) return byRule;
   return {
     rule: null,
     on: endedOn,
@@ -192,11 +187,13 @@ function ruleEnd(mortgage: MortgageFacts): GoverningEnd {
   }
   if (mortgage.kind === 'fha') return fhaEnd(mortgage);
   const chosen = mortgage.insurance?.endRule ?? 'prudent';
-  const ends = insuranceEnds(mortgage).filter((one) => one.payment !== null);
+  const ends = insuranceEnds(mortgage).flatMap((one): GoverningEnd[] =>
+    one.payment === null ? [] : [{ ...one, payment: one.payment }],
+  );
   const picked = ends.find((one) => one.rule === chosen);
   if (picked) return picked;
-  const first = [...ends].sort((a, b) => (a.payment ?? 0) - (b.payment ?? 0))[0];
-  if (!first) throw new Error('a conventional mortgage always has a midpoint');
+  // There is always a midpoint, so that there is always a first.
+  const first = ends.reduce((least, one) => (one.payment < least.payment ? one : least));
   return chosen === 'prudent' ? first : { ...first, words: `${first.words}. The rule you chose has no day yet` };
 }
 

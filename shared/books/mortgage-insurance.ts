@@ -19,7 +19,7 @@ export function insuranceEntries(mortgage: MortgageFacts, through: Day): Unplace
   const { insurance } = mortgage;
   if (insurance === null || insurance.removedOn === null || !insurance.becauseOfRoof) return [];
   const ending = governingEnd(mortgage);
-  const last = Math.min(ending.payment ?? mortgage.termMonths, lastPaymentBy(mortgage, through));
+  const last = Math.min(ending.payment, lastPaymentBy(mortgage, through));
   const paidBefore = lastPaymentBy(mortgage, insurance.removedOn);
   const firstNumber = mortgagePaymentDay(mortgage, paidBefore) === insurance.removedOn ? paidBefore : paidBefore + 1;
   const workings = new Map<number, Working>();

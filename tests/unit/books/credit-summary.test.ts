@@ -51,6 +51,14 @@ describe('the preparer’s summary', () => {
     expect(summary.cautions.at(-1)).toBe('Carryforward shown is unused, not guaranteed.');
   });
 
+  it('lists a year before anything is typed of it, and takes no basis off for a credit that is not known', () => {
+    expect(creditSummary(creditOf({ years: [] })).years).toMatchObject([
+      { taxYear: 2024, status: 'notListed', limitTypedBy: null, limitFrom: null, documentId: null, filedOn: null },
+    ]);
+    const unknown = creditSummary(creditOf({ years: [creditYear(2024, null, { status: 'amended' })] }));
+    expect(unknown.years).toMatchObject([{ status: 'amended', basisReductionCents: 0, limitFrom: null }]);
+  });
+
   it('leaves a check open while a limit is missing', () => {
     const summary = creditSummary(creditOf({ years: [creditYear(2024, null, {}), creditYear(2025, 1, {})] }));
     expect(summary.checks.map((check) => check.agrees)).toEqual([null, null]);

@@ -75,6 +75,24 @@ describe('vintages of the credit', () => {
     expect(creditLinesOf(credit)[0]?.line6bCents).toBe(750_000);
   });
 
+  it('have a law behind their rate, or none where no year had a credit', () => {
+    const before = creditOf({ placedInServiceOn: day('2005-06-01'), years: [] });
+    expect(creditVintages(before)).toMatchObject([{ state: 'noCredit', law: 'no credit in this year' }]);
+  });
+
+  it('are each named where the credit of several is still to come', () => {
+    const label = creditStillToCome(twoVintages(), day('2024-01-01')).working.inputs[0]?.label;
+    expect(label).toBe('Line 6b of 2021 and 2023');
+  });
+
+  it('may have no roof beside them: a part completed on a day of its own is named by the credit alone', () => {
+    const part = { ...creditCost('Second array', 1_000_000, 'qualified'), placedInServiceOn: day('2023-06-01') };
+    const credit = creditOf({ placedInServiceOn: null, costs: [part], years: [] });
+    const figure = creditStillToCome(credit, day('2024-01-01'));
+    expect(figure.amountCents).toBe(300_000);
+    expect(figure.working.inputs[0]?.label).toBe('Credit earned');
+  });
+
   it('need a day of completion: a cost without one earns nothing and is named', () => {
     const credit = creditOf({ placedInServiceOn: null, years: [] });
     expect(creditVintages(credit)).toEqual([]);

@@ -44,6 +44,13 @@ describe('what an investor’s rule asks on the value of today', () => {
     expect(stateOf(rule, 'seasoning')).toBe(seasoning);
   });
 
+  it('says that the texts do not settle what an improvement allows from two years to five', () => {
+    const next = (improvedOn: string | null) =>
+      asked('2026-06-01', 600_000, {}, improvedOn).rule.conditions.find((one) => one.id === 'seasoning')?.next;
+    expect(next('2025-02-01')).toContain('not clear');
+    expect(next(null)).toBeNull();
+  });
+
   it('asks for 70 % and over two years of two to four units or an investment', () => {
     expect(asked('2026-06-01', 600_000, { units: 2 }).rule.share).toBe('0.70');
     expect(asked('2026-06-01', 600_000, { occupancy: 'investment' }).rule.share).toBe('0.70');
@@ -121,10 +128,16 @@ describe('the checklist toward the request', () => {
     expect(lines({ requestedOn: day('2026-05-20') }).letter).toMatchObject({ state: 'ready', next: null });
   });
 
+  it('cannot be made without the rule’s conditions', () => {
+    const { mortgage, balance, rule } = asked('2026-06-01', 600_000);
+    const none = { ...rule, conditions: [] };
+    expect(() => removalChecklist(mortgage, none, balance, { today: day('2026-06-01'), security: null })).toThrow();
+  });
+
   it('takes a statement of the last two months for the balance, an older one no longer', () => {
     expect(lines({ balances: balanceOf('2026-04-01') }).balance?.state).toBe('ready');
     expect(lines({ balances: balanceOf('2026-03-30') }).balance?.state).toBe('open');
-    expect(lines({ balances: [...balanceOf('2026-03-30'), ...balanceOf('2026-05-30')] }).balance?.state).toBe('ready');
+    expect(lines({ balances: [...balanceOf('2026-05-30'), ...balanceOf('2026-03-30')] }).balance?.state).toBe('ready');
     expect(lines({ balances: balanceOf('2026-06-02') }).balance?.known).toContain('by the schedule');
   });
 

@@ -1,7 +1,13 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { amortize } from '#shared/books/amortize.ts';
-import { mortgageBalanceAfter, mortgageBook, paymentReaching } from '#shared/books/mortgage-balance.ts';
+import {
+  amortizationMidpoint,
+  lastPaymentBy,
+  mortgageBalanceAfter,
+  mortgageBook,
+  paymentReaching,
+} from '#shared/books/mortgage-balance.ts';
 import { insuranceEnds } from '#shared/books/mortgage-ends.ts';
 import { governingEnd, insuranceEntries } from '#shared/books/mortgage-insurance.ts';
 import { premiumOn } from '#shared/books/mortgage-premium.ts';
@@ -83,6 +89,31 @@ describe('the mortgage as paid', () => {
     expect(mortgageBalanceOn(early, day('2024-05-25')).amountCents).toBe(34_100_000);
   });
 
+  it('takes either of two statements of one day, and reaches every share at once where nothing was ever owed', () => {
+    const same = mortgageOf({ balances: [stated('2025-06-15', 330_000), stated('2025-06-15', 330_000)] });
+    expect(mortgageBalanceAfter(same, 13)).toBe(33_000_000);
+    const none = mortgageOf({ balances: [stated('2024-05-20', 0)] });
+    expect(mortgageBook(none).actual).toEqual([]);
+    expect(paymentReaching(none, mortgageBook(none).actual, '0.80')).toBe(0);
+    expect(mortgageBalanceAfter(none, 5)).toBe(0);
+  });
+
+  it('counts a payment on its due day, whatever the day of the month', () => {
+    const mid = mortgageOf({ firstPaymentOn: day('2024-06-15') });
+    expect([day('2024-06-14'), day('2024-06-15'), day('2024-07-14')].map((on) => lastPaymentBy(mid, on))).toEqual([
+      0, 1, 1,
+    ]);
+    expect(lastPaymentBy(mid, FAR)).toBe(360);
+  });
+
+  it('has the middle of an odd term half a month after a payment', () => {
+    expect(amortizationMidpoint(mortgageOf({ termMonths: 181 }))).toEqual({
+      on: '2031-11-16',
+      payment: 90,
+      firstOfNextMonth: '2031-12-01',
+    });
+  });
+
   it('ends where a statement says nothing is owed', () => {
     const paid = mortgageOf({ balances: [stated('2026-02-10', 0)] });
     expect(mortgageBook(paid).actual).toHaveLength(21);
@@ -120,13 +151,18 @@ describe('the balance on a day', () => {
 
 describe('the value of the home', () => {
   const mortgage = mortgageOf({
-    appraisals: [valued('2025-03-01', 420_000), valued('2026-01-10', 450_000, 'ownEstimate'), valued('2027-01-01', 1)],
+    appraisals: [
+      valued('2026-01-10', 450_000, 'ownEstimate'),
+      valued('2025-03-01', 420_000),
+      valued('2024-09-01', 390_000),
+      valued('2027-01-01', 1),
+    ],
   });
 
   it('is the last one stated by the day; the owner’s own estimate is no evidence', () => {
     expect(latestValue(mortgage, day('2026-06-01'))?.valueCents).toBe(45_000_000);
     expect(latestValue(mortgage, day('2026-06-01'), true)?.valueCents).toBe(42_000_000);
-    expect(latestValue(mortgage, day('2025-02-28'))).toBeNull();
+    expect(latestValue(mortgage, day('2024-08-31'))).toBeNull();
   });
 
   it('sets the balance in percent, to two decimals and never downwards', () => {
@@ -139,6 +175,9 @@ describe('the value of the home', () => {
     expect(monthsSinceStart(mortgageOf(), day('2026-04-30'))).toBe(23);
     expect(monthsSinceStart(mortgageOf(), day('2026-05-01'))).toBe(24);
     expect(monthsSinceStart(mortgageOf(), day('2024-04-30'))).toBe(-1);
+    const mid = mortgageOf({ firstPaymentOn: day('2024-06-15') });
+    expect(monthsSinceStart(mid, day('2026-05-14'))).toBe(23);
+    expect(monthsSinceStart(mid, day('2026-05-15'))).toBe(24);
   });
 });
 
@@ -162,7 +201,10 @@ describe('what each end rests on', () => {
       '12 U.S.C. 4902(c)',
       null,
     ]);
-    expect(insuranceEnds(mortgageOf({ kind: 'fha' })).every((end) => end.source === null)).toBe(true);
+    for (const kind of ['fha', 'va'] as const) {
+      expect(insuranceEnds(mortgageOf({ kind })).every((end) => end.source === null && end.on === null)).toBe(true);
+    }
+    expect(insuranceEnds(mortgageOf({ kind: 'va' }))[0]?.words).toContain('no monthly mortgage insurance');
   });
 
   it('never comes where the schedule does not reach it, and is at the start where the loan began below', () => {
@@ -170,6 +212,19 @@ describe('what each end rests on', () => {
     expect(insuranceEnds(low)[0]).toMatchObject({ payment: 0 });
     expect(governingEnd(low).payment).toBe(0);
     expect(insuranceEntries(low, FAR)).toEqual([]);
+  });
+});
+
+describe('the end that counts', () => {
+  it('is the prudent one of a mortgage without insurance stated, and the appreciation’s when it is chosen and dated', () => {
+    expect(governingEnd(mortgageOf({ insurance: null })).rule).toBe('request80');
+    const chosen = mortgageOf({}, { endRule: 'appreciation', appreciationOn: day('2036-02-10') });
+    expect(governingEnd(chosen)).toMatchObject({ rule: 'appreciation', payment: 141 });
+  });
+
+  it('of an FHA loan at or under 90 % is no later than its term', () => {
+    const short = mortgageOf({ kind: 'fha', termMonths: 120, principalCents: cents(30_000_000) });
+    expect(governingEnd(short).payment).toBe(120);
   });
 });
 
@@ -185,6 +240,16 @@ describe('a premium that changes', () => {
     expect(premiumOn(mortgage, day('2026-01-01'))).toBe(12_000);
     expect(premiumOn(mortgage, day('2030-01-01'))).toBe(9_000);
     expect(premiumOn(mortgageOf({ insurance: null, premiums }), day('2030-01-01'))).toBe(0);
+  });
+
+  it('of nothing makes no entry', () => {
+    const free = mortgageOf({ premiums: [{ from: day('2026-01-01'), premiumMonthlyCents: cents(0) }] });
+    expect(insuranceEntries(free, FAR).map((entry) => entry.date)).toEqual([
+      '2025-09-01',
+      '2025-10-01',
+      '2025-11-01',
+      '2025-12-01',
+    ]);
   });
 
   it('sums as each month’s own premium, and a month without one has no entry', () => {

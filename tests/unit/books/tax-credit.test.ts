@@ -127,6 +127,49 @@ describe('the tax credit', () => {
   });
 });
 
+describe('the source of a limit', () => {
+  const sourceOf = (changes: Partial<ReturnType<typeof creditYear>>) => {
+    const year = creditYear(2024, 415_000, { status: 'filed', filedOn: day('2025-03-10'), ...changes });
+    const papers = [{ id: 'r', fileName: 'return 2024.pdf' }];
+    return creditEntries(creditOf({ years: [year] }), TODAY, papers)[0]?.working.inputs[1]?.source;
+  };
+
+  it('is the kept return, else who typed it and from what', () => {
+    expect(sourceOf({ documentId: 'r' })).toMatchObject({ kind: 'document', fileName: 'return 2024.pdf' });
+    expect(sourceOf({ limitFrom: 'the worksheet' })).toMatchObject({
+      name: 'Limit as entered by Priya, from the worksheet',
+    });
+    expect(sourceOf({ typedBy: null })).toMatchObject({ name: 'Limit as entered' });
+  });
+
+  it('is asked of no year that is not listed', () => {
+    expect(creditEntries(creditOf({ years: [] }), TODAY)).toEqual([]);
+    expect(creditExpected(creditOf({ years: [] }), TODAY)).toEqual([]);
+  });
+});
+
+describe('the day on which the money is expected', () => {
+  const expected = (changes: Partial<ReturnType<typeof creditYear>>, limit: number | null = 415_000) =>
+    creditExpected(creditOf({ years: [creditYear(2025, limit, changes)] }), TODAY).filter(
+      ({ taxYear }) => taxYear === 2025,
+    );
+  const before2025 = creditOf({ placedInServiceOn: day('2025-05-22') });
+
+  it('is the day stated where one is, also when it is still to come', () => {
+    const years = [creditYear(2025, 415_000, { status: 'filed', asRefund: true, refundOn: day('2027-01-20') })];
+    expect(creditExpected({ ...before2025, years }, TODAY)[0]?.on).toBe('2027-01-20');
+    const lessTax = [creditYear(2025, 415_000, { status: 'filed', filedOn: day('2027-02-01') })];
+    expect(creditExpected({ ...before2025, years: lessTax }, TODAY)[0]?.on).toBe('2027-02-01');
+    const awaited = [creditYear(2025, 415_000, { status: 'filed', filedOn: day('2026-03-01'), asRefund: true })];
+    expect(creditExpected({ ...before2025, years: awaited }, TODAY)[0]?.on).toBe('2026-12-02');
+  });
+
+  it('is none without a limit, or where nothing is used', () => {
+    expect(expected({}, null)).toEqual([]);
+    expect(expected({}, 0)).toEqual([]);
+  });
+});
+
 const anyCredit = fc
   .record({
     cost: fc.integer({ min: 0, max: 9_000_000 }),
