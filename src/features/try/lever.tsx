@@ -13,7 +13,7 @@ export function Lever({
   tryout: Tryout;
   name: LeverName;
   label: string;
-  hint?: string;
+  hint?: string | null;
   children?: ReactNode;
 }) {
   const { pulled } = tryout.draft.texts[name];

@@ -22,11 +22,15 @@ export function LoanLevers({
   const received = basis.close.creditReceivedCents;
   return (
     <>
-      <Lever tryout={tryout} name="paydown" label="Pay extra into the loan">
+      <Lever
+        tryout={tryout}
+        name="paydown"
+        label="Pay extra into the loan"
+        hint={received > 0 ? `Tax credit received so far: ${money(received)}.` : null}
+      >
         <DayField tryout={tryout} lever="paydown" part="on" label="On" />
         <SliderField
           label="Amount"
-          {...(received > 0 ? { hint: `Tax credit received so far: ${money(received)}.` } : {})}
           unit="$"
           value={paydown.amountCents}
           error={tryout.errorAt('paydown.amountCents')}

@@ -15,10 +15,14 @@ export function PriceLevers({ tryout, plans }: { tryout: Tryout; plans: readonly
   const { priceRise, exportCut, plan } = tryout.draft.texts;
   return (
     <>
-      <Lever tryout={tryout} name="priceRise" label="Prices rise faster or slower">
+      <Lever
+        tryout={tryout}
+        name="priceRise"
+        label="Prices rise faster or slower"
+        hint="All the utility’s prices, fixed charges and export credits included."
+      >
         <SliderField
           label="Rise each year"
-          hint="Of all the utility’s prices, fixed charges and export credits included."
           unit="%"
           value={priceRise.percent}
           error={tryout.errorAt('priceRise')}

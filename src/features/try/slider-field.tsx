@@ -13,7 +13,6 @@ export type Scale = {
 /** A number to type and a slider that says the same; the text may go beyond the slider's ends. */
 export function SliderField({
   label,
-  hint,
   unit,
   value,
   error,
@@ -22,7 +21,6 @@ export function SliderField({
   onLeave,
 }: {
   label: string;
-  hint?: string;
   unit: string;
   value: string;
   error: string | undefined;
@@ -32,13 +30,12 @@ export function SliderField({
 }) {
   const at = scale.at(value) ?? scale.least;
   return (
-    <div>
+    <div className="flex flex-wrap items-end gap-x-5">
       <Field
         label={label}
-        hint={hint}
         unit={unit}
         inputMode="decimal"
-        className="input-number max-w-[150px]"
+        className="input-number max-w-[110px]"
         error={error}
         value={value}
         onChange={(event) => onText(event.target.value)}
@@ -48,7 +45,7 @@ export function SliderField({
         type="range"
         aria-label={`${label}, slider`}
         aria-valuetext={unit === '$' ? `$${value}` : `${value} ${unit}`}
-        className="mt-1 h-11 w-full accent-accent"
+        className="h-11 min-w-[120px] flex-1 accent-accent"
         min={scale.least}
         max={scale.most}
         step={scale.step}

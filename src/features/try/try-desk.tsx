@@ -18,6 +18,7 @@ import { textsOf } from './lever-texts.ts';
 import { LinesSheet } from './lines-sheet.tsx';
 import { LoanLevers } from './loan-levers.tsx';
 import { PriceLevers } from './price-levers.tsx';
+import { saidParts } from './said-parts.ts';
 import { tryLines } from './try-lines.ts';
 import { NO_LEVERS, type Tryout, useTry } from './use-try.ts';
 
@@ -130,7 +131,15 @@ export function TryDesk({
 function Headline({ tryout, base }: { tryout: Tryout; base: Outcome }) {
   const { shown } = tryout;
   const said = shown && differenceSentence(shown.levers, base, shown.outcome);
-  if (said) return <Prose text={said} />;
+  if (shown && said) {
+    const { what, first, rest } = saidParts(said, shown.levers);
+    return (
+      <>
+        <Prose text={what} /> <b>{first}</b>
+        <Prose text={rest} />
+      </>
+    );
+  }
   return base.evenOn === null ? (
     <>As things stand the roof is not even within the years projected.</>
   ) : (

@@ -40,7 +40,11 @@ export function tryRows(years: number): TryRow[] {
         paidOffOn === null
           ? none(paymentCents === null ? 'no loan' : 'not by its schedule')
           : { kind: 'day', text: fullDate(paidOffOn) },
-      difference: (base, changed) => sooner(base.paidOffOn, changed.paidOffOn, 'days'),
+      // Neither good nor bad by itself: a lower payment is paid for longer.
+      difference: (base, changed) => {
+        const difference = sooner(base.paidOffOn, changed.paidOffOn, 'days');
+        return difference && { ...difference, good: null };
+      },
     },
     moneyRow('payment', 'Payment a month', null, (outcome) => outcome.paymentCents, null, 'no loan'),
     moneyRow(
