@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { basisEffect } from '#shared/books/credit-basis.ts';
 import type { CreditLines } from '#shared/books/credit-lines.ts';
 import { carryCredit, creditLine1, creditLinesOf, creditRate } from '#shared/books/tax-credit.ts';
 import type { CreditCost, CreditFacts } from '#shared/facts/finance.ts';
@@ -66,6 +67,19 @@ describe('The credit goes through Form 5695 as its lines say', () => {
       expect((worksheet?.form1040Line18 ?? 0) - (worksheet?.otherCredits ?? 0)).toBe(v.years[0]?.facts.limit);
     },
   );
+
+  it.each(each((vector) => vector.facts?.homeBasisIncrease !== undefined))(
+    'the home’s basis rises by cost less subsidy less credit allowed (26 U.S.C. 25D(f), 136(b)): %s',
+    (_name, vector) => {
+      expect(basisEffect(creditOf(vector))?.whole.amountCents).toBe(usd(vector.facts?.homeBasisIncrease ?? 0));
+    },
+  );
+
+  it('leaves the cost alone for a state rebate that is income (DOE Homeowner’s Guide, as quoted: 18,000 × 0.30 = 5,400)', () => {
+    const line1Cents = creditLine1([cost('qualified', 18_000), cost('leftOut', 1_000)], '1');
+    const [line] = carryCredit(cents(0), [{ taxYear: 2023, line1Cents, rate: creditRate(2023), limitCents: null }]);
+    expect(line?.line6bCents).toBe(540_000);
+  });
 
   it('takes a utility subsidy off the cost before the rate (DOE Homeowner’s Guide example, from memory: (18,000 − 1,000) × 0.30 = 5,100)', () => {
     expect(creditLine1([cost('qualified', 18_000), cost('reduction', 1_000)], '1')).toBe(1_700_000);
