@@ -121,6 +121,12 @@ describe('quantities', () => {
     expect([qtyText(0), qtyText(-500), qtyText(498_500), qtyText(-1_000)]).toEqual(['0', '-0.5', '498.5', '-1']);
   });
 
+  test('that are too large for whole numbers are multiplied exactly all the same', () => {
+    const large = 3_000_000_007;
+    expect(times(large, large).toString()).toBe('9000000042000000049');
+    expect(exactText(times(large, large))).toBe('9000000042000000.049');
+  });
+
   test('are scaled and rounded to whole units half away from zero', () => {
     expect(scaled(543_000, 600)).toBe(325_800);
     expect(roundToWhole(times(543_000, 600), 1000)).toBe(326_000);
