@@ -72,7 +72,6 @@ export function readLevers(texts: LeverTexts, plans: readonly PlanInForce[]): Re
       fromHour: whole(moreUse.fromHour, 0, 23, 'moreUse.fromHour'),
       toHour: whole(moreUse.toHour, 1, 24, 'moreUse.toHour'),
     };
-    if (moreUse.fromHour === moreUse.toHour) list.add('moreUse.toHour', 'Choose another hour than the first.');
   }
   if (degradation.pulled) levers.degradation = percent(degradation.percent, 'degradation');
   if (replacement.pulled) {
