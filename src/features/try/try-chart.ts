@@ -1,12 +1,12 @@
 import type { ChartConfiguration, Plugin } from 'chart.js';
 import type { Cents } from '#shared/units/cents.ts';
-import { dayNumber } from '#shared/units/day.ts';
+import { type Day, dayNumber, latestDay } from '#shared/units/day.ts';
 import { money, monthYear } from '#src/lib/format.ts';
 import { AXIS_WIDTH, dateOfTick, dayAxis, moneyAxis, niceStep, tooltipLook } from '#src/ui/chart/axes.ts';
 import { marksPlugin, zeroLinePlugin } from '#src/ui/chart/marks.ts';
 import { spreadMarks } from '#src/ui/chart/spread.ts';
 import type { ChartTokens } from '#src/ui/chart/tokens.ts';
-import { lineSpan, type TryLine } from './try-lines.ts';
+import type { TryLine } from './try-lines.ts';
 
 /** The lines under one zero; the ring stands where the first of the changes, or else the base, comes even. */
 export function tryChart(lines: readonly TryLine[], tokens: ChartTokens, phone: boolean): ChartConfiguration<'line'> {
@@ -110,4 +110,12 @@ function lettersPlugin(lines: readonly TryLine[], tokens: ChartTokens): Plugin<'
       ctx.restore();
     },
   };
+}
+
+/** The days that the lines cover; null where there is none. */
+export function lineSpan(lines: readonly TryLine[]): { first: Day; last: Day } | null {
+  const first = lines[0]?.outcome.months[0]?.on;
+  const ends = lines.flatMap((line) => line.outcome.months.at(-1)?.on ?? []);
+  if (first === undefined) return null;
+  return { first, last: latestDay(first, ...ends) };
 }

@@ -1,5 +1,4 @@
 import type { Outcome } from '#shared/try/outcome.ts';
-import { type Day, latestDay } from '#shared/units/day.ts';
 import { dollars, monthYear } from '#src/lib/format.ts';
 import type { Beside } from './beside.ts';
 import { BASE_LOOK, changeLook, type LineLook } from './line-look.ts';
@@ -24,12 +23,4 @@ export function linesSummary(lines: readonly TryLine[]): string {
     return `${name}: ${outcome.evenOn ? `even in ${monthYear(outcome.evenOn)}` : 'not even within the months projected'}${end}`;
   });
   return `Settled today, month by month. ${said.join('. ')}.`;
-}
-
-/** The days that the lines cover; null where there is none. */
-export function lineSpan(lines: readonly TryLine[]): { first: Day; last: Day } | null {
-  const first = lines[0]?.outcome.months[0]?.on;
-  const ends = lines.flatMap((line) => line.outcome.months.at(-1)?.on ?? []);
-  if (first === undefined) return null;
-  return { first, last: latestDay(first, ...ends) };
 }

@@ -11,7 +11,8 @@ import { evaluateWorking } from '#shared/working-formula.ts';
 import { MOST_BESIDE, sideBySide, TRIED_KEY, workedOut } from '#src/features/try/beside.ts';
 import { changeLook } from '#src/features/try/line-look.ts';
 import { saidParts } from '#src/features/try/said-parts.ts';
-import { lineSpan, linesSummary, tryLines } from '#src/features/try/try-lines.ts';
+import { lineSpan } from '#src/features/try/try-chart.ts';
+import { linesSummary, tryLines } from '#src/features/try/try-lines.ts';
 import { tryRows } from '#src/features/try/try-rows.ts';
 import { sampleFacts } from '#tests/support/sample-facts.ts';
 
