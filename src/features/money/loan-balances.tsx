@@ -33,7 +33,11 @@ export function LoanBalances({ loan, householdId, canEdit, today }: LoanProps) {
               <th scope="col">By the lender</th>
               <th scope="col">By the schedule</th>
               <th scope="col">Lender less ours</th>
-              {canEdit && <th scope="col" className="no-print" aria-label="Remove" />}
+              {canEdit && (
+                <th scope="col" className="no-print">
+                  <span className="visually-hidden">Take back</span>
+                </th>
+              )}
             </tr>
           </thead>
           <tbody>

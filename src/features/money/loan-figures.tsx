@@ -36,8 +36,8 @@ export function LoanFigures({ loan }: LoanProps) {
     },
     { label: <span className="pl-5">interest so far</span>, value: money(loan.interestPaidCents) },
     {
-      label: 'Moved in cash so far',
-      value: <MoneyFigure title="Moved in cash so far" cents={loan.paid.amountCents} working={loan.paid.working} />,
+      label: 'Cash so far',
+      value: <MoneyFigure title="Cash so far, the loan" cents={loan.paid.amountCents} working={loan.paid.working} />,
     },
     ...feeRows(loan),
     ...(apr === null
@@ -56,7 +56,6 @@ export function LoanFigures({ loan }: LoanProps) {
             label: 'Effective rate a year, with the dealer fee',
             hint: 'the fee taken for a finance charge; the lender’s own disclosure may not count it',
             value: <AprFigure title="Effective rate a year, with the dealer fee" apr={aprWithFee} />,
-            total: true,
           },
         ]),
     ...(loan.clearedOn ? [{ label: 'Last payment', value: fullDate(loan.clearedOn) }] : []),

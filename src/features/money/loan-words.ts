@@ -1,4 +1,4 @@
-import type { LoanView } from '#shared/api/money-loan.ts';
+import type { LoanScheduleRow, LoanView } from '#shared/api/money-loan.ts';
 import type { DayCount, LoanFacts, LoanSecurity } from '#shared/facts/finance.ts';
 import { decimal, fullDate, money } from '#src/lib/format.ts';
 import { percentOfFraction, percentWords } from '#src/lib/typed-values.ts';
@@ -56,8 +56,10 @@ export function aprWords(apr: string): string {
 /** What the chart shows, for those who cannot see it. */
 export function chartSummary(loan: LoanView): string {
   const whole = `The whole schedule pays ${money(loan.interest.amountCents)} of interest`;
-  const most = loan.schedule.findIndex((row) => row.payment.amountCents > 0 && row.principalCents > row.interestCents);
-  const turn = loan.schedule[most];
-  const when = turn && most > 0 ? `, and from ${fullDate(turn.on)} more principal than interest` : '';
+  const ofMost = (row: LoanScheduleRow) => row.principalCents - row.extraPrincipalCents > row.interestCents;
+  const paying = loan.schedule.filter((row) => row.payment.amountCents > 0 && !row.refinanced);
+  const turned = paying.findLastIndex((row) => !ofMost(row) && row.principalCents !== row.extraPrincipalCents) + 1;
+  const turn = turned > 0 ? paying[turned] : undefined;
+  const when = turn ? `; from ${fullDate(turn.on)} a payment is more principal than interest` : '';
   return `${whole}${when}. ${loan.clearedOn ? `It ends on ${fullDate(loan.clearedOn)}.` : ''}`.trim();
 }
