@@ -53,8 +53,9 @@ function pricedAlone({ cycle: { plan, usage }, truth }: Place, item: PricedItem,
     `${item.id} ${prices.key}`,
     { plan: item.put(plan, prices) },
     (settled) => {
-      const [taken, right] = onlyRates(truth, settled, item.id);
-      if (taken === null || right === null) return `${item.label} was priced at ${prices.said}.`;
+      const rates = onlyRates(truth, settled, item.id);
+      if (rates === null) return `${item.label} was priced at ${prices.said}.`;
+      const [taken, right] = rates;
       const season = prices.found.season === undefined ? null : seasonOf(plan.calendar, usage.to);
       const instead = season === null ? right : `the ${season} rate, ${right}`;
       return `${item.label} was priced at ${prices.said}, ${taken}, instead of ${instead}.`;
@@ -75,13 +76,13 @@ function pricedTogether(plan: RatePlan, made: readonly Priced[]): Edit {
   );
 }
 
-/** The one rate of an item that was taken, and the one it should have been; nulls where there are several. */
-function onlyRates(truth: SettledAmounts, made: SettledAmounts, id: string): [string, string] | [null, null] {
+/** The one rate of an item that was taken, and the one it should have been; null where there are several. */
+function onlyRates(truth: SettledAmounts, made: SettledAmounts, id: string): [string, string] | null {
   const right = ratesOf(truth, id);
   const taken = ratesOf(made, id);
   const [only, ...more] = taken.filter((rate) => !right.includes(rate));
   const [instead, ...others] = right.filter((rate) => !taken.includes(rate));
-  if (only === undefined || instead === undefined || more.length + others.length > 0) return [null, null];
+  if (only === undefined || instead === undefined || more.length + others.length > 0) return null;
   return [only, instead];
 }
 

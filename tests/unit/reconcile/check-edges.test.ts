@@ -5,6 +5,7 @@ import { parsePlan } from '#shared/settlement/parse-plan.ts';
 import type { RatePlanInput } from '#shared/settlement/plan.ts';
 import { cents } from '#shared/units/cents.ts';
 import { addDays, day } from '#shared/units/day.ts';
+import { wh } from '#shared/units/energy.ts';
 import { buildHousehold, builtPlan } from '#tests/support/build-household.ts';
 import { taken } from '#tests/support/netmetering-adapter.ts';
 import { changed, check, checksOf, differing, withLine } from './built-checks.ts';
@@ -168,6 +169,18 @@ describe('energy', () => {
       }));
     expect(check(parted('kWh'), 1, 'importAgainstIntervals:').stated).toBe('520');
     expect(check(parted('day'), 1, 'importAgainstIntervals:').stated).toBeNull();
+  });
+
+  test('sent out may exceed what was made by 4 % and 2 kWh, and by no Wh more', () => {
+    const sending = (watthours: number) =>
+      changed(1, (s) => ({
+        ...s,
+        reads: s.reads.filter((read) => read.channel === 'import'),
+        exportWh: wh(watthours),
+        productionWh: wh(100_000),
+      }));
+    expect(check(sending(106_000), 1, 'exportWithinProduction:').verdict).toBe('agrees');
+    expect(check(sending(106_001), 1, 'exportWithinProduction:').verdict).toBe('differs');
   });
 
   test('readings missing on days that have others are counted apart from whole days', () => {

@@ -41,6 +41,12 @@ describe('a printed line is taken for the plan’s', () => {
     ).toEqual(['peak', 'energy', 'meter']);
   });
 
+  test('by half of its words at the least', () => {
+    // Of two words and two, one is shared; of two and four, one.
+    expect(matchLines([line('import', 'Energy used')], of)).toEqual(['energy']);
+    expect(matchLines([line('import', 'Energy used this month')], of)).toEqual([null]);
+  });
+
   test('or where it is the only one of its kind and the plan has only one left', () => {
     expect(matchLines([line('tax', '% *')], of)).toEqual(['tax']);
     expect(matchLines([line('tax', 'Levy'), line('tax', 'Surcharge')], of)).toEqual([null, null]);

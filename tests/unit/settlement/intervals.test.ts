@@ -40,6 +40,37 @@ describe('netting by clock blocks', () => {
     expect(quantities(both({ netting: 'hour' }), sameHour)).toEqual(['0.6', '0']);
   });
 
+  test('adds up what was made in each period to the Wh', () => {
+    const of = plan({
+      netting: 'none',
+      calendar: {
+        periods: [
+          { id: 'noon', when: [{ days: 'all', from: '11:00', to: '13:00' }] },
+          { id: 'else', when: 'rest' },
+        ],
+      },
+      charges: [ENERGY],
+      credits: [
+        {
+          id: 'made',
+          label: 'Made',
+          kind: 'export',
+          basis: 'production',
+          to: 'bill',
+          rates: [
+            { from: '2025-01-01', period: 'noon', rate: '0.10' },
+            { from: '2025-01-01', period: 'else', rate: '0.10' },
+          ],
+        },
+      ],
+    });
+    const intervals = steps('2026-06-01T06:00:00Z', 60, 24, (step) => ({
+      made: step === 11 || step === 12 ? 7 : step === 14 ? 5 : 0,
+    }));
+    const cycle = usage({ from: '2026-06-01', to: '2026-06-02', production: 0.019, intervals });
+    expect(quantities(of, cycle).slice(1)).toEqual(['0.014', '0.005']);
+  });
+
   test('in steps of five minutes follows the clock through the night it is set back, as in steps of thirty', () => {
     const fine = usage({
       ...changeDay,
