@@ -41,10 +41,11 @@ export type InterestRule = {
 };
 
 export function interestRule(annualRate: DecimalText): InterestRule {
-  const [whole = '0', decimals = ''] = annualRate.replace('-', '').split('.');
-  const size = BigInt(whole + decimals);
+  const digits = annualRate.replace('-', '');
+  const point = digits.indexOf('.');
+  const size = BigInt(digits.replace('.', ''));
   const numerator = annualRate.startsWith('-') ? -size : size;
-  const denominator = 10n ** BigInt(decimals.length);
+  const denominator = point === -1 ? 1n : 10n ** BigInt(digits.length - point - 1);
   const of = (balance: Cents, parts: bigint, partsOfYear: bigint) =>
     cents(Number(roundedQuotient(BigInt(balance) * numerator * parts, denominator * partsOfYear)));
   return {

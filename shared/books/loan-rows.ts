@@ -11,15 +11,12 @@ export type WorkedRow = { row: LoanRow; level: number | null; working: Working |
 
 /** The rows of a loan's book, each with its payment's working. Levels are pointed at, since hundreds of rows share one. */
 export function workedRows({ steps, rows, levels }: LoanBook): WorkedRow[] {
-  const payments = new Map<string, LoanStep[]>();
-  for (const step of steps) {
-    if (step.kind !== 'payment') continue;
-    const held = payments.get(keyOf(step.segment.index, step.number));
-    if (held) held.push(step);
-    else payments.set(keyOf(step.segment.index, step.number), [step]);
-  }
+  const payments = steps.filter((step) => step.kind === 'payment');
+  let next = 0;
   return rows.map((row) => {
-    const own = row.refinanced ? [] : ofRow(payments.get(keyOf(row.segment, row.number)) ?? [], row);
+    const from = next;
+    while (isOf(payments[next], row)) next += 1;
+    const own = payments.slice(from, next);
     const [first] = own;
     if (first === undefined) return { row, level: null, working: null };
     if (own.length > 1 || first.record !== null) return { row, level: null, working: paidWorking(own) };
@@ -28,13 +25,9 @@ export function workedRows({ steps, rows, levels }: LoanBook): WorkedRow[] {
   });
 }
 
-/** Number 0 may take several months; the days tell them apart. */
-function ofRow(steps: readonly LoanStep[], row: LoanRow): LoanStep[] {
-  return steps.filter((step) => step.dueOn === row.dueOn);
-}
-
-function keyOf(segment: number, number: number): string {
-  return `${segment} ${number}`;
+/** Rows and payments go by the same order. What a new loan paid off is a row of the same month, and no payment of the household's. */
+function isOf(step: LoanStep | undefined, row: LoanRow): boolean {
+  return !row.refinanced && step?.segment.index === row.segment && step.dueOn === row.dueOn;
 }
 
 function paidWorking(steps: readonly LoanStep[]): Working {

@@ -1,6 +1,7 @@
-import { ipmt, irr, nper, pmt, ppmt, pv } from 'financial';
+import { fv, ipmt, irr, nper, npv, pmt, ppmt, pv, rate } from 'financial';
 import { describe, expect, it } from 'vitest';
 import { amortize } from '#shared/books/amortize.ts';
+import { effectiveApr } from '#shared/books/apr.ts';
 import { days360, interestRule, levelPayment } from '#shared/books/interest.ts';
 import { cents } from '#shared/units/cents.ts';
 import { day } from '#shared/units/day.ts';
@@ -20,11 +21,68 @@ const LOANS = [
 
 describe('Loan arithmetic agrees with numpy-financial and its port', () => {
   it('reproduces the documented figures with the package itself, so that it may stand as a witness', () => {
-    // numpy-financial docstrings: pmt, nper, pv, irr.
-    expect(pmt(0.075 / 12, 12 * 15, 200_000)).toBeCloseTo(-1854.02472, 5);
-    expect(nper(0.07 / 12, -150, 8000)).toBeCloseTo(64.0733487706, 8);
-    expect(pv(0.05 / 12, 120, -100, 15692.93)).toBeCloseTo(-100.00067131626, 8);
+    // numpy-financial docstrings: pmt, nper, fv, pv, irr, npv, ipmt, ppmt; its test suite: rate.
+    expect(pmt(0.075 / 12, 12 * 15, 200_000)).toBeCloseTo(-1854.0247200054619, 10);
+    expect(nper(0.07 / 12, -150, 8000)).toBeCloseTo(64.07335, 5);
+    expect(fv(0.05 / 12, 120, -100, -100)).toBeCloseTo(15692.928894335755, 8);
+    expect(pv(0.05 / 12, 120, -100, 15692.93)).toBeCloseTo(-100.000671316, 8);
     expect(irr([-100, 39, 59, 55, 20])).toBeCloseTo(0.28095, 5);
+    expect(irr([-100, 0, 0, 74])).toBeCloseTo(-0.0955, 4);
+    expect(irr([-100, 100, 0, -7])).toBeCloseTo(-0.0833, 4);
+    expect(irr([-100, 100, 0, 7])).toBeCloseTo(0.06206, 5);
+    expect(irr([-5, 10.5, 1, -8, 1])).toBeCloseTo(0.0886, 4);
+    expect(npv(0.08, [-40_000, 5000, 8000, 12_000, 30_000])).toBeCloseTo(3065.22267, 5);
+    expect(rate(10, 0, -3500, 10_000)).toBeCloseTo(0.1107, 4);
+    expect(ipmt(0.0824 / 12, 1, 12, 2500)).toBeCloseTo(-17.17, 2);
+    expect(ppmt(0.0824 / 12, 1, 12, 2500)).toBeCloseTo(-200.58, 2);
+  });
+
+  it('pays 8,000 at 7 % off with 150 a month in the 65th payment: nper is 64.07335 (numpy-financial docstring)', () => {
+    const level = levelPayment(cents(800_000), '0.07', 480);
+    const { rows } = amortize({
+      principalCents: cents(800_000),
+      annualRate: '0.07',
+      months: 480,
+      events: [],
+      extraMonthlyCents: cents(15_000 - level),
+    });
+    const last = rows.at(-1);
+    expect(last?.number).toBe(65);
+    // The 65th payment holds the 0.07335 of a payment that nper leaves, and no more than its own interest beside: within a dollar.
+    const paid = (last?.paymentCents ?? 0) + (last?.extraPrincipalCents ?? 0);
+    expect(Math.abs(paid - 0.07335 * 15_000)).toBeLessThanOrEqual(100);
+  });
+
+  it('finds rate(10, 0, −3500, 10000) = 0.1107 and irr([−100, 39, 59, 55, 20]) = 0.28095 as rates a unit period (numpy-financial)', () => {
+    const run = (amount: number, firstUnitPeriods: number) => ({
+      count: 1,
+      amountCents: cents(amount * 100),
+      firstUnitPeriods,
+      parts: 0,
+      of: 1,
+    });
+    const rateOf = (advance: number, payments: ReturnType<typeof run>[]) =>
+      Number(effectiveApr({ advanceCents: cents(advance * 100), payments, unitPeriodsPerYear: 1 }));
+    expect(rateOf(3500, [run(10_000, 10)])).toBeCloseTo(0.1107, 4);
+    expect(rateOf(3500, [run(10_000, 10)])).toBeCloseTo(rate(10, 0, -3500, 10_000), 9);
+    expect(rateOf(100, [run(39, 1), run(59, 2), run(55, 3), run(20, 4)])).toBeCloseTo(0.28095, 5);
+    expect(rateOf(100, [run(39, 1), run(59, 2), run(55, 3), run(20, 4)])).toBeCloseTo(irr([-100, 39, 59, 55, 20]), 9);
+  });
+
+  it.each(LOANS)('leaves after each payment what fv says, within its own rounding: $principal at $rate', (loan) => {
+    const i = Number(loan.rate) / 12;
+    const { rows, paymentCents } = amortize({
+      principalCents: cents(loan.principal * 100),
+      annualRate: loan.rate,
+      months: loan.months,
+      events: [],
+    });
+    for (const row of rows.slice(0, -1)) {
+      const expected = -fv(i, row.number, -paymentCents / 100, loan.principal) * 100;
+      // Interest is off by half a cent a month, and what it leaves grows with the balance.
+      const gathered = i === 0 ? 0 : (0.5 * ((1 + i) ** row.number - 1)) / i;
+      expect(Math.abs(row.balanceCents - expected)).toBeLessThanOrEqual(gathered + 0.01);
+    }
   });
 
   it('has the documented payment: pmt(0.075/12, 180, 200000) = −1854.0247 (numpy-financial docstring)', () => {
