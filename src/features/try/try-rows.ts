@@ -1,8 +1,10 @@
+import type { ProjectedMonth } from '#shared/position/position.ts';
 import type { Outcome } from '#shared/try/outcome.ts';
-import { type Cents, cents, dollarsText } from '#shared/units/cents.ts';
+import { type Cents, cents } from '#shared/units/cents.ts';
 import { type Day, daysBetween, monthsBetween } from '#shared/units/day.ts';
 import type { Working } from '#shared/working.ts';
 import { fullDate, monthYear } from '#src/lib/format.ts';
+import { differenceWorking, firstYearWorking, monthWorking, settledWorking } from './try-workings.ts';
 
 /** A cell of the table: an amount with what stands behind it, a day, or words where there is neither. */
 export type Cell =
@@ -16,33 +18,43 @@ export type Difference =
 export type TryRow = {
   key: string;
   label: string;
-  cell: (outcome: Outcome) => Cell;
+  cell: (one: Judged) => Cell;
   /** Null where the two cannot be set against each other. */
-  difference: (base: Outcome, changed: Outcome) => Difference | null;
+  difference: (base: Outcome, changed: Judged) => Difference | null;
 };
+/** What a row reads: an outcome, and the day of a sale in it. */
+export type Judged = { outcome: Outcome; soldOn: Day | null };
 
-/** What a change is judged by, row by row. */
-export function tryRows(years: number): TryRow[] {
+/**
+ * What changes are judged by, row by row. `sales` are the days of the sales among them: what is settled on such a day stands against what would be settled
+ * then as things stand, not against the horizon.
+ */
+export function tryRows(years: number, sales: readonly Day[] = []): TryRow[] {
+  const rows = plainRows(years);
+  return sales.length === 0 ? rows : [...rows.slice(0, 1), saleRow(new Set(sales)), ...rows.slice(1)];
+}
+
+function plainRows(years: number): TryRow[] {
   return [
     {
       key: 'even',
       label: 'Even',
-      cell: ({ evenOn }) =>
+      cell: ({ outcome: { evenOn } }) =>
         evenOn === null ? none(`not within ${years} years`) : { kind: 'day', text: monthYear(evenOn) },
-      difference: (base, changed) => sooner(base.evenOn, changed.evenOn, 'months'),
+      difference: (base, { outcome }) => sooner(base.evenOn, outcome.evenOn, 'months'),
     },
-    moneyRow('settled', 'Settled at the end', 1, (outcome) => outcome.settledCents, settledWorking, '–'),
+    unlessSold(moneyRow('settled', 'Settled at the end', 1, (outcome) => outcome.settledCents, settledWorking, '–')),
     moneyRow('interest', 'Interest still to pay', -1, (outcome) => outcome.interestCents, null, 'none'),
     {
       key: 'paidOff',
       label: 'Loan paid off',
-      cell: ({ paidOffOn, paymentCents }) =>
+      cell: ({ outcome: { paidOffOn, paymentCents } }) =>
         paidOffOn === null
           ? none(paymentCents === null ? 'no loan' : 'not by its schedule')
           : { kind: 'day', text: fullDate(paidOffOn) },
       // Neither good nor bad by itself: a lower payment is paid for longer.
-      difference: (base, changed) => {
-        const difference = sooner(base.paidOffOn, changed.paidOffOn, 'days');
+      difference: (base, { outcome }) => {
+        const difference = sooner(base.paidOffOn, outcome.paidOffOn, 'days');
         return difference && { ...difference, good: null };
       },
     },
@@ -60,6 +72,47 @@ export function tryRows(years: number): TryRow[] {
 
 const none = (text: string): Cell => ({ kind: 'none', text });
 
+/** A sale ends the counting, so its last figure is no figure of the horizon. */
+function unlessSold(row: TryRow): TryRow {
+  return {
+    ...row,
+    cell: (one) => (one.soldOn === null ? row.cell(one) : none('sold before')),
+    difference: (base, changed) => (changed.soldOn === null ? row.difference(base, changed) : null),
+  };
+}
+
+/** Settled on the day of a sale, against the close of that month as things stand. */
+function saleRow(sales: ReadonlySet<Day>): TryRow {
+  const [only] = sales.size === 1 ? sales : [];
+  return {
+    key: 'sold',
+    label: 'Settled on the day of the sale',
+    cell: ({ outcome, soldOn }) => {
+      const month = soldOn === null && only === undefined ? undefined : monthOf(outcome, soldOn ?? only ?? null);
+      return month === undefined
+        ? none('the days differ')
+        : { kind: 'money', cents: month.settledTodayCents, working: monthWorking(month) };
+    },
+    difference: (base, { outcome, soldOn }) => {
+      const before = monthOf(base, soldOn);
+      const after = monthOf(outcome, soldOn);
+      if (before === undefined || after === undefined) return null;
+      const more = cents(after.settledTodayCents - before.settledTodayCents);
+      return {
+        kind: 'money',
+        cents: more,
+        working: differenceWorking('Settled on that day', before.settledTodayCents, after.settledTodayCents),
+        good: more === 0 ? null : more > 0,
+      };
+    },
+  };
+}
+
+/** The projected month that a day falls in; undefined without a day. */
+function monthOf({ months }: Outcome, on: Day | null): ProjectedMonth | undefined {
+  return on === null ? undefined : months.find((month) => month.on >= on);
+}
+
 /** `better` is the sign of a difference that is good for the owner. */
 function moneyRow(
   key: string,
@@ -72,15 +125,15 @@ function moneyRow(
   return {
     key,
     label,
-    cell: (outcome) => {
+    cell: ({ outcome }) => {
       const amount = amountOf(outcome);
       return amount === null
         ? none(missing)
         : { kind: 'money', cents: amount, working: workingOf ? workingOf(outcome) : null };
     },
-    difference: (base, changed) => {
+    difference: (base, { outcome }) => {
       const before = amountOf(base);
-      const after = amountOf(changed);
+      const after = amountOf(outcome);
       if (before === null || after === null) return null;
       const more = cents(after - before);
       return {
@@ -115,65 +168,3 @@ function monthsWords(months: number): string {
 }
 
 const counted = (count: number, what: string) => `${count} ${what}${count === 1 ? '' : 's'}`;
-
-const usd = (name: string, label: string, amount: Cents | readonly Cents[], source: string) => ({
-  name,
-  label,
-  value: typeof amount === 'number' ? dollarsText(amount) : amount.map(dollarsText),
-  unit: 'USD',
-  source: { kind: 'figure' as const, name: source },
-});
-
-function differenceWorking(label: string, before: Cents, after: Cents): Working {
-  return {
-    words: `${label} with the change less ${label.toLowerCase()} as things stand.`,
-    formula: 'changed - base',
-    inputs: [
-      usd('changed', 'With the change', after, 'the projection with the change'),
-      usd('base', 'As things stand', before, 'the projection as things stand'),
-    ],
-    unit: 'USD',
-    basis: 'estimated',
-  };
-}
-
-function settledWorking({ months }: Outcome): Working | null {
-  const last = months.at(-1);
-  if (last === undefined) return null;
-  const source = `the projected month to ${fullDate(last.on)}`;
-  return {
-    words:
-      'Cash so far less the payoff of the loan, plus the credit still to come, the incentive owed and the utility bank.',
-    formula: 'cash + payoff + credit + owed + bank',
-    inputs: [
-      usd('cash', 'Cash so far', last.cashSoFarCents, source),
-      usd('payoff', 'Loan payoff', last.loanPayoffCents, source),
-      usd('credit', 'Tax credit still to come', last.creditStillToComeCents, source),
-      usd('owed', 'Incentive owed', last.incentiveOwedCents, source),
-      usd('bank', 'Utility bank', last.utilityBankCents, source),
-    ],
-    unit: 'USD',
-    basis: 'estimated',
-  };
-}
-
-function firstYearWorking({ months }: Outcome): Working | null {
-  const year = months.slice(1, 13);
-  const first = year[0];
-  const last = year.at(-1);
-  if (first === undefined || last === undefined) return null;
-  return {
-    words: 'The bill avoided in each of the first twelve whole months projected.',
-    formula: 'sum(avoided)',
-    inputs: [
-      usd(
-        'avoided',
-        'Bill avoided, month by month',
-        year.map((month) => month.books.billAvoided),
-        `the projected months to ${fullDate(first.on)} through ${fullDate(last.on)}`,
-      ),
-    ],
-    unit: 'USD',
-    basis: 'estimated',
-  };
-}

@@ -41,14 +41,15 @@ const changes: Partial<Levers>[] = [
 describe('the table of what changes', () => {
   it('shows only amounts that their own workings come to, in every column', () => {
     let proved = 0;
-    for (const { outcome } of [shownOf({}), ...changes.map(shownOf)]) {
-      for (const row of tryRows(25)) {
-        const cell = row.cell(outcome);
+    for (const { levers, outcome } of [shownOf({}), ...changes.map(shownOf)]) {
+      const soldOn = levers.sale?.on ?? null;
+      for (const row of tryRows(25, soldOn ? [soldOn] : [])) {
+        const cell = row.cell({ outcome, soldOn });
         if (cell.kind === 'money' && cell.working) {
           expect(evaluateWorking(cell.working).toFixed(2), row.key).toBe(dollarsText(cell.cents));
           proved += 1;
         }
-        const difference = row.difference(base, outcome);
+        const difference = row.difference(base, { outcome, soldOn });
         if (difference?.kind === 'money') {
           expect(evaluateWorking(difference.working).toFixed(2), row.key).toBe(dollarsText(difference.cents));
           proved += 1;
@@ -60,7 +61,9 @@ describe('the table of what changes', () => {
 
   it('calls more settled and less interest good, and a payment neither', () => {
     const { outcome } = shownOf({ paydown });
-    const good = Object.fromEntries(tryRows(25).map((row) => [row.key, row.difference(base, outcome)?.good]));
+    const good = Object.fromEntries(
+      tryRows(25).map((row) => [row.key, row.difference(base, { outcome, soldOn: null })?.good]),
+    );
     expect(good).toMatchObject({ even: true, settled: true, interest: true, payment: null, firstYear: null });
   });
 
@@ -68,7 +71,7 @@ describe('the table of what changes', () => {
     const even = (evenOn: Day | null): Outcome => ({ ...base, evenOn, paidOffOn: evenOn });
     const [row] = tryRows(25);
     const said = (before: Day | null, after: Day | null) => {
-      const difference = row?.difference(even(before), even(after));
+      const difference = row?.difference(even(before), { outcome: even(after), soldOn: null });
       return difference?.kind === 'words' ? difference.text : null;
     };
     expect(said(day('2037-12-14'), day('2037-05-14'))).toBe('7 months sooner');
@@ -79,11 +82,29 @@ describe('the table of what changes', () => {
     expect(said(day('2037-01-14'), null)).toBe('no longer');
     expect(said(null, null)).toBeNull();
     const paidOff = tryRows(25).find((one) => one.key === 'paidOff');
-    expect(paidOff?.difference(even(day('2037-01-14')), even(day('2037-01-13')))).toEqual({
+    expect(paidOff?.difference(even(day('2037-01-14')), { outcome: even(day('2037-01-13')), soldOn: null })).toEqual({
       kind: 'words',
       text: '1 day sooner',
       good: null,
     });
+  });
+
+  it('sets a sale against the same day as things stand, and not against the horizon', () => {
+    const soldOn = day('2034-11-09');
+    const { outcome } = shownOf({ sale: { on: soldOn, roofValueCents: cents(800_000) } });
+    const rows = new Map(tryRows(25, [soldOn]).map((row) => [row.key, row]));
+    const then = base.months.find((month) => month.on >= soldOn)?.settledTodayCents ?? 0;
+    expect(rows.get('sold')?.cell({ outcome: base, soldOn: null })).toMatchObject({ cents: then });
+    expect(rows.get('sold')?.cell({ outcome, soldOn })).toMatchObject({ cents: outcome.settledCents });
+    expect(rows.get('sold')?.difference(base, { outcome, soldOn })).toMatchObject({
+      cents: outcome.settledCents - then,
+    });
+    expect(rows.get('settled')?.cell({ outcome, soldOn })).toEqual({ kind: 'none', text: 'sold before' });
+    expect(rows.get('settled')?.difference(base, { outcome, soldOn })).toBeNull();
+    expect(tryRows(25).map((row) => row.key)).not.toContain('sold');
+    const twice = tryRows(25, [soldOn, day('2040-01-01')]).find((row) => row.key === 'sold');
+    expect(twice?.cell({ outcome: base, soldOn: null })).toEqual({ kind: 'none', text: 'the days differ' });
+    expect(twice?.cell({ outcome, soldOn })).toMatchObject({ kind: 'money' });
   });
 
   it('says in words what has no figure', () => {
@@ -95,11 +116,13 @@ describe('the table of what changes', () => {
       firstYearAvoidedCents: null,
     };
     const texts = tryRows(25).flatMap((row) => {
-      const cell = row.cell(nothing);
+      const cell = row.cell({ outcome: nothing, soldOn: null });
       return cell.kind === 'none' ? [cell.text] : [];
     });
     expect(texts).toEqual(['not within 25 years', 'no loan', 'no loan', 'not a whole year']);
-    expect(tryRows(25).map((row) => row.difference(base, nothing)?.kind ?? null)).toContain(null);
+    expect(tryRows(25).map((row) => row.difference(base, { outcome: nothing, soldOn: null })?.kind ?? null)).toContain(
+      null,
+    );
   });
 });
 
