@@ -13,7 +13,7 @@ export type LoanBook = {
   /** Every level payment in the order in which it came into force. */
   levels: LoanLevel[];
   /** The loan as first made, then each that refinanced it. */
-  segments: LoanSegment[];
+  segments: [LoanSegment, ...LoanSegment[]];
   /** The rate on the first day. */
   firstRate: DecimalText;
   /** All that happened and will happen, in order of days. */
@@ -60,11 +60,12 @@ function buildLoanBook(loan: LoanFacts): LoanBook {
     rows.push(...run.rows);
     levels.push(...run.levels);
   }
+  const [first, ...refinanced] = all;
   return {
     levelCents: levels[0]?.paymentCents ?? ZERO_CENTS,
     levels,
-    segments: all.map(({ segment }) => segment),
-    firstRate: firstRate(all[0]),
+    segments: [first.segment, ...refinanced.map(({ segment }) => segment)],
+    firstRate: firstRate(first),
     steps,
     rows,
   };

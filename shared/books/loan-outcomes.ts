@@ -1,5 +1,6 @@
 import type { LoanFacts, LoanPayment } from '../facts/finance.ts';
 import type { Figure } from '../position/position.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Cents, cents, sumCents, ZERO_CENTS } from '../units/cents.ts';
 import { addMonths, type Day, yearOf } from '../units/day.ts';
 import type { Working } from '../working.ts';
@@ -65,7 +66,7 @@ function outcomeOf(
     prepaidCents,
     next: next === undefined ? null : { amountCents: next.regularCents, working: workingOf(next) },
     interest: loanInterest(steps),
-    clearedOn: steps.at(-1)?.on ?? dueOn,
+    clearedOn: keptAt(steps, steps.length - 1).on,
   };
 }
 

@@ -1,4 +1,5 @@
 import type { LenderBalance, LoanPayment, Refinance } from '../facts/finance.ts';
+import { keptAt } from '../settlement/place.ts';
 import { cents, ZERO_CENTS } from '../units/cents.ts';
 import { addMonths, type Day } from '../units/day.ts';
 import type { DecimalText } from '../units/rate-text.ts';
@@ -180,7 +181,7 @@ export class SegmentRun {
   }
 
   private reamortize(reason: LoanLevel['reason']): void {
-    this.capitalise(this.steps.at(-1)?.on ?? this.dueOn);
+    this.capitalise(keptAt(this.steps, this.steps.length - 1).on);
     this.setLevel(this.number, reason, this.balance);
   }
 

@@ -1,4 +1,5 @@
 import type { LoanFacts } from '../facts/finance.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Cents, cents, ZERO_CENTS } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { DecimalText } from '../units/rate-text.ts';
@@ -31,7 +32,6 @@ export type LoanState = {
 export function loanStateOn(loan: LoanFacts, on: Day, payments: PaymentsOfTheDay = 'through'): LoanState {
   const { steps, segments, firstRate } = loanBook(loan);
   const [first] = segments;
-  if (first === undefined) throw new Error('a loan has no terms');
   const paid = on < loan.fundedOn ? 0 : stepsMade(steps, on, payments);
   const last = steps[paid - 1];
   const segment = last?.segment ?? first;
@@ -63,7 +63,7 @@ export function stepsMade(steps: readonly LoanStep[], on: Day, payments: Payment
   let high = steps.length;
   while (low < high) {
     const middle = (low + high) >> 1;
-    const date = steps[middle]?.on ?? on;
+    const date = keptAt(steps, middle).on;
     if (date < on || (payments === 'through' && date === on)) low = middle + 1;
     else high = middle;
   }

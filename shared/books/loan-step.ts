@@ -1,4 +1,5 @@
 import type { DayCount, LoanPayment, Refinance } from '../facts/finance.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Cents, cents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { DecimalText } from '../units/rate-text.ts';
@@ -98,9 +99,9 @@ export type LoanRow = {
   refinanced: boolean;
 };
 
+/** A month's row of its steps; there must be one. */
 export function rowOf(steps: readonly LoanStep[]): LoanRow {
-  const last = steps.at(-1);
-  if (last === undefined) throw new Error('a month of the loan has no step');
+  const last = keptAt(steps, steps.length - 1);
   const sums = { interest: 0, principal: 0, extra: 0, capitalised: 0, drift: 0 };
   let on = last.on;
   let recorded = false;

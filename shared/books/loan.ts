@@ -1,4 +1,4 @@
-import type { LoanFacts, LoanPayment } from '../facts/finance.ts';
+import type { LoanFacts, LoanPayment, Refinance } from '../facts/finance.ts';
 import { sayDate } from '../ledger/say.ts';
 import { cents, negateCents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
@@ -34,8 +34,8 @@ export function loanSchedule(loan: LoanFacts): LoanRow[] {
 export function loanEntries(loan: LoanFacts, through: Day, papers: readonly PaperName[] = []): UnplacedEntry[] {
   const { steps } = loanBook(loan);
   const made = steps.slice(0, stepsMade(steps, through, 'through'));
-  return made.flatMap((step, at) => {
-    if (step.kind === 'opened') return refinanceEntries(step, made[at - 1], papers);
+  return made.flatMap((step) => {
+    if (step.kind === 'paidOff' && step.refinance !== null) return refinanceEntries(step, step.refinance, papers);
     if (step.kind !== 'payment') return [];
     return step.record === null ? [scheduledEntry(step)] : recordedEntries(step, step.record, papers);
   });
@@ -73,28 +73,22 @@ function recordedEntries(step: LoanStep, record: LoanPayment, papers: readonly P
   return entries;
 }
 
-function refinanceEntries(
-  opened: LoanStep,
-  closing: LoanStep | undefined,
-  papers: readonly PaperName[],
-): UnplacedEntry[] {
-  const { refinance } = opened;
-  if (refinance === null || closing === undefined) return [];
+function refinanceEntries(closing: LoanStep, refinance: Refinance, papers: readonly PaperName[]): UnplacedEntry[] {
   const source = sourceOfPaper(refinance.documentId, papers, stated('Refinance as entered'));
   const payoff = payoffOf(closing);
   const over = refinance.principalCents - payoff;
   const entries: UnplacedEntry[] = [];
   if (over !== 0) {
     entries.push({
-      ...common(opened, `loan-${refinance.id}-cash`, 'refinance'),
+      ...common(closing, `loan-${refinance.id}-cash`, 'refinance'),
       label: over < 0 ? 'Paid beside the new loan' : 'Paid out by the new loan',
       amountCents: cents(over),
-      working: refinanceWorking(refinance.principalCents, payoff, sayDate(opened.on), source),
+      working: refinanceWorking(refinance.principalCents, payoff, sayDate(closing.on), source),
     });
   }
   if (refinance.costsCents !== 0) {
     entries.push({
-      ...common(opened, `loan-${refinance.id}-costs`, 'refinanceCosts'),
+      ...common(closing, `loan-${refinance.id}-costs`, 'refinanceCosts'),
       label: 'Costs of the refinance',
       amountCents: negateCents(refinance.costsCents),
       working: refinanceCostsWorking(refinance.costsCents, source),

@@ -6,9 +6,7 @@ import { Exact } from '../units/rate.ts';
  */
 export function presentValue(rate: Exact, flows: readonly Exact[]): Exact {
   const factor = new Exact(1).div(rate.plus(1));
-  let value = new Exact(0);
-  for (let n = flows.length - 1; n >= 0; n -= 1) value = value.times(factor).plus(flows[n] ?? 0);
-  return value;
+  return flows.reduceRight((value, flow) => value.times(factor).plus(flow), new Exact(0));
 }
 
 /**
@@ -74,8 +72,8 @@ export function ratesOfReturn(flows: readonly Exact[]): Exact[] {
  * several fit.
  */
 export function rateOfReturn(flows: readonly Exact[]): Exact | null {
-  const found = flows.every((flow) => flow.isZero()) ? [] : ratesOfReturn(flows);
-  return found.length === 1 ? (found[0] ?? null) : null;
+  const [rate, ...others] = flows.every((flow) => flow.isZero()) ? [] : ratesOfReturn(flows);
+  return rate === undefined || others.length > 0 ? null : rate;
 }
 
 function between(from: Exact, to: Exact, flows: readonly Exact[]): Exact {

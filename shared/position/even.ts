@@ -4,7 +4,7 @@
  */
 export function lastingCrossing(values: ArrayLike<number>): number | null {
   let index = values.length;
-  while (index > 0 && (values[index - 1] ?? -1) >= 0) index -= 1;
+  while (index > 0 && Number(values[index - 1]) >= 0) index -= 1;
   return index === values.length ? null : index;
 }
 

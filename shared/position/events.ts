@@ -3,7 +3,7 @@ import { loanClearedOn } from '../books/loan.ts';
 import { governingEnd } from '../books/mortgage-insurance.ts';
 import { creditEntries } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
-import type { Day } from '../units/day.ts';
+import { type Day, daysBetween } from '../units/day.ts';
 import type { PositionEvent } from './position.ts';
 
 export type EventFacts = Pick<HouseholdFacts, 'plans' | 'loan' | 'mortgage' | 'credit' | 'incentive'>;
@@ -19,7 +19,7 @@ export function positionEvents(facts: EventFacts, today: Day): PositionEvent[] {
   if (facts.incentive) {
     events.push(event(facts.incentive.lastDay, 'Incentive ends', 'incentiveEnd', today));
   }
-  return events.sort((a, b) => (a.on < b.on ? -1 : a.on > b.on ? 1 : 0));
+  return events.sort((a, b) => daysBetween(b.on, a.on));
 }
 
 function event(on: Day, label: string, kind: PositionEvent['kind'], today: Day): PositionEvent {
@@ -30,7 +30,7 @@ function creditEvents({ credit }: EventFacts, today: Day): PositionEvent[] {
   if (!credit) return [];
   const came = creditEntries(credit, today).map((entry) => ({ on: entry.date, word: 'Tax credit' }));
   const toCome = creditExpected(credit, today).map((part) => ({ on: part.on, word: 'Tax credit' }));
-  const parts = [...came, ...toCome].sort((a, b) => (a.on < b.on ? -1 : 1));
+  const parts = [...came, ...toCome].sort((a, b) => daysBetween(b.on, a.on));
   return parts.map((part, index) => event(part.on, `${part.word}${partName(index, parts.length)}`, 'credit', today));
 }
 
@@ -60,6 +60,6 @@ function loanEvents({ loan }: EventFacts, today: Day): PositionEvent[] {
 }
 
 function planEvents({ plans }: EventFacts, today: Day): PositionEvent[] {
-  const inOrder = [...plans].sort((a, b) => (a.from < b.from ? -1 : 1));
+  const inOrder = [...plans].sort((a, b) => daysBetween(b.from, a.from));
   return inOrder.slice(1).map((plan) => event(plan.from, 'New rate plan', 'planChange', today));
 }

@@ -4,7 +4,7 @@ import { stated, usdInput } from '../books/inputs.ts';
 import { payoffOfLoans } from '../books/other-money.ts';
 import { creditEarnedBy, stillToComeFigure } from '../books/tax-credit.ts';
 import { sayCount, sayMoney } from '../ledger/say.ts';
-import { cents, negateCents, subtractCents, ZERO_CENTS } from '../units/cents.ts';
+import { negateCents, subtractCents, sumCents, ZERO_CENTS } from '../units/cents.ts';
 import { counts } from './books-sum.ts';
 import type { FoldInput } from './fold.ts';
 import type { Figure, Position, PositionPoint, SettledParts } from './position.ts';
@@ -105,9 +105,9 @@ export function marginFigures(
   const last = points.filter(isClose).at(-1);
   if (last === undefined) return { margin: null, marginMean: null };
   const closes = closesOf(points).slice(-LOOK_BACK);
-  const byCycle = new Map<string, Entry[]>(closes.map((point) => [point.cycle, []]));
-  for (const entry of entries) if (inMargin(entry)) byCycle.get(entry.cycle)?.push(entry);
-  const lastEntries = byCycle.get(last.cycle) ?? [];
+  const counted = entries.filter(inMargin);
+  const entriesOf = (point: PositionPoint) => counted.filter((entry) => entry.cycle === point.cycle);
+  const lastEntries = entriesOf(last);
   const part = (book: 'billAvoided' | 'incentive' | 'insurance' | 'loan' | 'upkeep'): NamedFigure => {
     const label = book === 'loan' ? 'Scheduled loan payments' : BOOK_LABELS[book];
     return {
@@ -123,7 +123,7 @@ export function marginFigures(
     'What the cycle left over after the scheduled loan payment and upkeep',
     (['billAvoided', 'incentive', 'insurance', 'loan', 'upkeep'] as const).map(part),
   );
-  const margins = [...byCycle.values()].map((group) => cents(group.reduce((sum, one) => sum + one.amountCents, 0)));
+  const margins = closes.map((point) => sumCents(entriesOf(point).map((entry) => entry.amountCents)));
   return { margin, marginMean: meanFigure('Margin by cycle', margins) };
 }
 

@@ -4,6 +4,7 @@ import { creditExpected } from '../books/credit-expected.ts';
 import { leaseFlows } from '../books/lease.ts';
 import { loanBook } from '../books/loan-book.ts';
 import { insuranceEntries } from '../books/mortgage-insurance.ts';
+import { keptAt } from '../settlement/place.ts';
 import { cents } from '../units/cents.ts';
 import { addDays, type Day, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
 import type { BasisFacts, Flow, ProjectionBasis } from './basis.ts';
@@ -23,7 +24,7 @@ export function flowsAfter(
   periods: readonly Period[],
 ): Flow[] {
   const { today, close, since } = basis;
-  const horizon = periods.at(-1)?.to ?? close.on;
+  const horizon = keptAt(periods, periods.length - 1).to;
   const end = changes.endsOn !== null && changes.endsOn < horizon ? changes.endsOn : horizon;
   const flows: Flow[] = [];
   const addUntil = (last: Day, on: Day, book: BookId, amount: number) => {
@@ -63,8 +64,7 @@ export function flowsAfter(
 
 /** A twelfth of the year's upkeep on each month's first day, the first by its days; cents carried so that twelve months make the year. */
 function upkeepOf(yearlyCents: number, periods: readonly Period[]): { on: Day; amount: number }[] {
-  const first = periods[0];
-  if (first === undefined) return [];
+  const first = keptAt(periods, 0);
   const monthDays = daysInMonth(yearOf(first.from), monthOf(first.from));
   const firstDays = daysBetween(first.from, first.to);
   let given = 0;

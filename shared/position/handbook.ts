@@ -1,6 +1,7 @@
 import type { Entry } from '../books/book.ts';
 import { plainInput, stated } from '../books/inputs.ts';
 import { sayKwh } from '../ledger/say.ts';
+import { keptAt } from '../settlement/place.ts';
 import { cents, dollarsText } from '../units/cents.ts';
 import { addDays, addMonths, type Day, monthsBetween } from '../units/day.ts';
 import { kwhText, type Wh, wh } from '../units/energy.ts';
@@ -10,6 +11,7 @@ import type { Working, WorkingInput } from '../working.ts';
 import type { ProjectionBasis } from './basis.ts';
 import { NO_CHANGES } from './changes.ts';
 import { paybackYears, presentValue, rateOfReturn } from './economics.ts';
+import { loansOf } from './loans.ts';
 import { segmentsOf } from './month-heaps.ts';
 import { energyOf, type MonthlyEnergy } from './monthly-energy.ts';
 import type { Handbook, HandbookColumn, PlainFigure } from './outlook.ts';
@@ -33,19 +35,18 @@ type Year = { allCents: number; costCents: number };
  */
 export function handbookOf(input: HandbookInput): Handbook | null {
   const { basis } = input;
+  const loans = loansOf(basis.facts);
   const parts = projectParts(basis);
+  const cash =
+    loans.length === 0 ? null : projectParts(basis, { ...NO_CHANGES, facts: { loan: null, otherLoans: [] } });
   const start = input.points.find((point) => point.cycle === 'before')?.on;
-  if (!parts.ok || start === undefined) return null;
+  if (!parts.ok || cash?.ok === false || start === undefined) return null;
   const rate = basis.facts.assumptions.discountRate;
   const energy = energyByYear(basis, parts, start);
   const bought = yearsOf(start, input, parts.months, { withLoans: true });
-  const { loan, otherLoans } = basis.facts;
-  const loans = [...(loan ? [loan] : []), ...otherLoans.map((other) => other.loan)];
   const column = (years: readonly Year[], way: string) => columnOf(years, energy.wh, rate, way);
   let asCash: HandbookColumn | null = null;
-  if (loans.length > 0) {
-    const cash = projectParts(basis, { ...NO_CHANGES, facts: { loan: null, otherLoans: [] } });
-    if (!cash.ok) return null;
+  if (cash !== null) {
     const years = yearsOf(start, input, cash.months, { withLoans: false });
     const price = loans.reduce((sum, one) => sum + one.principalCents - one.dealerFeeCents, 0);
     addTo(years, 0, -price, -price);
@@ -60,17 +61,15 @@ export function handbookOf(input: HandbookInput): Handbook | null {
   };
 }
 
-/** Which year a day lies in: 0 before the start, n in the n-th twelve months. */
+/** Which year a day from the start on lies in: n in the n-th twelve months. */
 function yearOfDay(start: Day, on: Day): number {
-  if (on < start) return 0;
   const years = Math.floor(monthsBetween(start, on) / 12);
   return addMonths(start, 12 * years) <= on ? years + 1 : years;
 }
 
 function addTo(years: Year[], at: number, allCents: number, costCents: number): void {
   while (years.length <= at) years.push({ allCents: 0, costCents: 0 });
-  const year = years[at];
-  if (!year) return;
+  const year = keptAt(years, at);
   year.allCents += allCents;
   year.costCents += costCents;
 }
@@ -97,7 +96,7 @@ function yearsOf(
     add(point.cycle === 'before' ? 0 : yearOfDay(start, addDays(point.on, -1)), point, off);
   }
   for (const month of months) add(yearOfDay(start, addDays(month.on, -1)), month, 0);
-  const owed = withLoans ? (months.at(-1)?.loanPayoffCents ?? 0) : 0;
+  const owed = withLoans ? keptAt(months, months.length - 1).loanPayoffCents : 0;
   addTo(years, years.length - 1, owed, owed);
   return years;
 }
@@ -109,21 +108,21 @@ function energyByYear(basis: ProjectionBasis, parts: ProjectionParts, start: Day
   const add = (on: Day, amount: number) => {
     const at = yearOfDay(start, addDays(on, -1));
     while (sums.length <= at) sums.push(0);
-    sums[at] = (sums[at] ?? 0) + amount;
+    sums[at] = keptAt(sums, at) + amount;
   };
   for (const { from, to, productionWh } of basis.cycles) {
     if (productionWh === null) estimated += 1;
     add(to, productionWh ?? meanOver(parts.energy, from, to));
   }
-  for (const [at, period] of parts.periods.entries()) add(period.to, parts.energies[at]?.productionWh ?? 0);
+  for (const [at, period] of parts.periods.entries()) add(period.to, keptAt(parts.energies, at).productionWh);
   return { wh: sums.map(wh), estimated };
 }
 
 function meanOver(energy: MonthlyEnergy, from: Day, to: Day): number {
-  return segmentsOf(from, to).reduce((sum, { month, days }) => {
-    const perDay = energy.productionPerDay[month];
-    return perDay === undefined ? sum : sum + energyOf(perDay, days, new Exact(1));
-  }, 0);
+  return segmentsOf(from, to).reduce(
+    (sum, { month, days }) => sum + energyOf(keptAt(energy.productionPerDay, month), days, new Exact(1)),
+    0,
+  );
 }
 
 function columnOf(years: readonly Year[], energy: readonly Wh[], rate: DecimalText, way: string): HandbookColumn {

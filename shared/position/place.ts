@@ -1,4 +1,5 @@
 import type { CycleKey, Entry, UnplacedEntry } from '../books/book.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { Day } from '../units/day.ts';
 
 /**
@@ -28,7 +29,7 @@ function keyFor(entry: UnplacedEntry, cycles: readonly { from: Day; to: Day }[])
   let high = cycles.length;
   while (low < high) {
     const middle = (low + high) >> 1;
-    const to = cycles[middle]?.to ?? first.to;
+    const to = keptAt(cycles, middle).to;
     if (closes ? to < entry.date : to <= entry.date) low = middle + 1;
     else high = middle;
   }

@@ -17,8 +17,12 @@ export const BOOK_LABELS: Record<BookId, string> = {
   costs: 'Costs and other income',
 };
 
+/** The sum of each book, and of the books. */
+type Sums = Record<BookId | 'cashSoFar', Figure>;
+export type SumsByBook = Record<keyof Position['sums'], Sums>;
+
 /** Sums by book over the last cycle, the last twelve and all, each listing its entries; under `cashSoFar` the sum of the books. */
-export function sumsByBook(entries: readonly Entry[], cycleTos: readonly string[]): Position['sums'] {
+export function sumsByBook(entries: readonly Entry[], cycleTos: readonly string[]): SumsByBook {
   const lastTo = cycleTos.at(-1);
   const last12 = new Set<string>(cycleTos.slice(-12));
   const counted = entries.filter(counts);
@@ -29,13 +33,23 @@ export function sumsByBook(entries: readonly Entry[], cycleTos: readonly string[
   };
 }
 
-function sumsOf(entries: readonly Entry[]): Record<string, Figure> {
-  const groups = new Map<BookId, Entry[]>(BOOKS.map((book) => [book, []]));
-  for (const entry of entries) groups.get(entry.book)?.push(entry);
-  const figures: Record<string, Figure> = {};
-  for (const [book, group] of groups) figures[book] = sumOfEntries(BOOK_LABELS[book], group);
-  figures.cashSoFar = sumOfBooks(figures);
-  return figures;
+function sumsOf(entries: readonly Entry[]): Sums {
+  const sumOf = (book: BookId) =>
+    sumOfEntries(
+      BOOK_LABELS[book],
+      entries.filter((entry) => entry.book === book),
+    );
+  const books: Record<BookId, Figure> = {
+    billAvoided: sumOf('billAvoided'),
+    incentive: sumOf('incentive'),
+    insurance: sumOf('insurance'),
+    credit: sumOf('credit'),
+    loan: sumOf('loan'),
+    upkeep: sumOf('upkeep'),
+    costs: sumOf('costs'),
+  };
+  const named = BOOKS.map((book) => ({ name: book, label: BOOK_LABELS[book], figure: books[book] }));
+  return { ...books, cashSoFar: addFigures('The books added', named) };
 }
 
 /** The sum of a book's entries, listed. */
@@ -64,16 +78,6 @@ export function sumOfEntries(label: string, entries: readonly Entry[]): Figure {
 
 function basisOf(entries: readonly Entry[]): FigureBasis {
   return entries.some((entry) => entry.estimated) ? 'estimated' : 'computed';
-}
-
-function sumOfBooks(figures: Readonly<Record<string, Figure>>): Figure {
-  return addFigures(
-    'The books added',
-    BOOKS.flatMap((book) => {
-      const figure = figures[book];
-      return figure ? [{ name: book, label: BOOK_LABELS[book], figure }] : [];
-    }),
-  );
 }
 
 export type NamedFigure = { name: string; label: string; figure: Figure };

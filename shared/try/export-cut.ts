@@ -3,6 +3,7 @@ import type { ProjectionBasis } from '../position/basis.ts';
 import type { Changes } from '../position/changes.ts';
 import type { ProjectedMonth } from '../position/position.ts';
 import { evenOn, type Projected, projectFrom } from '../position/project.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Cents, cents } from '../units/cents.ts';
 import { ZERO_WH } from '../units/energy.ts';
 import { Exact, exact } from '../units/rate.ts';
@@ -18,8 +19,7 @@ export function keepOfExport(
   changes: Changes,
   { from, keep }: NonNullable<Levers['exportCut']>,
 ): Projected {
-  const whole = projectFrom(basis, changes);
-  if (!whole.ok || exact(keep).eq(1)) return whole;
+  if (exact(keep).eq(1)) return projectFrom(basis, changes);
   const none = projectFrom(basis, {
     ...changes,
     energy: (energy, period) => {
@@ -28,6 +28,8 @@ export function keepOfExport(
     },
   });
   if (!none.ok) return none;
+  const whole = projectFrom(basis, changes);
+  if (!whole.ok) return whole;
   const months = blend(whole.projection.months, none.projection.months, keep);
   return {
     ok: true,
@@ -51,8 +53,7 @@ function blend(whole: readonly ProjectedMonth[], none: readonly ProjectedMonth[]
       : cents(without + new Exact(all - without).times(share).toDecimalPlaces(0, Exact.ROUND_HALF_UP).toNumber());
   let lost = 0;
   return whole.map((month, at) => {
-    const other = none[at];
-    if (other === undefined) throw new Error('two projections of one horizon have as many months');
+    const other = keptAt(none, at);
     const billAvoided = between(month.books.billAvoided, other.books.billAvoided);
     const utilityBankCents = between(month.utilityBankCents, other.utilityBankCents);
     const lessNow = month.books.billAvoided - billAvoided;

@@ -3,8 +3,9 @@ import { loanBook } from '../books/loan-book.ts';
 import type { BasisFacts } from '../position/basis.ts';
 import { loansOf } from '../position/loans.ts';
 import type { ProjectedMonth } from '../position/position.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Cents, cents, sumCents } from '../units/cents.ts';
-import type { Day } from '../units/day.ts';
+import { type Day, latestDay } from '../units/day.ts';
 
 /** What a projection comes to, in the figures a change is judged by. */
 export type Outcome = {
@@ -32,8 +33,8 @@ export function outcomeOf(
 ): Outcome {
   const { months, evenOn } = projected;
   const loans = loansOf(facts);
-  const last = months.at(-1);
-  const until = endsOn ?? last?.on ?? from;
+  const last = keptAt(months, months.length - 1);
+  const until = endsOn ?? last.on;
   const interest = loans.flatMap((loan) =>
     loanBook(loan)
       .steps.filter((step) => step.on >= from && step.on < until)
@@ -44,7 +45,7 @@ export function outcomeOf(
   return {
     months,
     evenOn,
-    settledCents: last?.settledTodayCents ?? cents(0),
+    settledCents: last.settledTodayCents,
     interestCents: sumCents(interest),
     paymentCents: loans.length === 0 ? null : sumCents(payments),
     paidOffOn: paidOff(cleared, endsOn),
@@ -53,13 +54,9 @@ export function outcomeOf(
   };
 }
 
-/** The last of the loans to be cleared, or the sale that clears them sooner. */
+/** The last of the loans to be cleared; a sale clears each that runs on past it. */
 function paidOff(cleared: readonly (Day | null)[], endsOn: Day | null): Day | null {
-  const last = cleared.reduce<Day | null>(
-    (latest, on) => (latest === null || on === null || on > latest ? on : latest),
-    null,
-  );
-  const known = cleared.length > 0 && cleared.every((on) => on !== null) ? last : null;
-  if (endsOn === null || cleared.length === 0) return known;
-  return known === null || known > endsOn ? endsOn : known;
+  const known = cleared.map((on) => (on === null || (endsOn !== null && endsOn < on) ? endsOn : on));
+  const [first, ...others] = known.filter((on) => on !== null);
+  return first === undefined || known.includes(null) ? null : latestDay(first, ...others);
 }

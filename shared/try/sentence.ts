@@ -80,7 +80,7 @@ function sayPercent(fraction: DecimalText): string {
 }
 
 function joined(parts: readonly string[]): string {
-  return parts.length < 2 ? (parts[0] ?? '') : `${parts.slice(0, -1).join(', ')} and ${parts.at(-1)}`;
+  return [parts.slice(0, -1).join(', '), ...parts.slice(-1)].filter((part) => part !== '').join(' and ');
 }
 
 function capital(text: string): string {

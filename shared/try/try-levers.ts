@@ -20,7 +20,8 @@ export type Tried =
  */
 export function tryLevers({ basis, hourly }: TryBasis, levers: Levers): Tried {
   const faults = leverFaults(basis, levers);
-  if (faults.length > 0) return { ok: false, why: faults[0]?.message ?? '', faults };
+  const [fault] = faults;
+  if (fault !== undefined) return { ok: false, why: fault.message, faults };
   const pulled = leverChanges(basis, hourly, levers);
   const projected =
     levers.exportCut === null
