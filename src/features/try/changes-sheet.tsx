@@ -38,7 +38,7 @@ export function ChangesSheet({ base, beside, years }: { base: Outcome; beside: r
               </td>
               {beside.map((one) => (
                 <td key={one.key} data-label={one.name}>
-                  <span className="inline-block text-right">
+                  <span className="block text-right">
                     <CellText cell={row.cell(judged(one))} title={`${row.label}, ${one.name}`} />
                     {!alone && <DifferenceText row={row} base={base} one={one} small />}
                   </span>
