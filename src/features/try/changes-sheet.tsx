@@ -13,7 +13,7 @@ export function ChangesSheet({ base, beside, years }: { base: Outcome; beside: r
   const alone = beside.length === 1 ? beside[0] : undefined;
   const sales = beside.flatMap((one) => one.levers.sale?.on ?? []);
   return (
-    <Sheet title={beside.length === 0 ? 'As things stand' : 'What changes'}>
+    <Sheet title={beside.length === 0 ? 'What it comes to' : 'What changes'}>
       <table className="ruled ruled-stack">
         <caption className="visually-hidden">The projection as things stand and with each change</caption>
         <thead>
