@@ -8,11 +8,12 @@ import { loanEntriesWithPapers, otherLoanEntries } from '../books/other-money.ts
 import { creditEntries, creditLinesOf } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
 import { isComplete } from '../metering/cycle-energy.ts';
+import { type HourlyProfile, hourlyProfileOf } from '../metering/hourly-profile.ts';
 import { computePosition } from '../position/compute-position.ts';
 import { placeEntries } from '../position/place.ts';
 import { isIncentiveInBill } from '../reconcile/electric-lines.ts';
 import { cents, sumCents } from '../units/cents.ts';
-import type { Day } from '../units/day.ts';
+import { addMonths, type Day } from '../units/day.ts';
 import type { Wh } from '../units/energy.ts';
 import type { Cycle, EnergyFigure } from './cycle.ts';
 import { type Assembled, type AssembledCycle, assembleCycles } from './cycles.ts';
@@ -40,7 +41,7 @@ export function postLedger(
     facts: plans.every((plan, at) => plan === facts.plans[at]) ? facts : { ...facts, plans },
     today,
     entries,
-    cycles: assembled.map(({ cycle, utilityBank }) => ({
+    cycles: assembled.map(({ cycle, utilityBank, split }) => ({
       from: cycle.from,
       to: cycle.to,
       provisional: cycle.provisional,
@@ -48,7 +49,9 @@ export function postLedger(
       importWh: completeWh(cycle.energy.import),
       exportWh: completeWh(cycle.energy.export),
       productionWh: completeWh(cycle.energy.production),
+      split,
     })),
+    hourly: hourlyOf(facts, dates.at(-1)?.to ?? null),
     opening: closing,
   });
   return {
@@ -60,6 +63,13 @@ export function postLedger(
     basis,
     needs: needsOf({ facts, assembled, entries, creditLines, position, today }),
   };
+}
+
+/** Years of readings the mean day of a month is taken from: the house as it is now, not as it was. */
+const HOURLY_YEARS = 3;
+
+function hourlyOf(facts: HouseholdFacts, lastTo: Day | null): HourlyProfile | null {
+  return lastTo === null ? null : hourlyProfileOf(facts.intervals, addMonths(lastTo, -12 * HOURLY_YEARS));
 }
 
 /** The cycles with their entries: the same objects as the ledger's, so that a figure has one working wherever it is shown. */

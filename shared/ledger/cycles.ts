@@ -1,6 +1,7 @@
 import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
 import { energyByMeter } from '../metering/by-meter.ts';
 import { meterCycle, type WitnessedCycle, witnessCycle } from '../metering/cycle-energy.ts';
+import type { EnergySplit } from '../metering/energy-split.ts';
 import { estimatedRuns } from '../metering/estimated-reads.ts';
 import { indexIntervals } from '../metering/interval-index.ts';
 import type { Figure } from '../position/position.ts';
@@ -27,6 +28,8 @@ export type AssembledCycle = {
   cycle: Cycle;
   paper: CyclePaper;
   settled: SettledCycle;
+  /** How its energy fell on the plan's periods and cancelled inside clock hours; null where the plan asks for neither or nothing tells. */
+  split: EnergySplit | null;
   /** What the utility holds for the house at the close. */
   utilityBank: Figure;
   /** The days without any production reading, where production comes from a file or its monitoring has gaps. */
@@ -68,9 +71,11 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
     const provisional = isProvisional({ paper, runs });
     opening = nextOpening(settled, paper.statement);
     before = settled;
+    const { split } = settled;
     cycles.push({
       paper,
       settled,
+      split,
       utilityBank: utilityBank(paper, settled.plan?.plan ?? null, opening),
       monitorGapDays: metered.monitor?.missingDays ?? 0,
       cycle: {
@@ -93,7 +98,7 @@ export function assembleCycles(facts: HouseholdFacts): Assembled {
         facing: facing.lines,
         billedDueCents: facing.billedDueCents,
         oursDueCents: facing.oursDueCents,
-        withoutRoof: billWithoutRoof(paper, metered.energy, settled.plan, usage),
+        withoutRoof: billWithoutRoof(paper, metered.energy, settled.plan, usage, split),
         asItWas: billAsItWas(paper, facts.incentive),
         checks,
         causes: [],

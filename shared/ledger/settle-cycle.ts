@@ -3,6 +3,7 @@ import type { HouseholdFacts, PlanInForce } from '../facts/household.ts';
 import type { Statement } from '../facts/papers.ts';
 import { isComplete, type MeteredCycle } from '../metering/cycle-energy.ts';
 import { asksForIntervals, cycleIntervals } from '../metering/cycle-intervals.ts';
+import type { EnergySplit } from '../metering/energy-split.ts';
 import type { IntervalIndex } from '../metering/interval-index.ts';
 import { billedQuantity } from '../reconcile/billed-quantities.ts';
 import { matchLines } from '../reconcile/match.ts';
@@ -14,6 +15,7 @@ import { settleCycle } from '../settlement/settle.ts';
 import type { CycleUsage, Opening, Settlement } from '../settlement/settlement.ts';
 import { exact } from '../units/rate.ts';
 import type { CyclePaper } from './cycle-papers.ts';
+import { splitOfCycle } from './cycle-split.ts';
 import { type LearnedRates, learnRates, withLearnedRates } from './learned-rates.ts';
 import { sentOutOf, withSentOut } from './sent-out.ts';
 
@@ -33,6 +35,8 @@ export type SettledCycle = {
   asBilled: Settled | null;
   /** The riders' prices as this bill and those before it print them. */
   learned: LearnedRates;
+  /** How its energy fell on the plan's periods and clock hours; null where the plan asks for neither or nothing tells. */
+  split: EnergySplit | null;
 };
 
 export function settleOne(
@@ -53,14 +57,17 @@ export function settleOne(
       why: 'There is no rate plan yet. Enter the plan on your statement to compare this bill.',
       asBilled: null,
       learned: before,
+      split: null,
     };
   }
   const components = matchLines(paper.lines, stated.plan);
   const learned = learnRates(stated.plan, paper.lines, components, before);
   const inForce = withLearnedRates(stated, learned, paper.from);
   const { plan } = inForce;
-  const base = { plan: inForce, components, opening, learned };
   const usage = usageOf(facts, paper, metered, index, plan);
+  const intervals = typeof usage === 'string' ? null : usage.intervals;
+  const split = asksForIntervals(plan) ? splitOfCycle(plan, intervals, paper, components) : null;
+  const base = { plan: inForce, components, opening, learned, split };
   if (typeof usage === 'string') return { ...base, ours: null, why: usage, asBilled: null };
   const settled = settleCycle(plan, opening, usage);
   if (!settled.ok) return { ...base, ours: null, why: refusal(settled.problem), asBilled: null };

@@ -1,6 +1,10 @@
 import type { UsageBefore } from '../facts/house.ts';
 import type { PlanInForce } from '../facts/household.ts';
+import type { EnergySplit } from '../metering/energy-split.ts';
 import { input, ownFigure } from '../metering/source.ts';
+import { STATED_PROFILE_WORDS } from '../metering/stated-profile.ts';
+import { type KnownUse, useByPeriod } from '../metering/use-by-period.ts';
+import { planByDays } from '../settlement/plan-by-days.ts';
 import { settleCycle } from '../settlement/settle.ts';
 import { type CycleUsage, EMPTY_OPENING, type Settlement } from '../settlement/settlement.ts';
 import { planWithoutRoof } from '../settlement/without-roof.ts';
@@ -22,25 +26,31 @@ export function billWithoutRoof(
   energy: CycleEnergy,
   inForce: PlanInForce | null,
   before: readonly UsageBefore[],
+  measuredSplit: EnergySplit | null,
 ): Cycle['withoutRoof'] {
   if (inForce === null) return null;
   const measured = energy.use !== null && energy.use.wh >= 0 ? energy.use.wh : null;
   const estimated = measured === null ? estimateUse(before, paper.from, paper.to) : null;
   const useWh = measured ?? estimated?.wh ?? null;
   if (useWh === null) return null;
-  const plan = planWithoutRoof(inForce);
+  const plan = planByDays(planWithoutRoof(inForce));
   const { split } = paper;
   const whole = split === null ? useWh : roundToWh(kwhOf(useWh).times(split.of).div(split.days));
-  const settled = settleCycle(
-    plan,
-    EMPTY_OPENING,
-    usageWithout(split === null ? paper.from : paper.statement.from, paper.to, whole),
-  );
+  const span = { from: split === null ? paper.from : paper.statement.from, to: paper.to };
+  const shared = useByPeriod(plan.calendar, span, whole, {
+    split: measured === null ? null : measuredSplit,
+    calendar: inForce.plan.calendar,
+    energy: measured === null || split !== null ? null : flowsOf(energy),
+  });
+  const settled = settleCycle(plan, EMPTY_OPENING, usageWithout(span.from, span.to, whole, shared?.byPeriod ?? null));
   if (!settled.ok) return null;
   const { settlement } = settled.value;
-  const said = estimated?.words ?? `${sayKwh(useWh)} kWh used`;
+  const used = estimated?.words ?? `${sayKwh(useWh)} kWh used`;
+  const isShapeAssumed = shared?.estimated ?? false;
+  const said = isShapeAssumed ? `${used}, by ${STATED_PROFILE_WORDS}` : used;
+  const isEstimated = isShapeAssumed || measured === null || energy.use?.working.basis === 'estimated';
   return {
-    ...amount(settlement, split, said, useWh, measured === null || energy.use?.working.basis === 'estimated'),
+    ...amount(settlement, split, said, useWh, isEstimated),
     method: estimated?.method ?? 'measured',
     useWh,
     settlement,
@@ -93,16 +103,31 @@ function amount(
   };
 }
 
-function usageWithout(from: CycleUsage['from'], to: CycleUsage['to'], useWh: Wh): CycleUsage {
+/** The energies behind a measured use; null where one is missing. */
+function flowsOf({ import: bought, export: sent, production }: CycleEnergy): KnownUse['energy'] {
+  return bought && sent && production ? { importWh: bought.wh, exportWh: sent.wh, productionWh: production.wh } : null;
+}
+
+function usageWithout(
+  from: CycleUsage['from'],
+  to: CycleUsage['to'],
+  useWh: Wh,
+  parts: Record<string, number> | null,
+): CycleUsage {
+  const byPeriod =
+    parts &&
+    Object.fromEntries(Object.entries(parts).map(([id, part]) => [id, { importWh: wh(part), exportWh: ZERO_WH }]));
+  // Without export nothing cancels: netted in whatever blocks, what is bought is the use.
+  const netted = { importWh: useWh, exportWh: ZERO_WH, byPeriod };
   return {
     from,
     to,
-    importWh: wh(useWh),
+    importWh: useWh,
     exportWh: ZERO_WH,
     productionWh: ZERO_WH,
-    loadWh: wh(useWh),
-    byPeriod: null,
-    netted: {},
+    loadWh: useWh,
+    byPeriod,
+    netted: { hour: netted, '15min': netted },
     kW: {},
     payments: [],
     finalBill: false,

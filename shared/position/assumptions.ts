@@ -8,11 +8,17 @@ import { exact } from '../units/rate.ts';
 import type { BasisFacts } from './basis.ts';
 import type { MonthBasis, MonthlyEnergy } from './monthly-energy.ts';
 import type { Projection } from './position.ts';
+import { type SharedMonths, sharedAssumptions } from './shared-months.ts';
 
 const OWN = 'Your own figure';
 
 /** What the projection takes for granted, each with where it comes from. */
-export function assumptionsOf(facts: BasisFacts, energy: MonthlyEnergy, today: Day): Projection['assumptions'] {
+export function assumptionsOf(
+  facts: BasisFacts,
+  energy: MonthlyEnergy,
+  shared: SharedMonths | null,
+  today: Day,
+): Projection['assumptions'] {
   const { assumptions } = facts;
   const isDefault = (name: 'degradation' | 'priceRise' | 'discountRate') =>
     exact(assumptions[name]).eq(exact(DEFAULT_ASSUMPTIONS[name]));
@@ -69,6 +75,7 @@ export function assumptionsOf(facts: BasisFacts, energy: MonthlyEnergy, today: D
       source: 'Rate plan in force',
     },
   ];
+  if (shared) stated.push(...sharedAssumptions(shared));
   stated.push(
     {
       name: 'discountRate',

@@ -1,6 +1,8 @@
 import * as z from 'zod/mini';
 import { bookId } from '../books/book.ts';
 import { householdFacts } from '../facts/household.ts';
+import { energySplit } from '../metering/energy-split.ts';
+import { hourlyProfile } from '../metering/hourly-profile.ts';
 import { openingSchema } from '../settlement/settlement.ts';
 import { centsSchema } from '../units/cents.ts';
 import { daySchema } from '../units/day.ts';
@@ -31,6 +33,8 @@ export const energyCycle = z.object({
   productionWh: z.nullable(whSchema),
   /** Stands on an estimated read: it is projected from, and no range is drawn from it. */
   provisional: z.boolean(),
+  /** How it fell on the periods of the plan it was billed by; null where it was not measured or the plan does not ask. */
+  split: z._default(z.nullable(energySplit), null),
 });
 export type EnergyCycle = z.infer<typeof energyCycle>;
 
@@ -47,6 +51,8 @@ export const projectionBasis = z.object({
   facts: basisFacts,
   /** Closed cycles in order. */
   cycles: z.array(energyCycle),
+  /** The shape of a mean day of each month, for periods the cycles are not split by; null without readings by the hour. */
+  hourly: z._default(z.nullable(hourlyProfile), null),
   /** What the utility's books hold after the last cycle. */
   opening: openingSchema,
   /** The position at the close of the last cycle. */

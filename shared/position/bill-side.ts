@@ -1,6 +1,6 @@
-import type { CompiledUsage } from '../settlement/compile-banks.ts';
 import { bankCents, type CompiledCycle, compileCycle, dueOf } from '../settlement/compile-cycle.ts';
 import { newSlots, type Slots, stateOf } from '../settlement/compile-state.ts';
+import type { CompiledUsage } from '../settlement/compile-usage.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { orRefusal } from '../settlement/refused.ts';
 import { type SettledAmounts, settleAmounts } from '../settlement/settle.ts';
@@ -74,7 +74,7 @@ function settleWhole(side: BillSide, opening: Opening, usageAt: (at: number) => 
   const result: SideResult = { dueCents: [], bankCents: [] };
   let held = opening;
   for (const [at, { period, plan }] of side.months.entries()) {
-    const settled = settleAmounts(plan, held, fullUsage(side, period, usageAt(at)));
+    const settled = settleAmounts(plan, held, fullUsage(side, plan, period, usageAt(at)));
     if (!settled.ok) return { ok: false, why: settled.problem.faults[0]?.message ?? settled.problem.detail ?? '' };
     held = settled.value.closing;
     result.dueCents.push(electricDue(settled.value.settlement, side.incentiveApart));
@@ -83,21 +83,40 @@ function settleWhole(side: BillSide, opening: Opening, usageAt: (at: number) => 
   return { ok: true, value: result };
 }
 
-function fullUsage(side: BillSide, period: Period, usage: CompiledUsage): CycleUsage {
-  return {
+function fullUsage(side: BillSide, plan: RatePlan, period: Period, usage: CompiledUsage): CycleUsage {
+  const { split } = usage;
+  const ids = plan.calendar.periods.map((one) => one.id);
+  /** A record by period id of what the usage holds in the calendar's order. */
+  const named = <T, U>(values: readonly (T | null)[], make: (value: T) => U): Record<string, U> =>
+    Object.fromEntries(ids.flatMap((id, at) => (values[at] ? [[id, make(values[at])]] : [])));
+  const netted = (block: 'hour' | '15min', of: NonNullable<CompiledUsage['split']>) => ({
+    ...flow(of.netted[block]),
+    byPeriod: ids.length === 0 ? null : named(of.netted[block].periods, flow),
+  });
+  const made = {
     from: period.from,
     to: period.to,
     importWh: wh(usage.importWh),
     exportWh: wh(usage.exportWh),
     productionWh: wh(usage.productionWh),
     loadWh: wh(usage.loadWh),
-    byPeriod: null,
-    netted: {},
+    byPeriod: split === null || ids.length === 0 ? null : named(split.periods, flow),
+    netted: split === null ? {} : { hour: netted('hour', split), '15min': netted('15min', split) },
     kW: side.kW,
     payments: [],
     finalBill: false,
     intervals: null,
   };
+  if (split === null || ids.length === 0) return made;
+  const own = (part: { productionWh: number; loadWh: number }) => ({
+    productionWh: wh(part.productionWh),
+    loadWh: wh(part.loadWh),
+  });
+  return { ...made, ownByPeriod: named(split.periods, own) };
+}
+
+function flow({ importWh, exportWh }: { importWh: number; exportWh: number }) {
+  return { importWh: wh(importWh), exportWh: wh(exportWh) };
 }
 
 /** Current charges in due less what is paid out beside the bill; the incentive apart where it has a book of its own. */

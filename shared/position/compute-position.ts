@@ -1,5 +1,6 @@
+import type { HourlyProfile } from '../metering/hourly-profile.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { Opening } from '../settlement/settlement.ts';
-import type { Wh } from '../units/energy.ts';
 import type { ProjectionBasis } from './basis.ts';
 import { positionEvents } from './events.ts';
 import { marginFigures, paceFigure, settledFigures } from './figures.ts';
@@ -7,7 +8,7 @@ import { type FoldInput, foldPosition, type PositionCycle } from './fold.ts';
 import { loansOf } from './loans.ts';
 import { basisOf } from './make-basis.ts';
 import type { Position } from './position.ts';
-import { type ProjectionFacts, projectFrom } from './project.ts';
+import { type ProjectionFacts, projectFrom, type StatedCycle } from './project.ts';
 import { sumsByBook } from './sums.ts';
 
 export type PositionInput = {
@@ -16,7 +17,9 @@ export type PositionInput = {
   /** Placed entries of every book through today. */
   entries: FoldInput['entries'];
   /** Closed cycles in order, with what the utility holds after each and the energies the projection repeats. */
-  cycles: readonly (PositionCycle & { importWh: Wh | null; exportWh: Wh | null; productionWh: Wh | null })[];
+  cycles: readonly (PositionCycle & StatedCycle)[];
+  /** The shape of a mean day, where the readings give one. */
+  hourly?: HourlyProfile | null;
   /** What the utility's books hold after the last cycle. */
   opening: Opening;
 };
@@ -29,18 +32,17 @@ export function computePosition(input: PositionInput): MadePosition {
   const { facts, today, entries, cycles } = input;
   const fold: FoldInput = { entries, cycles, today, loans: loansOf(facts), credit: facts.credit };
   const points = foldPosition(fold);
-  const last = points.at(-1);
-  if (last === undefined) throw new Error('a position always has a point');
+  const last = keptAt(points, points.length - 1);
   const sums = sumsByBook(
     entries,
     cycles.map((cycle) => cycle.to),
   );
-  const cashSoFar = sums.all.cashSoFar;
-  if (cashSoFar === undefined) throw new Error('the sum of the books is missing');
+  const { cashSoFar } = sums.all;
   const made = basisOf({
     facts,
     today,
     cycles,
+    hourly: input.hourly ?? null,
     opening: input.opening,
     points,
     since: entries.filter((entry) => entry.cycle === 'since'),

@@ -16,6 +16,8 @@ type Candidate = {
   age: number;
   /** Its use against the mean of the month's candidates, in millionths. */
   use: number;
+  /** The cycle itself: how its energy fell on periods goes with the draw. */
+  cycle: EnergyCycle;
 };
 
 /** What a month to come can draw: the candidates of its calendar month, and over how many recorded days a draw runs. */
@@ -27,18 +29,16 @@ export type Urns = { months: Urn[]; kept: number[] };
 const MILLION = 1_000_000;
 const DAYS_PER_YEAR = 365;
 
-type Complete = { from: EnergyCycle['from']; to: EnergyCycle['to'] } & Record<
-  'importWh' | 'exportWh' | 'productionWh',
-  number
->;
+type Complete = { cycle: EnergyCycle } & Record<'importWh' | 'exportWh' | 'productionWh', number>;
 
 /** The cycles a range may be drawn from: production, import and export measured whole, and not provisional. */
 export function completeCycles(basis: ProjectionBasis): Complete[] {
-  return basis.cycles.flatMap(({ from, to, importWh, exportWh, productionWh, provisional }) =>
-    provisional || importWh === null || exportWh === null || productionWh === null
+  return basis.cycles.flatMap((cycle) => {
+    const { importWh, exportWh, productionWh, provisional } = cycle;
+    return provisional || importWh === null || exportWh === null || productionWh === null
       ? []
-      : [{ from, to, importWh, exportWh, productionWh }],
-  );
+      : [{ cycle, importWh, exportWh, productionWh }];
+  });
 }
 
 /**
@@ -48,7 +48,7 @@ export function completeCycles(basis: ProjectionBasis): Complete[] {
 export function urnsOf(basis: ProjectionBasis): Urns {
   const months: Urn[] = Array.from({ length: 12 }, () => ({ days: 0, candidates: [] }));
   const uses: number[][] = months.map(() => []);
-  for (const cycle of completeCycles(basis)) {
+  for (const { cycle, importWh, exportWh, productionWh } of completeCycles(basis)) {
     const cycleDays = daysBetween(cycle.from, cycle.to);
     const age = Math.max(0, Math.floor(daysBetween(cycle.to, basis.close.on) / DAYS_PER_YEAR));
     for (const { month, days } of segmentsOf(cycle.from, cycle.to)) {
@@ -58,12 +58,13 @@ export function urnsOf(basis: ProjectionBasis): Urns {
         days,
         before: urn.days,
         cycleDays,
-        productionWh: Math.max(0, cycle.productionWh),
-        exportWh: Math.max(0, cycle.exportWh),
+        productionWh: Math.max(0, productionWh),
+        exportWh: Math.max(0, exportWh),
         age,
         use: MILLION,
+        cycle,
       });
-      uses[month]?.push(Math.max(0, cycle.importWh + cycle.productionWh - cycle.exportWh));
+      uses[month]?.push(Math.max(0, importWh + productionWh - exportWh));
       urn.days += days;
     }
   }

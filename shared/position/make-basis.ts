@@ -22,14 +22,16 @@ export function basisOf(input: ProjectionInput): MadeBasis {
     basis: {
       today,
       facts: factsOf(facts),
-      cycles: input.cycles.map(({ from, to, importWh, exportWh, productionWh, provisional }) => ({
+      cycles: input.cycles.map(({ from, to, importWh, exportWh, productionWh, provisional, split = null }) => ({
         from,
         to,
         importWh,
         exportWh,
         productionWh,
         provisional,
+        split,
       })),
+      hourly: input.hourly ?? null,
       opening: input.opening,
       close: {
         on: close.on,

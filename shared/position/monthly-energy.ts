@@ -7,7 +7,7 @@ import type { EnergyCycle } from './basis.ts';
 import { gather, type Heap, type Heaps, MONTHS, monthOfAll, segmentsOf, wholeYear } from './month-heaps.ts';
 
 export type MonthlyEnergyInput = {
-  cycles: readonly EnergyCycle[];
+  cycles: readonly Omit<EnergyCycle, 'split'>[];
   /** The last close: ages are counted from it. */
   lastTo: Day;
   expectedMonthlyWh: readonly Wh[] | null;

@@ -7,7 +7,14 @@ import { energyOf, type MonthlyEnergy } from './monthly-energy.ts';
 /** A month to come: within one calendar month; `index` 0 is the one after the last close. */
 export type Period = { index: number; from: Day; to: Day };
 
-export type PeriodEnergy = { productionWh: Wh; exportWh: Wh; importWh: Wh; useWh: Wh };
+export type PeriodEnergy = {
+  productionWh: Wh;
+  exportWh: Wh;
+  importWh: Wh;
+  useWh: Wh;
+  /** The part of the use that falls on stated hours of the day, such as a car's charging: what of it is bought and what the roof meets. */
+  atHours?: { importWh: number; selfWh: number; fromHour: number; toHour: number };
+};
 
 const NONE = new Exact(0);
 

@@ -3,10 +3,12 @@ import { eligibleDays, incentiveFor } from '../books/incentive.ts';
 import { purchaseOfPeriod } from '../books/lease.ts';
 import { creditEarnedBy } from '../books/tax-credit.ts';
 import type { HouseholdFacts } from '../facts/household.ts';
+import type { HourlyProfile } from '../metering/hourly-profile.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { Opening } from '../settlement/settlement.ts';
 import { type Cents, cents } from '../units/cents.ts';
 import { type Day, daysBetween } from '../units/day.ts';
-import { type Wh, ZERO_WH } from '../units/energy.ts';
+import type { Wh } from '../units/energy.ts';
 import { assumptionsOf } from './assumptions.ts';
 import type { BasisFacts, EnergyCycle, ProjectionBasis } from './basis.ts';
 import { asByBook, noSums, totalOf } from './books-sum.ts';
@@ -35,11 +37,16 @@ export type ProjectionFacts = Pick<
   | 'assumptions'
 >;
 
+/** A closed cycle; nothing is said of its periods where it has no split. */
+export type StatedCycle = Omit<EnergyCycle, 'split'> & Partial<Pick<EnergyCycle, 'split'>>;
+
 export type ProjectionInput = {
   facts: ProjectionFacts;
   today: Day;
   /** Closed cycles with their energies, in order. */
-  cycles: readonly EnergyCycle[];
+  cycles: readonly StatedCycle[];
+  /** The shape of a mean day, where the readings give one. */
+  hourly?: HourlyProfile | null;
   /** What the utility's books hold after the last cycle. */
   opening: Opening;
   /** The position's points (`foldPosition`). */
@@ -87,7 +94,7 @@ export function projectFrom(basis: ProjectionBasis, changes: Changes = NO_CHANGE
         months.map((month) => month.on),
         months.map((month) => month.settledTodayCents),
       ),
-      assumptions: assumptionsOf(facts, energy, basis.today),
+      assumptions: assumptionsOf(facts, energy, parts.sides.shared, basis.today),
     },
   };
 }
@@ -122,15 +129,14 @@ function makeParts(basis: ProjectionBasis, changes: Changes): MadeParts {
   }
   const periods = periodsAfter(basis.close.on, assumptions.horizonMonths);
   const energies = energyOfPeriods(periods, energy, assumptions.degradation).map((made, at) => {
-    const period = periods[at];
-    return changes.energy && period ? changes.energy(made, period) : made;
+    return changes.energy ? changes.energy(made, keptAt(periods, at)) : made;
   });
-  const sides = billSides(facts, changes, periods);
+  const sides = billSides(basis, facts, changes, periods);
   if (sides === null) return { ok: false, why: 'There is no rate plan for the months to come.' };
   const settled = projectBills(sides, energies, basis.opening);
   if (!settled.ok) return settled;
   const made = periods.map((period, at) =>
-    moneyOfProduction(facts, changes.endsOn, period, energies[at]?.productionWh ?? ZERO_WH),
+    moneyOfProduction(facts, changes.endsOn, period, keptAt(energies, at).productionWh),
   );
   const months = monthsOf(basis, facts, changes, periods, settled.bills, made);
   return { ok: true, facts, energy, periods, energies, sides, bills: settled.bills, made, months };
@@ -152,9 +158,8 @@ function monthsOf(
   let owed: number = close.incentiveOwedCents;
   let creditReceived: number = close.creditReceivedCents;
   return periods.map((period, at): ProjectedMonth => {
-    const bill = bills[at];
-    const money = made[at];
-    if (bill === undefined || money === undefined) throw new Error('a projected month was not settled');
+    const bill = keptAt(bills, at);
+    const money = keptAt(made, at);
     const books = noSums();
     for (let flow = flows[next]; flow !== undefined && flow.on < period.to; flow = flows[next]) {
       books[flow.book] += flow.amountCents;
@@ -194,7 +199,7 @@ const NOTHING_OWED = { payoffCents: 0, balanceCents: 0 };
 export function evenOn(evenSince: Day | null, days: readonly Day[], settledCents: ArrayLike<number>): Day | null {
   const index = lastingCrossing(settledCents);
   if (index === null) return null;
-  return index === 0 && evenSince !== null ? evenSince : (days[index] ?? null);
+  return index === 0 && evenSince !== null ? evenSince : keptAt(days, index);
 }
 
 /** What production earns by the incentive and costs by a power-purchase agreement (negative). */

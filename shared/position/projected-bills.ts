@@ -1,17 +1,22 @@
 import { dcWattsOf } from '../facts/dc-rating.ts';
 import type { PlanInForce } from '../facts/household.ts';
-import type { CompiledUsage } from '../settlement/compile-banks.ts';
+import { asksForIntervals } from '../metering/cycle-intervals.ts';
+import type { CompiledUsage } from '../settlement/compile-usage.ts';
 import type { RatePlan } from '../settlement/plan.ts';
+import { planByDays } from '../settlement/plan-by-days.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
 import { type CycleUsage, EMPTY_OPENING, type Opening } from '../settlement/settlement.ts';
 import { planWithoutRoof } from '../settlement/without-roof.ts';
 import { type Cents, cents } from '../units/cents.ts';
 import { Exact } from '../units/rate.ts';
-import type { BasisFacts } from './basis.ts';
+import type { BasisFacts, EnergyCycle, ProjectionBasis } from './basis.ts';
 import { type BillSide, billSide, settleSide } from './bill-side.ts';
 import type { Changes } from './changes.ts';
 import { escalatePlan } from './escalate.ts';
+import { usageWithoutRoof, usageWithRoof } from './period-usage.ts';
 import type { Period, PeriodEnergy } from './periods.ts';
+import { type SharedMonths, sharedMonths } from './shared-months.ts';
+import { shareBook } from './year-shares.ts';
 
 /** What a month's two bills leave, and what the utility's banks are worth after it. */
 export type ProjectedBill = { avoidedCents: Cents; bankCents: Cents };
@@ -21,11 +26,22 @@ export type ProjectedBills = { ok: true; bills: ProjectedBill[] } | { ok: false;
 /** A plan in a year to come: with the roof and without it. */
 type YearPlans = { withRoof: RatePlan; withoutRoof: RatePlan };
 
-/** Both sides of the bills to come: what is settled again for every resample. Months on or after the day the house is sold are left out. */
-export type BillSides = { roof: BillSide; plain: BillSide };
+/**
+ * Both sides of the bills to come: what is settled again for every resample. Months on or after the day the house is sold are left out. The usage of a month
+ * is `drawn` as one cycle was, or as the record's months are in the mean.
+ */
+export type BillSides = {
+  roof: BillSide;
+  plain: BillSide;
+  usageWith: (at: number, energy: PeriodEnergy | undefined, drawn: EnergyCycle | null) => CompiledUsage;
+  usageWithout: (at: number, energy: PeriodEnergy | undefined, drawn: EnergyCycle | null) => CompiledUsage;
+  /** Where the parts of the months by period and clock hour come from; null where the plans ask for none. */
+  shared: SharedMonths | null;
+};
 
 /** Makes both sides ready: the plan in force in each month, its prices raised by whole years. Null where no plan is. */
 export function billSides(
+  basis: ProjectionBasis,
   facts: BasisFacts,
   changes: Pick<Changes, 'plan' | 'endsOn'>,
   periods: readonly Period[],
@@ -42,14 +58,35 @@ export function billSides(
     plain.push({ period, plan: plans.withoutRoof });
   }
   const kW = powerOf(facts.house);
-  return { roof: billSide(roof, kW, facts.incentive !== null), plain: billSide(plain, kW, false) };
+  const book = shareBook(basis);
+  const sharesAt = (months: BillSide['months'], at: number, drawn: EnergyCycle | null) => {
+    const month = months[at];
+    return month && asksForIntervals(month.plan)
+      ? book.at(month.plan.calendar, month.period.from, month.period.to, drawn)
+      : null;
+  };
+  const usage = (months: BillSide['months'], make: typeof usageWithRoof): BillSides['usageWith'] => {
+    return (at, energy, drawn) => {
+      const month = months[at];
+      return make(month ? energy : undefined, sharesAt(months, at, drawn), month);
+    };
+  };
+  return {
+    roof: billSide(roof, kW, facts.incentive !== null),
+    plain: billSide(plain, kW, false),
+    usageWith: usage(roof, usageWithRoof),
+    usageWithout: usage(plain, usageWithoutRoof),
+    shared: sharedMonths(roof, (at) => sharesAt(roof, at, null)),
+  };
 }
 
 /** Settles every month with the roof and without it; both carry their own banks. A house that is sold has no bill, and its banks are lost. */
 export function projectBills(sides: BillSides, energies: readonly PeriodEnergy[], opening: Opening): ProjectedBills {
-  const roof = settleSide(sides.roof, { ...opening, balanceCents: null }, (at) => usageWithRoof(energies[at]));
+  const roof = settleSide(sides.roof, { ...opening, balanceCents: null }, (at) =>
+    sides.usageWith(at, energies[at], null),
+  );
   if (!roof.ok) return refused(roof.why);
-  const plain = settleSide(sides.plain, EMPTY_OPENING, (at) => usageWithoutRoof(energies[at]));
+  const plain = settleSide(sides.plain, EMPTY_OPENING, (at) => sides.usageWithout(at, energies[at], null));
   if (!plain.ok) return refused(plain.why);
   return {
     ok: true,
@@ -64,20 +101,6 @@ function refused(why: string): ProjectedBills {
   return { ok: false, why: `The rate plan cannot be settled on monthly figures. ${why}`.trim() };
 }
 
-const NO_USE: CompiledUsage = { importWh: 0, exportWh: 0, productionWh: 0, loadWh: 0 };
-
-export function usageWithRoof(energy: PeriodEnergy | undefined): CompiledUsage {
-  if (energy === undefined) return NO_USE;
-  const { importWh, exportWh, productionWh, useWh } = energy;
-  return { importWh, exportWh, productionWh, loadWh: useWh };
-}
-
-/** Without a roof everything used is bought. */
-export function usageWithoutRoof(energy: PeriodEnergy | undefined): CompiledUsage {
-  if (energy === undefined) return NO_USE;
-  return { importWh: energy.useWh, exportWh: 0, productionWh: 0, loadWh: energy.useWh };
-}
-
 function planYears(facts: BasisFacts): (inForce: PlanInForce, years: number) => YearPlans {
   const made = new Map<PlanInForce, YearPlans[]>();
   const rise = facts.assumptions.priceRise;
@@ -89,9 +112,9 @@ function planYears(facts: BasisFacts): (inForce: PlanInForce, years: number) => 
     }
     const known = ofPlan[years];
     if (known) return known;
-    const first = ofPlan[0]?.withoutRoof ?? planWithoutRoof(inForce);
+    const first = ofPlan[0]?.withoutRoof ?? planByDays(planWithoutRoof(inForce));
     const plans = {
-      withRoof: escalatePlan(inForce.plan, rise, years),
+      withRoof: escalatePlan(ofPlan[0]?.withRoof ?? planByDays(inForce.plan), rise, years),
       withoutRoof: escalatePlan(first, rise, years),
     };
     ofPlan[years] = plans;

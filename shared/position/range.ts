@@ -1,15 +1,16 @@
+import type { CompiledUsage } from '../settlement/compile-usage.ts';
+import { keptAt } from '../settlement/place.ts';
 import { orRefusal, refuse } from '../settlement/refused.ts';
 import { EMPTY_OPENING } from '../settlement/settlement.ts';
 import { cents } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
-import type { ProjectionBasis } from './basis.ts';
+import type { EnergyCycle, ProjectionBasis } from './basis.ts';
 import { settleAlone, settleSide } from './bill-side.ts';
 import { drawing } from './chance.ts';
 import { candidateAt, candidatesOf, completeCycles, drawnEnergy, type Urns, urnsOf } from './draws.ts';
 import type { Range } from './outlook.ts';
 import type { PeriodEnergy } from './periods.ts';
 import { evenOn, moneyOfProduction, type ProjectionParts, projectParts } from './project.ts';
-import { usageWithoutRoof, usageWithRoof } from './projected-bills.ts';
 
 export type MadeRange = { ok: true; range: Range } | { ok: false; why: string };
 
@@ -38,30 +39,30 @@ export function rangeOf(basis: ProjectionBasis, options: { seed?: number; resamp
   const resamples = options.resamples ?? (parts.sides.roof.compiled === null ? FULL_RESAMPLES : RESAMPLES);
   const future = futures(basis, parts, drawing(options.seed ?? SEED));
   const made = orRefusal(() => Array.from({ length: resamples }, () => future()));
-  if (!made.ok) return { ok: false, why: `A drawn month cannot be settled. ${made.problem.detail ?? ''}`.trim() };
+  if (!made.ok) return { ok: false, why: `A drawn month cannot be settled. ${made.problem.detail}` };
   const days = parts.months.map((month) => month.on);
   const evens = made.value.map((settled) => evenOn(basis.evenSince, days, settled));
-  return { ok: true, range: rangeFrom(made.value, evens) };
+  return { ok: true, range: rangeFrom(days.length, made.value, evens) };
 }
 
-function rangeFrom(settled: readonly Float64Array[], evens: readonly (Day | null)[]): Range {
+function rangeFrom(monthCount: number, settled: readonly Float64Array[], evens: readonly (Day | null)[]): Range {
   const count = settled.length;
   const low = Math.ceil(count * 0.1) - 1;
   const high = Math.ceil(count * 0.9) - 1;
   const column = new Float64Array(count);
-  const months = Array.from(settled[0] ?? [], (_, month) => {
+  const months = Array.from({ length: monthCount }, (_, month) => {
     for (const [at, line] of settled.entries()) column[at] = Number(line[month]);
     column.sort();
     return { lowCents: cents(Number(column[low])), highCents: cents(Number(column[high])) };
   });
   // A future that does not come even within the horizon comes after all that do.
-  const inOrder = [...evens].sort((a, b) => (a === b ? 0 : a === null ? 1 : b === null ? -1 : a < b ? -1 : 1));
+  const inOrder = evens.filter((even) => even !== null).sort();
   return {
     resamples: count,
     months,
     evenEarliest: inOrder[low] ?? null,
     evenLatest: inOrder[high] ?? null,
-    evenWithin: evens.filter((even) => even !== null).length,
+    evenWithin: inOrder.length,
   };
 }
 
@@ -76,9 +77,9 @@ function futures(basis: ProjectionBasis, parts: ProjectionParts, draw: (below: n
   const chosen: Drawn[] = [];
   return () => {
     for (const at of periods.keys()) chosen[at] = table(at, draw);
-    const roof = settleSide(sides.roof, opening, (at) => usageWithRoof(chosen[at]?.energy));
+    const roof = settleSide(sides.roof, opening, (at) => keptAt(chosen, at).roof);
     if (!roof.ok) return refuse(roof.why);
-    const plain = isAlone ? null : settleSide(sides.plain, EMPTY_OPENING, (at) => usageWithoutRoof(chosen[at]?.energy));
+    const plain = isAlone ? null : settleSide(sides.plain, EMPTY_OPENING, (at) => keptAt(chosen, at).plain);
     if (plain && !plain.ok) return refuse(plain.why);
     const settled = new Float64Array(months.length);
     let running = 0;
@@ -102,7 +103,8 @@ function fixedOf({ months, bills, made }: ProjectionParts): number[] {
 
 /** A period as one of its candidates has it, worked out once: there are few, and every future draws among them. */
 type Drawn = {
-  energy: PeriodEnergy;
+  roof: CompiledUsage;
+  plain: CompiledUsage;
   madeCents: number;
   /** The bill without the roof, where it carries nothing on from month to month. */
   plainCents: number | null;
@@ -112,28 +114,29 @@ function drawTable(parts: ProjectionParts, urns: Urns): (at: number, draw: (belo
   const { periods, energies, sides, facts } = parts;
   const rows = periods.map((period, at) => {
     const urn = candidatesOf(urns, period);
-    const base = energies[at];
-    if (base === undefined) throw new Error('a projected month has no energy');
     const known: (Drawn | undefined)[] = [];
-    return { period, at, urn, base, known };
+    return { period, at, urn, base: keptAt(energies, at), known };
   });
-  const make = (row: (typeof rows)[number], energy: PeriodEnergy): Drawn => {
-    const money = moneyOfProduction(facts, null, row.period, energy.productionWh);
+  const make = ({ at, period }: (typeof rows)[number], energy: PeriodEnergy, cycle: EnergyCycle | null): Drawn => {
+    const money = moneyOfProduction(facts, null, period, energy.productionWh);
+    const plain = sides.usageWithout(at, energy, cycle);
     return {
-      energy,
+      roof: sides.usageWith(at, energy, cycle),
+      plain,
       madeCents: money.incentiveCents + money.purchaseCents,
-      plainCents: settleAlone(sides.plain, row.at, usageWithoutRoof(energy)),
+      plainCents: settleAlone(sides.plain, at, plain),
     };
   };
   return (at, draw) => {
-    const row = rows[at];
-    if (row === undefined) throw new Error('a month past the horizon was drawn');
+    const row = keptAt(rows, at);
     const { urn, base, period, known } = row;
     const index = urn.days === 0 ? 0 : candidateAt(urn, draw(urn.days));
     const found = known[index];
     if (found !== undefined) return found;
     const candidate = urn.candidates[index];
-    const made = make(row, candidate ? drawnEnergy(urns, period, candidate, base) : base);
+    const made = candidate
+      ? make(row, drawnEnergy(urns, period, candidate, base), candidate.cycle)
+      : make(row, base, null);
     known[index] = made;
     return made;
   };

@@ -49,8 +49,16 @@ export function isWeekend(calendar: PlanCalendar, date: Day): boolean {
 
 /** The time-of-use period at a local day and minute of the day (0–1439): the first that matches, else the one that is the rest; null in a gap. */
 export function periodAt(calendar: PlanCalendar, date: Day, minute: number): string | null {
-  const season = seasonOf(calendar, date);
-  const weekend = isWeekend(calendar, date);
+  return periodIn(calendar, seasonOf(calendar, date), isWeekend(calendar, date), minute);
+}
+
+/** The same for a day of which only the season, and whether it counts as a weekend, is known. */
+export function periodIn(
+  calendar: PlanCalendar,
+  season: string | null,
+  weekend: boolean,
+  minute: number,
+): string | null {
   let rest: string | null = null;
   for (const period of calendar.periods) {
     if (period.when === 'rest') {
@@ -69,4 +77,19 @@ export function periodAt(calendar: PlanCalendar, date: Day, minute: number): str
 /** Minutes since midnight; "24:00" is 1440. */
 export function minuteOf(clock: string): number {
   return Number(clock.slice(0, 2)) * 60 + Number(clock.slice(3, 5));
+}
+
+const cellKeys = new WeakMap<PlanCalendar, string>();
+
+/** Whether two calendars have the same seasons and periods, so that what fell on those of one fell on those of the other; holidays may differ. */
+export function sameCells(a: PlanCalendar, b: PlanCalendar): boolean {
+  return a === b || cellKey(a) === cellKey(b);
+}
+
+function cellKey(calendar: PlanCalendar): string {
+  const known = cellKeys.get(calendar);
+  if (known !== undefined) return known;
+  const key = JSON.stringify([calendar.seasons, calendar.periods.map(({ id, when }) => [id, when])]);
+  cellKeys.set(calendar, key);
+  return key;
 }

@@ -3,9 +3,11 @@ import { centsOfQty } from './bank-state.ts';
 import { seasonOf } from './calendar.ts';
 import { type CompiledEnergy, compileEnergy, energyCents } from './compile-energy.ts';
 import { type CompiledState, type Slots, slotOf } from './compile-state.ts';
+import { type CompiledUsage, type Side, totalOf } from './compile-usage.ts';
 import type { Cycle } from './cycle-flows.ts';
 import { floorCents } from './floors.ts';
 import { keptAt, knownAs } from './place.ts';
+import type { Netting } from './plan.ts';
 import type { PreparedBank, PreparedTrueUp } from './prepare.ts';
 import {
   compare,
@@ -20,10 +22,8 @@ import {
   roundedCents,
 } from './quantity.ts';
 import { priceAt } from './rates-in-force.ts';
+import { refuse } from './refused.ts';
 import { isDue, keptOf } from './true-up.ts';
-
-/** A month's energy as a compiled cycle takes it, in Wh; `netting` says how a side is read. */
-export type CompiledUsage = { importWh: number; exportWh: number; productionWh: number; loadWh: number };
 
 type CompiledTrueUp = { item: PreparedTrueUp; rate: Rate | null; fee: number; pays: boolean };
 
@@ -31,7 +31,7 @@ type CompiledTrueUp = { item: PreparedTrueUp; rate: Rate | null; fee: number; pa
 export type CompiledBank = {
   at: number;
   prepared: PreparedBank;
-  netsCycle: boolean;
+  netting: Netting;
   /** Places of the charges it pays. */
   offsets: readonly number[];
   /** USD: the charges a floor counts, and what it must leave of them; null without one. */
@@ -52,7 +52,7 @@ export function compileBank(
 ): CompiledBank | null {
   const { bank, netting, floor } = prepared;
   const { plan } = cycle.prepared;
-  if (bank.byPeriod || bank.lotLife !== null || (netting !== 'none' && netting !== 'cycle')) return null;
+  if (bank.byPeriod || bank.lotLife !== null) return null;
   const trueUps: CompiledTrueUp[] = [];
   for (const item of prepared.trueUps) {
     if (!isDue(item.trueUp.at, cycle)) continue;
@@ -83,7 +83,7 @@ export function compileBank(
   return {
     at: slotOf(slots.banks, bank.id),
     prepared,
-    netsCycle: netting === 'cycle',
+    netting,
     offsets: placesOf(bank.offsets),
     floor: floor ? { on: placesOf(floorOn), least: floorCents(cycle, floor) } : null,
     counted: bank.offsets.map((id) => floorOn.includes(id)),
@@ -108,8 +108,8 @@ export function moveCompiledKwh(
   taken: (Qty | null)[],
 ): Qty {
   const { prepared, at } = bank;
-  const imported = sideOf(bank.netsCycle, usage, 'import');
-  const earned = earnedKwh(cycle, prepared, sideOf(bank.netsCycle, usage, 'export'));
+  const imported = mustTotal({ basis: 'import', netting: bank.netting }, usage);
+  const earned = earnedKwh(cycle, prepared, mustTotal({ basis: 'export', netting: bank.netting }, usage));
   let waiting: Qty = 0;
   if (prepared.bank.sameCycle) state.balances[at] = plus(keptAt(state.balances, at), earned);
   else waiting = earned;
@@ -127,11 +127,9 @@ export function moveCompiledKwh(
   return waiting;
 }
 
-/** A side of the month's energy after netting, in Wh. */
-export function sideOf(netsCycle: boolean, usage: CompiledUsage, side: 'import' | 'export'): number {
-  if (!netsCycle) return side === 'import' ? usage.importWh : usage.exportWh;
-  const net = usage.importWh - usage.exportWh;
-  return Math.max(side === 'import' ? net : -net, 0);
+/** The Wh of a side in all; refused where the usage does not say what its netting needs. */
+export function mustTotal(side: Side, usage: CompiledUsage): number {
+  return totalOf(side, usage) ?? refuse('The plan nets inside the cycle: energy by period or clock hour is needed.');
 }
 
 /** A USD bank in a cycle (`moveUsdBank`). Gives what it takes off the amount due, and what enters only at the close. */

@@ -6,27 +6,24 @@ import { chargeLines, NOTHING_OWED } from './charges.ts';
 import {
   bankCentsOf,
   type CompiledBank,
-  type CompiledUsage,
   closeCompiled,
   compileBank,
   moveCompiledKwh,
   moveCompiledUsd,
-  sideOf,
+  mustTotal,
 } from './compile-banks.ts';
-import { type CompiledEnergy, compileEnergy, energyCents } from './compile-energy.ts';
+import { type CompiledEnergy, compileEnergy, energyCents, periodCents } from './compile-energy.ts';
 import { type CompiledState, capName, type Slots, slotOf } from './compile-state.ts';
+import { type CompiledUsage, partsOf, type Side } from './compile-usage.ts';
 import { type Cycle, openCycle } from './cycle-flows.ts';
-import type { Basis } from './energy-figures.ts';
 import { mustPrice } from './energy-share.ts';
 import { splitCycle } from './parts.ts';
 import { keptAt, knownAs } from './place.ts';
 import type { RatePlan } from './plan.ts';
 import { type PreparedCharge, type PreparedCredit, preparePlan } from './prepare.ts';
 import { compare, minus, priced, type Qty, qtyOfText, type Rate, rateOf, times } from './quantity.ts';
-import { orRefusal } from './refused.ts';
+import { orRefusal, refuse } from './refused.ts';
 import type { CycleUsage } from './settlement.ts';
-
-type Side = { basis: Basis; netsCycle: boolean };
 
 type EnergyCharge = { kind: 'energy'; place: number; side: Side; energy: CompiledEnergy };
 
@@ -79,9 +76,9 @@ export type CompileInput = {
 };
 
 /**
- * Compiles the settlement of a cycle known by its totals alone: no intervals, no periods, no payments, no final bill. Null where the plan uses
- * what only the full settlement does (prices or balances by period, netting inside the cycle, lots, changes by intervals) or would be refused: then
- * `settleAmounts` is the way, and says why.
+ * Compiles the settlement of a cycle known by its totals, and by its periods and clock hours where the plan goes by them: no intervals, no payments, no final
+ * bill. Null where the plan uses what only the full settlement does (tiers or balances by period, lots, changes by intervals) or would be refused:
+ * then `settleAmounts` is the way, and says why.
  */
 export function compileCycle(input: CompileInput): CompiledCycle | null {
   const made = orRefusal(() => compile(input));
@@ -137,12 +134,6 @@ function usageOf(from: Day, to: Day, kW: CycleUsage['kW']): CycleUsage {
   };
 }
 
-/** How a side of the energy is read; null where it is netted inside the cycle. */
-function sideFor(basis: Basis, netting: PreparedCharge['netting']): Side | null {
-  if (basis === 'production' || basis === 'load') return { basis, netsCycle: false };
-  return netting === 'none' || netting === 'cycle' ? { basis, netsCycle: netting === 'cycle' } : null;
-}
-
 function compileCharge(cycle: Cycle, item: PreparedCharge, places: ReadonlyMap<string, number>): CompiledCharge | null {
   const { charge, netting, pricing } = item;
   const { label, basis } = charge;
@@ -167,9 +158,8 @@ function compileCharge(cycle: Cycle, item: PreparedCharge, places: ReadonlyMap<s
       return basis === 'percent' ? { kind: 'percent', place, on, parts } : { kind: 'floor', place, on, parts };
     }
     default: {
-      const side = sideFor(basis, netting);
-      const energy = side && compileEnergy(cycle, { label, basis, netting, pricing, lessBank: null }, null);
-      return side && energy ? { kind: 'energy', place, side, energy } : null;
+      const energy = compileEnergy(cycle, { label, basis, netting, pricing, lessBank: null }, null);
+      return energy && { kind: 'energy', place, side: { basis, netting }, energy };
     }
   }
 }
@@ -183,12 +173,11 @@ function compileCredit(
 ): CompiledCredit | null {
   const { credit, netting, pricing } = item;
   const { label, basis, cap } = credit;
-  const side = sideFor(basis, netting);
-  const energy = side && compileEnergy(cycle, { label, basis, netting, pricing, lessBank: null }, credit.term);
-  if (!side || !energy) return null;
+  const energy = compileEnergy(cycle, { label, basis, netting, pricing, lessBank: null }, credit.term);
+  if (energy === null) return null;
   const key = cap?.per === 'year' ? String(yearOf(cycle.to)) : 'term';
   return {
-    side,
+    side: { basis, netting },
     energy,
     cap: cap ? { at: slotOf(slots.caps, capName(credit.id, key)), amount: centsOfQty(qtyOfText(cap.amount)) } : null,
     to: credit.to === 'bill' || credit.to === 'separate' ? credit.to : knownAs(banks, credit.to),
@@ -252,16 +241,19 @@ export function bankCents(compiled: CompiledCycle, state: CompiledState): number
   return total;
 }
 
-function energyOf({ basis, netsCycle }: Side, usage: CompiledUsage): number {
-  switch (basis) {
-    case 'import':
-    case 'export':
-      return sideOf(netsCycle, usage, basis);
-    case 'production':
-      return usage.productionWh;
-    case 'load':
-      return usage.loadWh;
+/** What an item by the kWh comes to, less what kWh banks have taken: they pay none that goes by period, since they keep one balance. */
+function centsOf(
+  { side, energy }: { side: Side; energy: CompiledEnergy },
+  usage: CompiledUsage,
+  used: Qty | null,
+  each: ((amount: number) => void) | null = null,
+): number {
+  if (energy.byPeriod) {
+    const parts = partsOf(side, usage) ?? refuse(`${energy.label} is priced by period: its kWh by period are needed.`);
+    return periodCents(energy, parts, each);
   }
+  const n = mustTotal(side, usage);
+  return energyCents(energy, used ? minus(n, used) : n, each);
 }
 
 function amountOf(
@@ -276,11 +268,8 @@ function amountOf(
   switch (charge.kind) {
     case 'fixed':
       return charge.amount;
-    case 'energy': {
-      const n = energyOf(charge.side, usage);
-      const used = taken[charge.place];
-      return energyCents(charge.energy, used ? minus(n, used) : n);
-    }
+    case 'energy':
+      return centsOf(charge, usage, taken[charge.place] ?? null);
     case 'percent': {
       let base = 0;
       for (const place of charge.on) {
@@ -309,7 +298,7 @@ function amountOf(
 function unbanked(energies: readonly EnergyCharge[], place: number, usage: CompiledUsage): number {
   let sum = 0;
   for (const charge of energies) {
-    if (charge.place === place) sum += energyCents(charge.energy, energyOf(charge.side, usage));
+    if (charge.place === place) sum += centsOf(charge, usage, null);
   }
   return sum;
 }
@@ -326,13 +315,12 @@ function missingTo(cycle: Cycle, part: FloorPart, base: number): number {
 }
 
 function creditOf(credit: CompiledCredit, usage: CompiledUsage, state: CompiledState): number {
-  const n = energyOf(credit.side, usage);
   const { cap } = credit;
-  if (cap === null) return energyCents(credit.energy, n);
+  if (cap === null) return centsOf(credit, usage, null);
   const used = keptAt(state.capUsed, cap.at);
   let left = cap.amount - used;
   let earned = 0;
-  energyCents(credit.energy, n, (full) => {
+  centsOf(credit, usage, null, (full) => {
     const amount = full > left ? Math.max(left, 0) : full;
     left -= amount;
     earned += amount;

@@ -1,11 +1,13 @@
 import { addDays, type Day } from '../units/day.ts';
 import type { Cycle } from './cycle-flows.ts';
 import { canUseIntervals } from './energy-figures.ts';
+import { daysHeld } from './energy-pieces.ts';
 import type { EnergyItem } from './energy-share.ts';
 import { type Part, splitCycle } from './parts.ts';
 import { keptAt } from './place.ts';
 import { minus, priced, type Qty, type Rate, roundToWhole, times } from './quantity.ts';
 import { limitsAt, priceAt } from './rates-in-force.ts';
+import { refuse } from './refused.ts';
 import { daysInBoth } from './term-pieces.ts';
 import { type Bounds, boundsOf, kWhInTier } from './tier-pieces.ts';
 
@@ -17,12 +19,19 @@ type PricedPart = {
   /** The rate of each tier; one where the item has no tiers. */
   rates: readonly Rate[];
   bounds: Bounds | null;
+  /** In the calendar's order; null where the item is not priced by period. */
+  periods: readonly PricedPeriod[] | null;
   /** Days within the credit's term; null where it has none or the part lies in it whole. */
   termDays: number | null;
 };
 
+/** A period's price in a part, null where it has none; and the days its kWh are shared over, null where the part has none of its hours. */
+type PricedPeriod = { rate: Rate | null; held: number | null };
+
 /** An item priced by the kWh, compiled for one cycle. */
 export type CompiledEnergy = {
+  label: string;
+  byPeriod: boolean;
   parts: readonly PricedPart[];
   /** The one rate of an item that is neither split, tiered nor in a term. */
   flat: Rate | null;
@@ -33,24 +42,26 @@ export type CompiledEnergy = {
 
 /**
  * Looks up every price an item can have in a cycle, so that pricing a quantity is arithmetic alone. Null where the item needs what only a full
- * settlement can tell: prices by period, a change by intervals, a rate that is missing or too long for whole numbers.
+ * settlement can tell: tiers over periods, a change by intervals, a rate that is missing or too long for whole numbers.
  */
 export function compileEnergy(cycle: Cycle, item: EnergyItem, term: Term | null): CompiledEnergy | null {
   const { pricing } = item;
   const { plan } = cycle.prepared;
-  if (pricing.byPeriod) return null;
   const parts = splitCycle(cycle, pricing, canUseIntervals(cycle, item));
   const compiled: PricedPart[] = [];
   for (const part of parts) {
     if (!part.group.whole) return null;
-    const made = compilePart(cycle, item, part, term);
+    const made = compilePart(cycle, item, part, parts, term);
     if (made === null) return null;
     compiled.push(made);
   }
   const [only] = compiled;
-  const isFlat = only && compiled.length === 1 && only.bounds === null && only.termDays === null;
+  const isFlat =
+    only && compiled.length === 1 && only.bounds === null && only.termDays === null && only.periods === null;
   return {
+    label: item.label,
     parts: compiled,
+    byPeriod: pricing.byPeriod,
     flat: isFlat ? keptAt(only.rates, 0) : null,
     allDays: cycle.days,
     wholeKwh: plan.rounding.kWh === 'whole',
@@ -58,7 +69,25 @@ export function compileEnergy(cycle: Cycle, item: EnergyItem, term: Term | null)
   };
 }
 
-function compilePart(cycle: Cycle, item: EnergyItem, part: Part, term: Term | null): PricedPart | null {
+function compilePart(
+  cycle: Cycle,
+  item: EnergyItem,
+  part: Part,
+  parts: readonly Part[],
+  term: Term | null,
+): PricedPart | null {
+  const days = term ? daysInTerm(cycle, part, term) : part.days;
+  const termDays = days === part.days ? null : days;
+  if (item.pricing.byPeriod) {
+    if (item.pricing.tiers.length > 0) return null;
+    const periods: PricedPeriod[] = [];
+    for (const period of cycle.prepared.period.keys()) {
+      const rate = priceAt(item.pricing, part.rateDay, part.season, period, null)?.rate ?? null;
+      if (rate?.int === null) return null;
+      periods.push({ rate, held: parts.length === 1 ? part.days : daysHeld(cycle, period, part, parts) });
+    }
+    return { days: part.days, rates: [], bounds: null, periods, termDays };
+  }
   const limits = item.pricing.tiers.length > 0 ? limitsAt(item.pricing, part.rateDay, part.season) : null;
   const bounds = limits ? boundsOf(cycle, part, limits) : null;
   const rates: Rate[] = [];
@@ -67,8 +96,7 @@ function compilePart(cycle: Cycle, item: EnergyItem, part: Part, term: Term | nu
     if (price === null || price.rate.int === null) return null;
     rates.push(price.rate);
   }
-  const termDays = term ? daysInTerm(cycle, part, term) : part.days;
-  return { days: part.days, rates, bounds, termDays: termDays === part.days ? null : termDays };
+  return { days: part.days, rates, bounds, periods: null, termDays };
 }
 
 function daysInTerm(cycle: Cycle, part: Part, term: Term): number {
@@ -119,20 +147,58 @@ function partCents(
   let sum = 0;
   let tier = 1;
   for (const rate of part.rates) {
-    let top = bounds === null ? share : kWhInTier(total, bounds, tier, d);
-    let bottom = bounds === null ? d : times(d, bounds.scale);
-    if (part.termDays !== null) {
-      top = times(top, part.termDays);
-      bottom = times(bottom, part.days);
-      if (item.wholeKwh) {
-        top = roundToWhole(top, bottom);
-        bottom = 1;
-      }
-    }
-    const amount = priced(top, bottom, rate, item.rounding);
+    const top = bounds === null ? share : kWhInTier(total, bounds, tier, d);
+    const bottom = bounds === null ? d : times(d, bounds.scale);
+    const amount = amountOf(item, part, top, bottom, rate);
     each?.(amount);
     sum += amount;
     tier += 1;
+  }
+  return sum;
+}
+
+/** A quantity `top / bottom` at a rate, less what lies outside the credit's term. */
+function amountOf(item: CompiledEnergy, part: PricedPart, top: Qty, bottom: Qty, rate: Rate): number {
+  if (part.termDays === null) return priced(top, bottom, rate, item.rounding);
+  const inTerm = times(top, part.termDays);
+  const over = times(bottom, part.days);
+  return item.wholeKwh
+    ? priced(roundToWhole(inTerm, over), 1, rate, item.rounding)
+    : priced(inTerm, over, rate, item.rounding);
+}
+
+/**
+ * What an item priced by period comes to in cents, in each part its periods in the calendar's order; null for a period the cycle has no hours of. Refused where one has
+ * no price.
+ */
+export function periodCents(
+  item: CompiledEnergy,
+  amounts: readonly (number | null)[],
+  each: ((amount: number) => void) | null = null,
+): number {
+  const given = amounts.map((): { days: number; whole: Qty } => ({ days: 0, whole: 0 }));
+  let sum = 0;
+  for (const part of item.parts) {
+    for (const [at, { rate, held }] of (part.periods ?? []).entries()) {
+      const n = amounts[at];
+      if (n === null || n === undefined || held === null) continue;
+      let top: Qty = n;
+      let bottom = 1;
+      if (held !== part.days && item.wholeKwh) {
+        const before = keptAt(given, at);
+        const days = before.days + part.days;
+        const whole = roundToWhole(times(n, days), held);
+        given[at] = { days, whole };
+        top = minus(whole, before.whole);
+      } else if (held !== part.days) {
+        top = times(n, part.days);
+        bottom = held;
+      }
+      const price = rate ?? refuse(`${item.label} has no rate in force for one of its periods.`);
+      const amount = amountOf(item, part, top, bottom, price);
+      each?.(amount);
+      sum += amount;
+    }
   }
   return sum;
 }

@@ -141,7 +141,7 @@ function wholeFlow(cycle: Cycle, item: Asked): Flow {
       if (prepared.plan.load === 'metered') {
         return {
           total: usage.loadWh ?? refuse(`${item.label} is charged on the load meter: its kWh are needed.`),
-          byPeriod: null,
+          byPeriod: statedPeriods(cycle, 'load'),
         };
       }
       return {
@@ -156,8 +156,16 @@ function produced(cycle: Cycle, label: string): number {
 }
 
 function periodsOf(cycle: Cycle, basis: 'production' | 'load'): Record<string, number> | null {
-  if (!cycle.usage.intervals) return null;
+  if (!cycle.usage.intervals) return statedPeriods(cycle, basis);
   return intervalFlow(cycle, basis, 'none', cycle.from, cycle.to).byPeriod;
+}
+
+function statedPeriods({ usage }: Cycle, basis: 'production' | 'load'): Record<string, number> | null {
+  if (!usage.ownByPeriod) return null;
+  const byPeriod: Record<string, number> = {};
+  for (const [period, own] of Object.entries(usage.ownByPeriod))
+    byPeriod[period] = basis === 'production' ? own.productionWh : own.loadWh;
+  return byPeriod;
 }
 
 function groupFlow(cycle: Cycle, item: Asked, group: Group): Flow {

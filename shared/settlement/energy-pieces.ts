@@ -103,7 +103,7 @@ function shareOf(cycle: Cycle, figure: Figure, part: Part, parts: readonly Part[
 }
 
 /** The days a figure is shared over: of the parts in which its period has hours, or of all where none says so; null when this part has none. */
-function daysHeld(cycle: Cycle, period: string | null, part: Part, parts: readonly Part[]): number | null {
+export function daysHeld(cycle: Cycle, period: string | null, part: Part, parts: readonly Part[]): number | null {
   const group = parts.filter((other) => other.group === part.group);
   const held = group.filter((other) => holds(cycle, period, other));
   if (held.length > 0 && !held.includes(part)) return null;

@@ -127,6 +127,8 @@ export type CycleUsage = {
   loadWh: Wh | null;
   byPeriod: Record<string, Flow> | null;
   netted: Partial<Record<'15min' | 'hour', Flow & { byPeriod: Record<string, Flow> | null }>>;
+  /** Production and use by period, where they are stated; interval data, where there are any, tell them by themselves. */
+  ownByPeriod?: Record<string, { productionWh: Wh; loadWh: Wh }>;
   kW: Partial<Record<'dc' | 'ac' | 'demand', string>>;
   payments: { on: Day; amountCents: Cents }[];
   finalBill: boolean;

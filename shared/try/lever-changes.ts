@@ -147,7 +147,9 @@ function moreUse(lever: Levers['moreUse'], hourly: HourlyExport): Changes['energ
     const inDays = (sentInHours * days) / daysBetween(period.from, period.to);
     const more = lever.whPerDay * days;
     const met = Math.floor(Math.min(more, inDays));
-    return energyFrom(productionWh, useWh + more, exportWh - met);
+    const changed = energyFrom(productionWh, useWh + more, exportWh - met);
+    const selfWh = energy.exportWh - changed.exportWh;
+    return { ...changed, atHours: { importWh: more - selfWh, selfWh, fromHour: lever.fromHour, toHour: lever.toHour } };
   };
 }
 

@@ -158,7 +158,7 @@ describe('the handbook figures', () => {
   });
 
   it('are none while nothing can be projected', () => {
-    const plans = built.basis.facts.plans.map((one) => ({ ...one, plan: { ...one.plan, netting: 'hour' as const } }));
+    const plans = built.basis.facts.plans.map((one) => ({ ...one, plan: { ...one.plan, timeZone: 'Nowhere' } }));
     const basis = { ...built.basis, facts: { ...built.basis.facts, plans } };
     expect(handbookOf({ basis, points: built.ledger.position.points, entries: built.ledger.entries })).toBeNull();
     expect(handbookOf({ basis: built.basis, points: [], entries: [] })).toBeNull();

@@ -120,7 +120,7 @@ describe('the range', () => {
   });
 
   it('says why where nothing can be projected or a drawn month cannot be settled', () => {
-    const unpriced = withPlan((plan) => ({ ...plan, netting: 'hour' }));
+    const unpriced = withPlan((plan) => ({ ...plan, timeZone: 'Nowhere' }));
     expect(rangeOf(unpriced)).toMatchObject({ ok: false, why: expect.stringContaining('cannot be settled') });
     const dear = withPlan((plan) => ({
       ...plan,

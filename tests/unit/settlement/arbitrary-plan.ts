@@ -85,6 +85,11 @@ export const wholeCyclePlans: fc.Arbitrary<RatePlan> = plansOf(
   shape.map((is) => ({ ...is, steps: false, byPeriod: false, netting: is.netting === 'cycle' ? 'cycle' : 'none' })),
 ).map(({ plan: made }) => made);
 
+/** Plans settled on totals, on periods and on what is left after netting in clock blocks, without interval data. */
+export const statedPlans: fc.Arbitrary<RatePlan> = plansOf(
+  shape.map((is) => ({ ...is, steps: false, byPeriod: is.byPeriod && is.netting !== 'cycle' })),
+).map(({ plan: made }) => made);
+
 /** Plans that take interval data: netted by clock blocks or by period, or priced by period. */
 export const intervalPlans: fc.Arbitrary<RatePlan> = plansOf(
   shape.map((is) => ({

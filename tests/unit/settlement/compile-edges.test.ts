@@ -26,7 +26,7 @@ function bothWays(of: RatePlan, used: ReturnType<typeof usage>, opening: Opening
   const state = stateOf(slots, opening);
   const { settlement, closing } = taken(settleAmounts(of, opening, used));
   const { importWh, exportWh } = used;
-  const due = dueOf(cycle, { importWh, exportWh, productionWh: 0, loadWh: 0 }, state);
+  const due = dueOf(cycle, { importWh, exportWh, productionWh: 0, loadWh: 0, split: null }, state);
   return {
     quick: [due, bankCents(cycle, state)],
     full: [electricDue(settlement, false), bankWorth(of, closing, used.from, used.to)],
