@@ -55,6 +55,10 @@ export function HouseholdShell() {
 function Shell({ session, context, base }: { session: SessionView; context: HouseholdContext; base: string }) {
   const places = placesFor(context.role);
   const owner = context.role === 'owner';
+  // Try a change belongs to Money: the head shows so.
+  const { pathname } = useLocation();
+  const isHere = (place: Place, isActive: boolean) =>
+    isActive || (place.to === 'money' && pathname.startsWith(`${base}/try`));
   return (
     <WorkingProvider>
       <a href="#content" className="visually-hidden focus:not-sr-only">
@@ -71,7 +75,7 @@ function Shell({ session, context, base }: { session: SessionView; context: Hous
               to={place.to === '.' ? base : `${base}/${place.to}`}
               end={place.to === '.'}
               className={({ isActive }) =>
-                `border-b-[3px] py-1.5 no-underline ${isActive ? 'border-accent font-semibold text-ink' : 'border-transparent text-soft hover:text-ink'}`
+                `border-b-[3px] py-1.5 no-underline ${isHere(place, isActive) ? 'border-accent font-semibold text-ink' : 'border-transparent text-soft hover:text-ink'}`
               }
             >
               {place.label}

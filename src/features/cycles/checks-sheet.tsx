@@ -23,9 +23,7 @@ export function ChecksSheet({ cycle, household }: { cycle: Cycle; household: Hou
         <section key={title} className="mt-3 first:mt-1">
           <h3 className="flex items-baseline justify-between gap-4 border-b-2 border-ink pb-1">
             {title}
-            <span className="hint font-normal">
-              {agreeing.length} of {agreeing.length + open.length} agree
-            </span>
+            <span className="hint font-normal">{agreeWords(agreeing.length, open)}</span>
           </h3>
           <ul>
             {open.map((check) => (
@@ -67,6 +65,12 @@ export function ChecksSheet({ cycle, household }: { cycle: Cycle; household: Hou
       )}
     </Sheet>
   );
+}
+
+/** "7 of 8 agree", of those that had something to compare; nothing where none had. */
+function agreeWords(agreeing: number, open: readonly Check[]): string {
+  const compared = agreeing + open.filter((check) => check.verdict === 'differs').length;
+  return compared === 0 ? '' : `${agreeing} of ${compared} agree`;
 }
 
 function Explained({ check }: { check: Check }) {
