@@ -1,23 +1,29 @@
+import { keptAt } from '../settlement/place.ts';
 import { daysBetween, monthOf } from '../units/day.ts';
 import { Exact, exact } from '../units/rate.ts';
 import type { EnergyCycle, ProjectionBasis } from './basis.ts';
 import { segmentsOf } from './month-heaps.ts';
 import { energyFrom, type Period, type PeriodEnergy } from './periods.ts';
 
-/** A cycle as a calendar month may draw it. */
-type Candidate = {
-  /** How many of the month's recorded days it holds, and how many the ones before it hold together. */
+/** A cycle's days within one calendar month, with the cycle's own energies. */
+type Recorded = {
   days: number;
-  before: number;
   cycleDays: number;
   productionWh: number;
   exportWh: number;
+  useWh: number;
   /** Whole years the cycle lies behind the last close. */
   age: number;
-  /** Its use against the mean of the month's candidates, in millionths. */
-  use: number;
   /** The cycle itself: how its energy fell on periods goes with the draw. */
   cycle: EnergyCycle;
+};
+
+/** A cycle as a calendar month may draw it. */
+type Candidate = Recorded & {
+  /** How many of the month's recorded days the candidates before it hold together. */
+  before: number;
+  /** Its use against the mean of the month's candidates, in millionths. */
+  use: number;
 };
 
 /** What a month to come can draw: the candidates of its calendar month, and over how many recorded days a draw runs. */
@@ -46,54 +52,46 @@ export function completeCycles(basis: ProjectionBasis): Complete[] {
  * in the month, and production comes out in the mean as the base projection has it. Its use is kept as a share of the month's mean.
  */
 export function urnsOf(basis: ProjectionBasis): Urns {
-  const months: Urn[] = Array.from({ length: 12 }, () => ({ days: 0, candidates: [] }));
-  const uses: number[][] = months.map(() => []);
+  const months: Recorded[][] = Array.from({ length: 12 }, () => []);
+  let oldest = 0;
   for (const { cycle, importWh, exportWh, productionWh } of completeCycles(basis)) {
-    const cycleDays = daysBetween(cycle.from, cycle.to);
     const age = Math.max(0, Math.floor(daysBetween(cycle.to, basis.close.on) / DAYS_PER_YEAR));
-    for (const { month, days } of segmentsOf(cycle.from, cycle.to)) {
-      const urn = months[month];
-      if (!urn) continue;
-      urn.candidates.push({
-        days,
-        before: urn.days,
-        cycleDays,
-        productionWh: Math.max(0, productionWh),
-        exportWh: Math.max(0, exportWh),
-        age,
-        use: MILLION,
-        cycle,
-      });
-      uses[month]?.push(Math.max(0, importWh + productionWh - exportWh));
-      urn.days += days;
-    }
+    oldest = Math.max(oldest, age);
+    const whole = {
+      cycleDays: daysBetween(cycle.from, cycle.to),
+      productionWh: Math.max(0, productionWh),
+      exportWh: Math.max(0, exportWh),
+      useWh: Math.max(0, importWh + productionWh - exportWh),
+      age,
+      cycle,
+    };
+    for (const { month, days } of segmentsOf(cycle.from, cycle.to)) keptAt(months, month).push({ days, ...whole });
   }
-  for (const [month, urn] of months.entries()) weighUses(urn, uses[month] ?? []);
-  return { months, kept: keptOf(basis) };
+  return { months: months.map(urnOf), kept: keptOf(basis, oldest) };
 }
 
-/** Each candidate's use per day against the days' mean, so that a draw keeps the level of the last twelve months. */
-function weighUses(urn: Urn, uses: readonly number[]): void {
-  let total = new Exact(0);
-  for (const [index, { days, cycleDays }] of urn.candidates.entries()) {
-    total = total.plus(new Exact(uses[index] ?? 0).times(days).div(cycleDays));
-  }
-  if (total.isZero()) return;
-  for (const [index, candidate] of urn.candidates.entries()) {
-    candidate.use = new Exact(uses[index] ?? 0)
-      .div(candidate.cycleDays)
-      .times(urn.days)
-      .div(total)
-      .times(MILLION)
-      .toDecimalPlaces(0)
-      .toNumber();
-  }
+/** Each candidate's use per day stands against the days' mean, so that a draw keeps the level of the last twelve months. */
+function urnOf(recorded: readonly Recorded[]): Urn {
+  const days = recorded.reduce((sum, one) => sum + one.days, 0);
+  const total = recorded.reduce((sum, one) => sum.plus(usePerDay(one).times(one.days)), new Exact(0));
+  let before = 0;
+  const candidates = recorded.map((one): Candidate => {
+    const share = total.isZero() ? new Exact(1) : usePerDay(one).times(days).div(total);
+    const candidate = { ...one, before, use: share.times(MILLION).toDecimalPlaces(0).toNumber() };
+    before += one.days;
+    return candidate;
+  });
+  return { days, candidates };
 }
 
-function keptOf(basis: ProjectionBasis): number[] {
+function usePerDay({ useWh, cycleDays }: Recorded): Exact {
+  return new Exact(useWh).div(cycleDays);
+}
+
+function keptOf(basis: ProjectionBasis, oldestCycle: number): number[] {
   const { degradation, horizonMonths } = basis.facts.assumptions;
   const kept = new Exact(1).minus(exact(degradation));
-  const oldest = Math.ceil(basis.cycles.length / 12) + Math.ceil(horizonMonths / 12) + 2;
+  const oldest = oldestCycle + Math.ceil(horizonMonths / 12);
   const made: number[] = [];
   let factor = new Exact(MILLION);
   for (let years = 0; years <= oldest; years += 1) {
@@ -105,7 +103,7 @@ function keptOf(basis: ProjectionBasis): number[] {
 
 /** How many candidates a period has; none where the record holds no such month, and the base stands. */
 export function candidatesOf(urns: Urns, period: Period): Urn {
-  return urns.months[monthOf(period.from) - 1] ?? { days: 0, candidates: [] };
+  return keptAt(urns.months, monthOf(period.from) - 1);
 }
 
 /** Which candidate a recorded day belongs to. */
@@ -118,7 +116,7 @@ export function candidateAt(urn: Urn, day: number): number {
 /** A period's energy as a candidate has it, brought to the period's age and length; `base` is the projection's own for the period. */
 export function drawnEnergy(urns: Urns, period: Period, candidate: Candidate, base: PeriodEnergy): PeriodEnergy {
   const days = daysBetween(period.from, period.to);
-  const kept = urns.kept[candidate.age + Math.floor(period.index / 12) + 1] ?? 0;
+  const kept = keptAt(urns.kept, candidate.age + Math.floor(period.index / 12) + 1);
   const { productionWh: made, exportWh: sent } = candidate;
   const productionWh = Math.round((made * days * kept) / (candidate.cycleDays * MILLION));
   const useWh = Math.round((base.useWh * candidate.use) / MILLION);

@@ -1,4 +1,5 @@
 import type { IntervalDay } from '../facts/papers.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Day, monthOf } from '../units/day.ts';
 
 /** Mean Wh a day sent out in each hour of the day, by calendar month, January first. */
@@ -18,13 +19,12 @@ export function hourlyExportOf(intervals: readonly IntervalDay[]): HourlyExport 
   for (const day of intervals) {
     if (day.channel !== 'export' || day.minutes > 60) continue;
     const perHour = 60 / day.minutes;
-    if (!Number.isInteger(perHour) || day.values.length !== HOURS * perHour) continue;
-    const month = sums[monthOf(day.day) - 1];
-    if (!month || day.values.includes(null)) continue;
+    if (!Number.isInteger(perHour) || day.values.length !== HOURS * perHour || day.values.includes(null)) continue;
+    const month = keptAt(sums, monthOf(day.day) - 1);
     month.days += 1;
     for (const [step, value] of day.values.entries()) {
       const hour = Math.floor(step / perHour);
-      month.hours[hour] = (month.hours[hour] ?? 0) + (value ?? 0);
+      month.hours[hour] = keptAt(month.hours, hour) + Number(value);
     }
   }
   const known = sums.filter((month) => month.days >= ENOUGH_DAYS);
@@ -32,7 +32,7 @@ export function hourlyExportOf(intervals: readonly IntervalDay[]): HourlyExport 
   const meanOf = (months: readonly { days: number; hours: number[] }[]) =>
     Array.from({ length: HOURS }, (_, hour) => {
       const days = months.reduce((sum, month) => sum + month.days, 0);
-      return Math.round(months.reduce((sum, month) => sum + (month.hours[hour] ?? 0), 0) / days);
+      return Math.round(months.reduce((sum, month) => sum + keptAt(month.hours, hour), 0) / days);
     });
   const all = meanOf(known);
   return { months: sums.map((month) => (month.days >= ENOUGH_DAYS ? meanOf([month]) : all)), from: 'intervals' };
@@ -49,7 +49,7 @@ function halfSine(): number[] {
  * the whole day.
  */
 export function shareInHours(profile: HourlyExport, on: Day, fromHour: number, toHour: number): number {
-  const hours = profile.months[monthOf(on) - 1] ?? [];
+  const hours = keptAt(profile.months, monthOf(on) - 1);
   const total = hours.reduce((sum, value) => sum + value, 0);
   if (total === 0) return 0;
   const inside = hours.reduce((sum, value, hour) => {

@@ -19,8 +19,7 @@ export function differenceSentence(levers: Levers, base: Outcome, changed: Outco
     paymentWords(base, changed),
     settledWords(levers, base, changed),
   ].filter((one) => one !== null);
-  const effect = said.length === 0 ? 'nothing changes' : said.join(', ');
-  return `${capital(joined(pulled))}: ${effect}.`;
+  return `${capital(joined(pulled))}: ${said.join(', ')}.`;
 }
 
 function pulledWords(levers: Levers): string[] {

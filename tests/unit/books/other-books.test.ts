@@ -66,6 +66,24 @@ describe('the production incentive', () => {
     expect(evaluateWorking(owed.working).eq(usdOf(owed.amountCents))).toBe(true);
   });
 
+  it('names a receipt by its note, else by who paid it', () => {
+    const receipt = {
+      id: 'r1',
+      on: day('2025-02-20'),
+      amountCents: cents(2_000),
+      note: null,
+      from: null,
+      to: null,
+      quantityWh: null,
+      documentId: null,
+    };
+    const label = (changes: Parameters<typeof incentiveOf>[0]) =>
+      incentiveReceived(incentiveOf({ received: [receipt], ...changes }), cycles)[0]?.label;
+    expect(label({})).toBe('Incentive from State programme');
+    expect(label({ payer: '' })).toBe('Incentive from the payer');
+    expect(label({ received: [{ ...receipt, note: 'Second quarter' }] })).toBe('Second quarter');
+  });
+
   it('is below zero when more came than was earned', () => {
     const received = [
       {

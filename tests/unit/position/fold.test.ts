@@ -65,6 +65,19 @@ describe('placing an entry', () => {
     expect(placed('2024-09-14', 'incentive', 'received')).toBe('2024-10-14');
   });
 
+  it('comes out by its day, those of one day by their ids, and of one id as they came', () => {
+    const one = (id: string, date: string, label: string) => ({ ...plain(date, 'costs', 1), id, label });
+    const entries = [
+      one('b', '2024-09-01', 'first b'),
+      one('a', '2024-09-02', 'a day later'),
+      one('a', '2024-09-01', 'a'),
+      one('b', '2024-09-01', 'second b'),
+      one('c', '2024-09-01', 'c'),
+    ];
+    const labels = placeEntries(entries, cycles).map((entry) => entry.label);
+    expect(labels).toEqual(['a', 'first b', 'second b', 'c', 'a day later']);
+  });
+
   it('is before the first cycle while there is none', () => {
     expect(placeEntries([plain('2024-09-14', 'loan', 1)], [])[0]?.cycle).toBe('before');
   });

@@ -8,7 +8,7 @@ import { energyFrom, periodsAfter } from '#shared/position/periods.ts';
 import { projectFrom } from '#shared/position/project.ts';
 import { rangeOf } from '#shared/position/range.ts';
 import type { RatePlan } from '#shared/settlement/plan.ts';
-import { daysBetween } from '#shared/units/day.ts';
+import { addMonths, day, daysBetween, monthOf } from '#shared/units/day.ts';
 import { wh } from '#shared/units/energy.ts';
 import { rangeMethod, rangeSentence } from '#src/features/position/chart-words.ts';
 import { assuming, builtLedger } from './built-basis.ts';
@@ -133,6 +133,76 @@ describe('the range', () => {
     expect(made.ok).toBe(false);
   });
 
+  describe('where only a drawn month comes to more than a house could owe', () => {
+    // The first year used four times as much as the last: a draw of it takes more than the base, which repeats the last.
+    const cycles = basis.cycles.map((cycle, at) =>
+      at < 13 && cycle.importWh !== null ? { ...cycle, importWh: wh(cycle.importWh * 4) } : cycle,
+    );
+    const priced = (plan: RatePlan, rate: string): RatePlan => ({
+      ...plan,
+      charges: plan.charges
+        .filter((charge) => charge.id === 'energy')
+        .map((charge) => ({ ...charge, rates: [{ from: day('2020-01-01'), rate }] })),
+    });
+    const whyOf = (change: (plan: RatePlan) => { plan: RatePlan; withoutRoof: RatePlan }): string | null => {
+      const plans = basis.facts.plans.map((one) => ({ ...one, ...change(one.plan) }));
+      const of = assuming(
+        { ...basis, cycles, facts: { ...basis.facts, plans } },
+        { horizonMonths: 12, priceRise: '0', degradation: '0' },
+      );
+      expect(projectFrom(of).ok).toBe(true);
+      const made = rangeOf(of, { resamples: 20 });
+      return made.ok ? null : made.why;
+    };
+    const why =
+      'A drawn month cannot be settled. A line comes to more than any house could owe. Check the rates and the kWh.';
+    const plain = (plan: RatePlan) => ({ ...plan, credits: [], banks: [] });
+
+    it('with the roof', () => {
+      expect(whyOf((plan) => ({ plan: priced(plan, '9000000'), withoutRoof: plain(priced(plan, '0.1')) }))).toBe(why);
+    });
+
+    it('without it', () => {
+      expect(whyOf((plan) => ({ plan: priced(plan, '0.1'), withoutRoof: plain(priced(plan, '5000000')) }))).toBe(why);
+    });
+
+    it('without it, on a plan that carries a bank on', () => {
+      expect(
+        whyOf((plan) => ({
+          plan: priced(plan, '0.1'),
+          withoutRoof: { ...plain(priced(plan, '5000000')), banks: plan.banks },
+        })),
+      ).toBe(why);
+    });
+
+    it('and nothing is refused where no month does', () => {
+      expect(whyOf((plan) => ({ plan: priced(plan, '0.1'), withoutRoof: plain(priced(plan, '0.2')) }))).toBeNull();
+    });
+  });
+
+  it('moves through a month the record has nothing complete for as the base does', () => {
+    const off = builtLedger({ exportTo: 'bill' }).basis;
+    const cycles = off.cycles.map((cycle) =>
+      monthOf(cycle.from) === 3 || monthOf(cycle.to) === 3 ? { ...cycle, provisional: true } : cycle,
+    );
+    const gap = assuming({ ...off, cycles }, { horizonMonths: 24 });
+    const range = ranged(gap, { resamples: 1 });
+    const { months } = based(gap);
+    const changes = months.map((month, at) => {
+      const before = at - 1;
+      const drawn = (range.months[at]?.lowCents ?? 0) - (range.months[before]?.lowCents ?? 0);
+      return {
+        month: monthOf(month.on),
+        drawn,
+        base: month.settledTodayCents - (months[before]?.settledTodayCents ?? 0),
+      };
+    });
+    const march = changes.filter(({ month }) => month === 4);
+    expect(march).toHaveLength(2);
+    for (const { drawn, base } of march) expect(drawn).toBe(base);
+    expect(changes.slice(1).some(({ drawn, base }) => drawn !== base)).toBe(true);
+  });
+
   it('leaves a calendar month at the base where the record has none like it', () => {
     const few = { ...basis, cycles: basis.cycles.slice(0, 9) };
     const urns = urnsOf(few);
@@ -171,6 +241,23 @@ describe('a draw', () => {
         expect(energy.exportWh).toBeLessThanOrEqual(energy.productionWh);
       }
     }
+  });
+
+  it('ages a cycle of long ago by all its years, however few cycles there are', () => {
+    const [first] = basis.cycles;
+    const [period] = periodsAfter(basis.close.on, 1);
+    if (!first || !period) throw new Error('no cycle');
+    const old = { ...first, from: addMonths(first.from, -480), to: addMonths(first.to, -480) };
+    const urns = urnsOf(
+      assuming({ ...basis, cycles: [old, ...basis.cycles] }, { degradation: '0.01', horizonMonths: 12 }),
+    );
+    const month = urns.months.find((urn) => urn.candidates.some(({ age }) => age > 40));
+    const candidate = month?.candidates.find(({ age }) => age > 40);
+    if (!candidate) throw new Error('no candidate');
+    const { productionWh } = drawnEnergy(urns, { ...period, index: 11 }, candidate, energyFrom(0, 0, 0));
+    const days = daysBetween(period.from, period.to);
+    const whole = (candidate.productionWh * days) / candidate.cycleDays;
+    expect(productionWh / whole).toBeCloseTo(0.99 ** (candidate.age + 1), 5);
   });
 
   it('takes a cycle without production or use as it was', () => {
