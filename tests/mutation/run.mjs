@@ -1,9 +1,10 @@
-// `npm run mutate`: how many small faults put into shared/settlement and shared/reconcile the tests notice.
+// `npm run mutate`: how many small faults put into the folders below the tests notice.
 //   --all            every mutant, not a sample
-//   --sample=200     how many, half of them in each folder
+//   --sample=200     how many, as many in each folder
 //   --seed=1         which ones
 //   --only=text      only files whose path contains the text
 //   --list           the mutants, without running them
+//   --workers=2      how many at a time
 // Works in a copy of the project, so that nothing here is touched. Properties run fewer times there (PROPERTY_RUNS), so the score is a lower bound.
 import { fork } from 'node:child_process';
 import { cpSync, mkdtempSync, readdirSync, readFileSync, realpathSync, rmSync, symlinkSync } from 'node:fs';
@@ -16,8 +17,8 @@ const root = join(dirname(fileURLToPath(import.meta.url)), '..', '..');
 const options = new Map(process.argv.slice(2).map((word) => word.replace(/^--/, '').split('=')));
 const say = (line) => process.stdout.write(`${line}\n`);
 
-const COPIED = ['shared', 'server', 'tests', 'fixtures', 'package.json', 'tsconfig.json', 'vite.config.ts'];
-const FOLDERS = ['shared/settlement', 'shared/reconcile'];
+const COPIED = ['shared', 'server', 'src', 'tests', 'fixtures', 'package.json', 'tsconfig.json', 'vite.config.ts'];
+const FOLDERS = ['shared/settlement', 'shared/reconcile', 'shared/books', 'shared/position', 'shared/try'];
 /** The tests that state the rules of a folder: the quick ones first, and the rest only for a mutant they do not notice. */
 const STAGES = {
   'shared/settlement': [
@@ -28,8 +29,25 @@ const STAGES = {
     ['tests/unit/reconcile'],
     ['tests/unit/ledger', 'tests/standards/error-fixtures', 'tests/standards/re-add'],
   ],
+  'shared/books': [
+    ['tests/unit/books'],
+    [
+      'tests/standards/apr',
+      'tests/standards/credit',
+      'tests/standards/financial',
+      'tests/standards/loan',
+      'tests/standards/mortgage',
+      'tests/unit/ledger/other-money',
+      'tests/unit/sample/ledger',
+    ],
+  ],
+  'shared/position': [
+    ['tests/unit/position'],
+    ['tests/standards/economics', 'tests/standards/netposition', 'tests/standards/re-add', 'tests/unit/sample/ledger'],
+  ],
+  'shared/try': [['tests/unit/try'], ['tests/unit/screens/try']],
 };
-const WORKERS = 2;
+const WORKERS = Number(options.get('workers') ?? 2);
 const LEAST_LIMIT_MS = 20_000;
 
 const copies = mkdtempSync(join(realpathSync(tmpdir()), 'gablebook-mutation-'));
@@ -145,13 +163,13 @@ class Worker {
   }
 }
 
-const found = FOLDERS.map(mutantsIn);
+const found = FOLDERS.map(mutantsIn).filter((mutants) => mutants.length > 0);
 const size = Number(options.get('sample') ?? 200);
 const seed = Number(options.get('seed') ?? 1);
 const random = randomFrom(seed);
 const chosen = options.has('all')
   ? found.flat()
-  : found.flatMap((mutants) => shuffled(mutants, random).slice(0, Math.round(size / FOLDERS.length)));
+  : found.flatMap((mutants) => shuffled(mutants, random).slice(0, Math.round(size / found.length)));
 const all = found.reduce((sum, mutants) => sum + mutants.length, 0);
 say(`${chosen.length} of ${all} mutants${options.has('all') ? '' : `, seed ${seed}`}`);
 if (options.has('list')) {
@@ -201,7 +219,7 @@ await Promise.all(
 const noticed = (of, left) =>
   `${of - left} of ${of} noticed (${Math.round(((of - left) / Math.max(of, 1)) * 1000) / 10} %)`;
 say('');
-for (const folder of FOLDERS) {
+for (const folder of FOLDERS.filter((one) => chosen.some((mutant) => mutant.folder === one))) {
   const of = chosen.filter((mutant) => mutant.folder === folder).length;
   say(`${folder}: ${noticed(of, survived.filter((mutant) => mutant.folder === folder).length)}`);
 }

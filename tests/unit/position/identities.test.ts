@@ -7,10 +7,11 @@ import type { ProjectionBasis } from '#shared/position/basis.ts';
 import { projectFrom } from '#shared/position/project.ts';
 import { cents, sumCents } from '#shared/units/cents.ts';
 import { addMonths, type Day } from '#shared/units/day.ts';
+import { PROPERTY_RUNS } from '#tests/support/property-runs.ts';
 import { BUILT_START, builtLedger } from './built-basis.ts';
 
 /** Households that differ in everything the position is made of; as many as a whole ledger each allows. */
-const HOUSEHOLDS = 300;
+const HOUSEHOLDS = Math.ceil(PROPERTY_RUNS * 0.3);
 const HORIZON = 96;
 
 type Drawn = {
