@@ -198,6 +198,22 @@ describe('energy', () => {
     expect(lacks(without(1))).toBe('The import interval file lacks 1 day and 5 readings of this cycle’s 31 days.');
   });
 
+  test('the monitor’s distance from the production meter is said in percent of the meter', () => {
+    const facts = buildHousehold({ intervals: { channels: ['monitor'], minutes: 1440 } });
+    const [first] = facts.intervals.filter((one) => one.day === '2025-07-20');
+    const less = {
+      ...facts,
+      intervals: facts.intervals.map((one) =>
+        one === first ? { ...one, values: [Number(one.values[0]) - 29_000] } : one,
+      ),
+    };
+    expect(check(less, 1, 'productionAgainstMonitor:')).toMatchObject({
+      verdict: 'agrees',
+      difference: '29',
+      cause: 'They lie 2 % apart; up to 5 % is ordinary.',
+    });
+  });
+
   test('a production meter that stood still is told apart from a monitor that counted', () => {
     const facts = buildHousehold({ intervals: { channels: ['monitor'], minutes: 1440 } });
     const still = changed(

@@ -29,6 +29,21 @@ describe('what is compared', () => {
     expect(findCauses(inputOf(house, [{ ...right, days: 29, importWh: kWh(600), productionWh: kWh(1) }]))).toEqual([]);
   });
 
+  test('lines of one charge may be printed in any order', () => {
+    const flows = { peak: { importWh: kWh(151), exportWh: kWh(0) }, off: { importWh: kWh(461), exportWh: kWh(0) } };
+    const built = {
+      opening: openingOf({}),
+      cycles: [{ plan: byPeriod, usage: { ...winter, byPeriod: flows }, reads: [] }],
+    };
+    const charges = byPeriod.charges.map((charge) =>
+      charge.id === 'energy' ? { ...charge, rates: charge.rates.map((row) => ({ ...row, rate: '0.2417' })) } : charge,
+    );
+    const statements = billed(built, [{ plan: { ...byPeriod, charges } }]);
+    const turned = statements.map((one) => ({ ...one, lines: (one.lines ?? []).toReversed() }));
+    expect(ids(findCauses(inputOf(built, statements)))).toEqual(['wrongRate']);
+    expect(ids(findCauses(inputOf(built, turned)))).toEqual(['wrongRate']);
+  });
+
   test('a statement that says nothing has no cause; nor has a cycle that cannot be settled', () => {
     const [right] = billed(house, []);
     if (!right) throw new Error('no statement');
