@@ -1,7 +1,7 @@
 import type { EnergySplit } from '../metering/energy-split.ts';
 import { cellsOf } from '../metering/period-hours.ts';
 import { matchParts } from '../reconcile/match-parts.ts';
-import { intervalView, nettedOver, producedOver } from '../settlement/interval-flows.ts';
+import { intervalView, mustCover, nettedOver, producedOver } from '../settlement/interval-flows.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { qtyOfText } from '../settlement/quantity.ts';
 import { orRefusal } from '../settlement/refused.ts';
@@ -30,6 +30,7 @@ function measuredSplit(
 ): EnergySplit | null {
   const cells = cellsOf(plan.calendar);
   const view = intervalView(intervals, plan);
+  mustCover(view, from, to);
   const gross = nettedOver(view, 'none', null, null);
   const bought = cells.map((id) => (id === null ? gross.import : (gross.byPeriod?.[id]?.import ?? 0)));
   const sent = cells.map((id) => (id === null ? gross.export : (gross.byPeriod?.[id]?.export ?? 0)));

@@ -78,10 +78,13 @@ function byChannel(intervals: readonly IntervalDay[], since: Day): Record<Interv
   };
   for (const { channel, day, minutes, values } of intervals) {
     if (day < since || minutes > 60 || values.length * minutes !== HOURS * 60) continue;
-    const whole = values.filter((value) => value !== null);
-    if (whole.length === values.length) read[channel].set(day, { minutes, values: whole });
+    if (isWhole(values)) read[channel].set(day, { minutes, values });
   }
   return read;
+}
+
+function isWhole(values: readonly (number | null)[]): values is readonly number[] {
+  return !values.includes(null);
 }
 
 function emptyMonth(): MonthSum {

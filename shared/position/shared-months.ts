@@ -57,8 +57,8 @@ export function sharedAssumptions({ months, hasSelf, byPeriod, byBlock, cancelsU
   if (byPeriod) {
     const parts = [
       months.record > 0 ? `${months.record} months as the record’s cycles were` : null,
-      months.hours > 0 ? `${months.hours} by the hours of the readings` : null,
-      months.stated > 0 ? `${months.stated} by ${STATED_PROFILE_WORDS}` : null,
+      months.hours > 0 ? `${months.hours} months by the hours of the readings` : null,
+      months.stated > 0 ? `${months.stated} months by ${STATED_PROFILE_WORDS}` : null,
     ].filter((part) => part !== null);
     const isEstimate = months.stated > 0 || months.hours > 0;
     stated.push({
