@@ -160,10 +160,12 @@ describe('for any contract, kept to schedule', () => {
   );
 
   it(
-    'the more of an assumed prepayment is paid, the less the payment is afterwards',
+    'the more of an assumed prepayment is paid, the less the payment is afterwards, unless it is interest alone',
     () => {
       fc.assert(
         fc.property(anyContract, (contract) => {
+          // A month whose interest rounds to nothing asks for nothing, so that the next payment may be a level one in one case alone.
+          fc.pre(contract.promotion?.payment !== 'interest');
           const outcomes = prepaymentOutcomes(contract);
           expect(outcomes).toHaveLength(contract.assumedPrepayment === null ? 0 : 3);
           const next = outcomes.map((outcome) => outcome.next?.amountCents ?? 0);
