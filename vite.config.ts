@@ -19,13 +19,18 @@ export default defineConfig({
     proxy: { '/api': `http://127.0.0.1:${apiPort}` },
   },
   test: {
-    // `npm run coverage`: the two folders that decide what a bill should have been are to have every branch tried.
+    // `npm run coverage`: the folders that decide what a bill should have been, and what the money comes to, are to have every branch tried.
     coverage: {
       provider: 'v8',
-      include: ['shared/settlement/**/*.ts', 'shared/reconcile/**/*.ts'],
+      include: ['settlement', 'reconcile', 'books', 'position', 'try'].map((folder) => `shared/${folder}/**/*.ts`),
       reporter: ['text', 'json'],
       reportOnFailure: true,
-      thresholds: { 'shared/settlement/**': { branches: 100 }, 'shared/reconcile/**': { branches: 100 } },
+      thresholds: {
+        'shared/settlement/**': { branches: 100 },
+        'shared/reconcile/**': { branches: 100 },
+        'shared/books/**': { branches: 100 },
+        'shared/try/**': { branches: 100 },
+      },
     },
     projects: [
       { extends: true, test: { name: 'unit', include: ['tests/unit/**/*.test.{ts,tsx}'] } },
