@@ -51,6 +51,14 @@ describe('the annual percentage rate', () => {
     );
   }, 60_000);
 
+  it('is proved by as few inputs as there are runs of one amount', () => {
+    const names = (loan: ReturnType<typeof loanOf>) =>
+      loanApr(loan, cents(0))?.proof.working.inputs.map(({ name, label }) => `${name}: ${label}`);
+    expect(names(loanOf())).toEqual(['i: Rate a unit period', 'p1: 239 payments of', 'p2: One payment']);
+    const promotion = { months: 6, annualRate: '0.0699', payment: 'interest' as const };
+    expect(names(loanOf({ promotion }))?.slice(1, 3)).toEqual(['p1: 6 payments of', 'p2: 233 payments of']);
+  });
+
   it('of a loan that is all fee is not known', () => {
     expect(loanApr(loanOf(), cents(3_000_000))).toBeNull();
   });

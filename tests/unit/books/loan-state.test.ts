@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { loanSchedule, loanStateOn } from '#shared/books/loan.ts';
+import { loanPayoff, loanSchedule, loanStateOn } from '#shared/books/loan.ts';
 import { loanBook } from '#shared/books/loan-book.ts';
 import { day } from '#shared/units/day.ts';
 import { loanOf, paymentOf } from './facts.ts';
@@ -24,6 +24,16 @@ describe('what is owed on a day', () => {
     expect(loanStateOn(loan, day('2024-07-15'), 'through').paid).toBe(1);
     expect(loanStateOn(loan, day('2024-07-14'), 'through').paid).toBe(0);
     expect(loanStateOn(loan, day('2024-07-16'), 'before').paid).toBe(1);
+  });
+});
+
+describe('a payoff in words', () => {
+  it('adds the interest that was left unpaid to that of the days since', () => {
+    const loan = loanOf({ promotion: { months: 6, annualRate: '0.0699', payment: 'none' } });
+    // 174.75 of the first month and 87.38 of fifteen days.
+    expect(loanPayoff(loan, day('2024-07-30')).working.words).toBe(
+      '$30,000.00 of principal and $262.13 of interest for 15 days to 30 Jul 2024',
+    );
   });
 });
 

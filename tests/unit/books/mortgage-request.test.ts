@@ -34,6 +34,8 @@ describe('what an investor’s rule asks on the value of today', () => {
     ['under two years, no improvement', '2026-04-30', null, null, 'notMet'],
     ['under two years, after an improvement', '2026-04-30', '2025-02-01', '0.80', 'met'],
     ['an improvement from before the mortgage does not count', '2026-04-30', '2024-04-30', null, 'notMet'],
+    ['an improvement of the mortgage’s first day counts', '2026-04-30', '2024-05-01', '0.80', 'met'],
+    ['an improvement of today counts', '2026-04-30', '2026-04-30', '0.80', 'met'],
     ['an improvement still to come does not count', '2026-04-30', '2026-06-01', null, 'notMet'],
     ['two years to five', '2026-05-01', null, '0.75', 'met'],
     ['five years to the month', '2029-05-01', null, '0.75', 'met'],
@@ -42,6 +44,13 @@ describe('what an investor’s rule asks on the value of today', () => {
     const { rule } = asked(on, 600_000, {}, improvedOn);
     expect(rule.share).toBe(share);
     expect(stateOf(rule, 'seasoning')).toBe(seasoning);
+  });
+
+  it('says how many months old the mortgage is, none in its first and before it', () => {
+    const words = (on: string) => asked(on, 600_000).rule.conditions.find((one) => one.id === 'seasoning')?.words;
+    expect(words('2024-03-20')).toMatch(/^The mortgage is 0 months old/);
+    expect(words('2024-05-20')).toMatch(/^The mortgage is 0 months old/);
+    expect(words('2024-06-20')).toMatch(/^The mortgage is 1 month old/);
   });
 
   it('says that the texts do not settle what an improvement allows from two years to five', () => {
