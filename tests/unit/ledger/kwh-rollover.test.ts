@@ -56,7 +56,17 @@ function rollover(): HouseholdFacts {
       return {
         ...statement,
         lines: [line('energy', 'import', String(month.billed), month.energy), line('customer', 'fixed', '1', 1100)],
-        banks: [{ bank: 'bank', unit: 'kWh', open: month.open, close: month.close, sentOut: null, sentValueCents: null, row: null }],
+        banks: [
+          {
+            bank: 'bank',
+            unit: 'kWh',
+            open: month.open,
+            close: month.close,
+            sentOut: null,
+            sentValueCents: null,
+            row: null,
+          },
+        ],
         previousBalanceCents: null,
         paymentsCents: null,
         amountDueCents: cents(month.energy + 1100),

@@ -169,7 +169,18 @@ describe('built households', () => {
   test('a bank that the plan does not have, or keeps by period, is not faced with one printed figure', () => {
     const stray = changed(short(), 1, (s) => ({
       ...s,
-      banks: [...s.banks, { bank: 'kwhBank', unit: 'kWh' as const, open: '5', close: '5', sentOut: null, sentValueCents: null, row: null }],
+      banks: [
+        ...s.banks,
+        {
+          bank: 'kwhBank',
+          unit: 'kWh' as const,
+          open: '5',
+          close: '5',
+          sentOut: null,
+          sentValueCents: null,
+          row: null,
+        },
+      ],
     }));
     expect(one(stray, 1)).toMatchObject([{ cause: 'exportShort' }]);
     const plan = builtPlan('creditBank');
