@@ -42,6 +42,8 @@ describe('the handbook figures', () => {
     const last = projected.projection.months.at(-1);
     const flows = listOf(made.asBought.netPresentValue, 'flows');
     expect(flows).toHaveLength(made.years + 1);
+    const [, flowInput] = made.asBought.netPresentValue.working.inputs;
+    expect(flowInput?.label).toBe(`Kept or received less paid, as bought, year 0 to ${made.years}`);
     expect(sumCents(flows.map(cents))).toBe((last?.cashSoFarCents ?? 0) + (last?.loanPayoffCents ?? 0));
   });
 
