@@ -1,6 +1,7 @@
 import type { EnergySplit } from '../metering/energy-split.ts';
 import { cellsOf } from '../metering/period-hours.ts';
 import { matchParts } from '../reconcile/match-parts.ts';
+import type { NettedFlow } from '../settlement/cycle-flows.ts';
 import { intervalView, mustCover, nettedOver, producedOver } from '../settlement/interval-flows.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { qtyOfText } from '../settlement/quantity.ts';
@@ -32,15 +33,16 @@ function measuredSplit(
   const view = intervalView(intervals, plan);
   mustCover(view, from, to);
   const gross = nettedOver(view, 'none', null, null);
-  const bought = cells.map((id) => (id === null ? gross.import : (gross.byPeriod?.[id]?.import ?? 0)));
-  const sent = cells.map((id) => (id === null ? gross.export : (gross.byPeriod?.[id]?.export ?? 0)));
   // An hour that no period of the plan holds.
-  if (cells[0] !== null && gross.byPeriod === null) return null;
+  if (plan.calendar.periods.length > 0 && gross.byPeriod === null) return null;
+  const inCells = (flow: NettedFlow, side: 'import' | 'export') =>
+    cells.map((id) => (id === null ? flow[side] : ({ ...flow.byPeriod }[id]?.[side] ?? 0)));
+  const bought = inCells(gross, 'import');
+  const sent = inCells(gross, 'export');
   const made = intervals.productionWh.length === intervals.importWh.length ? producedOver(view, from, to) : null;
   const cancels = (block: 'hour' | '15min') => {
     if (intervals.minutes > (block === 'hour' ? 60 : 15)) return null;
-    const flow = nettedOver(view, block, null, null);
-    return cells.map((id, at) => Number(bought[at]) - (id === null ? flow.import : (flow.byPeriod?.[id]?.import ?? 0)));
+    return inCells(nettedOver(view, block, null, null), 'import').map((left, at) => Number(bought[at]) - left);
   };
   return {
     importWh: bought,

@@ -1,5 +1,6 @@
 import * as z from 'zod/mini';
 import type { IntervalChannel, IntervalDay } from '../facts/papers.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Day, dayNumber, monthOf } from '../units/day.ts';
 
 const hours = z.array(z.int());
@@ -46,8 +47,8 @@ export function hourlyProfileOf(intervals: readonly IntervalDay[], since: Day): 
   let isQuarterly = true;
   for (const [date, importing] of read.import) {
     const exporting = read.export.get(date);
-    const month = months[monthOf(date) - 1];
-    if (!exporting || !month || exporting.minutes !== importing.minutes) continue;
+    const month = keptAt(months, monthOf(date) - 1);
+    if (!exporting || exporting.minutes !== importing.minutes) continue;
     if (importing.minutes > 15) isQuarterly = false;
     const production = read.production.get(date) ?? read.monitor.get(date) ?? null;
     for (const into of [month, all]) addDay(into, date, importing, exporting, production);
@@ -125,8 +126,7 @@ function inBlocks({ minutes, values }: Reading, blockMinutes: number): number[] 
 function addTo(sums: Sum[], date: Day, values: readonly number[]): void {
   // 1970-01-01 was a Thursday.
   const weekday = (((dayNumber(date) + 4) % 7) + 7) % 7;
-  const sum = sums[weekday === 0 || weekday === 6 ? 1 : 0];
-  if (!sum) return;
+  const sum = keptAt(sums, weekday === 0 || weekday === 6 ? 1 : 0);
   sum.days += 1;
   for (const [hour, value] of values.entries()) sum.hours[hour] = Number(sum.hours[hour]) + value;
 }
@@ -138,7 +138,7 @@ function daysOf(sums: readonly Sum[]): number {
 /** Mean weekday and weekend in tens of Wh; a month that lacks one of them takes that of all months. */
 function meanOf(sums: readonly Sum[], all: readonly Sum[]): number[] {
   return sums.flatMap((sum, at) => {
-    const of = sum.days > 0 ? sum : (all[at] ?? sum);
+    const of = sum.days > 0 ? sum : keptAt(all, at);
     return of.hours.map((value) => Math.round(value / Math.max(1, of.days) / 10));
   });
 }

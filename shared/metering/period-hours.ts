@@ -1,4 +1,5 @@
 import { minuteOf, periodIn, seasonOf } from '../settlement/calendar.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { PlanCalendar } from '../settlement/plan.ts';
 import { addDays, type Day } from '../units/day.ts';
 
@@ -23,9 +24,9 @@ export function periodHours(calendar: PlanCalendar, from: Day, to: Day): number[
     const table = seasonTable(calendar, season);
     if (table === null) return null;
     for (const [cell, hours] of table.entries()) {
-      const row = rows[cell];
+      const row = keptAt(rows, cell);
       for (const [at, minutes] of hours.entries()) {
-        if (row) row[at] = Number(row[at]) + minutes * count * (at < HOURS ? WEEKDAYS : WEEKEND);
+        row[at] = Number(row[at]) + minutes * count * (at < HOURS ? WEEKDAYS : WEEKEND);
       }
     }
   }

@@ -28,14 +28,13 @@ export function useByPeriod(
   const split = sameCells(known.calendar, calendar) ? known.split : null;
   const measured = (values: readonly number[] | null | undefined) =>
     values?.some((value) => value > 0) ? values.map((value) => Math.max(0, value)) : null;
-  const sun = weighHours(hours, STATED_SUN);
   const self = measured(split?.selfWh);
   const none = flat.map(() => 0);
   const shares: Shares = {
     present: flat.map((minutes) => minutes > 0),
     import: measured(split?.importWh),
     export: flat,
-    self: self ?? measured(sun) ?? flat,
+    self: self ?? weighHours(hours, STATED_SUN),
     use: weighHours(hours, STATED_USE),
     cancels: { hour: none, '15min': none },
   };

@@ -1,6 +1,7 @@
 import { bankCents, type CompiledCycle, compileCycle, dueOf } from '../settlement/compile-cycle.ts';
 import { newSlots, type Slots, stateOf } from '../settlement/compile-state.ts';
 import type { CompiledUsage } from '../settlement/compile-usage.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { orRefusal } from '../settlement/refused.ts';
 import { type SettledAmounts, settleAmounts } from '../settlement/settle.ts';
@@ -88,7 +89,12 @@ function fullUsage(side: BillSide, plan: RatePlan, period: Period, usage: Compil
   const ids = plan.calendar.periods.map((one) => one.id);
   /** A record by period id of what the usage holds in the calendar's order. */
   const named = <T, U>(values: readonly (T | null)[], make: (value: T) => U): Record<string, U> =>
-    Object.fromEntries(ids.flatMap((id, at) => (values[at] ? [[id, make(values[at])]] : [])));
+    Object.fromEntries(
+      ids.flatMap((id, at) => {
+        const value = keptAt(values, at);
+        return value === null ? [] : [[id, make(value)]];
+      }),
+    );
   const netted = (block: 'hour' | '15min', of: NonNullable<CompiledUsage['split']>) => ({
     ...flow(of.netted[block]),
     byPeriod: ids.length === 0 ? null : named(of.netted[block].periods, flow),

@@ -1,3 +1,4 @@
+import { keptAt } from '../settlement/place.ts';
 import { type Day, dayOfMonth, daysBetween, daysInMonth, monthOf, yearOf } from '../units/day.ts';
 
 /** Wh and days gathered by year of age and calendar month. */
@@ -39,11 +40,9 @@ export function gather(heaps: Heaps, age: number, segments: readonly Segment[], 
   let given = 0;
   for (const segment of segments) {
     const share = Math.round((energy * segment.done) / days);
-    const heap = months[segment.month];
-    if (heap) {
-      heap.energy += share - given;
-      heap.days += segment.days;
-    }
+    const heap = keptAt(months, segment.month);
+    heap.energy += share - given;
+    heap.days += segment.days;
     given = share;
   }
 }
@@ -52,8 +51,9 @@ export function gather(heaps: Heaps, age: number, segments: readonly Segment[], 
 export function monthOfAll(heaps: Heaps, month: number): Heap {
   const total: Heap = { energy: 0, days: 0 };
   for (const months of heaps.values()) {
-    total.energy += months[month]?.energy ?? 0;
-    total.days += months[month]?.days ?? 0;
+    const heap = keptAt(months, month);
+    total.energy += heap.energy;
+    total.days += heap.days;
   }
   return total;
 }

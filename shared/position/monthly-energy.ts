@@ -1,4 +1,5 @@
 import type { UsageBefore } from '../facts/house.ts';
+import { keptAt } from '../settlement/place.ts';
 import { type Day, daysBetween, daysInMonth } from '../units/day.ts';
 import { type Wh, wh } from '../units/energy.ts';
 import { Exact, exact } from '../units/rate.ts';
@@ -98,11 +99,11 @@ function fillProduction(record: readonly (Exact | null)[], expected: readonly Wh
     const known = record[month];
     if (!known) continue;
     recorded = recorded.plus(known);
-    estimated = estimated.plus(estimate[month] ?? 0);
+    estimated = estimated.plus(keptAt(estimate, month));
   }
   const ratio = estimated.isZero() ? null : recorded.div(estimated);
   return fill(record, (month) =>
-    ratio === null ? [mean, 'mean'] : [(estimate[month] ?? new Exact(0)).times(ratio), 'installer'],
+    ratio === null ? [mean, 'mean'] : [keptAt(estimate, month).times(ratio), 'installer'],
   );
 }
 

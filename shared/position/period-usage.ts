@@ -1,6 +1,7 @@
 import { type AtHours, splitEnergy } from '../metering/energy-split.ts';
 import { hoursBetween, periodHours, weighHours } from '../metering/period-hours.ts';
 import type { CompiledUsage } from '../settlement/compile-usage.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import type { Period, PeriodEnergy } from './periods.ts';
 import type { SourcedShares } from './year-shares.ts';
@@ -8,15 +9,8 @@ import type { SourcedShares } from './year-shares.ts';
 /** A month to come and the plan it is settled by. */
 type Month = { period: Period; plan: RatePlan };
 
-const NO_USE: CompiledUsage = { importWh: 0, exportWh: 0, productionWh: 0, loadWh: 0, split: null };
-
 /** A month's energy with the roof. `shared`: how it falls on the periods and clock hours of the plan, where that asks for them. */
-export function usageWithRoof(
-  energy: PeriodEnergy | undefined,
-  shared: SourcedShares | null,
-  month: Month | undefined,
-): CompiledUsage {
-  if (energy === undefined) return NO_USE;
+export function usageWithRoof(energy: PeriodEnergy, shared: SourcedShares | null, month: Month): CompiledUsage {
   const { importWh, exportWh, productionWh, useWh } = energy;
   const usage = { importWh, exportWh, productionWh, loadWh: useWh };
   if (shared === null) return { ...usage, split: null };
@@ -26,7 +20,7 @@ export function usageWithRoof(
     shares.present.map((isThere, at) => (isThere ? make(at) : null));
   const netted = (block: 'hour' | '15min') => {
     const { total, parts } = split.netted[block];
-    return { ...total, periods: inCells((at) => parts[at] ?? NO_FLOW) };
+    return { ...total, periods: inCells((at) => keptAt(parts, at)) };
   };
   return {
     ...usage,
@@ -42,14 +36,8 @@ export function usageWithRoof(
   };
 }
 
-const NO_FLOW = { importWh: 0, exportWh: 0 };
-
 /** Without a roof everything used is bought, when it is used. */
-export function usageWithoutRoof(
-  energy: PeriodEnergy | undefined,
-  shared: SourcedShares | null,
-  month: Month | undefined,
-): CompiledUsage {
+export function usageWithoutRoof(energy: PeriodEnergy, shared: SourcedShares | null, month: Month): CompiledUsage {
   const { loadWh, split } = usageWithRoof(energy, shared, month);
   const bought = { importWh: loadWh, exportWh: 0 };
   if (split === null) return { ...bought, productionWh: 0, loadWh, split };
@@ -68,8 +56,8 @@ export function usageWithoutRoof(
   };
 }
 
-function atHoursOf({ atHours }: PeriodEnergy, month: Month | undefined): AtHours | null {
-  const hours = atHours && month && periodHours(month.plan.calendar, month.period.from, month.period.to);
+function atHoursOf({ atHours }: PeriodEnergy, month: Month): AtHours | null {
+  const hours = atHours && periodHours(month.plan.calendar, month.period.from, month.period.to);
   if (!atHours || !hours) return null;
   const { importWh, selfWh, fromHour, toHour } = atHours;
   return { importWh, selfWh, weights: weighHours(hours, hoursBetween(fromHour, toHour)) };

@@ -1,3 +1,4 @@
+import { keptAt } from '../settlement/place.ts';
 import { type Day, dayOf, daysBetween, monthOf, yearOf } from '../units/day.ts';
 import { type Wh, wh } from '../units/energy.ts';
 import { Exact, exact } from '../units/rate.ts';
@@ -15,8 +16,6 @@ export type PeriodEnergy = {
   /** The part of the use that falls on stated hours of the day, such as a car's charging: what of it is bought and what the roof meets. */
   atHours?: { importWh: number; selfWh: number; fromHour: number; toHour: number };
 };
-
-const NONE = new Exact(0);
 
 /** Calendar months from the last close; the first is what is left of its month. */
 export function periodsAfter(lastTo: Day, count: number): Period[] {
@@ -48,11 +47,11 @@ export function energyOfPeriods(
     if (period.index % 12 === 0) factor = factor.times(kept);
     const month = monthOf(period.from) - 1;
     const days = daysBetween(period.from, period.to);
-    const productionWh = energyOf(energy.productionPerDay[month] ?? NONE, days, factor);
+    const productionWh = energyOf(keptAt(energy.productionPerDay, month), days, factor);
     const useKey = month * 31 + days;
-    const useWh = uses.get(useKey) ?? energyOf(energy.usePerDay[month] ?? NONE, days, one);
+    const useWh = uses.get(useKey) ?? energyOf(keptAt(energy.usePerDay, month), days, one);
     uses.set(useKey, useWh);
-    const share = energy.exportShare[month] ?? NONE;
+    const share = keptAt(energy.exportShare, month);
     const sent = share.times(productionWh).toDecimalPlaces(0, Exact.ROUND_HALF_UP).toNumber();
     return energyFrom(productionWh, useWh, sent);
   });

@@ -2,6 +2,7 @@ import { dcWattsOf } from '../facts/dc-rating.ts';
 import type { PlanInForce } from '../facts/household.ts';
 import { asksForIntervals } from '../metering/cycle-intervals.ts';
 import type { CompiledUsage } from '../settlement/compile-usage.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { RatePlan } from '../settlement/plan.ts';
 import { planByDays } from '../settlement/plan-by-days.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
@@ -33,8 +34,8 @@ type YearPlans = { withRoof: RatePlan; withoutRoof: RatePlan };
 export type BillSides = {
   roof: BillSide;
   plain: BillSide;
-  usageWith: (at: number, energy: PeriodEnergy | undefined, drawn: EnergyCycle | null) => CompiledUsage;
-  usageWithout: (at: number, energy: PeriodEnergy | undefined, drawn: EnergyCycle | null) => CompiledUsage;
+  usageWith: (at: number, energy: PeriodEnergy, drawn: EnergyCycle | null) => CompiledUsage;
+  usageWithout: (at: number, energy: PeriodEnergy, drawn: EnergyCycle | null) => CompiledUsage;
   /** Where the parts of the months by period and clock hour come from; null where the plans ask for none. */
   shared: SharedMonths | null;
 };
@@ -60,16 +61,11 @@ export function billSides(
   const kW = powerOf(facts.house);
   const book = shareBook(basis);
   const sharesAt = (months: BillSide['months'], at: number, drawn: EnergyCycle | null) => {
-    const month = months[at];
-    return month && asksForIntervals(month.plan)
-      ? book.at(month.plan.calendar, month.period.from, month.period.to, drawn)
-      : null;
+    const { plan, period } = keptAt(months, at);
+    return asksForIntervals(plan) ? book.at(plan.calendar, period.from, period.to, drawn) : null;
   };
   const usage = (months: BillSide['months'], make: typeof usageWithRoof): BillSides['usageWith'] => {
-    return (at, energy, drawn) => {
-      const month = months[at];
-      return make(month ? energy : undefined, sharesAt(months, at, drawn), month);
-    };
+    return (at, energy, drawn) => make(energy, sharesAt(months, at, drawn), keptAt(months, at));
   };
   return {
     roof: billSide(roof, kW, facts.incentive !== null),
@@ -83,10 +79,10 @@ export function billSides(
 /** Settles every month with the roof and without it; both carry their own banks. A house that is sold has no bill, and its banks are lost. */
 export function projectBills(sides: BillSides, energies: readonly PeriodEnergy[], opening: Opening): ProjectedBills {
   const roof = settleSide(sides.roof, { ...opening, balanceCents: null }, (at) =>
-    sides.usageWith(at, energies[at], null),
+    sides.usageWith(at, keptAt(energies, at), null),
   );
   if (!roof.ok) return refused(roof.why);
-  const plain = settleSide(sides.plain, EMPTY_OPENING, (at) => sides.usageWithout(at, energies[at], null));
+  const plain = settleSide(sides.plain, EMPTY_OPENING, (at) => sides.usageWithout(at, keptAt(energies, at), null));
   if (!plain.ok) return refused(plain.why);
   return {
     ok: true,

@@ -3,6 +3,7 @@ import type { HourlyProfile } from '../metering/hourly-profile.ts';
 import { cellsOf, hoursBetween, periodHours, weighHours } from '../metering/period-hours.ts';
 import { STATED_SUN, STATED_USE } from '../metering/stated-profile.ts';
 import { sameCells } from '../settlement/calendar.ts';
+import { keptAt } from '../settlement/place.ts';
 import type { PlanCalendar } from '../settlement/plan.ts';
 import { planFor } from '../settlement/plan-in-force.ts';
 import { type Day, monthOf } from '../units/day.ts';
@@ -30,7 +31,6 @@ const MILLION = 1_000_000;
 const BLOCKS = ['hour', '15min'] as const;
 type Block = (typeof BLOCKS)[number];
 const EVERY_HOUR = hoursBetween(0, 0);
-const NO_HEAPS: Heaps = new Map();
 
 /** The shares of a basis. The same calendar object and calendar month are worked out once. */
 export function shareBook(
@@ -132,7 +132,7 @@ function sharesOf(
   const importing = own.import ?? byHour('import');
   const exporting = own.export ?? byHour('export');
   const self = own.self ?? byHour('self');
-  const sun = within(weighHours(hours, STATED_SUN)) ?? flat;
+  const sun = weighHours(hours, STATED_SUN);
   const stretches = BLOCKS.map((block) => cancelsOf(block, month, record, drawn, hourly));
   const [hour, quarter] = stretches;
   const none = flat.map(() => 0);
@@ -163,7 +163,7 @@ function cancelsOf(
     const known = lesser.map(sum);
     if (known.every((heap) => heap.days === 0)) return null;
     return known.map((heap, cell) => {
-      const cancelled = sum(gone[cell] ?? NO_HEAPS).energy;
+      const cancelled = sum(keptAt(gone, cell)).energy;
       return heap.energy <= 0 ? 0 : Math.round((cancelled * MILLION) / heap.energy);
     });
   };

@@ -10,7 +10,8 @@ import { projectFrom, projectParts } from '#shared/position/project.ts';
 import { rangeOf } from '#shared/position/range.ts';
 import { shareBook } from '#shared/position/year-shares.ts';
 import { intervalView, nettedOver } from '#shared/settlement/interval-flows.ts';
-import { type RatePlan, ratePlanSchema } from '#shared/settlement/plan.ts';
+import { keptAt } from '#shared/settlement/place.ts';
+import { type RatePlan, type RateRow, ratePlanSchema } from '#shared/settlement/plan.ts';
 import { planFaults } from '#shared/settlement/plan-faults.ts';
 import { settleAmounts } from '#shared/settlement/settle.ts';
 import type { CycleUsage, Opening } from '#shared/settlement/settlement.ts';
@@ -39,6 +40,10 @@ function inForceSince(plan: RatePlan): RatePlan {
     credits: plan.credits.map((one) => ({ ...one, rates: one.rates && rates(one.rates) })),
   };
 }
+
+/** One price for all periods. */
+const flat = (rows: RateRow[]): RateRow[] =>
+  rows.filter((row) => row.period !== 'peak').map(({ period: _, ...row }) => row);
 
 type Built = Parameters<typeof builtLedger>[0];
 
@@ -90,7 +95,7 @@ describe('every plan of the vectors is projected', () => {
     if (!parts.ok) throw new Error(parts.why);
     const { sides, energies, periods } = parts;
     const opening: Opening = { ...basis.opening, balanceCents: null };
-    const settled = settleSide(sides.roof, opening, (at) => sides.usageWith(at, energies[at], null));
+    const settled = settleSide(sides.roof, opening, (at) => sides.usageWith(at, keptAt(energies, at), null));
     if (!settled.ok) throw new Error(settled.why);
     let held = opening;
     const direct = periods.map(({ from, to }) => {
@@ -256,6 +261,116 @@ describe('netting inside the hour', () => {
   });
 });
 
+describe('refused', () => {
+  it('where the plan without a roof cannot be settled', () => {
+    const { basis } = household(EVENING);
+    const withoutRoof = { ...EVENING, timeZone: 'Nowhere' };
+    const plans = [{ from: day('2020-01-01'), plan: EVENING, withoutRoof }];
+    const made = projectFrom({ ...basis, facts: { ...basis.facts, plans } });
+    expect(made).toMatchObject({ ok: false, why: expect.stringContaining('Nowhere') });
+  });
+});
+
+describe('settled in full and compiled', () => {
+  const seasonal: RatePlan = {
+    ...EVENING,
+    calendar: {
+      ...EVENING.calendar,
+      periods: EVENING.calendar.periods.map((one) =>
+        one.when === 'rest' ? one : { ...one, when: one.when.map((span) => ({ ...span, season: 'summer' })) },
+      ),
+    },
+  };
+  const plain: RatePlan = {
+    ...EVENING,
+    netting: 'hour',
+    calendar: { ...EVENING.calendar, periods: [] },
+    charges: EVENING.charges.map((one) => ({ ...one, rates: flat(one.rates) })),
+    credits: EVENING.credits.map((one) => ({ ...one, rates: one.rates && flat(one.rates) })),
+  };
+  const kept = (plan: RatePlan, lotLife: { cycles: number } | null): RatePlan => ({
+    ...plan,
+    banks: plan.banks.map((bank) => ({ ...bank, lotLife, trueUps: [] })),
+  });
+
+  it.each([
+    ['by period', EVENING],
+    ['by period and hour', { ...EVENING, netting: 'hour' as const }],
+    ['by a period of the summer alone', seasonal],
+    ['by the hour without periods', plain],
+  ])('%s, the months are the same', (_, plan) => {
+    const { basis } = household(EVENING, { intervals: HOURLY });
+    const months = (of: RatePlan) => {
+      const plans = [{ from: day('2020-01-01'), plan: of, withoutRoof: null }];
+      const parts = projectParts(assuming({ ...basis, facts: { ...basis.facts, plans } }, { horizonMonths: 24 }));
+      if (!parts.ok) throw new Error(parts.why);
+      return { isCompiled: parts.sides.roof.compiled !== null, months: parts.months };
+    };
+    // Lots that never die change nothing but the way.
+    const compiled = months(kept(plan, null));
+    const full = months(kept(plan, { cycles: 400 }));
+    expect([compiled.isCompiled, full.isCompiled]).toEqual([true, false]);
+    expect(full.months).toEqual(compiled.months);
+  });
+});
+
+describe('a cycle’s split', () => {
+  const splits = (plan: RatePlan, options: Built, change: (facts: HouseholdFacts) => HouseholdFacts = (same) => same) =>
+    builtLedger({ cycles: 2, start: START, bare: true, ...options }, (facts) =>
+      change({
+        ...facts,
+        house: { ...facts.house, timeZone: ZONE },
+        plans: [{ from: day('2020-01-01'), plan, withoutRoof: null }],
+      }),
+    ).basis.cycles.map((cycle) => cycle.split);
+
+  it('has one part where the plan nets by the hour without periods', () => {
+    const plan = { ...EVENING, netting: 'hour' as const, calendar: { ...EVENING.calendar, periods: [] } };
+    const rates = (rows: RateRow[]) => rows.filter((row) => row.period === undefined);
+    const charges = plan.charges.map((one) => ({
+      ...one,
+      rates: one.id === 'energy' ? [{ from: START, rate: '0.2' }] : rates(one.rates),
+    }));
+    const credits = plan.credits.map((one) => ({ ...one, rates: [{ from: START, rate: '0.1' }] }));
+    const [first] = splits({ ...plan, charges, credits }, { intervals: HOURLY });
+    expect(first?.importWh).toHaveLength(1);
+    expect(first?.cancels['15min']).toBeNull();
+    expect(first?.selfWh).toEqual([first ? 830_000 - (first.exportWh[0] ?? 0) : 0]);
+    expect(splits({ ...plan, charges, credits }, {})).toEqual([null, null]);
+  });
+
+  it('knows no self-use where production is not read by the hour', () => {
+    const [first] = splits(EVENING, { intervals: { channels: ['import', 'export'], minutes: 60 } });
+    expect(first).toMatchObject({ selfWh: null });
+  });
+
+  it('is none where the readings do not cover the cycle by the plan’s clock', () => {
+    expect(splits({ ...EVENING, timeZone: 'Asia/Tokyo' }, { intervals: HOURLY })).toEqual([null, null]);
+  });
+
+  it('is none where an hour lies in no period, and holds nothing of a period of another season', () => {
+    const [peak] = EVENING.calendar.periods;
+    if (!peak || peak.when === 'rest') throw new Error('no peak');
+    const only = (periods: RatePlan['calendar']['periods']): RatePlan => ({
+      ...EVENING,
+      calendar: { ...EVENING.calendar, periods },
+      charges: EVENING.charges.map((one) => ({ ...one, rates: flat(one.rates) })),
+      credits: EVENING.credits.map((one) => ({ ...one, rates: one.rates && flat(one.rates) })),
+    });
+    expect(splits(only([peak]), { intervals: HOURLY })).toEqual([null, null]);
+    const summer = { ...peak, when: peak.when.map((span) => ({ ...span, season: 'summer' })) };
+    const winter = { ...peak, id: 'winterPeak', when: peak.when.map((span) => ({ ...span, season: 'winter' })) };
+    const seasonal = splits(only([summer, winter, { id: 'offPeak', label: '', when: 'rest' }]), { intervals: HOURLY });
+    expect(seasonal[1]?.importWh[0]).toBe(0);
+    expect(seasonal[1]?.selfWh?.[0]).toBe(0);
+    expect(seasonal[1]?.importWh[1]).toBeGreaterThan(0);
+  });
+
+  it('is none where the lines print no kWh by period, or only of one side', () => {
+    expect(splits(EVENING, {})).toEqual([null, null]);
+  });
+});
+
 describe('another plan, or use at other hours', () => {
   it('a plan by period tried on a flat household goes by the hours of its readings', () => {
     const built = builtLedger({ cycles: 12, start: START, bare: true, intervals: HOURLY });
@@ -303,7 +418,6 @@ describe('another plan, or use at other hours', () => {
     expect(plain).toMatchObject({ importWh: 800_000, exportWh: 0, productionWh: 0, loadWh: 800_000 });
     expect(plain.split?.periods.map((part) => part?.importWh)).toEqual(roof?.periods.map((part) => part?.loadWh));
     expect(plain.split?.netted.hour).toMatchObject({ importWh: 800_000, exportWh: 0 });
-    expect(usageWithRoof(undefined, shared, month)).toMatchObject({ importWh: 0, split: null });
   });
 });
 
