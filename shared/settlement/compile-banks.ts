@@ -17,6 +17,8 @@ import {
   plus,
   priced,
   type Qty,
+  qtyOfText,
+  qtyText,
   type Rate,
   rateOf,
   roundedCents,
@@ -204,7 +206,8 @@ export function closeCompiled(
     due -= amount;
     if (fee > 0 && amount > 0) due += Math.min(fee, amount);
   }
-  state.balances[at] = balance;
+  // What does not end as a decimal is carried on as the books print it.
+  state.balances[at] = typeof balance === 'number' ? balance : qtyOfText(qtyText(balance));
   if (counted) {
     state.usageCycles[at] = happened ? 0 : counted.cycles;
     state.usageKwh[at] = happened ? 0 : counted.kWh;
