@@ -19,8 +19,8 @@ type PricedPart = {
   /** The rate of each tier; one where the item has no tiers. */
   rates: readonly Rate[];
   bounds: Bounds | null;
-  /** In the calendar's order; null where the item is not priced by period. */
-  periods: readonly PricedPeriod[] | null;
+  /** In the calendar's order; empty where the item is not priced by period. */
+  periods: readonly PricedPeriod[];
   /** Days within the credit's term; null where it has none or the part lies in it whole. */
   termDays: number | null;
 };
@@ -56,8 +56,7 @@ export function compileEnergy(cycle: Cycle, item: EnergyItem, term: Term | null)
     compiled.push(made);
   }
   const [only] = compiled;
-  const isFlat =
-    only && compiled.length === 1 && only.bounds === null && only.termDays === null && only.periods === null;
+  const isFlat = only && compiled.length === 1 && only.bounds === null && only.termDays === null && !pricing.byPeriod;
   return {
     label: item.label,
     parts: compiled,
@@ -96,7 +95,7 @@ function compilePart(
     if (price === null || price.rate.int === null) return null;
     rates.push(price.rate);
   }
-  return { days: part.days, rates, bounds, periods: null, termDays };
+  return { days: part.days, rates, bounds, periods: [], termDays };
 }
 
 function daysInTerm(cycle: Cycle, part: Part, term: Term): number {
@@ -174,14 +173,14 @@ function amountOf(item: CompiledEnergy, part: PricedPart, top: Qty, bottom: Qty,
 export function periodCents(
   item: CompiledEnergy,
   amounts: readonly (number | null)[],
-  each: ((amount: number) => void) | null = null,
+  each: ((amount: number) => void) | null,
 ): number {
   const given = amounts.map((): { days: number; whole: Qty } => ({ days: 0, whole: 0 }));
   let sum = 0;
   for (const part of item.parts) {
-    for (const [at, { rate, held }] of (part.periods ?? []).entries()) {
-      const n = amounts[at];
-      if (n === null || n === undefined || held === null) continue;
+    for (const [at, { rate, held }] of part.periods.entries()) {
+      const n = keptAt(amounts, at);
+      if (n === null || held === null) continue;
       let top: Qty = n;
       let bottom = 1;
       if (held !== part.days && item.wholeKwh) {

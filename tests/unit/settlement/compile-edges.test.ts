@@ -5,8 +5,12 @@ import { bankCents, compileCycle, dueOf } from '#shared/settlement/compile-cycle
 import { newSlots, stateOf } from '#shared/settlement/compile-state.ts';
 import { keptAt, knownAs } from '#shared/settlement/place.ts';
 import type { RatePlan } from '#shared/settlement/plan.ts';
+import { planByDays } from '#shared/settlement/plan-by-days.ts';
+import { orRefusal } from '#shared/settlement/refused.ts';
 import { settleAmounts } from '#shared/settlement/settle.ts';
 import { EMPTY_OPENING, type Opening } from '#shared/settlement/settlement.ts';
+import { day } from '#shared/units/day.ts';
+import { wh } from '#shared/units/energy.ts';
 import { taken } from '#tests/support/netmetering-adapter.ts';
 import { CUSTOMER, ENERGY, plan, usage } from './plans.ts';
 
@@ -60,6 +64,122 @@ describe('compiled, a bank', () => {
     expect(bothWays(of([]), used)).toEqual({ quick: [3000, 0], full: [3000, 0] });
     expect(bothWays(of(['energy']), used)).toEqual({ quick: [3000, 2100], full: [3000, 2100] });
   });
+});
+
+describe('compiled, a price by period', () => {
+  const PERIODS = [
+    { id: 'peak', label: 'Peak', when: [{ days: 'all', from: '16:00', to: '21:00' }] },
+    { id: 'off', label: 'Off-peak', when: 'rest' },
+  ];
+  const byPeriod = (peak: string, off: string) => [
+    { ...FLAT, period: 'peak', rate: peak },
+    { ...FLAT, period: 'off', rate: off },
+  ];
+  const split = {
+    periods: [
+      { importWh: 40_000, exportWh: 10_000, productionWh: 15_000, loadWh: 45_000 },
+      { importWh: 60_000, exportWh: 90_000, productionWh: 120_000, loadWh: 90_000 },
+    ],
+    netted: {
+      hour: { importWh: 100_000, exportWh: 100_000, periods: [null, null] },
+      '15min': { importWh: 100_000, exportWh: 100_000, periods: [null, null] },
+    },
+  };
+  const ALL = { importWh: 100_000, exportWh: 100_000, productionWh: 135_000, loadWh: 135_000 };
+  const bought = { ...ENERGY, basis: 'load', rates: byPeriod('0.20', '0.10') };
+  const sold = {
+    id: 'sold',
+    label: 'Sold',
+    kind: 'export',
+    basis: 'production',
+    to: 'bill',
+    rates: byPeriod('0.08', '0.04'),
+  };
+  const of = (load: string, changes: object = {}) =>
+    plan({ load, calendar: { periods: PERIODS }, charges: [bought], credits: [sold], ...changes });
+  const used = usage({
+    import: 100,
+    export: 100,
+    production: 135,
+    loadWh: wh(135_000),
+    ownByPeriod: {
+      peak: { productionWh: wh(15_000), loadWh: wh(45_000) },
+      off: { productionWh: wh(120_000), loadWh: wh(90_000) },
+    },
+  });
+
+  test.each(['computed', 'metered'])('of the use, %s, and of production sold whole', (load) => {
+    const { slots, cycle } = compiled(of(load), used);
+    if (cycle === null) throw new Error('it is not compiled');
+    // 45 × 0.20 + 90 × 0.10 − 15 × 0.08 − 120 × 0.04
+    expect(dueOf(cycle, { ...ALL, split }, stateOf(slots, EMPTY_OPENING))).toBe(1200);
+    expect(taken(settleAmounts(of(load), EMPTY_OPENING, used)).settlement.amountDueCents).toBe(1200);
+  });
+
+  test('leaves out a period the span has no hours of', () => {
+    const { slots, cycle } = compiled(of('computed'), used);
+    if (cycle === null) throw new Error('it is not compiled');
+    const off = { ...split, periods: [null, split.periods[1] ?? null] };
+    expect(dueOf(cycle, { ...ALL, split: off }, stateOf(slots, EMPTY_OPENING))).toBe(900 - 480);
+  });
+
+  test('is refused where the kWh by period are not known, in full too', () => {
+    const { slots, cycle } = compiled(of('computed'), used);
+    if (cycle === null) throw new Error('it is not compiled');
+    const quick = orRefusal(() => dueOf(cycle, { ...ALL, split: null }, stateOf(slots, EMPTY_OPENING)));
+    expect(quick).toMatchObject({ ok: false });
+    const { ownByPeriod: _, ...unknown } = used;
+    for (const load of ['computed', 'metered'])
+      expect(settleAmounts(of(load), EMPTY_OPENING, unknown)).toMatchObject({ ok: false });
+  });
+
+  test('is refused where a period the span has hours of has no price in its season', () => {
+    const seasons = [
+      { id: 'summer', from: '06-01', to: '09-30' },
+      { id: 'winter', from: '10-01', to: '05-31' },
+    ];
+    const summer = [
+      { ...PERIODS[0], when: [{ days: 'all', from: '16:00', to: '21:00', season: 'summer' }] },
+      PERIODS[1],
+    ];
+    const rates = [
+      { ...FLAT, period: 'peak', season: 'summer', rate: '0.20' },
+      { ...FLAT, period: 'off', rate: '0.10' },
+    ];
+    const charges = [{ ...bought, rates }];
+    const seasonal = of('computed', { calendar: { seasons, periods: summer }, charges });
+    const winter = { ...used, ...{ from: day('2026-01-01'), to: day('2026-02-01') } };
+    const { slots, cycle } = compiled(seasonal, winter);
+    if (cycle === null) throw new Error('it is not compiled');
+    const quick = orRefusal(() => dueOf(cycle, { ...ALL, split }, stateOf(slots, EMPTY_OPENING)));
+    expect(quick).toMatchObject({ ok: false });
+    expect(settleAmounts(seasonal, EMPTY_OPENING, winter)).toMatchObject({ ok: false });
+  });
+
+  test('too long for whole numbers is left to the full settlement', () => {
+    const long = [{ ...bought, rates: byPeriod('10000000.123456789', '0.10') }];
+    expect(compiled(of('computed', { charges: long }), used).cycle).toBeNull();
+  });
+
+  test('and netting inside the cycle, of a usage that knows neither, is refused', () => {
+    const { slots, cycle } = compiled(plan({ netting: 'hour' }), used);
+    if (cycle === null) throw new Error('it is not compiled');
+    const quick = orRefusal(() => dueOf(cycle, { ...ALL, split: null }, stateOf(slots, EMPTY_OPENING)));
+    expect(quick).toMatchObject({ ok: false });
+  });
+});
+
+test('a plan that changes season or price by intervals changes by days where there are none', () => {
+  const both = plan({ seasonBy: 'intervals', rateChangeBy: 'intervals' });
+  expect(planByDays(both)).toMatchObject({ seasonBy: 'days', rateChangeBy: 'days' });
+  expect(planByDays(both)).toBe(planByDays(both));
+  expect(planByDays(plan({ seasonBy: 'intervals' }))).toMatchObject({ seasonBy: 'days', rateChangeBy: 'days' });
+  const read = plan({ rateChangeBy: 'intervals', seasonBy: 'readDate' });
+  expect(planByDays(read)).toMatchObject({ seasonBy: 'readDate', rateChangeBy: 'days' });
+  const seasons = plan({ rateChangeBy: 'readDate', seasonBy: 'intervals' });
+  expect(planByDays(seasons)).toMatchObject({ seasonBy: 'days', rateChangeBy: 'readDate' });
+  const days = plan();
+  expect(planByDays(days)).toBe(days);
 });
 
 describe('left to the full settlement is', () => {
