@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest';
-import { isWeekend, periodAt, periodExists, seasonChanges, seasonOf } from '#shared/settlement/calendar.ts';
+import { isWeekend, periodAt, periodExists, sameCells, seasonChanges, seasonOf } from '#shared/settlement/calendar.ts';
 import { calendarSchema, type PlanCalendar } from '#shared/settlement/plan.ts';
 import { day } from '#shared/units/day.ts';
 import { TWO_SEASONS } from './plans.ts';
@@ -114,5 +114,18 @@ describe('time-of-use periods', () => {
     const [peak, night, rest] = of.periods;
     if (!peak || !night || !rest) throw new Error('three periods');
     expect([peak, night, rest].map((period) => periodExists(period, 'winter'))).toEqual([false, true, true]);
+  });
+
+  test('are the same in two calendars that say the same, whatever their holidays and labels', () => {
+    const again = structuredClone(of);
+    const labelled = { ...again, periods: again.periods.map((period) => ({ ...period, label: 'Other words' })) };
+    const holidays = { dates: [day('2026-07-04')], as: 'weekend' as const };
+    expect([of, again, again, { ...labelled, holidays }].map((other) => sameCells(of, other))).toEqual([
+      true,
+      true,
+      true,
+      true,
+    ]);
+    expect(sameCells(of, { ...of, periods: of.periods.slice(1) })).toBe(false);
   });
 });

@@ -123,6 +123,21 @@ describe('compiled, a price by period', () => {
     expect(dueOf(cycle, { ...ALL, split: off }, stateOf(slots, EMPTY_OPENING))).toBe(900 - 480);
   });
 
+  test('nets each period the span has hours of', () => {
+    const flat = plan({ netting: 'period', calendar: { periods: PERIODS } });
+    const { slots, cycle } = compiled(flat, used);
+    if (cycle === null) throw new Error('it is not compiled');
+    const due = (periods: typeof split.periods | (null | undefined)[]) =>
+      dueOf(
+        cycle,
+        { ...ALL, split: { ...split, periods: periods.map((one) => one ?? null) } },
+        stateOf(slots, EMPTY_OPENING),
+      );
+    // 40 − 10 kWh at $0.10; off-peak more went out than in.
+    expect(due(split.periods)).toBe(300);
+    expect(due([null, split.periods[1]])).toBe(0);
+  });
+
   test('is refused where the kWh by period are not known, in full too', () => {
     const { slots, cycle } = compiled(of('computed'), used);
     if (cycle === null) throw new Error('it is not compiled');
@@ -159,6 +174,8 @@ describe('compiled, a price by period', () => {
   test('too long for whole numbers is left to the full settlement', () => {
     const long = [{ ...bought, rates: byPeriod('10000000.123456789', '0.10') }];
     expect(compiled(of('computed', { charges: long }), used).cycle).toBeNull();
+    const credits = [{ ...sold, rates: byPeriod('10000000.123456789', '0.04') }];
+    expect(compiled(of('computed', { credits }), used).cycle).toBeNull();
   });
 
   test('and netting inside the cycle, of a usage that knows neither, is refused', () => {
