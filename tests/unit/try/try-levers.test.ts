@@ -133,6 +133,29 @@ describe('other levers', () => {
     expect(kept[0]?.settledCents).toBeLessThan(base.settledCents);
   });
 
+  it('export cut from a day leaves the months before it as they were', () => {
+    const changed = outcome({ exportCut: { from: day('2031-04-01'), keep: '0.2' } }).months;
+    const before = base.months.filter((month) => month.on <= '2031-04-01');
+    expect(changed.slice(0, before.length)).toEqual(before);
+    expect(changed[before.length]).not.toEqual(base.months[before.length]);
+  });
+
+  it('say what they take for granted, each its own', () => {
+    const assumed = (levers: Partial<Levers>) => {
+      const tried = pull(levers);
+      return tried.ok ? tried.assumed.map((one) => one.split(/[ ’]/).slice(0, 3).join(' ')) : [];
+    };
+    const refinance = { on: SPRING, annualRate: '0.03', termMonths: 120, costsCents: cents(0) };
+    expect(assumed({ refinance })).toEqual(['The new loan']);
+    expect(assumed({ paydown: { on: SPRING, amountCents: cents(100), reamortize: false } })).toEqual([
+      'The lender takes',
+    ]);
+    expect(assumed({ cash: true })).toEqual(['The loan s']);
+    expect(assumed({ exportCut: { from: SPRING, keep: '0.5' } })).toEqual(['What export takes']);
+    expect(assumed({ sale: { on: SPRING, roofValueCents: cents(0) } })).toEqual(['On the day']);
+    expect(assumed({ priceRise: '0.03', degradation: '0.01' })).toEqual([]);
+  });
+
   it('a month’s parts still add up when export is cut', () => {
     const { months } = outcome({ exportCut: { from: SPRING, keep: '0.37' } });
     for (const [at, month] of months.entries()) {
