@@ -29,6 +29,7 @@ export default defineConfig({
         'shared/settlement/**': { branches: 100 },
         'shared/reconcile/**': { branches: 100 },
         'shared/books/**': { branches: 100 },
+        'shared/position/**': { branches: 100 },
         'shared/try/**': { branches: 100 },
       },
     },

@@ -56,7 +56,7 @@ export function settleSide(side: BillSide, opening: Opening, usageAt: (at: numbe
     }
     return result;
   });
-  return made.ok ? { ok: true, value: made.value } : { ok: false, why: made.problem.detail ?? '' };
+  return made.ok ? { ok: true, value: made.value } : { ok: false, why: String(made.problem.detail) };
 }
 
 /**
@@ -76,7 +76,7 @@ function settleWhole(side: BillSide, opening: Opening, usageAt: (at: number) => 
   let held = opening;
   for (const [at, { period, plan }] of side.months.entries()) {
     const settled = settleAmounts(plan, held, fullUsage(side, plan, period, usageAt(at)));
-    if (!settled.ok) return { ok: false, why: settled.problem.faults[0]?.message ?? settled.problem.detail ?? '' };
+    if (!settled.ok) return { ok: false, why: String(settled.problem.faults[0]?.message ?? settled.problem.detail) };
     held = settled.value.closing;
     result.dueCents.push(electricDue(settled.value.settlement, side.incentiveApart));
     result.bankCents.push(bankWorth(plan, held, period.from, period.to));

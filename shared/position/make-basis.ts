@@ -1,4 +1,5 @@
 import { creditEarnedBy } from '../books/tax-credit.ts';
+import { keptAt } from '../settlement/place.ts';
 import { cents, ZERO_CENTS } from '../units/cents.ts';
 import type { Day } from '../units/day.ts';
 import type { BasisFacts, ProjectionBasis } from './basis.ts';
@@ -71,5 +72,5 @@ function isClose(point: PositionPoint): boolean {
 function evenSince(closes: readonly PositionPoint[]): Day | null {
   const firm = closes.filter((point) => !point.provisional);
   const index = lastingCrossing(firm.map((point) => point.settledTodayCents));
-  return index === null ? null : (firm[index]?.on ?? null);
+  return index === null ? null : keptAt(firm, index).on;
 }
