@@ -127,7 +127,7 @@ describe('compiled, a price by period', () => {
     const flat = plan({ netting: 'period', calendar: { periods: PERIODS } });
     const { slots, cycle } = compiled(flat, used);
     if (cycle === null) throw new Error('it is not compiled');
-    const due = (periods: typeof split.periods | (null | undefined)[]) =>
+    const due = (periods: readonly ((typeof split.periods)[number] | null | undefined)[]) =>
       dueOf(
         cycle,
         { ...ALL, split: { ...split, periods: periods.map((one) => one ?? null) } },
