@@ -172,7 +172,7 @@ describe('the mean day of the readings', () => {
   });
 
   it('knows no quarter-hours from hours, no self-use without production, and takes the monitor where there is no meter', () => {
-    const flows = [...readings('import', 45, 60, () => 100), ...readings('export', 45, 60, () => 0)];
+    const flows = [...readings('import', 59, 60, () => 100), ...readings('export', 59, 60, () => 0)];
     const hourly = hourlyProfileOf(flows, since);
     expect(hourly?.cancels).toEqual({ hour: new Array(12).fill(0), '15min': null });
     expect(hourly?.months[0]?.self).toBeNull();
