@@ -11,7 +11,7 @@ import { PROPERTY_RUNS } from '#tests/support/property-runs.ts';
 import { BUILT_START, builtLedger } from './built-basis.ts';
 
 /** Households that differ in everything the position is made of; as many as a whole ledger each allows. */
-const HOUSEHOLDS = 150;
+const HOUSEHOLDS = Math.ceil(PROPERTY_RUNS * 0.15);
 const HORIZON = 96;
 
 type Drawn = {
