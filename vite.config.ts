@@ -19,6 +19,8 @@ export default defineConfig({
     proxy: { '/api': `http://127.0.0.1:${apiPort}` },
   },
   test: {
+    // Every core: the suite has ten minutes.
+    maxWorkers: '100%',
     // `npm run coverage`: the folders that decide what a bill should have been, and what the money comes to, are to have every branch tried.
     coverage: {
       provider: 'v8',
